@@ -1,0 +1,17 @@
+namespace Portfolio.Model.Faults;
+
+/// <summary>Every code a fault can carry. A code never changes meaning; a new meaning gets a new code.</summary>
+public static class FaultCodes
+{
+    // Shape: what the text of a member says.
+    public const string MemberMissing = "member.missing";
+    public const string MemberUnknown = "member.unknown";
+    public const string MemberKind = "member.kind";
+    public const string TypeUnknown = "type.unknown";
+    public const string ValueUnknown = "value.unknown";
+    public const string DateFormat = "date.format";
+    public const string NumberNotFinite = "number.not-finite";
+    public const string NumberNotWhole = "number.not-whole";
+    public const string MoneyDecimals = "money.decimals";
+    public const string Reserved = "member.reserved";
+}
