@@ -1,0 +1,11 @@
+namespace Portfolio.Store;
+
+/// <summary>The folder belongs to another process that is running.</summary>
+public sealed class StoreInUseException(string directory, Exception? inner = null)
+    : IOException($"The storage folder '{directory}' is in use by another process. One process at a time may open it.", inner);
+
+/// <summary>What is stored was not written by this version of the program, or its migrations were changed afterwards.</summary>
+public sealed class StoreSchemaException(string message) : InvalidOperationException(message);
+
+/// <summary>Stored bytes are not the ones that were written.</summary>
+public sealed class StoreDamagedException(string message) : IOException(message);
