@@ -14,4 +14,12 @@ public static class FaultCodes
     public const string NumberNotWhole = "number.not-whole";
     public const string MoneyDecimals = "money.decimals";
     public const string Reserved = "member.reserved";
+
+    // Text that is refused at once, at its first place (400).
+    public const string JsonMalformed = "json.malformed";
+    public const string JsonDepth = "json.depth";
+    public const string MemberDuplicate = "member.duplicate";
+
+    // A pair of nodes that are not two.
+    public const string PairSize = "pair.size";
 }

@@ -1,0 +1,24 @@
+using System.Text.Encodings.Web;
+using System.Text.Json;
+using System.Text.Json.Serialization;
+
+namespace Portfolio.Server.Contracts.Document;
+
+/// <summary>Generated readers and writers of the portfolio document, strict as the API promises.</summary>
+[JsonSerializable(typeof(DocumentJson))]
+[JsonSerializable(typeof(SettingsJson))]
+[JsonSerializable(typeof(ProjectJson))]
+[JsonSerializable(typeof(ActivityJson))]
+internal sealed partial class DocumentContext : JsonSerializerContext
+{
+    public const int MaxDepth = 16;
+
+    public static readonly DocumentContext Strict = new(new JsonSerializerOptions(JsonSerializerDefaults.Strict)
+    {
+        PropertyNamingPolicy = JsonNamingPolicy.CamelCase,
+        DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull,
+        MaxDepth = MaxDepth,
+        // Stored and served as application/json, never inside a page: letters stay readable.
+        Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping,
+    });
+}

@@ -1,0 +1,86 @@
+using System.Text;
+using System.Text.Json;
+using System.Text.Json.Serialization.Metadata;
+using Portfolio.Model.Faults;
+using Portfolio.Server.Contracts.Document;
+
+namespace Portfolio.Server.Contracts.Json;
+
+/// <summary>A body that is not JSON, or JSON with an unknown or repeated member or a value of the wrong kind (400). Names the first place.</summary>
+/// <param name="line">From 1, where known.</param>
+/// <param name="column">In characters from 1, where known.</param>
+public sealed class JsonRefused(Fault fault, int? line = null, int? column = null) : Exception(fault.Message)
+{
+    public Fault Fault { get; } = fault;
+
+    public int? Line { get; } = line;
+
+    public int? Column { get; } = column;
+
+    public static JsonRefused Null(string path) =>
+        new(new Fault(path, "", FaultCodes.MemberKind, "A null cannot stand here."));
+
+    /// <summary>Finds again what stopped the serializer, to say it in our own words: its messages name types of the program.</summary>
+    public static JsonRefused From(ReadOnlySpan<byte> json, JsonException refused, JsonTypeInfo type)
+    {
+        var stop = Offset(json, refused);
+        var walk = new PointerWalk(json);
+        var members = new Stack<HashSet<string>>();
+        try
+        {
+            while (walk.Read())
+            {
+                var opens = walk.Token is JsonTokenType.StartObject or JsonTokenType.StartArray;
+                // Where any value is allowed the serializer stops one level before the one it refuses.
+                if (opens && walk.Depth >= DocumentContext.MaxDepth - (walk.Consumed >= stop ? 1 : 0))
+                    return At(json, walk, FaultCodes.JsonDepth, $"The JSON is nested deeper than {DocumentContext.MaxDepth} levels.");
+                if (walk.Token == JsonTokenType.StartObject)
+                    members.Push(new HashSet<string>(StringComparer.Ordinal));
+                else if (walk.Token == JsonTokenType.EndObject)
+                    members.Pop();
+                else if (walk.Token == JsonTokenType.PropertyName && !members.Peek().Add(walk.Pointer.ToString()))
+                    return At(json, walk, FaultCodes.MemberDuplicate, "The member appears twice in this object.");
+                if (walk.Consumed >= stop)
+                    return AtStop(json, walk, type);
+            }
+        }
+        catch (Exception malformed) when (malformed is JsonException or InvalidOperationException)
+        {
+            // InvalidOperationException: a text that is not valid UTF-8 or half a surrogate pair.
+            stop = malformed is JsonException syntax ? Offset(json, syntax) : walk.Consumed;
+        }
+        var (line, column) = Position(json, stop);
+        return new JsonRefused(
+            new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed, $"The text is not valid JSON at line {line}, column {column}."), line, column);
+    }
+
+    private static JsonRefused AtStop(ReadOnlySpan<byte> json, PointerWalk walk, JsonTypeInfo type) => walk.Token == JsonTokenType.PropertyName
+        ? At(json, walk, FaultCodes.MemberUnknown, "There is no such member here.")
+        : At(json, walk, FaultCodes.MemberKind, $"{ExpectedKind.At(type, walk.Pointer.ToString())} is expected here.");
+
+    private static JsonRefused At(ReadOnlySpan<byte> json, PointerWalk walk, string code, string message)
+    {
+        var (line, column) = Position(json, walk.Consumed);
+        return new JsonRefused(new Fault(walk.Pointer.ToString(), "", code, message), line, column);
+    }
+
+    private static long Offset(ReadOnlySpan<byte> json, JsonException exception)
+    {
+        var start = 0;
+        for (var line = 0L; line < exception.LineNumber; line++)
+        {
+            var end = json[start..].IndexOf((byte)'\n');
+            if (end < 0)
+                break;
+            start += end + 1;
+        }
+        return Math.Min(json.Length, start + (exception.BytePositionInLine ?? 0));
+    }
+
+    private static (int Line, int Column) Position(ReadOnlySpan<byte> json, long offset)
+    {
+        var before = json[..(int)offset];
+        var start = before.LastIndexOf((byte)'\n') + 1;
+        return (before.Count((byte)'\n') + 1, Encoding.UTF8.GetCharCount(before[start..]) + 1);
+    }
+}
