@@ -57,10 +57,10 @@ public sealed class AllocatedCost
         var (level, allocated) = (0, 0L);
         for (var i = 0; i < shares.Length; i++)
         {
-            level += (int)reader.Unsigned();
-            if (level is < 1 or > 99_999_999) throw new FormatException("Shares at an impossible level.");
+            var at = reader.Level(level);
             allocated += reader.Signed();
-            shares[i] = new(Level.OfMillionths(level), allocated, reader.Optional());
+            shares[i] = new(at, allocated, reader.Optional());
+            level = at.Millionths;
         }
         return reader.AtEnd ? new(shares) : throw new FormatException("Shares with something behind them.");
     }

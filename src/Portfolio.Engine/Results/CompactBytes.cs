@@ -1,5 +1,6 @@
 using System.Buffers;
 using System.Buffers.Binary;
+using System.Text;
 
 namespace Portfolio.Engine.Results;
 
@@ -25,6 +26,12 @@ internal sealed class CompactWriter
     {
         BinaryPrimitives.WriteDoubleLittleEndian(bytes.GetSpan(sizeof(double)), value);
         bytes.Advance(sizeof(double));
+    }
+
+    public void Text(string text)
+    {
+        Unsigned((ulong)Encoding.UTF8.GetByteCount(text));
+        Encoding.UTF8.GetBytes(text, bytes);
     }
 
     public byte[] ToArray() => bytes.WrittenSpan.ToArray();
@@ -60,6 +67,15 @@ internal ref struct CompactReader(ReadOnlySpan<byte> bytes)
     public long? Optional() => Unsigned() is var value and > 0 ? (long)(value - 1) : null;
 
     public double Double() => BinaryPrimitives.ReadDoubleLittleEndian(Take(sizeof(double)));
+
+    public string Text() => Encoding.UTF8.GetString(Take((int)Math.Min(Unsigned(), int.MaxValue)));
+
+    /// <summary>A level written as the step from the one before in millionths.</summary>
+    public Level Level(int before)
+    {
+        var millionths = (ulong)before + Math.Min(Unsigned(), int.MaxValue);
+        return millionths is > 0 and < 100_000_000 ? Results.Level.OfMillionths((int)millionths) : throw new FormatException("An impossible level.");
+    }
 
     private ReadOnlySpan<byte> Take(int count)
     {

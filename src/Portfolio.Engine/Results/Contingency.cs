@@ -34,14 +34,25 @@ public sealed record Contingency(Level Level, long Base, long CostAtLevel, IRead
     public static Contingency? At(Level level, Grid portfolio, IReadOnlyList<ProjectCost> projects)
     {
         if (portfolio.At(level) is not { } whole) return null;
-        var total = whole.Value - portfolio.Base!.Value.Value;
-        var allocations = new List<Allocation>(projects.Count);
+        var lines = new List<ContingencyLine>(projects.Count);
         foreach (var (project, cost, allocated) in projects)
         {
             if (cost.At(level) is not { } own || allocated.At(level) is not { } share) return null;
             var basis = cost.Base!.Value.Value;
-            allocations.Add(new(project, basis, share.Allocated, share.Error, own.Value - basis, total > 0 ? (double)share.Allocated / total : null));
+            lines.Add(new(project, basis, share.Allocated, share.Error, own.Value - basis));
         }
-        return new(level, portfolio.Base!.Value.Value, whole.Value, allocations);
+        return Of(level, whole.Value, lines);
+    }
+
+    internal static Contingency Of(Level level, long costAtLevel, IReadOnlyList<ContingencyLine> lines)
+    {
+        var basis = lines.Sum(line => line.Base);
+        var total = costAtLevel - basis;
+        return new(level, basis, costAtLevel,
+            [.. lines.Select(line => new Allocation(
+                line.Project, line.Base, line.Allocated, line.Error, line.Standalone, total > 0 ? (double)line.Allocated / total : null))]);
     }
 }
+
+/// <summary>What is stored of a line; its share of the total follows.</summary>
+internal readonly record struct ContingencyLine(string Project, long Base, long Allocated, long? Error, long Standalone);

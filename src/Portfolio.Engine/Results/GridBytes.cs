@@ -83,10 +83,10 @@ public static class GridBytes
         var (level, value) = (0, 0L);
         for (var i = 0; i < percentiles.Length; i++)
         {
-            level += (int)reader.Unsigned();
-            if (level is < 1 or > 99_999_999) throw new FormatException("A grid with an impossible level.");
+            var at = reader.Level(level);
             value += reader.Signed();
-            percentiles[i] = new(Level.OfMillionths(level), value, value - reader.Optional(), value + reader.Optional());
+            percentiles[i] = new(at, value, value - reader.Optional(), value + reader.Optional());
+            level = at.Millionths;
         }
         if (!reader.AtEnd) throw new FormatException("A grid with something behind it.");
         return percentiles;
