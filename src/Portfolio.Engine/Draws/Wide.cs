@@ -1,0 +1,58 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
+using System.Runtime.Intrinsics;
+
+namespace Portfolio.Engine.Draws;
+
+/// <summary>A function of one number, worked eight numbers at a time.</summary>
+internal interface IWideFunction
+{
+    Vector512<double> At(Vector512<double> x);
+}
+
+/// <summary>
+/// Applies functions to spans. Only +, −, ×, ÷, √ and bit operations are used and never fused, so that the results have the same bits at
+/// every vector width and in whichever lane a number stands; where 512-bit registers are absent the runtime splits them.
+/// </summary>
+internal static class Wide
+{
+    public const int Lanes = 8;
+
+    /// <summary>Writes f(<paramref name="x"/>) to <paramref name="y"/> (at least as long; may be the same span).</summary>
+    public static void Map<TFunction>(TFunction function, ReadOnlySpan<double> x, Span<double> y)
+        where TFunction : struct, IWideFunction
+    {
+        y = y[..x.Length];
+        ref var source = ref MemoryMarshal.GetReference(x);
+        ref var target = ref MemoryMarshal.GetReference(y);
+        var whole = x.Length - x.Length % Lanes;
+        for (var i = 0; i < whole; i += Lanes)
+            function.At(Vector512.LoadUnsafe(ref source, (nuint)i)).StoreUnsafe(ref target, (nuint)i);
+        if (whole < x.Length)
+            MapRest(function, x[whole..], y[whole..]);
+    }
+
+    /// <summary>f at one number, the same bits as within a span.</summary>
+    public static double At<TFunction>(TFunction function, double x)
+        where TFunction : struct, IWideFunction => function.At(Vector512.Create(x)).ToScalar();
+
+    private static void MapRest<TFunction>(TFunction function, ReadOnlySpan<double> x, Span<double> y)
+        where TFunction : struct, IWideFunction
+    {
+        Span<double> rest = stackalloc double[Lanes];
+        rest.Fill(x[0]);
+        x.CopyTo(rest);
+        function.At(Vector512.Create<double>(rest)).CopyTo(rest);
+        rest[..x.Length].CopyTo(y);
+    }
+
+    /// <summary>Polynomial by Horner's rule, highest coefficient first.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector512<double> Polynomial(ReadOnlySpan<double> coefficients, Vector512<double> x)
+    {
+        var sum = Vector512.Create(coefficients[0]);
+        for (var i = 1; i < coefficients.Length; i++)
+            sum = sum * x + Vector512.Create(coefficients[i]);
+        return sum;
+    }
+}

@@ -1,0 +1,97 @@
+using Portfolio.Engine.Distributions;
+using Portfolio.Engine.Draws;
+using Portfolio.Model.Distributions;
+using Xunit;
+
+namespace Portfolio.Engine.Tests.Distributions;
+
+/// <summary>What is read at a score against the exact quantile at Φ(score), densely over all scores that draws can reach.</summary>
+public sealed class ReadTests
+{
+    public static TheoryData<Distribution> Closed =>
+    [
+        new Constant(3), new Uniform(2, 9), new Triangular(2, 5, 14), new Triangular(0, 0, 10), new Triangular(0, 10, 10), new Triangular(10, 12, 20, 10, 90),
+        new Normal(10, 3), new Normal(10, 5, 0), new Normal(10, 5, null, 12), new Normal(10, 5, 14, 16), new Normal(10, 5, -3, 4),
+        new LognormalByMoments(100, 30), new LognormalByPercentiles(80, 150, 10, 90),
+        new Percentiles([new(0, 80), new(10, 90), new(50, 100), new(90, 130), new(100, 160)]),
+    ];
+
+    [Theory]
+    [MemberData(nameof(Closed))]
+    public void Closed_forms_agree_to_rounding(Distribution stated)
+    {
+        var marginal = Marginal.Of(stated);
+        var scores = Scores(-8.2, 8.2, 0.0137);
+        var values = new double[scores.Length];
+        marginal.Read(scores, values);
+        for (var i = 0; i < scores.Length; i++)
+        {
+            // Above the median p itself is the less exact of the two: one rounding of p is worth this much of the value.
+            var p = NormalScore.Phi(scores[i]);
+            var blur = p < 1 - 1e-13 ? Math.Abs(marginal.Quantile(p) - marginal.Quantile(p * (1 - 1e-15))) : double.PositiveInfinity;
+            Assert.InRange(values[i], marginal.Quantile(p) - blur - 1e-12, marginal.Quantile(p) + blur + 1e-12);
+            Assert.True(i == 0 || values[i] >= values[i - 1] - 1e-13);
+        }
+    }
+
+    [Fact]
+    public void Discrete_values_change_at_their_cumulative_probability()
+    {
+        var marginal = Marginal.Of(new Discrete([new(0, 0.7), new(10, 0.2), new(50, 0.1)]));
+        var values = new double[6];
+        marginal.Read([-8, 0.5244, 0.52441, 1.2815, 1.2816, 8], values); // 0.5244005 and 1.2815516
+        Assert.Equal([0, 0, 10, 10, 50, 50], values);
+    }
+
+    [Fact]
+    public void Spans_of_probabilities_agree_with_single_ones()
+    {
+        var p = new double[257];
+        Uniforms.Fill(5, 6, 0, p);
+        foreach (var stated in Closed.Select(row => row.Data).Append(new Pert(2, 5, 14)).Append(new Discrete([new(0, 0.7), new(10, 0.3)])))
+        {
+            var marginal = Marginal.Of(stated);
+            var values = p.ToArray();
+            marginal.Quantile(values, values);
+            for (var i = 0; i < p.Length; i++)
+                Assert.InRange(values[i], marginal.Quantile(p[i]) - 1e-5, marginal.Quantile(p[i]) + 1e-5);
+        }
+    }
+
+    [Theory]
+    [InlineData(0.5)]
+    [InlineData(0.3)]
+    [InlineData(1)]
+    [InlineData(2.7)]
+    [InlineData(4)]
+    [InlineData(4.5)]
+    [InlineData(10)]
+    [InlineData(20)]
+    [InlineData(50)]
+    [InlineData(400)]
+    public void Pert_tables_keep_their_stated_error(double weight)
+    {
+        foreach (var mode in (double[])[0, 1e-9, 0.003, 0.05, 0.137, 0.2500001, 0.5, 0.77, 0.991, 1])
+        {
+            var marginal = Marginal.Of(new Pert(0, mode, 1, weight));
+            var range = marginal.Quantile(0.999) - marginal.Quantile(0.001);
+            var scores = Scores(-8.2, 8.2, 0.0171);
+            var values = new double[scores.Length];
+            marginal.Read(scores, values);
+            for (var i = 0; i < scores.Length; i++)
+            {
+                var exact = Exact(weight, mode, scores[i]);
+                var error = Math.Abs(values[i] - exact) / range;
+                var allowed = Math.Abs(scores[i]) <= 3.0902 ? 1e-6 : 1e-4;
+                Assert.True(error <= allowed, $"weight {weight}, mode {mode}, score {scores[i]}: error {error:g3}");
+                Assert.InRange(values[i], 0, 1);
+            }
+        }
+    }
+
+    private static double Exact(double weight, double mode, double z) =>
+        new RegularisedBeta(1 + weight * mode, 1 + weight * (1 - mode)).Quantile(NormalScore.Phi(z), NormalScore.Phi(-z));
+
+    private static double[] Scores(double from, double to, double step) =>
+        [.. Enumerable.Range(0, (int)((to - from) / step)).Select(i => from + i * step)];
+}
