@@ -10,10 +10,23 @@ public sealed class ValidPortfolio
 
     public PortfolioDocument Document { get; }
 
-    /// <summary>Checks every rule within and across parts; null with all faults when any is broken.</summary>
-    public static ValidPortfolio? Check(PortfolioDocument document, out IReadOnlyList<Fault> faults)
+    /// <summary>False when no project has an activity: then there is no finish, and nothing to run (contract section 5).</summary>
+    public bool HasFinish => Document.Projects.Any(p => p.Activities.Count > 0);
+
+    /// <summary>Checks every rule within and across parts; null with all faults, in no particular order, when any is broken.</summary>
+    public static ValidPortfolio? Check(PortfolioDocument document, out IReadOnlyList<Fault> faults) =>
+        Check(document, ModelLimits.Default, out faults);
+
+    /// <inheritdoc cref="Check(PortfolioDocument, out IReadOnlyList{Fault})"/>
+    public static ValidPortfolio? Check(PortfolioDocument document, ModelLimits limits, out IReadOnlyList<Fault> faults)
     {
-        faults = [];
-        return new ValidPortfolio(document);
+        var (settings, projects) = document;
+        var context = PortfolioContext.Of(settings, limits);
+        var outlines = projects.Select((p, i) => new PlacedOutline(ProjectOutline.Of(p), $"/projects/{i}")).ToList();
+        List<Fault> found = [.. SettingsRules.Check(settings, "/settings", limits)];
+        for (var i = 0; i < projects.Count; i++) found.AddRange(ProjectRules.Check(projects[i], outlines[i].Outline, context, outlines[i].Path));
+        found.AddRange(PortfolioRules.Check(settings, "/settings", outlines, limits, "/projects"));
+        faults = found;
+        return found.Count == 0 ? new ValidPortfolio(document) : null;
     }
 }

@@ -1,0 +1,13 @@
+using Portfolio.Model.Documents;
+
+namespace Portfolio.Model.Rules;
+
+/// <summary>A project with what its rules need beside it. Places are built only for faults, so that sound projects cost no text.</summary>
+internal sealed record PlacedProject(Project Project, ProjectOutline Outline, PortfolioContext Context, string? Path)
+{
+    public Place Here => new(Path, Project.Id);
+
+    public Place Activity(int index) => Here.Under("activities", index).About($"{Project.Id}/{Project.Activities[index].Id}");
+
+    public bool Has(string activity) => Outline.Find(activity) >= 0;
+}

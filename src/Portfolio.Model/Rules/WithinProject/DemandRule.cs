@@ -1,0 +1,40 @@
+using Portfolio.Model.Documents;
+using Portfolio.Model.Faults;
+
+namespace Portfolio.Model.Rules.WithinProject;
+
+/// <summary>Demands on shared pools. Those of finished work are kept and ignored, so they need not fit.</summary>
+internal static class DemandRule
+{
+    public static IEnumerable<Fault> Check(PlacedProject placed)
+    {
+        var activities = placed.Project.Activities;
+        for (var i = 0; i < activities.Count; i++)
+        {
+            var activity = activities[i];
+            if (activity.Milestone) continue;
+            for (var k = 0; k < activity.Demands.Count; k++)
+                foreach (var fault in One(activity, k, placed, i))
+                    yield return fault;
+        }
+    }
+
+    private static IEnumerable<Fault> One(Activity activity, int k, PlacedProject placed, int i)
+    {
+        var (pool, units) = activity.Demands[k];
+        Place At(string member) => placed.Activity(i).Under("demands", k).Under(member);
+
+        var sound = units is > 0 and <= Bounds.Units;
+        if (!sound && !double.IsNaN(units))
+            yield return ValueRule.Finite(units, () => At("units"))
+                ?? At("units").Fault(RuleCodes.UnitsRange, $"{activity.Id} draws {units} units; it must be more than 0 and at most {Bounds.Units:0}.");
+        if (string.IsNullOrEmpty(pool)) yield break;
+        if (placed.Context.LastCapacity(pool) is not { } capacity)
+            yield return At("pool").Fault(RuleCodes.PoolUnknown, $"There is no pool {TextRule.Shown(pool)}.");
+        else if (activity.Demands.Take(k).Any(d => d.Pool == pool))
+            yield return At("pool").Fault(RuleCodes.DemandRepeated, $"{activity.Id} draws on the pool {pool} twice; add the units up.");
+        else if (sound && units > capacity && !activity.Finished)
+            yield return At("units").Fault(
+                RuleCodes.DemandNeverFits, $"{activity.Id} needs {units} of the pool {pool}, which in the end has {capacity}: it could never start.");
+    }
+}
