@@ -56,7 +56,7 @@ internal static class DistributionRule
         Uniform u => (u.Low, u.High),
         Triangular t => (t.Low, t.High),
         Pert p => (p.Low, p.High),
-        Normal n => (Math.Min(Math.Max(n.Mean, n.Min ?? n.Mean), n.Max ?? n.Mean), Math.Max(n.Mean, n.Sd)),
+        Normal n => (Math.Min(Math.Max(n.Mean, n.Min ?? n.Mean), n.Max ?? double.MaxValue), Math.Max(n.Mean, n.Sd)),
         LognormalByMoments m => (0, Math.Max(m.Mean, m.Sd)),
         LognormalByPercentiles p => (0, p.High),
         Discrete { Outcomes.Count: > 0 } d => (d.Outcomes.Min(o => o.Value), d.Outcomes.Max(o => o.Value)),
