@@ -8,37 +8,85 @@ namespace Portfolio.Store.Documents;
 /// </summary>
 public sealed partial class DocumentStore(Database database)
 {
+    private static readonly string ListSql = $"""
+        select p.id, p.created_at, p.archived_at, (select max(r.number) from revision r where r.portfolio = p.id) as number
+        from portfolio p
+        where (@After is null or p.id > @After) and {Granted.Any("p.id")}
+        order by p.id limit @Limit
+        """;
+
     /// <summary>The portfolios on which the caller has any grant, by id.</summary>
     /// <param name="after">The last id of the page before; null for the first page.</param>
-    public Task<IReadOnlyList<PortfolioEntry>> ListAsync(Caller caller, string? after, int limit, CancellationToken cancellation) =>
-        throw new NotSupportedException(database.ToString());
+    public async Task<IReadOnlyList<PortfolioEntry>> ListAsync(Caller caller, string? after, int limit, CancellationToken cancellation)
+    {
+        var rows = await database.ReadAsync(
+            open => open.ListAsync<PortfolioRow>(ListSql, new { Caller = caller.KeyId, open.Now, After = after, Limit = limit }), cancellation);
+        return [.. rows.Select(row => new PortfolioEntry(row.Id, row.Number, row.CreatedAt.ToInstant(), row.ArchivedAt.ToInstant()))];
+    }
+
+    private static readonly string PartsSql = $"""
+        select v.project, c.hash, c.bytes, c.size from revision_part v join part_content c on c.hash = v.hash
+        where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+        order by v.position
+        """;
 
     /// <summary>The document at a revision (null: the newest), with the parts that the caller may read; null when there is no such revision.</summary>
-    public Task<StoredDocument?> ReadAsync(Caller caller, string portfolio, long? revision, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<StoredDocument?> ReadAsync(Caller caller, string portfolio, long? revision, CancellationToken cancellation)
+    {
+        var (found, rows) = await database.ReadAsync(
+            async open => await FindRevisionAsync(open, caller, portfolio, revision) is { } row
+                ? (row, await open.ListAsync<ContentRow>(PartsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, row.Number }))
+                : (null, []),
+            cancellation);
+        return found is null ? null : new StoredDocument(found.ToRevision(), [.. rows.Select(row => row.ToPart())]);
+    }
+
+    private static readonly string HeadsSql = $"""
+        select v.project, v.position, v.hash from revision_part v
+        where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number and v.hash is not null
+          and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+        order by v.position
+        """;
 
     /// <summary>The same without contents: enough for entity tags.</summary>
-    public Task<IReadOnlyList<PartHead>?> ReadHeadsAsync(Caller caller, string portfolio, long? revision, CancellationToken cancellation) => throw new NotSupportedException();
+    public Task<IReadOnlyList<PartHead>?> ReadHeadsAsync(Caller caller, string portfolio, long? revision, CancellationToken cancellation) =>
+        database.ReadAsync<IReadOnlyList<PartHead>?>(
+            async open =>
+            {
+                if (await FindRevisionAsync(open, caller, portfolio, revision) is not { } found)
+                    return null;
+                var rows = await open.ListAsync<PartRow>(HeadsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, found.Number });
+                return [.. rows.Select(row => new PartHead(row.Project, row.Hash))];
+            },
+            cancellation);
+
+    // Who submits to a project may read it back; the settings only with the right to read.
+    private static readonly string PartSql = $"""
+        select v.project, c.hash, c.bytes, c.size from revision_part v join part_content c on c.hash = v.hash
+        where v.portfolio = @Portfolio and v.project = @Project
+          and v.revision <= coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
+          and v.superseded > coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
+          and (@Number is null or exists (select 1 from revision r where r.portfolio = @Portfolio and r.number = @Number))
+          and ({Granted.Part(Right.Read, "v.portfolio", "v.project")}
+            or v.project <> '' and {Granted.Part(Right.Submit, "v.portfolio", "v.project")})
+        """;
 
     /// <summary>One part at a revision (null: the newest). A project can also be read with the right to submit to it.</summary>
     /// <param name="project">The project's id, or <see cref="PartNames.Settings"/>.</param>
-    public Task<StoredPart?> ReadPartAsync(Caller caller, string portfolio, string project, long? revision, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<StoredPart?> ReadPartAsync(Caller caller, string portfolio, string project, long? revision, CancellationToken cancellation)
+    {
+        var row = await database.ReadAsync(
+            open => open.FirstAsync<ContentRow>(
+                PartSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Project = project, Number = revision }),
+            cancellation);
+        return row?.ToPart();
+    }
 
-    /// <summary>Revisions, newest first, with numbers below <paramref name="before"/> (null: from the newest).</summary>
-    public Task<IReadOnlyList<StoredRevision>> ListRevisionsAsync(Caller caller, string portfolio, long? before, int limit, CancellationToken cancellation) => throw new NotSupportedException();
-
-    /// <summary>One revision (null: the newest).</summary>
-    public Task<StoredRevision?> FindRevisionAsync(Caller caller, string portfolio, long? number, CancellationToken cancellation) => throw new NotSupportedException();
-
-    /// <summary>The revision that was current at an instant: the last one recorded at or before it.</summary>
-    public Task<StoredRevision?> FindRevisionAtAsync(Caller caller, string portfolio, DateTimeOffset instant, CancellationToken cancellation) => throw new NotSupportedException();
-
-    /// <summary>What a revision changed, in document order, as far as the caller may read the parts.</summary>
-    public Task<IReadOnlyList<PartChange>> ListChangesAsync(Caller caller, string portfolio, long number, CancellationToken cancellation) => throw new NotSupportedException();
-
-    /// <summary>
-    /// The one write path, one transaction: the head is read, <paramref name="decide"/> looks at it (null: the portfolio does not exist yet) and proposes, then
-    /// revision, parts, audit entry and outbox row are written. When <paramref name="decide"/> throws, nothing is kept.
-    /// </summary>
-    public Task<WriteResult> WriteAsync(
-        Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation) => throw new NotSupportedException();
+    private sealed record PortfolioRow
+    {
+        public string Id { get; init; } = "";
+        public long Number { get; init; }
+        public long CreatedAt { get; init; }
+        public long? ArchivedAt { get; init; }
+    }
 }

@@ -3,19 +3,63 @@ namespace Portfolio.Store.Documents;
 /// <summary>The newest revision, seen from inside the transaction that may replace it. Valid only until the decision has been returned.</summary>
 public sealed class Head
 {
-    internal Head(long revision, IReadOnlyList<PartHead> parts) => (Revision, Parts) = (revision, parts);
+    private readonly StoreTransaction open;
+    private readonly string portfolio;
+
+    private Head(StoreTransaction open, string portfolio, RevisionRow revision, IReadOnlyList<PartRow> rows)
+    {
+        (this.open, this.portfolio, Rows) = (open, portfolio, rows);
+        Revision = revision.Number;
+        RecordedAt = revision.RecordedAt;
+        Parts = [.. rows.Select(row => new PartHead(row.Project, row.Hash))];
+    }
 
     public long Revision { get; }
 
     /// <summary>Settings first, then the projects in document order.</summary>
     public IReadOnlyList<PartHead> Parts { get; }
 
+    internal IReadOnlyList<PartRow> Rows { get; }
+
+    internal long RecordedAt { get; }
+
+    private const string NewestSql = "select number, recorded_at from revision where portfolio = @Portfolio order by number desc limit 1";
+
+    private const string PartsSql = """
+        select project, position, hash from revision_part
+        where portfolio = @Portfolio and superseded > @Number and revision <= @Number and hash is not null
+        order by position
+        """;
+
+    internal static async Task<Head> ReadAsync(StoreTransaction open, string portfolio)
+    {
+        var newest = await open.FirstAsync<RevisionRow>(NewestSql, new { Portfolio = portfolio })
+            ?? throw new StoreDamagedException($"The portfolio '{portfolio}' has no revision.");
+        return new Head(open, portfolio, newest, await open.ListAsync<PartRow>(PartsSql, new { Portfolio = portfolio, newest.Number }));
+    }
+
     /// <summary>The bytes of one part; null when the document has no such part.</summary>
-    public Task<byte[]?> ReadAsync(string project) => throw new NotSupportedException();
+    public async Task<byte[]?> ReadAsync(string project) =>
+        Rows.FirstOrDefault(row => row.Project == project) is { } part ? await PartContents.ReadAsync(open, part.Hash) : null;
 
     /// <summary>All parts with their bytes, in document order.</summary>
-    public Task<IReadOnlyList<StoredPart>> ReadAllAsync() => throw new NotSupportedException();
+    public async Task<IReadOnlyList<StoredPart>> ReadAllAsync()
+    {
+        var parts = new List<StoredPart>(Rows.Count);
+        foreach (var row in Rows)
+            parts.Add(new StoredPart(row.Project, row.Hash, await PartContents.ReadAsync(open, row.Hash)));
+        return parts;
+    }
+
+    private const string HasRunsSql = "select count(*) from (select 1 from run where portfolio = @Portfolio limit 1) found";
 
     /// <summary>True once a run was asked for: from then on the currency is fixed.</summary>
-    public Task<bool> HasRunsAsync() => throw new NotSupportedException();
+    public async Task<bool> HasRunsAsync() => await open.FirstAsync<long>(HasRunsSql, new { Portfolio = portfolio }) > 0;
+}
+
+internal sealed record PartRow
+{
+    public string Project { get; init; } = "";
+    public long Position { get; init; }
+    public string Hash { get; init; } = "";
 }

@@ -6,24 +6,87 @@ namespace Portfolio.Store.Samples;
 /// <summary>The outcomes of single iterations, block by block.</summary>
 public sealed class SampleStore(Database database)
 {
+    // Touches the row, so that in any database nobody can claim the run before this transaction has ended.
+    private const string GuardSql = "update run set fence = fence where id = @Id and fence = @Fence and state = 'running'";
+
+    private const string InsertBlockSql = """
+        insert into run_block (run, block, iterations) values (@Run, @Block, @Iterations) on conflict (run, block) do nothing
+        """;
+
+    private const string InsertSql = """
+        insert into sample (run, block, series, codec, bytes, checksum) values (@Run, @Block, @Series, @Codec, @Bytes, @Checksum)
+        """;
+
     /// <summary>Stores one block of a run in one transaction. A block that is there already is left alone.</summary>
     /// <param name="block">0, 1, 2 … in the order of iterations.</param>
     /// <param name="iterations">How many iterations the block covers: the length of every series.</param>
     /// <returns>False when the lease was lost; then nothing is written.</returns>
-    public Task<bool> WriteBlockAsync(RunLease held, int block, int iterations, IReadOnlyList<SeriesBlock> series, CancellationToken cancellation) =>
-        throw new NotSupportedException(database.ToString());
+    public Task<bool> WriteBlockAsync(RunLease held, int block, int iterations, IReadOnlyList<SeriesBlock> series, CancellationToken cancellation)
+    {
+        // Packed before the write lock is taken, which others wait for.
+        SampleRow[] rows = [.. series.Select(one => SampleRow.Of(held.Run.Id, block, one))];
+        return database.WriteAsync(
+            async open =>
+            {
+                if (await open.ExecuteAsync(GuardSql, new { held.Run.Id, held.Fence }) == 0)
+                    return false;
+                if (await open.ExecuteAsync(InsertBlockSql, new { Run = held.Run.Id, Block = block, Iterations = iterations }) == 0)
+                    return true;
+                foreach (var row in rows)
+                    await open.ExecuteAsync(InsertSql, row);
+                return true;
+            },
+            cancellation);
+    }
+
+    private const string BlocksSql = "select block from run_block where run = @Id order by block";
 
     /// <summary>The blocks that need not be worked again, rising.</summary>
-    public Task<IReadOnlyList<int>> ListBlocksAsync(RunLease held, CancellationToken cancellation) => throw new NotSupportedException();
-
-    /// <summary>Names of the series of a run, by name, as far as the caller may read them.</summary>
-    public Task<IReadOnlyList<string>> ListSeriesAsync(Caller caller, string portfolio, string run, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<IReadOnlyList<int>> ListBlocksAsync(RunLease held, CancellationToken cancellation) =>
+        await database.ReadAsync(open => open.ListAsync<int>(BlocksSql, new { held.Run.Id }), cancellation);
 
     /// <summary>A series written with <see cref="SeriesBlock.OfMinutes"/>, over all blocks in order; null when it is not kept or not the caller's to read.</summary>
     /// <exception cref="StoreDamagedException">Stored bytes are not the ones that were written.</exception>
-    public Task<int[]?> ReadMinutesAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<int[]?> ReadMinutesAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
+    {
+        var rows = await ReadAsync(caller, portfolio, run, series, cancellation);
+        return rows.Count == 0 ? null : Joined(rows.ConvertAll(row => SampleCodec.DecodeMinutes(row.Codec, row.Bytes)));
+    }
 
     /// <summary>A series written with <see cref="SeriesBlock.OfMoney"/>, over all blocks in order; null when it is not kept or not the caller's to read.</summary>
     /// <exception cref="StoreDamagedException">Stored bytes are not the ones that were written.</exception>
-    public Task<double[]?> ReadMoneyAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<double[]?> ReadMoneyAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
+    {
+        var rows = await ReadAsync(caller, portfolio, run, series, cancellation);
+        return rows.Count == 0 ? null : Joined(rows.ConvertAll(row => SampleCodec.DecodeMoney(row.Codec, row.Bytes)));
+    }
+
+    private static readonly string ReadSql = $"""
+        select s.run, s.block, s.series, s.codec, s.bytes, s.checksum from sample s join run r on r.id = s.run
+        where s.run = @Run and s.series = @Series and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "r.portfolio", "@Project")}
+        order by s.block
+        """;
+
+    private async Task<List<SampleRow>> ReadAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
+    {
+        var rows = await database.ReadAsync(
+            open => open.ListAsync<SampleRow>(
+                ReadSql,
+                new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Series = series, Project = SeriesNames.ProjectOf(series) }),
+            cancellation);
+        rows.ForEach(row => row.Check());
+        return rows;
+    }
+
+    private static T[] Joined<T>(List<T[]> blocks)
+    {
+        var all = new T[blocks.Sum(block => block.Length)];
+        var at = 0;
+        foreach (var block in blocks)
+        {
+            block.CopyTo(all, at);
+            at += block.Length;
+        }
+        return all;
+    }
 }

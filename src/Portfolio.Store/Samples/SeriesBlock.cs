@@ -8,6 +8,9 @@ public static class SeriesNames
     public static string Cost(string project) => $"cost/{project}";
 
     public static string Milestone(string project, string activity) => $"milestone/{project}/{activity}";
+
+    /// <summary>The project whose grant reaches the series; null when the name has another form.</summary>
+    internal static string? ProjectOf(string series) => series.Split('/') is [_, var project, ..] ? project : null;
 }
 
 /// <summary>One series over the iterations of one block, in their order.</summary>

@@ -1,4 +1,5 @@
 using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
 
 namespace Portfolio.Store.Schedules;
 
@@ -28,11 +29,72 @@ public enum SchedulePutOutcome
 /// <summary>Schedules, one to a portfolio.</summary>
 public sealed class ScheduleStore(Database database)
 {
-    public Task<StoredSchedule?> FindAsync(Caller caller, string portfolio, CancellationToken cancellation) => throw new NotSupportedException(database.ToString());
+    private const string Columns = "s.portfolio, s.cron, s.iterations, s.enabled, s.changed_at";
+
+    private static readonly string FindSql = $"select {Columns} from schedule s where s.portfolio = @Portfolio and {Granted.Some(Right.Read, "s.portfolio")}";
+
+    public async Task<StoredSchedule?> FindAsync(Caller caller, string portfolio, CancellationToken cancellation) =>
+        (await database.ReadAsync(open => FindAsync(open, caller, portfolio), cancellation))?.ToSchedule();
+
+    private static Task<Row?> FindAsync(StoreTransaction open, Caller caller, string portfolio) =>
+        open.FirstAsync<Row>(FindSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio });
+
+    private const string PutSql = """
+        insert into schedule (portfolio, cron, iterations, enabled, changed_at) values (@Portfolio, @Cron, @Iterations, @Enabled, @ChangedAt)
+        on conflict (portfolio) do update
+          set cron = excluded.cron, iterations = excluded.iterations, enabled = excluded.enabled, changed_at = excluded.changed_at
+        """;
 
     /// <summary>Sets the schedule, with an audit entry. Needs <see cref="Right.Manage"/>.</summary>
-    public Task<SchedulePutOutcome> PutAsync(Caller caller, string portfolio, string cron, int? iterations, bool enabled, CancellationToken cancellation) => throw new NotSupportedException();
+    public Task<SchedulePutOutcome> PutAsync(
+        Caller caller, string portfolio, string cron, int? iterations, bool enabled, CancellationToken cancellation) => database.WriteAsync(
+        async open =>
+        {
+            var standing = await Standing.ReadAsync(open, caller, Right.Manage, portfolio);
+            if (!standing.Exists || !standing.Known)
+                return SchedulePutOutcome.NotFound;
+            if (!standing.Whole)
+                return SchedulePutOutcome.Forbidden;
+            if (standing.Archived)
+                return SchedulePutOutcome.Archived;
+            var old = await FindAsync(open, caller, portfolio);
+            var row = new Row { Portfolio = portfolio, Cron = cron, Iterations = iterations, Enabled = enabled ? 1 : 0, ChangedAt = open.Now };
+            if (old is not null && old with { ChangedAt = row.ChangedAt } == row)
+                return SchedulePutOutcome.Unchanged;
+            await open.ExecuteAsync(PutSql, row);
+            await AuditChain.AppendAsync(open, caller.KeyId, "schedule.put", $"portfolios/{portfolio}/schedule", new { cron, iterations, enabled });
+            return SchedulePutOutcome.Stored;
+        },
+        cancellation);
+
+    private static readonly string EnabledSql = $"""
+        select {Columns} from schedule s join portfolio p on p.id = s.portfolio
+        where s.enabled = 1 and p.archived_at is null and {Granted.Whole(Right.Manage, "s.portfolio")}
+        order by s.portfolio
+        """;
 
     /// <summary>The enabled schedules of all portfolios that the caller manages and that are not archived.</summary>
-    public Task<IReadOnlyList<StoredSchedule>> ListEnabledAsync(Caller caller, CancellationToken cancellation) => throw new NotSupportedException();
+    public async Task<IReadOnlyList<StoredSchedule>> ListEnabledAsync(Caller caller, CancellationToken cancellation)
+    {
+        var rows = await database.ReadAsync(open => open.ListAsync<Row>(EnabledSql, new { Caller = caller.KeyId, open.Now }), cancellation);
+        return [.. rows.Select(row => row.ToSchedule())];
+    }
+
+    private sealed record Row
+    {
+        public string Portfolio { get; init; } = "";
+        public string Cron { get; init; } = "";
+        public long? Iterations { get; init; }
+        public long Enabled { get; init; }
+        public long ChangedAt { get; init; }
+
+        public StoredSchedule ToSchedule() => new()
+        {
+            Portfolio = Portfolio,
+            Cron = Cron,
+            Iterations = (int?)Iterations,
+            Enabled = Enabled == 1,
+            ChangedAt = ChangedAt.ToInstant(),
+        };
+    }
 }

@@ -1,0 +1,134 @@
+using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
+using Portfolio.Store.Outbox;
+
+namespace Portfolio.Store.Documents;
+
+/// <content>The one write path.</content>
+public sealed partial class DocumentStore
+{
+    /// <summary>
+    /// The one write path, one transaction: the head is read, <paramref name="decide"/> looks at it (null: the portfolio does not exist yet) and proposes, then
+    /// revision, parts, audit entry and outbox row are written. When <paramref name="decide"/> throws, nothing is kept. It must not write to the store itself.
+    /// </summary>
+    public async Task<WriteResult> WriteAsync(
+        Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation)
+    {
+        var summary = "";
+        var result = await database.WriteAsync(
+            async open =>
+            {
+                var standing = await Standing.ReadAsync(open, caller, await RightNeededAsync(open, write), write.Portfolio);
+                if (Turned(standing) is { } turned)
+                    return new WriteResult(turned);
+                var head = standing.Exists ? await Head.ReadAsync(open, write.Portfolio) : null;
+                var proposal = await decide(head, cancellation);
+                if (proposal is Refusal refusal)
+                {
+                    summary = refusal.Summary;
+                    return new WriteResult(WriteOutcome.Refused) { Revision = head?.Revision ?? 0, Refusal = refusal.Reason };
+                }
+                return await AcceptAsync(open, caller, write, standing, head, PartPlan.Make(head?.Rows ?? [], (Change)proposal));
+            },
+            cancellation);
+        if (result.Outcome is not (WriteOutcome.Accepted or WriteOutcome.Unchanged))
+            await AuditRefusalAsync(caller, write, result.Outcome, summary, cancellation);
+        return result;
+    }
+
+    private const string ExistsSql = "select count(*) from portfolio where id = @Portfolio";
+
+    private static async Task<Right> RightNeededAsync(StoreTransaction open, DocumentWrite write) =>
+        await open.FirstAsync<long>(ExistsSql, new { write.Portfolio }) > 0 ? write.Right : Right.Admin;
+
+    private static WriteOutcome? Turned(Standing standing) => standing switch
+    {
+        { Known: false } => WriteOutcome.NotFound,
+        { Exists: true, Some: false } or { Exists: false, Whole: false } => WriteOutcome.Forbidden,
+        { Archived: true } => WriteOutcome.Archived,
+        _ => null,
+    };
+
+    private static async Task<WriteResult> AcceptAsync(
+        StoreTransaction open, Caller caller, DocumentWrite write, Standing standing, Head? head, IReadOnlyList<PlannedPart> plan)
+    {
+        if (!standing.Whole && !await ReachesAsync(open, caller, write, plan))
+            return new WriteResult(WriteOutcome.Forbidden);
+        var result = new WriteResult(WriteOutcome.Unchanged) { Revision = head?.Revision ?? 0 };
+        if (plan.Count > 0)
+        {
+            result = new WriteResult(WriteOutcome.Accepted)
+            {
+                Revision = result.Revision + 1,
+                Created = head is null,
+                Changes = [.. plan.Select(part => new PartChange(part.Project, part.Before, part.After))],
+            };
+            await KeepAsync(open, caller, write, head, result.Revision, plan);
+            await TellAsync(open, caller, write, result);
+        }
+        if (write.Joining is { } joining)
+            await joining(open, result, open.Cancellation);
+        return result;
+    }
+
+    private static string ReachesSql(Right right) => $"select case when {Granted.Part(right, "@Portfolio", "@Project")} then 1 else 0 end";
+
+    /// <summary>Whether grants limited to projects cover every part that the plan touches.</summary>
+    private static async Task<bool> ReachesAsync(StoreTransaction open, Caller caller, DocumentWrite write, IReadOnlyList<PlannedPart> plan)
+    {
+        foreach (var part in plan)
+        {
+            var asked = new { Caller = caller.KeyId, open.Now, write.Portfolio, part.Project };
+            if (await open.FirstAsync<long>(ReachesSql(write.Right), asked) == 0)
+                return false;
+        }
+        return true;
+    }
+
+    private const string InsertPortfolioSql = "insert into portfolio (id, created_at) values (@Portfolio, @Now)";
+
+    private const string InsertRevisionSql = """
+        insert into revision (portfolio, number, recorded_at, actor, note) values (@Portfolio, @Number, @RecordedAt, @Actor, @Note)
+        """;
+
+    private const string SupersedeSql = """
+        update revision_part set superseded = @Number
+        where portfolio = @Portfolio and project = @Project and superseded = 9223372036854775807
+        """;
+
+    private const string InsertPartSql = """
+        insert into revision_part (portfolio, revision, project, position, hash) values (@Portfolio, @Number, @Project, @Position, @After)
+        """;
+
+    private static async Task KeepAsync(
+        StoreTransaction open, Caller caller, DocumentWrite write, Head? head, long number, IReadOnlyList<PlannedPart> plan)
+    {
+        if (head is null)
+            await open.ExecuteAsync(InsertPortfolioSql, new { write.Portfolio, open.Now });
+        // A clock set back must not make a later revision look older: "as of" would then find the wrong one.
+        var recordedAt = Math.Max(open.Now, head?.RecordedAt ?? 0);
+        await open.ExecuteAsync(
+            InsertRevisionSql, new { write.Portfolio, Number = number, RecordedAt = recordedAt, Actor = caller.KeyId, write.Note });
+        foreach (var part in plan)
+        {
+            if (part.Bytes is not null && part.After != part.Before)
+                await PartContents.KeepAsync(open, part.After!, part.Bytes);
+            await open.ExecuteAsync(SupersedeSql, new { write.Portfolio, part.Project, Number = number });
+            await open.ExecuteAsync(InsertPartSql, new { write.Portfolio, Number = number, part.Project, part.Position, part.After });
+        }
+    }
+
+    private static async Task TellAsync(StoreTransaction open, Caller caller, DocumentWrite write, WriteResult result)
+    {
+        var detail = new { outcome = "accepted", result.Revision, result.Changes, write.Note };
+        await AuditChain.AppendAsync(open, caller.KeyId, write.Action, ObjectOf(write), detail);
+        var payload = new { result.Revision, changed = result.Changes.Select(change => change.Project) };
+        await OutboxStore.AppendAsync(open, write.Portfolio, "revision.created", $"{result.Revision}", payload);
+    }
+
+    private Task AuditRefusalAsync(Caller caller, DocumentWrite write, WriteOutcome outcome, string summary, CancellationToken cancellation) =>
+        new AuditStore(database).AppendAsync(
+            caller, write.Action, ObjectOf(write), new { outcome = "refused", because = outcome.ToString(), summary }, cancellation);
+
+    private static string ObjectOf(DocumentWrite write) => write.Object ?? $"portfolios/{write.Portfolio}";
+}

@@ -1,0 +1,56 @@
+using System.IO.Compression;
+
+namespace Portfolio.Store.Documents;
+
+/// <summary>Contents by hash, each kept once and compressed. The same project in a hundred revisions, or portfolios, takes the room of one.</summary>
+internal static class PartContents
+{
+    // Brotli at 5 brings a project of 55 KB to about a fifth within 2 ms; higher levels cost much more time for little room.
+    private const int Quality = 5;
+    private const int Window = 22;
+
+    private const string InsertSql = "insert into part_content (hash, bytes, size) values (@Hash, @Bytes, @Size) on conflict (hash) do nothing";
+
+    private const string KnownSql = "select count(*) from part_content where hash = @Hash";
+
+    public static async Task KeepAsync(StoreTransaction open, string hash, byte[] bytes)
+    {
+        if (await open.FirstAsync<long>(KnownSql, new { Hash = hash }) == 0)
+            await open.ExecuteAsync(InsertSql, new { Hash = hash, Bytes = Compress(bytes), Size = bytes.Length });
+    }
+
+    private const string ReadSql = "select hash, bytes, size from part_content where hash = @Hash";
+
+    public static async Task<byte[]> ReadAsync(StoreTransaction open, string hash)
+    {
+        var row = await open.FirstAsync<ContentRow>(ReadSql, new { Hash = hash }) ?? throw new StoreDamagedException($"The content {hash} of a part is missing.");
+        return row.Expand();
+    }
+
+    public static byte[] Compress(byte[] bytes)
+    {
+        var buffer = new byte[BrotliEncoder.GetMaxCompressedLength(bytes.Length)];
+        return BrotliEncoder.TryCompress(bytes, buffer, out var written, Quality, Window)
+            ? buffer[..written]
+            : throw new InvalidOperationException("Brotli wrote more than its own upper bound.");
+    }
+}
+
+internal sealed record ContentRow
+{
+    public string Project { get; init; } = "";
+    public string Hash { get; init; } = "";
+    public byte[] Bytes { get; init; } = [];
+    public long Size { get; init; }
+
+    /// <summary>The content, checked against the hash that names it.</summary>
+    public byte[] Expand()
+    {
+        var expanded = new byte[Size];
+        if (!BrotliDecoder.TryDecompress(Bytes, expanded, out var written) || written != Size || ContentHash.Of(expanded) != Hash)
+            throw new StoreDamagedException($"The stored content {Hash} of a part is not what was written.");
+        return expanded;
+    }
+
+    public StoredPart ToPart() => new(Project, Hash, Expand());
+}

@@ -1,0 +1,102 @@
+using Microsoft.Data.Sqlite;
+
+namespace Portfolio.Store.Sqlite;
+
+/// <summary>The folder of the embedded database, held for this process, and its connections with their settings.</summary>
+internal sealed class SqliteFolder : IDisposable
+{
+    // Before 3.51.3 a data race on resetting the write-ahead log could lose commits (sqlite.org/wal.html, "WAL-reset bug").
+    private static readonly Version OldestSafe = new(3, 51, 3);
+
+    private readonly FileStream hold;
+    private readonly string connectionString;
+
+    private SqliteFolder(string directory, FileStream hold)
+    {
+        this.hold = hold;
+        connectionString = new SqliteConnectionStringBuilder
+        {
+            DataSource = Path.Combine(directory, "portfolio.db"),
+            ForeignKeys = true,
+            Pooling = false,
+            DefaultTimeout = 30,
+        }.ToString();
+    }
+
+    public static SqliteFolder Take(string directory)
+    {
+        MakeDirectory(directory);
+        var hold = Hold(directory);
+        try
+        {
+            var folder = new SqliteFolder(directory, hold);
+            folder.CheckVersion();
+            return folder;
+        }
+        catch
+        {
+            hold.Dispose();
+            throw;
+        }
+    }
+
+    /// <summary>FULL: a commit that was answered survives the loss of power. Untrusted schema: functions hidden in a foreign file are not run.</summary>
+    public SqliteConnection OpenWriter() => Open(
+        "pragma journal_mode = wal; pragma synchronous = full; pragma trusted_schema = off; pragma journal_size_limit = 67108864; pragma cache_size = -16384;");
+
+    public SqliteConnection OpenReader() => Open("pragma trusted_schema = off; pragma query_only = on;");
+
+    public void Dispose() => hold.Dispose();
+
+    private SqliteConnection Open(string settings)
+    {
+        var connection = new SqliteConnection(connectionString);
+        try
+        {
+            connection.Open();
+            Run(connection, settings);
+            return connection;
+        }
+        catch
+        {
+            connection.Dispose();
+            throw;
+        }
+    }
+
+    private void CheckVersion()
+    {
+        using var connection = OpenWriter();
+        var version = Version.Parse((string)Run(connection, "select sqlite_version();")!);
+        if (version < OldestSafe)
+            throw new StoreSchemaException($"SQLite {version} can lose commits; {OldestSafe} or newer is needed.");
+    }
+
+    internal static object? Run(SqliteConnection connection, string sql)
+    {
+        using var command = connection.CreateCommand();
+        command.CommandText = sql;
+        return command.ExecuteScalar();
+    }
+
+    private static void MakeDirectory(string directory)
+    {
+        if (OperatingSystem.IsWindows())
+            Directory.CreateDirectory(directory);
+        else
+            Directory.CreateDirectory(directory, UnixFileMode.UserRead | UnixFileMode.UserWrite | UnixFileMode.UserExecute);
+    }
+
+    /// <summary>The lock goes with the process, however it ends; the file itself stays and means nothing.</summary>
+    private static FileStream Hold(string directory)
+    {
+        try
+        {
+            return new FileStream(Path.Combine(directory, "portfolio.lock"), FileMode.OpenOrCreate, FileAccess.ReadWrite, FileShare.None);
+        }
+        catch (IOException taken)
+        {
+            throw new StoreInUseException(directory, taken);
+        }
+    }
+}

@@ -1,0 +1,85 @@
+using System.Text;
+using Dapper;
+using Microsoft.Data.Sqlite;
+using Microsoft.Extensions.Time.Testing;
+using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
+using Portfolio.Store.Documents;
+using Portfolio.Store.Outbox;
+using Portfolio.Store.Results;
+using Portfolio.Store.Runs;
+using Portfolio.Store.Samples;
+using Portfolio.Store.Schedules;
+
+namespace Portfolio.Store.Tests.Testing;
+
+/// <summary>A real database in a folder of its own, with a clock that stands until a test moves it.</summary>
+public sealed class TestStore : IAsyncDisposable
+{
+    public static readonly DateTimeOffset Start = new(2026, 12, 1, 8, 0, 0, TimeSpan.Zero);
+
+    private TestStore(string folder) => Folder = folder;
+
+    public string Folder { get; }
+    public FakeTimeProvider Clock { get; } = new(Start);
+    public Database Database { get; private set; } = null!;
+    public KeyStore Keys => new(Database);
+    public DocumentStore Documents => new(Database);
+    public AuditStore Audit => new(Database);
+    public OutboxStore Outbox => new(Database);
+    public RunStore Runs => new(Database);
+    public RunRequests Requests => new(Database);
+    public RunClaims Claims => new(Database);
+    public RunEndings Endings => new(Database);
+    public SampleStore Samples => new(Database);
+    public ResultStore Results => new(Database);
+    public ScheduleStore Schedules => new(Database);
+
+    public static CancellationToken Cancellation => TestContext.Current.CancellationToken;
+
+    public static async Task<TestStore> OpenAsync()
+    {
+        var store = new TestStore(Directory.CreateTempSubdirectory("portfolio-store-").FullName);
+        await store.ReopenAsync();
+        return store;
+    }
+
+    public async Task ReopenAsync()
+    {
+        if (Database is not null)
+            await Database.DisposeAsync();
+        Database = await Database.OpenAsync(Folder, Clock, Cancellation);
+    }
+
+    public async Task<Caller> CallerAsync(params Grant[] grants)
+    {
+        var made = await Keys.CreateAsync(Caller.System, "a key", grants, null, Cancellation);
+        return (await Keys.AuthenticateAsync(made!.Secret, Cancellation))!;
+    }
+
+    /// <summary>Writes parts given as (project, text); the first write makes the portfolio.</summary>
+    public Task<WriteResult> WriteAsync(string portfolio, params (string Project, string Text)[] parts) =>
+        Documents.WriteAsync(
+            Caller.System,
+            new DocumentWrite { Portfolio = portfolio, Action = "document.put" },
+            (_, _) => Task.FromResult<Proposal>(Parts(parts)),
+            Cancellation);
+
+    public static Change Parts(params (string Project, string Text)[] parts) =>
+        new([.. parts.Select(part => new ProposedPart(part.Project, Encoding.UTF8.GetBytes(part.Text)))]);
+
+    /// <summary>Statements on the file itself, past everything that the store guards.</summary>
+    public async Task<T?> RawAsync<T>(string sql, object? parameters = null)
+    {
+        await using var connection = new SqliteConnection($"Data Source={Path.Combine(Folder, "portfolio.db")};Foreign Keys=True;Pooling=False");
+        return await connection.ExecuteScalarAsync<T>(sql, parameters);
+    }
+
+    public Task<long> CountAsync(string table) => RawAsync<long>($"select count(*) from {table}");
+
+    public async ValueTask DisposeAsync()
+    {
+        await Database.DisposeAsync();
+        Directory.Delete(Folder, recursive: true);
+    }
+}
