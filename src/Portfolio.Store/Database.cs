@@ -16,6 +16,7 @@ public sealed class Database : IAsyncDisposable
     private readonly SemaphoreSlim writing = new(1, 1);
     private readonly ConcurrentBag<SqliteConnection> idle = [];
     private SqliteConnection? writer;
+    private int disposed;
 
     private Database(SqliteFolder folder, TimeProvider clock) => (this.folder, Clock) = (folder, clock);
 
@@ -60,7 +61,7 @@ public sealed class Database : IAsyncDisposable
         await writing.WaitAsync(cancellation);
         try
         {
-            SqliteFolder.Run(writer ??= folder.OpenWriter(), "pragma wal_checkpoint(truncate); pragma optimize;");
+            SqliteFolder.Run(writer ??= folder.OpenWriter(), "pragma optimize; pragma wal_checkpoint(truncate);");
         }
         finally
         {
@@ -121,8 +122,11 @@ public sealed class Database : IAsyncDisposable
         }
     }
 
+    /// <summary>Waits for the writer at work, then gives the folder back. A second time does nothing.</summary>
     public async ValueTask DisposeAsync()
     {
+        if (Interlocked.Exchange(ref disposed, 1) == 1)
+            return;
         await writing.WaitAsync();
         foreach (var connection in idle)
             connection.Dispose();

@@ -83,7 +83,7 @@ public sealed class DatabaseTests
             async open =>
             {
                 var before = await open.FirstAsync<long>("select count(*) from audit");
-                await store.Audit.AppendAsync(Access.Caller.System, "a", "b", new { }, TestStore.Cancellation);
+                await store.Audit.AppendAsync(Portfolio.Store.Access.Caller.System, "a", "b", new { }, TestStore.Cancellation);
                 return (before, await open.FirstAsync<long>("select count(*) from audit"));
             },
             TestStore.Cancellation);
