@@ -1,4 +1,4 @@
-using System.Runtime.Intrinsics;
+using Portfolio.Engine.Draws;
 
 namespace Portfolio.Engine.Distributions;
 
@@ -53,7 +53,7 @@ internal sealed class PertFamily
             sum += share[j] = weights[j] / (place - places[j]);
         at.Clear();
         for (var j = 0; j < share.Length; j++)
-            Add(share[j] / sum, rows[j], at);
+            Wide.AddScaled(share[j] / sum, rows[j], at);
     }
 
     /// <summary>
@@ -79,18 +79,5 @@ internal sealed class PertFamily
         if (degree % 2 == 0)
             points[degree / 2] = 0.5;
         return points;
-    }
-
-    private static void Add(double factor, double[] row, Span<double> sum)
-    {
-        var i = 0;
-        for (; i + 8 <= sum.Length; i += 8)
-        {
-            var term = Vector512.Create(row.AsSpan(i, 8)) * Vector512.Create(factor);
-            (Vector512.Create<double>(sum.Slice(i, 8)) + term).CopyTo(sum[i..]);
-        }
-
-        for (; i < sum.Length; i++)
-            sum[i] += factor * row[i];
     }
 }

@@ -36,6 +36,23 @@ internal static class Wide
     public static double At<TFunction>(TFunction function, double x)
         where TFunction : struct, IWideFunction => function.At(Vector512.Create(x)).ToScalar();
 
+    /// <summary>y += factor·x, number by number; <paramref name="y"/> is at least as long.</summary>
+    public static void AddScaled(double factor, ReadOnlySpan<double> x, Span<double> y)
+    {
+        y = y[..x.Length];
+        ref var source = ref MemoryMarshal.GetReference(x);
+        ref var target = ref MemoryMarshal.GetReference(y);
+        var i = 0;
+        for (; i + Lanes <= x.Length; i += Lanes)
+        {
+            var sum = Vector512.LoadUnsafe(ref target, (nuint)i) + Vector512.Create(factor) * Vector512.LoadUnsafe(ref source, (nuint)i);
+            sum.StoreUnsafe(ref target, (nuint)i);
+        }
+
+        for (; i < x.Length; i++)
+            y[i] += factor * x[i];
+    }
+
     private static void MapRest<TFunction>(TFunction function, ReadOnlySpan<double> x, Span<double> y)
         where TFunction : struct, IWideFunction
     {

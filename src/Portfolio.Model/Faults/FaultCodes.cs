@@ -22,4 +22,8 @@ public static class FaultCodes
 
     // A pair of nodes that are not two.
     public const string PairSize = "pair.size";
+
+    // What only the engine's arithmetic can tell.
+    public const string DistributionEnds = "distribution.ends";
+    public const string DependenceNotPositive = "dependence.not-positive";
 }
