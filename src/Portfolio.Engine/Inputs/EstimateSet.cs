@@ -1,0 +1,60 @@
+using Portfolio.Engine.Calendars;
+using Portfolio.Engine.Dependence;
+using Portfolio.Engine.Networks;
+using Portfolio.Model.Documents;
+
+namespace Portfolio.Engine.Inputs;
+
+/// <summary>The estimates of every activity, by activity index; null where nothing is stated or nothing is left to do.</summary>
+internal sealed class EstimateSet
+{
+    public required Estimate?[] Duration { get; init; }
+
+    public required Estimate?[] Fixed { get; init; }
+
+    public required Estimate?[] Rate { get; init; }
+
+    /// <summary>[activity] indices of the drivers that act on it, each once.</summary>
+    public required int[][] Drivers { get; init; }
+
+    /// <summary>[project] √r, the weight of the project's factor in its estimates' scores.</summary>
+    public required double[] Loading { get; init; }
+
+    /// <summary>[project] √(1−r).</summary>
+    public required double[] Own { get; init; }
+
+    /// <summary>[activity] base length, minutes, whether or not it is in the base.</summary>
+    public required int[] BaseMinutes { get; init; }
+
+    public static EstimateSet Build(Network network, Settings settings, Func<string, bool>? held)
+    {
+        var n = network.Count;
+        var set = new EstimateSet
+        {
+            Duration = new Estimate?[n],
+            Fixed = new Estimate?[n],
+            Rate = new Estimate?[n],
+            Drivers = new int[n][],
+            Loading = [.. network.Projects.Select(p => Math.Sqrt(RankCorrelation.ToNormal(p.Correlation ?? 0)))],
+            Own = [.. network.Projects.Select(p => Math.Sqrt(1 - RankCorrelation.ToNormal(p.Correlation ?? 0)))],
+            BaseMinutes = new int[n],
+        };
+        var driverIndex = settings.Drivers.Select((d, i) => (d.Id, i)).ToDictionary(x => x.Id, x => x.i, StringComparer.Ordinal);
+        for (var a = 0; a < n; a++)
+        {
+            var activity = network.Activities[a];
+            var project = network.Projects[network.ProjectOf[a]];
+            set.Drivers[a] = [];
+            if (activity.Finished)
+                continue;
+            var key = $"project/{project.Id}/activity/{activity.Id}/";
+            if (!activity.Milestone)
+                set.Duration[a] = Estimate.Of(activity.UnderWay ? activity.Remaining : activity.Duration, key + "duration", held);
+            set.Fixed[a] = Estimate.Of(activity.Cost?.Fixed, key + "fixed", held);
+            set.Rate[a] = Estimate.Of(activity.Cost?.PerDay, key + "perDay", held);
+            set.Drivers[a] = [.. project.Drivers.Concat(activity.Drivers).Distinct(StringComparer.Ordinal).Select(d => driverIndex[d])];
+            set.BaseMinutes[a] = Minutes.OfWork(set.Duration[a]?.Base ?? 0);
+        }
+        return set;
+    }
+}

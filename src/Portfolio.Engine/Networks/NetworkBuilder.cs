@@ -1,0 +1,136 @@
+using Portfolio.Engine.Calendars;
+using Portfolio.Model.Documents;
+
+namespace Portfolio.Engine.Networks;
+
+/// <summary>Lays a document out as a <see cref="Network"/>.</summary>
+internal static class NetworkBuilder
+{
+    // Leads and latest finishes may lie long before the first date of a document; eleven years are kept before it.
+    private const int DaysBefore = 4004;
+
+    public static Network Build(PortfolioDocument document)
+    {
+        var projects = document.Projects;
+        var activities = projects.SelectMany(p => p.Activities).ToArray();
+        var n = activities.Length;
+        var projectStart = new int[projects.Count + 1];
+        var projectOf = new int[n];
+        var index = new Dictionary<(string, string), int>(n);
+        for (int p = 0, a = 0; p < projects.Count; p++)
+        {
+            projectStart[p] = a;
+            foreach (var activity in projects[p].Activities)
+            {
+                projectOf[a] = p;
+                index[(projects[p].Id, activity.Id)] = a++;
+            }
+            projectStart[p + 1] = a;
+        }
+        var links = Links(projects, activities, projectOf, index, out var linkStart);
+        var calendars = Calendars(document);
+        var (fork, branch) = Forks(projects, index, n);
+        var (successorStart, successors) = Successors(n, links, linkStart);
+        WorkTime CalendarOf(string? id) => calendars[id ?? document.Settings.DefaultCalendar];
+        return new Network
+        {
+            Projects = projects,
+            Activities = activities,
+            ProjectStart = projectStart,
+            ProjectOf = projectOf,
+            Calendar = [.. activities.Select((x, a) => CalendarOf(x.Calendar ?? projects[projectOf[a]].Calendar))],
+            ProjectCalendar = [.. projects.Select(p => CalendarOf(p.Calendar))],
+            Status = [.. projectOf.Select(p => WorkTime.Instant(projects[p].StatusDate))],
+            EarliestStart = [.. activities.Select(x => x is { EarliestStart: { } d, Started: false } ? WorkTime.Instant(d) : Network.None)],
+            ActualStart = [.. activities.Select(ActualStart)],
+            ActualFinish = [.. activities.Select(x => x.ActualFinish is { } d ? WorkTime.Instant(d) + WorkTime.MinutesPerDay : Network.None)],
+            LinkStart = linkStart,
+            Links = links,
+            Fork = fork,
+            Branch = branch,
+            SuccessorStart = successorStart,
+            Successors = successors,
+            Order = Topology.Order(linkStart, successorStart, successors),
+        };
+    }
+
+    // A finished milestone has one instant, the end of its day; other finished work runs from the beginning of its first day.
+    private static int ActualStart(Activity activity) => activity switch
+    {
+        { Milestone: true, ActualFinish: { } day } => WorkTime.Instant(day) + WorkTime.MinutesPerDay,
+        { ActualStart: { } day } => WorkTime.Instant(day),
+        { ActualFinish: { } day } => WorkTime.Instant(day),
+        _ => Network.None,
+    };
+
+    private static NetworkLink[] Links(
+        IReadOnlyList<Project> projects, Activity[] activities, int[] projectOf, Dictionary<(string, string), int> index, out int[] linkStart)
+    {
+        linkStart = new int[activities.Length + 1];
+        var links = new List<NetworkLink>(activities.Length * 2);
+        for (var a = 0; a < activities.Length; a++)
+        {
+            foreach (var link in activities[a].Predecessors)
+            {
+                var predecessor = index[Split(link.Activity, projects[projectOf[a]].Id)];
+                links.Add(new NetworkLink(predecessor, link.Type, Minutes.Of(link.Lag)));
+            }
+            linkStart[a + 1] = links.Count;
+        }
+        return [.. links];
+    }
+
+    /// <summary>The project and activity that a reference names: <c>A05</c> in its own project, <c>project/A05</c> in another.</summary>
+    public static (string Project, string Activity) Split(string reference, string ownProject)
+    {
+        var slash = reference.IndexOf('/', StringComparison.Ordinal);
+        return slash < 0 ? (ownProject, reference) : (reference[..slash], reference[(slash + 1)..]);
+    }
+
+    private static Dictionary<string, WorkTime> Calendars(PortfolioDocument document)
+    {
+        var first = document.Projects.Select(p => p.StatusDate)
+            .Concat(document.Projects.SelectMany(p => p.Activities).SelectMany(a => new[] { a.ActualStart, a.ActualFinish }).OfType<DateOnly>())
+            .DefaultIfEmpty(new DateOnly(1970, 1, 1)).Min();
+        return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay)
+            .ToDictionary(c => c.Id, c => new WorkTime(c, first.AddDays(-DaysBefore)), StringComparer.Ordinal);
+    }
+
+    private static (int[] Fork, int[] Branch) Forks(IReadOnlyList<Project> projects, Dictionary<(string, string), int> index, int n)
+    {
+        var fork = new int[n];
+        var branch = new int[n];
+        Array.Fill(fork, -1);
+        var f = 0;
+        foreach (var project in projects)
+        {
+            foreach (var chance in project.ChanceBranches)
+            {
+                for (var b = 0; b < chance.Branches.Count; b++)
+                {
+                    foreach (var activity in chance.Branches[b].Activities)
+                        (fork[index[(project.Id, activity)]], branch[index[(project.Id, activity)]]) = (f, b);
+                }
+                f++;
+            }
+        }
+        return (fork, branch);
+    }
+
+    private static (int[] Start, int[] Successors) Successors(int n, NetworkLink[] links, int[] linkStart)
+    {
+        var start = new int[n + 1];
+        foreach (var link in links)
+            start[link.Predecessor + 1]++;
+        for (var a = 0; a < n; a++)
+            start[a + 1] += start[a];
+        var next = start.AsSpan(0, n).ToArray();
+        var successors = new int[links.Length];
+        for (var a = 0; a < n; a++)
+        {
+            for (var l = linkStart[a]; l < linkStart[a + 1]; l++)
+                successors[next[links[l].Predecessor]++] = a;
+        }
+        return (start, successors);
+    }
+}

@@ -1,0 +1,86 @@
+using Portfolio.Engine.Inputs;
+using Portfolio.Engine.Networks;
+using Portfolio.Model.Documents;
+
+namespace Portfolio.Engine.Pools;
+
+/// <summary>Lays the dispatched part of a network out as a <see cref="PoolNetwork"/>.</summary>
+internal static class PoolNetworkBuilder
+{
+    public static PoolNetwork Build(Network network, Stages stages, Settings settings, EstimateSet estimates, int[] latestFinish)
+    {
+        var pools = settings.Pools.Select(p => new SharedPool(p)).ToArray();
+        var demanding = stages.Dispatched.Where(a => network.Activities[a].Demands.Count > 0)
+            .OrderBy(a => network.UnderWay(a) ? 0 : 1)
+            .ThenBy(a => network.Projects[network.ProjectOf[a]].Priority)
+            .ThenBy(a => latestFinish[a])
+            .ThenBy(a => a).ToArray();
+        int[] activity = [.. demanding, .. stages.Dispatched.Where(a => network.Activities[a].Demands.Count == 0)];
+        var demands = DemandsOf(network, settings, activity, out var demandStart);
+        var links = LinksOf(network, stages, activity, out var linkStart);
+        var (successorStart, successors) = SuccessorsOf(linkStart, links);
+        return new PoolNetwork
+        {
+            Network = network,
+            Pools = pools,
+            Activity = activity,
+            Demanding = demanding.Length,
+            DemandStart = demandStart,
+            Demands = demands,
+            LinkStart = linkStart,
+            Links = links,
+            SuccessorStart = successorStart,
+            Successors = successors,
+            Roots = [.. Enumerable.Range(0, activity.Length).Where(l => linkStart[l] == linkStart[l + 1]).OrderBy(l => activity[l])],
+            Priority = [.. activity.Select(a => network.Projects[network.ProjectOf[a]].Priority)],
+            BaseMinutes = [.. activity.Select(a => estimates.BaseMinutes[a])],
+            Resumes = [.. activity.Select(a => network.UnderWay(a) ? network.Calendar[a].Begin(network.Status[a]) : int.MinValue)],
+            CapacityInstants = [.. pools.SelectMany(p => p.From.Skip(1)).Distinct().Order()],
+        };
+    }
+
+    private static PoolDemand[] DemandsOf(Network network, Settings settings, int[] activity, out int[] start)
+    {
+        var index = settings.Pools.Select((p, i) => (p.Id, i)).ToDictionary(x => x.Id, x => x.i, StringComparer.Ordinal);
+        start = new int[activity.Length + 1];
+        var demands = new List<PoolDemand>();
+        for (var l = 0; l < activity.Length; l++)
+        {
+            demands.AddRange(network.Activities[activity[l]].Demands.Select(d => new PoolDemand(index[d.Pool], d.Units)));
+            start[l + 1] = demands.Count;
+        }
+        return [.. demands];
+    }
+
+    private static NetworkLink[] LinksOf(Network network, Stages stages, int[] activity, out int[] start)
+    {
+        var local = new int[network.Count];
+        for (var l = 0; l < activity.Length; l++)
+            local[activity[l]] = l;
+        start = new int[activity.Length + 1];
+        var links = new List<NetworkLink>();
+        for (var l = 0; l < activity.Length; l++)
+        {
+            foreach (ref readonly var link in network.LinksOf(activity[l]))
+            {
+                if (stages.IsDispatched(link.Predecessor))
+                    links.Add(link with { Predecessor = local[link.Predecessor] });
+            }
+            start[l + 1] = links.Count;
+        }
+        return [.. links];
+    }
+
+    private static (int[] Start, int[] Successors) SuccessorsOf(int[] linkStart, NetworkLink[] links)
+    {
+        var n = linkStart.Length - 1;
+        var byPredecessor = Enumerable.Range(0, n).SelectMany(l => links[linkStart[l]..linkStart[l + 1]].Select(x => (x.Predecessor, Local: l)))
+            .OrderBy(x => x.Predecessor).ToArray();
+        var start = new int[n + 1];
+        foreach (var (predecessor, _) in byPredecessor)
+            start[predecessor + 1]++;
+        for (var l = 0; l < n; l++)
+            start[l + 1] += start[l];
+        return (start, [.. byPredecessor.Select(x => x.Local)]);
+    }
+}

@@ -1,0 +1,97 @@
+using Portfolio.Engine.Inputs;
+
+namespace Portfolio.Engine.Runs;
+
+/// <summary>One run of a plan: chunks of iterations are taken by threads as they come free; each writes its own slots of its block.</summary>
+internal sealed class PlanRun
+{
+    private const int LargestChunk = 256;
+    private const int RowBytes = 12 << 20; // aim for the schedule rows of a thread
+
+    private readonly Plan _plan;
+    private readonly ulong _seed;
+    private readonly long _first;
+    private readonly int _count;
+    private readonly RunOptions _options;
+    private readonly Action<BlockSamples> _sink;
+    private readonly int _chunk;
+    private readonly int[] _milestones;
+    private readonly BlockSamples?[] _blocks;
+    private readonly int[] _left; // [block] iterations still to do
+    private int _next; // next chunk to take
+    private int _done;
+
+    public PlanRun(Plan plan, ulong seed, long first, int count, RunOptions options, Action<BlockSamples> sink)
+    {
+        ArgumentOutOfRangeException.ThrowIfNegative(first);
+        ArgumentOutOfRangeException.ThrowIfLessThan(count, 1);
+        if (first % BlockSamples.Size != 0)
+            throw new ArgumentOutOfRangeException(nameof(first), "A run begins at a block.");
+        (_plan, _seed, _first, _count, _options, _sink) = (plan, seed, first, count, options, sink);
+        _chunk = ChunkSize(plan.Network.Count);
+        _milestones = MilestoneInfo.Activities(plan.Network);
+        var blocks = (count + BlockSamples.Size - 1) / BlockSamples.Size;
+        _blocks = new BlockSamples?[blocks];
+        _left = [.. Enumerable.Range(0, blocks).Select(InBlock)];
+    }
+
+    public void Work(CancellationToken cancellation) =>
+        EngineThreads.Work(Math.Max(1, Math.Min(_options.Threads, (_count + _chunk - 1) / _chunk)), stop => WorkChunks(stop), cancellation);
+
+    // A power of two that divides a block, so that three rows of ints per activity stay near the cache.
+    private static int ChunkSize(int activities)
+    {
+        var size = LargestChunk;
+        while (size > 32 && (long)size * activities * 3 * sizeof(int) > RowBytes)
+            size /= 2;
+        return size;
+    }
+
+    private void WorkChunks(CancellationToken stop)
+    {
+        var inputs = new DrawnInputs(_plan.Network, _plan.Estimates, _plan.Events, _plan.Forks, _plan.Dependence, _plan.Drivers, _chunk);
+        var outcomes = new Outcomes(_plan, inputs, _chunk);
+        while (!stop.IsCancellationRequested)
+        {
+            var from = (long)(Interlocked.Increment(ref _next) - 1) * _chunk;
+            if (from >= _count)
+                return;
+            var count = (int)Math.Min(_chunk, _count - from);
+            inputs.Begin(_seed, _first + from, count);
+            outcomes.Schedule();
+            Store(outcomes, (int)from, count);
+        }
+    }
+
+    private void Store(Outcomes outcomes, int from, int count)
+    {
+        var block = from / BlockSamples.Size;
+        var offset = from - block * BlockSamples.Size;
+        var samples = Block(block);
+        for (var p = 0; p < samples.Finish.Length; p++)
+        {
+            var finish = samples.Finish[p].AsSpan(offset, count);
+            outcomes.Finish(p, finish);
+            outcomes.Cost(p, finish, samples.Cost[p].AsSpan(offset, count));
+        }
+        for (var m = 0; m < _milestones.Length; m++)
+            outcomes.MilestoneFinish(_milestones[m], samples.MilestoneFinish[m].AsSpan(offset, count));
+        if (Interlocked.Add(ref _left[block], -count) == 0)
+        {
+            _blocks[block] = null;
+            _sink(samples);
+        }
+        _options.Progress?.Invoke(Interlocked.Add(ref _done, count));
+    }
+
+    private BlockSamples Block(int block)
+    {
+        lock (_blocks)
+        {
+            var number = checked((int)(_first / BlockSamples.Size)) + block;
+            return _blocks[block] ??= new BlockSamples(number, InBlock(block), _plan.Network.Projects.Count, _milestones.Length);
+        }
+    }
+
+    private int InBlock(int block) => Math.Min(BlockSamples.Size, _count - block * BlockSamples.Size);
+}
