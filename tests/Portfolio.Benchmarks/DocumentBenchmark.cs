@@ -1,0 +1,113 @@
+using System.Diagnostics;
+using System.Globalization;
+using System.Text.Json;
+using Portfolio.Engine;
+using Portfolio.Engine.Draws;
+using Portfolio.Engine.Runs;
+using Portfolio.Model.Documents;
+using Portfolio.Model.Rules;
+using Portfolio.Server.Contracts.Document;
+
+namespace Portfolio.Benchmarks;
+
+/// <summary>Reads, checks, compiles and simulates one document in process, beside the time of drawing the same number of scores and nothing else.</summary>
+internal static class DocumentBenchmark
+{
+    private const int Repeats = 3;
+
+    public static int Run(string[] args)
+    {
+        var iterations = Option(args, "--iterations", 10_000);
+        var threads = Option(args, "--threads", Environment.ProcessorCount);
+        var json = File.ReadAllBytes(args[0]);
+        var (portfolio, readSeconds) = Timed(() => Read(json));
+        var (plan, compileSeconds) = Timed(() => Plan.Compile(portfolio));
+        var activities = portfolio.Document.Projects.Sum(p => p.Activities.Count);
+        var draws = DrawsPerIteration(portfolio.Document);
+        var seconds = Median(() => Simulate(plan, iterations, threads));
+        var peak = Process.GetCurrentProcess().PeakWorkingSet64;
+        var drawing = Median(() => Draw(draws, iterations, threads));
+        var figures = new Figures(
+            activities, iterations, threads, seconds, activities * (double)iterations / seconds, readSeconds, compileSeconds,
+            peak / (1024.0 * 1024), draws, drawing, seconds / drawing);
+        Print(figures, args.Contains("--json"));
+        return 0;
+    }
+
+    internal static ValidPortfolio Read(byte[] json)
+    {
+        var document = DocumentReader.ReadDocument(json);
+        var parts = (document.Projects ?? []).Select(p => (ReadOnlyMemory<byte>)DocumentReader.Bytes(p));
+        var model = DocumentReader.FromParts(DocumentReader.Bytes(document.Settings!), parts);
+        return ValidPortfolio.Check(model, out var faults) ?? throw new InvalidDataException(faults[0].Message);
+    }
+
+    internal static void Simulate(Plan plan, int iterations, int threads) =>
+        plan.Run(plan.Document.Settings.Seed, 0, iterations, new RunOptions(threads), _ => { });
+
+    // The same number of normal scores as the run draws, nothing else.
+    internal static void Draw(int draws, int iterations, int threads)
+    {
+        const int chunk = 256;
+        Parallel(threads, t =>
+        {
+            var scores = new double[chunk];
+            for (var from = t * chunk; from < iterations; from += threads * chunk)
+            {
+                for (var d = 0; d < draws; d++)
+                    NormalScore.Fill(1, (ulong)d * 0x9E3779B97F4A7C15, from, scores.AsSpan(0, Math.Min(chunk, iterations - from)));
+            }
+        });
+    }
+
+    internal static void Parallel(int threads, Action<int> work)
+    {
+        var started = Enumerable.Range(0, threads).Select(t => new Thread(() => work(t))).ToArray();
+        foreach (var thread in started)
+            thread.Start();
+        foreach (var thread in started)
+            thread.Join();
+    }
+
+    internal static double Median(Action work)
+    {
+        work();
+        return Enumerable.Range(0, Repeats).Select(_ => Timed(() => { work(); return 0; }).Seconds).Order().ElementAt(Repeats / 2);
+    }
+
+    private static (T Value, double Seconds) Timed<T>(Func<T> work)
+    {
+        var watch = Stopwatch.StartNew();
+        var value = work();
+        return (value, watch.Elapsed.TotalSeconds);
+    }
+
+    private static int DrawsPerIteration(PortfolioDocument document)
+    {
+        static int Drawn(params Model.Distributions.Distribution?[] stated) => stated.Count(d => d is not null and not Model.Distributions.Constant);
+        var activities = document.Projects.SelectMany(p => p.Activities).Where(a => !a.Finished);
+        return activities.Sum(a => Drawn(a.UnderWay ? a.Remaining : a.Duration, a.Cost?.Fixed, a.Cost?.PerDay))
+            + document.Projects.Count + document.Settings.Drivers.Count
+            + document.Projects.SelectMany(p => p.RiskEvents).Concat(document.Settings.RiskEvents).Sum(e => 1 + e.Impacts.Count);
+    }
+
+    private static int Option(string[] args, string name, int otherwise)
+    {
+        var at = Array.IndexOf(args, name);
+        return at < 0 ? otherwise : int.Parse(args[at + 1], CultureInfo.InvariantCulture);
+    }
+
+    private static void Print(Figures f, bool json)
+    {
+        Console.WriteLine(json ? JsonSerializer.Serialize(f, JsonSerializerOptions.Web) : string.Create(CultureInfo.InvariantCulture, $"""
+            activities {f.Activities}, iterations {f.Iterations}, threads {f.Threads}
+            seconds {f.Seconds:0.000} (median of {Repeats}), {f.ActivitySamplesPerSecond / 1e6:0.0} million activity samples per second
+            read and check {f.ReadSeconds:0.000} s, compile {f.CompileSeconds:0.000} s, peak memory {f.PeakMebibytes:0} MiB
+            drawing alone ({f.ScoresPerIteration} scores per iteration) {f.DrawingSeconds:0.000} s: the run takes {f.TimesDrawing:0.00} times as long
+            """));
+    }
+
+    private sealed record Figures(
+        int Activities, int Iterations, int Threads, double Seconds, double ActivitySamplesPerSecond, double ReadSeconds, double CompileSeconds,
+        double PeakMebibytes, int ScoresPerIteration, double DrawingSeconds, double TimesDrawing);
+}
