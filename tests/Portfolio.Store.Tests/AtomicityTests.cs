@@ -1,0 +1,76 @@
+using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
+using Portfolio.Store.Runs;
+using Portfolio.Store.Tests.Testing;
+
+namespace Portfolio.Store.Tests;
+
+/// <summary>Storage that fails before any one statement of a write leaves the database exactly as it was.</summary>
+public sealed class AtomicityTests
+{
+    private static readonly Dictionary<string, Func<TestStore, RunLease, Task>> Writes = new()
+    {
+        ["first document"] = (store, _) => store.WriteAsync("harbour", ("", "s"), ("lock", "a")),
+        ["changed document"] = (store, _) => store.Documents.WriteAsync(
+            Caller.System,
+            new DocumentWrite { Portfolio = "works", Action = "document.put" },
+            (head, _) => Task.FromResult<Proposal>(TestStore.Parts(("quay", "b2"), ("weir", "c")) with { Removed = ["lock"], Order = ["weir", "quay"] }),
+            TestStore.Cancellation),
+        ["key"] = (store, _) => store.Keys.CreateAsync(
+            Caller.System, "k", [new(Right.Read, "works", ["lock", "quay"]), new(Right.Finance, "*")], null, TestStore.Cancellation),
+        ["run asked for"] = (store, _) => store.QueueAsync(RunScenes.Asked(RunScenes.Today)),
+        ["run due"] = (store, _) => store.Requests.CreateDueAsync(Caller.System, RunScenes.Asked(RunScenes.Today), RunScenes.Today, TestStore.Cancellation),
+        ["stop asked for"] = (store, held) => store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation),
+        ["claim after another engine"] = (store, _) =>
+        {
+            store.Clock.Advance(RunScenes.Lease);
+            return store.ClaimAsync("2.0");
+        },
+        ["block"] = (store, held) => store.Samples.WriteBlockAsync(held, 1, 3, RunScenes.Block(1), TestStore.Cancellation),
+        ["success"] = (store, held) => store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation),
+        ["failure"] = (store, held) => store.Endings.FailAsync(held, "no room", TestStore.Cancellation),
+        ["cancellation"] = (store, held) => store.Endings.CancelAsync(held, TestStore.Cancellation),
+        ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, TestStore.Cancellation),
+    };
+
+    public static TheoryData<string> Names => [.. Writes.Keys];
+
+    private sealed class InjectedException : Exception;
+
+    [Theory]
+    [MemberData(nameof(Names))]
+    public async Task A_failure_before_any_statement_leaves_nothing_half_written(string name)
+    {
+        await using var store = await TestStore.OpenAsync();
+        await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
+        await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
+        var held = (await store.ClaimAsync())!;
+        await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
+        var before = await store.DumpAsync();
+
+        var failures = 0;
+        for (var succeeded = false; !succeeded; failures++)
+        {
+            var left = failures;
+            store.Database.BeforeStatement = _ =>
+            {
+                if (left-- == 0)
+                    throw new InjectedException();
+            };
+            try
+            {
+                await Writes[name](store, held);
+                succeeded = true;
+            }
+            catch (InjectedException)
+            {
+                Assert.Equal(before, await store.DumpAsync());
+            }
+        }
+        store.Database.BeforeStatement = null;
+        Assert.True(failures > 3, $"only {failures} steps");
+        Assert.NotEqual(before, await store.DumpAsync());
+        Assert.Equal("ok", await store.RawAsync<string>("pragma integrity_check"));
+        Assert.Null((await store.Audit.VerifyAsync(TestStore.Cancellation)).FirstBroken);
+    }
+}

@@ -1,0 +1,32 @@
+using System.Globalization;
+using System.Text;
+using Microsoft.Data.Sqlite;
+
+namespace Portfolio.Store.Tests.Testing;
+
+/// <summary>Every row of every table as text: two equal dumps are two equal databases.</summary>
+internal static class TableDump
+{
+    public static async Task<string> DumpAsync(this TestStore store)
+    {
+        await using var connection = new SqliteConnection($"Data Source={Path.Combine(store.Folder, "portfolio.db")};Pooling=False");
+        await connection.OpenAsync(TestStore.Cancellation);
+        var dump = new StringBuilder();
+        foreach (var table in await ReadAsync(connection, "select name from sqlite_schema where type = 'table' and name not like 'sqlite_stat%' order by name"))
+            dump.AppendLine(table).AppendJoin('\n', await ReadAsync(connection, $"select * from {table.Trim('|')}")).AppendLine();
+        return dump.ToString();
+    }
+
+    private static async Task<List<string>> ReadAsync(SqliteConnection connection, string sql)
+    {
+        await using var command = connection.CreateCommand();
+        command.CommandText = sql;
+        await using var reader = await command.ExecuteReaderAsync(TestStore.Cancellation);
+        var rows = new List<string>();
+        while (await reader.ReadAsync(TestStore.Cancellation))
+            rows.Add(string.Concat(Enumerable.Range(0, reader.FieldCount).Select(i => Text(reader.GetValue(i)) + "|")));
+        return rows;
+    }
+
+    private static string Text(object value) => value is byte[] bytes ? Convert.ToHexString(bytes) : Convert.ToString(value, CultureInfo.InvariantCulture) ?? "";
+}
