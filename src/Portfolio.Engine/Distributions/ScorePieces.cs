@@ -52,12 +52,12 @@ internal static class ScorePieces
         ref var table = ref MemoryMarshal.GetReference(pieces[..Length]);
         for (var i = 0; i < scores.Length; i++)
         {
-            var place = Math.Min(Math.Max((scores[i] - First) * PerUnit, 0), Intervals - 1e-9);
+            var place = double.MinNative(double.MaxNative((scores[i] - First) * PerUnit, 0), Intervals - 1e-9);
             var interval = (int)place;
             place -= interval;
             ref var piece = ref Unsafe.Add(ref table, 4 * interval);
             var value = piece + place * (Unsafe.Add(ref piece, 1) + place * (Unsafe.Add(ref piece, 2) + place * Unsafe.Add(ref piece, 3)));
-            values[i] = Math.Min(Math.Max(value, least), greatest);
+            values[i] = double.MinNative(double.MaxNative(value, least), greatest);
         }
     }
 

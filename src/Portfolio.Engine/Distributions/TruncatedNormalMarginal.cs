@@ -69,9 +69,9 @@ internal sealed class TruncatedNormalMarginal : Marginal
         public Vector512<double> Mirrored(Vector512<double> p)
         {
             var u = Vector512.Create(below) + p * Vector512.Create(held);
-            u = Vector512.Min(Vector512.Max(u, Vector512.Create(double.Epsilon * (1L << 52))), Vector512.Create(Uniforms.Greatest));
+            u = Vector512.MinNative(Vector512.MaxNative(u, Vector512.Create(double.Epsilon * (1L << 52))), Vector512.Create(Uniforms.Greatest));
             var value = Vector512.Create(mean) + Vector512.Create(mirrored ? -sd : sd) * new InverseNormal().At(u);
-            return Vector512.Min(Vector512.Max(value, Vector512.Create(min)), Vector512.Create(max));
+            return Vector512.MinNative(Vector512.MaxNative(value, Vector512.Create(min)), Vector512.Create(max));
         }
     }
 

@@ -37,7 +37,7 @@ internal static class Elementary
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<double> Exp(Vector512<double> x, Vector512<double> rest)
     {
-        x = Vector512.Min(Vector512.Max(x, Vector512.Create(-ExpLimit)), Vector512.Create(ExpLimit));
+        x = Vector512.MinNative(Vector512.MaxNative(x, Vector512.Create(-ExpLimit)), Vector512.Create(ExpLimit));
         var rounding = Vector512.Create(1.5 * TwoTo52);
         var power = (x * Vector512.Create(PerLnTwo) + rounding) - rounding;
         var r = (x - power * Vector512.Create(LnTwoHigh)) - power * Vector512.Create(LnTwoLow) + rest;

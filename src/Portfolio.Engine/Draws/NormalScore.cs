@@ -73,7 +73,7 @@ internal readonly struct InverseNormal : IWideFunction
         var q = u - Vector512.Create(0.5);
         var central = Vector512.LessThanOrEqual(Vector512.Abs(q), Vector512.Create(CentralHalfWidth));
         var square = Vector512.Create(CentralHalfWidth * CentralHalfWidth) - q * q;
-        var tail = Vector512.Sqrt(-Elementary.Log(Vector512.Min(u, Vector512.Create(1.0) - u)));
+        var tail = Vector512.Sqrt(-Elementary.Log(Vector512.MinNative(u, Vector512.Create(1.0) - u)));
         var near = tail - Vector512.Create(1.6);
         var over = Vector512.ConditionalSelect(central, q * Wide.Polynomial(CentralA, square), Wide.Polynomial(TailC, near));
         var under = Vector512.ConditionalSelect(central, Wide.Polynomial(CentralB, square), Wide.Polynomial(TailD, near));
@@ -122,7 +122,7 @@ internal readonly struct NormalCdf : IWideFunction
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<double> Tail(Vector512<double> z)
     {
-        var a = Vector512.Min(Vector512.Abs(z), Vector512.Create(Furthest));
+        var a = Vector512.MinNative(Vector512.Abs(z), Vector512.Create(Furthest));
         var inverse = Vector512.Create(1.0) / (a + Vector512.Create(5.0));
         var t = (a - Vector512.Create(5.0)) * inverse;
 

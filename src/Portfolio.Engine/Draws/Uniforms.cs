@@ -71,7 +71,7 @@ internal static class Uniforms
         var word = Vector512.Create((ulong)uint.MaxValue);
         var bits = Vector512.ShiftLeft(high & word, 21) | Vector512.ShiftRightLogical(low & word, 11);
         var u = Vector512.ConvertToDouble(bits) * Vector512.Create(Unit) + Vector512.Create(Unit / 2);
-        return Vector512.Min(u, Vector512.Create(Greatest));
+        return Vector512.MinNative(u, Vector512.Create(Greatest));
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]

@@ -63,13 +63,30 @@ internal static class Wide
         rest[..x.Length].CopyTo(y);
     }
 
-    /// <summary>Polynomial by Horner's rule, highest coefficient first.</summary>
+    /// <summary>
+    /// Polynomial, highest coefficient first: groups of four terms by Estrin's scheme, the groups by Horner's rule in x⁴. As many operations as
+    /// Horner's rule throughout, but a quarter as long a chain of them, and it is the chain that costs time.
+    /// </summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<double> Polynomial(ReadOnlySpan<double> coefficients, Vector512<double> x)
     {
-        var sum = Vector512.Create(coefficients[0]);
-        for (var i = 1; i < coefficients.Length; i++)
-            sum = sum * x + Vector512.Create(coefficients[i]);
+        ref var c = ref MemoryMarshal.GetReference(coefficients);
+        var (x2, x4) = (x * x, x * x * (x * x));
+        var i = (coefficients.Length - 1) % 4 + 1;
+        var sum = Vector512.Create(c);
+        if (i > 1)
+            sum = sum * x + Vector512.Create(Unsafe.Add(ref c, 1));
+        if (i == 3)
+            sum = sum * x + Vector512.Create(Unsafe.Add(ref c, 2));
+        if (i == 4)
+            sum = sum * x2 + (Vector512.Create(Unsafe.Add(ref c, 2)) * x + Vector512.Create(Unsafe.Add(ref c, 3)));
+        for (; i < coefficients.Length; i += 4)
+        {
+            var upper = Vector512.Create(Unsafe.Add(ref c, i)) * x + Vector512.Create(Unsafe.Add(ref c, i + 1));
+            var lower = Vector512.Create(Unsafe.Add(ref c, i + 2)) * x + Vector512.Create(Unsafe.Add(ref c, i + 3));
+            sum = sum * x4 + (upper * x2 + lower);
+        }
+
         return sum;
     }
 }
