@@ -7,7 +7,8 @@ public static class Bounds
 
     public static readonly DateOnly LastDate = new(2199, 12, 31);
 
-    /// <summary>Working days of a duration, delay or lag; 230 years have 84,006 days, so anything larger is a slip of the keyboard.</summary>
+    /// <summary>Working days of a duration, delay or lag; 230 years have 84,006 days, so anything larger is a slip of the
+    /// keyboard.</summary>
     public const double WorkingDays = 100_000;
 
     /// <summary>Units of the currency in one stated amount; times 100 this is still below 2⁵³, where doubles stop being exact.</summary>

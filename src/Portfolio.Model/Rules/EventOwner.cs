@@ -3,7 +3,8 @@ using Portfolio.Model.Faults;
 
 namespace Portfolio.Model.Rules;
 
-/// <summary>Whose events are checked: the settings' or a project's. Only the targets of impacts and who pays for responses differ.</summary>
+/// <summary>Whose events are checked: the settings' or a project's. Only the targets of impacts and who pays for responses
+/// differ.</summary>
 internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits, PlacedProject? Project)
 {
     public static EventOwner OfSettings(Settings settings, Place at, ModelLimits limits) =>
@@ -22,7 +23,8 @@ internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits,
     {
         (null, null) => at.Fault(RuleCodes.ResponsePayer, $"The response {response.Id} must name the project that pays for it."),
         ({ } own, not null) => at.Under("project").Fault(
-            RuleCodes.ResponsePayer, $"The response {response.Id} names a payer; responses in a project are always paid by it, here {own.Project.Id}."),
+            RuleCodes.ResponsePayer, $"The response {response.Id} names a payer; responses in a project are always paid by it, "
+            + $"here {own.Project.Id}."),
         _ => null,
     };
 
@@ -30,7 +32,8 @@ internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits,
     {
         if (impact.Project is not null)
             return at.Under("project").Fault(
-                RuleCodes.ImpactTarget, $"An event of a project acts on that project alone; leave {TextRule.Shown(impact.Project)} out or move the event to the settings.");
+                RuleCodes.ImpactTarget, "An event of a project acts on that project alone; leave "
+                + $"{TextRule.Shown(impact.Project)} out or move the event to the settings.");
         if (impact.Activity is { } activity && !Project!.Has(activity))
             return at.Under("activity").Fault(
                 RuleCodes.ActivityUnknown, $"The event acts on {TextRule.Shown(activity)}, which is no activity of {Project.Project.Id}.");
@@ -39,15 +42,18 @@ internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits,
 
     private static Fault? TargetOfSettings(Impact impact, Place at) => (impact.Activity, impact.Project) switch
     {
-        (null, null) => at.Fault(RuleCodes.ImpactTarget, "The impact must name an activity as project/activity, or a project that bears the cost."),
+        (null, null) => at.Fault(RuleCodes.ImpactTarget,
+            "The impact must name an activity as project/activity, or a project that bears the cost."),
         (not null, not null) => at.Fault(RuleCodes.ImpactTarget, "The impact names both an activity and a project; one of them is enough."),
         ({ } activity, null) when activity.Split('/') is not [{ Length: > 0 }, { Length: > 0 }] => at.Under("activity").Fault(
-            RuleCodes.ImpactTarget, $"\"{TextRule.Shown(activity)}\" does not name an activity of a project; write it as project/activity."),
+            RuleCodes.ImpactTarget, $"\"{TextRule.Shown(activity)}\" does not name an activity of a project; write it as "
+            + "project/activity."),
         _ => Delay(impact, at),
     };
 
     private static Fault? Delay(Impact impact, Place at) =>
         impact.Delay is not null && impact.Activity is null
-            ? at.Under("delay").Fault(RuleCodes.ImpactDelay, "A delay needs an activity that it delays; a project as a whole can only bear a cost.")
+            ? at.Under("delay").Fault(RuleCodes.ImpactDelay,
+                "A delay needs an activity that it delays; a project as a whole can only bear a cost.")
             : null;
 }

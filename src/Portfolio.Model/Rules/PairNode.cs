@@ -9,7 +9,8 @@ internal enum NodeKind
     Portfolio,
 }
 
-/// <summary>A node of the dependence as pairs write it: <c>driver/{id}</c>, <c>project/{id}</c>, <c>programme/{id}</c> or <c>portfolio</c>.</summary>
+/// <summary>A node of the dependence as pairs write it: <c>driver/{id}</c>, <c>project/{id}</c>, <c>programme/{id}</c> or
+/// <c>portfolio</c>.</summary>
 internal readonly record struct PairNode(NodeKind Kind, string Id)
 {
     /// <summary>Null when the text names no node.</summary>
@@ -22,7 +23,8 @@ internal readonly record struct PairNode(NodeKind Kind, string Id)
         _ => null,
     };
 
-    /// <summary>True when a pair may tie these: drivers and projects among each other, and a driver to a factor that is common to projects.</summary>
+    /// <summary>True when a pair may tie these: drivers and projects among each other, and a driver to a factor that is common to
+    /// projects.</summary>
     public static bool CanPair(NodeKind first, NodeKind second)
     {
         var (low, high) = first <= second ? (first, second) : (second, first);

@@ -38,7 +38,8 @@ public sealed class PortfolioContext
         settings.Calendars.Select(c => c.Id).Where(id => id is not null).Append(WorkCalendar.EveryDayId).ToHashSet(StringComparer.Ordinal);
 
     /// <summary>Digits of the minor unit; of an unknown currency as many as a decimal has, so that only the currency is reported.</summary>
-    internal static int DigitsOf(string? currency) => currency is not null && Currencies.Exists(currency) ? Money.MinorDigits(currency) : 28;
+    internal static int DigitsOf(string? currency) =>
+        currency is not null && Currencies.Exists(currency) ? Money.MinorDigits(currency) : 28;
 
     private static double LastCapacity(Pool pool)
     {

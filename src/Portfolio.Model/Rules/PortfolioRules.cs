@@ -20,7 +20,8 @@ public static class PortfolioRules
     /// <param name="projectsPath">Pointer of the list of projects in what was sent; null: the list was not sent.</param>
     /// <returns>All faults, in no particular order.</returns>
     public static IEnumerable<Fault> Check(
-        Settings settings, string? settingsPath, IReadOnlyList<PlacedOutline> projects, ModelLimits? limits = null, string? projectsPath = null)
+        Settings settings, string? settingsPath, IReadOnlyList<PlacedOutline> projects, ModelLimits? limits = null,
+        string? projectsPath = null)
     {
         var whole = new OutlineIndex(projects);
         var settingsAt = new Place(settingsPath, SettingsRules.Subject);

@@ -52,7 +52,8 @@ public sealed class ProjectOutline
     /// <summary>Place of the activity in the project's list (of the first with this id), or −1.</summary>
     public int Find(string activity) => places.GetValueOrDefault(activity, -1);
 
-    /// <summary>Splits <c>project/activity</c>; without a slash, or before one the project itself, the activity is its own and the project null.</summary>
+    /// <summary>Splits <c>project/activity</c>; without a slash, or before one the project itself, the activity is its own and the
+    /// project null.</summary>
     public static (string? Project, string Activity) Split(string reference, string own)
     {
         var slash = reference.IndexOf('/');

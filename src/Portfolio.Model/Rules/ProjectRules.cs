@@ -10,7 +10,8 @@ public static class ProjectRules
     /// <param name="project">As read; what could not be read is passed over.</param>
     /// <param name="outline">Outline of the same project.</param>
     /// <param name="context">What it may refer to.</param>
-    /// <param name="path">Pointer of the project in what was sent: <c>/projects/3</c> in a document, "" when sent alone; null: not sent but stored.</param>
+    /// <param name="path">Pointer of the project in what was sent: <c>/projects/3</c> in a document, "" when sent alone; null: not sent
+    /// but stored.</param>
     /// <returns>All faults, in no particular order.</returns>
     public static IEnumerable<Fault> Check(Project project, ProjectOutline outline, PortfolioContext context, string? path)
     {

@@ -28,8 +28,10 @@ internal static class RiskEventRule
             if (impact.Delay is null && impact.Cost is null)
                 yield return place.Fault(RuleCodes.ImpactEmpty, "The impact has neither a delay nor a cost, so it would do nothing.");
             if (owner.Target(impact, place) is { } target) yield return target;
-            foreach (var flaw in DistributionRule.Flaws(impact.Delay, Quantity.Delay, owner.Limits)) yield return flaw.At(place.Under("delay"));
-            foreach (var flaw in DistributionRule.Flaws(impact.Cost, Quantity.EventCost, owner.Limits)) yield return flaw.At(place.Under("cost"));
+            foreach (var flaw in DistributionRule.Flaws(impact.Delay, Quantity.Delay, owner.Limits))
+                yield return flaw.At(place.Under("delay"));
+            foreach (var flaw in DistributionRule.Flaws(impact.Cost, Quantity.EventCost, owner.Limits))
+                yield return flaw.At(place.Under("cost"));
         }
     }
 
@@ -42,14 +44,16 @@ internal static class RiskEventRule
         {
             var (response, place) = (responses[k], at.Under("responses", k));
             if (TextRule.Name(response.Name, "name", () => place.Under("name")) is { } name) yield return name;
-            if (ValueRule.Money(response.Cost, owner.MinorDigits, () => place.Under("cost"), negativeAllowed: true) is { } cost) yield return cost;
+            if (ValueRule.Money(response.Cost, owner.MinorDigits, () => place.Under("cost"), negativeAllowed: true) is { } cost)
+                yield return cost;
             if (ValueRule.Probability(response.Probability, "the event after the response", () => place.Under("probability")) is { } chance)
                 yield return chance;
             foreach (var fault in Impacts(response.Impacts, owner, place)) yield return fault;
             if (owner.Payer(response, place) is { } payer) yield return payer;
             if (response.Taken && taken)
                 yield return place.Under("taken").Fault(
-                    RuleCodes.ResponseSeveralTaken, $"The response {response.Id} is taken beside another one; at most one response to an event can be.");
+                    RuleCodes.ResponseSeveralTaken, $"The response {response.Id} is taken beside another one; at most one "
+                    + "response to an event can be.");
             taken |= response.Taken;
         }
     }

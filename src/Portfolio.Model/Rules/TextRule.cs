@@ -13,7 +13,8 @@ internal static class TextRule
     /// <summary>The fault of an identifier; null when it is sound.</summary>
     public static Fault? Id(string? id, Func<Place> at) => id is null || IsId(id) ? null : at().Fault(
         RuleCodes.IdFormat,
-        $"\"{Shown(id)}\" cannot be an id: 1 to 64 letters, digits, dots, hyphens and underscores are allowed, and the first is a letter or a digit.");
+        $"\"{Shown(id)}\" cannot be an id: 1 to 64 letters, digits, dots, hyphens and underscores are allowed, and the first "
+        + "is a letter or a digit.");
 
     /// <summary>The fault of a name or another short text; null when it is sound.</summary>
     public static Fault? Name(string? text, string what, Func<Place> at)

@@ -3,7 +3,8 @@ using Portfolio.Model.Faults;
 
 namespace Portfolio.Model.Rules;
 
-/// <summary>A document that breaks no rule of the model; the only kind the engine accepts. Immutable, safe to share between threads.</summary>
+/// <summary>A document that breaks no rule of the model; the only kind the engine accepts. Immutable, safe to share between
+/// threads.</summary>
 public sealed class ValidPortfolio
 {
     private ValidPortfolio(PortfolioDocument document) => Document = document;
@@ -24,7 +25,7 @@ public sealed class ValidPortfolio
         var context = PortfolioContext.Of(settings, limits);
         var outlines = projects.Select((p, i) => new PlacedOutline(ProjectOutline.Of(p), $"/projects/{i}")).ToList();
         List<Fault> found = [.. SettingsRules.Check(settings, "/settings", limits)];
-        for (var i = 0; i < projects.Count; i++) found.AddRange(ProjectRules.Check(projects[i], outlines[i].Outline, context, outlines[i].Path));
+        foreach (var (project, (outline, path)) in projects.Zip(outlines)) found.AddRange(ProjectRules.Check(project, outline, context, path));
         found.AddRange(PortfolioRules.Check(settings, "/settings", outlines, limits, "/projects"));
         faults = found;
         return found.Count == 0 ? new ValidPortfolio(document) : null;

@@ -25,7 +25,8 @@ internal static class ValueRule
         if (amount is not { } money) return null;
         if (Math.Abs(money) > (decimal)Bounds.Money)
             return at().Fault(RuleCodes.MoneyRange, $"{money} is too large: at most {Bounds.Money:0} units of the currency can be stated.");
-        if (money < 0 && !negativeAllowed) return at().Fault(RuleCodes.MoneyNegative, $"{money} is negative; this amount must be 0 or more.");
+        if (money < 0 && !negativeAllowed)
+            return at().Fault(RuleCodes.MoneyNegative, $"{money} is negative; this amount must be 0 or more.");
         return decimal.Round(money, digits) == money
             ? null
             : at().Fault(FaultCodes.MoneyDecimals, $"{money} has more decimals than the currency; it has {digits}.");

@@ -15,7 +15,8 @@ public sealed class PartByPartTests
         Assert.Equal(
             [
                 new("/activities/4/drivers/0", "weir-lock/A40", RuleCodes.DriverUnknown, "There is no driver sky."),
-                new("/activities/4/predecessors/0", "weir-lock/A40", RuleCodes.ActivityUnknown, "A40 waits for A99, which is no activity of weir-lock."),
+                new("/activities/4/predecessors/0", "weir-lock/A40", RuleCodes.ActivityUnknown,
+                    "A40 waits for A99, which is no activity of weir-lock."),
                 new Fault("/calendar", "weir-lock", RuleCodes.CalendarUnknown, "There is no calendar six-day."),
             ],
             faults.OrderBy(f => f.Path, StringComparer.Ordinal));

@@ -13,7 +13,8 @@ public sealed class RuleTableTests
         .. LinkTable.Cases, .. EventTable.Cases, .. BranchTable.Cases, .. DistributionTable.Cases, .. AcrossTable.Cases,
     ];
 
-    private static readonly Dictionary<string, RuleCase> Cases = Rows.Index().ToDictionary(c => $"{c.Index + 1:000} {c.Item.Code} at {c.Item.Path}", c => c.Item);
+    private static readonly Dictionary<string, RuleCase> Cases = Rows.Index().ToDictionary(c => $"{c.Index + 1:000} {c.Item.Code} at {c.Item.Path}", c =>
+        c.Item);
 
     public static TheoryData<string> Names => [.. Cases.Keys];
 

@@ -20,7 +20,8 @@ internal static class ForeignCycleRule
         var names = cycle.Select(arc => network.Name(network.Arcs[arc].Successor));
         var (project, link) = cycle.Select(network.Link).FirstOrDefault(
             l => l.Link.Project is not null && whole.Projects[l.Project].Path is not null, network.Link(cycle[0]));
-        return whole.ActivityAt(project, link.Successor).Under("predecessors", link.Entry).Fault(RuleCodes.LinkCycle, CycleSearch.Message(names));
+        return whole.ActivityAt(project, link.Successor).Under("predecessors", link.Entry).Fault(
+            RuleCodes.LinkCycle, CycleSearch.Message(names));
     }
 }
 

@@ -15,7 +15,8 @@ internal static class ForeignLinkRule
             {
                 if (link.Project is null || whole.Missing(link.Project, link.Activity!) is not var (code, reason)) continue;
                 yield return whole.ActivityAt(p, link.Successor).Under("predecessors", link.Entry).Fault(
-                    code, $"{outline.ActivityIds[link.Successor]} waits for {TextRule.Shown($"{link.Project}/{link.Activity}")}, but {reason}.");
+                    code,
+                    $"{outline.ActivityIds[link.Successor]} waits for {TextRule.Shown($"{link.Project}/{link.Activity}")}, but {reason}.");
             }
         }
     }

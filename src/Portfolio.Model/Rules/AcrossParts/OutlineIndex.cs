@@ -22,7 +22,8 @@ internal sealed class OutlineIndex
 
     public bool HasProgramme(string programme) => programmes.Contains(programme);
 
-    /// <summary>Why <paramref name="activity"/> of <paramref name="project"/> does not exist, as a code and the end of a sentence; null when it does.</summary>
+    /// <summary>Why <paramref name="activity"/> of <paramref name="project"/> does not exist, as a code and the end of a sentence; null
+    /// when it does.</summary>
     public (string Code, string Reason)? Missing(string project, string activity) =>
         Find(project) is not (>= 0 and var place) ? (Faults.RuleCodes.ProjectUnknown, $"there is no project {TextRule.Shown(project)}")
         : Projects[place].Outline.Find(activity) < 0

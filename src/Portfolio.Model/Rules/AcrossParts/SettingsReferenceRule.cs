@@ -50,7 +50,8 @@ internal static class SettingsReferenceRule
                 foreach (var fault in Impacts(response.Impacts, place, whole)) yield return fault;
                 if (response.Project is { } payer && whole.Find(payer) < 0)
                     yield return place.Under("project").Fault(
-                        RuleCodes.ProjectUnknown, $"The response {response.Id} is paid by {TextRule.Shown(payer)}, but there is no such project.");
+                        RuleCodes.ProjectUnknown, $"The response {response.Id} is paid by {TextRule.Shown(payer)}, but there "
+                        + "is no such project.");
             }
         }
     }
@@ -61,10 +62,12 @@ internal static class SettingsReferenceRule
         {
             var (activity, project) = (impacts[k].Activity, impacts[k].Project);
             var place = at.Under("impacts", k);
-            if (activity?.Split('/') is [{ Length: > 0 } owner, { Length: > 0 } name] && project is null && whole.Missing(owner, name) is var (code, reason))
+            if (project is null && activity?.Split('/') is [{ Length: > 0 } owner, { Length: > 0 } name]
+                && whole.Missing(owner, name) is var (code, reason))
                 yield return place.Under("activity").Fault(code, $"The event acts on {TextRule.Shown(activity)}, but {reason}.");
             else if (activity is null && project is not null && whole.Find(project) < 0)
-                yield return place.Under("project").Fault(RuleCodes.ProjectUnknown, $"The event acts on {TextRule.Shown(project)}, but there is no such project.");
+                yield return place.Under("project").Fault(RuleCodes.ProjectUnknown,
+                    $"The event acts on {TextRule.Shown(project)}, but there is no such project.");
         }
     }
 }

@@ -4,7 +4,8 @@ using Portfolio.Model.Faults;
 namespace Portfolio.Model.Rules.OfDistributions;
 
 /// <summary>
-/// One distribution, for the quantity it stands for. Whether the ends meant by stated percentiles exist is a numerical question and the engine's.
+/// One distribution, for the quantity it stands for. Whether the ends meant by stated percentiles exist is a numerical question and the
+/// engine's.
 /// </summary>
 internal static class DistributionRule
 {
@@ -47,8 +48,8 @@ internal static class DistributionRule
     }
 
     /// <summary>
-    /// Least and greatest value that is stated. A normal may reach below zero (such draws count as 0), so of it the middle counts: the mean,
-    /// or the nearer bound when the mean has been cut off.
+    /// Least and greatest value that is stated. A normal may reach below zero (such draws count as 0), so of it the middle counts:
+    /// the mean, or the nearer bound when the mean has been cut off.
     /// </summary>
     private static (double Low, double High) Extent(Distribution distribution) => distribution switch
     {

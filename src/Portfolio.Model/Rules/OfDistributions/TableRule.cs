@@ -26,7 +26,8 @@ internal static class TableRule
 
         var sum = outcomes.Sum(o => o.Probability);
         if (sound && Math.Abs(sum - 1) > Bounds.ProbabilityTolerance)
-            yield return new("outcomes", RuleCodes.ProbabilitySum, $"The probabilities of the outcomes add up to {sum}; they must add up to 1.");
+            yield return new("outcomes", RuleCodes.ProbabilitySum,
+                $"The probabilities of the outcomes add up to {sum}; they must add up to 1.");
     }
 
     public static IEnumerable<Flaw> Check(Percentiles table, ModelLimits limits)
@@ -39,7 +40,8 @@ internal static class TableRule
         }
 
         if (points[0].P != 0)
-            yield return new("points/0/p", RuleCodes.DistributionPoints, $"The first point stands at {points[0].P} %; it must stand at 0 %.");
+            yield return new("points/0/p", RuleCodes.DistributionPoints,
+                $"The first point stands at {points[0].P} %; it must stand at 0 %.");
         if (points[^1].P != 100)
             yield return new($"points/{points.Count - 1}/p", RuleCodes.DistributionPoints,
                 $"The last point stands at {points[^1].P} %; it must stand at 100 %.");

@@ -15,7 +15,8 @@ internal static class ThreePointRule
     {
         foreach (var flaw in Ends(p.Low, p.Mode, p.High, p.LowPercentile, p.HighPercentile)) yield return flaw;
         if (p.Weight is < 0 or > Bounds.PertWeight)
-            yield return new("weight", RuleCodes.DistributionWeight, $"The weight is {p.Weight}; it must lie between 0 and {Bounds.PertWeight:0}.");
+            yield return new("weight", RuleCodes.DistributionWeight,
+                $"The weight is {p.Weight}; it must lie between 0 and {Bounds.PertWeight:0}.");
     }
 
     private static IEnumerable<Flaw> Ends(double low, double mode, double high, double lowPercentile, double highPercentile)
@@ -26,6 +27,7 @@ internal static class ThreePointRule
         // The ends stand for outer limits or for percentiles on either side of the mode; 0 % and 100 % at the wrong end mean nothing.
         if (!(lowPercentile >= 0 && highPercentile <= 100 && lowPercentile < highPercentile))
             yield return new("", RuleCodes.DistributionPercentile,
-                $"The low value is stated at {lowPercentile} % and the high one at {highPercentile} %; the first must be below the second, both within 0 to 100.");
+                $"The low value is stated at {lowPercentile} % and the high one at {highPercentile} %; the first must be below "
+                + "the second, both within 0 to 100.");
     }
 }

@@ -34,15 +34,16 @@ internal static class ChanceBranchRule
         var sound = true;
         for (var b = 0; b < fork.Branches.Count; b++)
         {
-            var place = at.Under("branches", b).Under("probability");
-            if (ValueRule.Probability(fork.Branches[b].Probability, $"the branch {fork.Branches[b].Id}", () => place) is not { } fault) continue;
+            var (branch, place) = (fork.Branches[b], at.Under("branches", b).Under("probability"));
+            if (ValueRule.Probability(branch.Probability, $"the branch {branch.Id}", () => place) is not { } fault) continue;
             sound = false;
             yield return fault;
         }
 
         var sum = fork.Branches.Sum(b => b.Probability);
         if (sound && Math.Abs(sum - 1) > Bounds.ProbabilityTolerance)
-            yield return at.Under("branches").Fault(RuleCodes.ProbabilitySum, $"The probabilities of the branches add up to {sum}; they must add up to 1.");
+            yield return at.Under("branches").Fault(RuleCodes.ProbabilitySum,
+                $"The probabilities of the branches add up to {sum}; they must add up to 1.");
     }
 
     private static IEnumerable<Fault> Activities(ChanceBranches fork, Place at, Dictionary<string, string> branchOf, PlacedProject placed)
@@ -56,7 +57,8 @@ internal static class ChanceBranchRule
                     yield return place.Fault(RuleCodes.ActivityUnknown, $"{TextRule.Shown(id)} is no activity of {placed.Project.Id}.");
                 else if (!branchOf.TryAdd(id, $"{fork.Id}/{fork.Branches[b].Id}"))
                     yield return place.Fault(
-                        RuleCodes.BranchActivityRepeated, $"{id} is on the branch {branchOf[id]} already; an activity can be on one branch at most.");
+                        RuleCodes.BranchActivityRepeated, $"{id} is on the branch {branchOf[id]} already; an activity can be "
+                        + "on one branch at most.");
             }
     }
 
@@ -68,7 +70,8 @@ internal static class ChanceBranchRule
             if (fork.Branches[b].Activities.FirstOrDefault(id => IsStarted(id, placed)) is not { } started) continue;
             if (first is not null)
                 yield return at.Under("branches", b).Fault(
-                    RuleCodes.BranchSeveralStarted, $"Work has started on two branches of one fork ({first} and {started}); exactly one branch can happen.");
+                    RuleCodes.BranchSeveralStarted, $"Work has started on two branches of one fork ({first} and {started}); "
+                    + "exactly one branch can happen.");
             first ??= started;
         }
     }

@@ -27,7 +27,8 @@ internal static class DemandRule
         var sound = units is > 0 and <= Bounds.Units;
         if (!sound && !double.IsNaN(units))
             yield return ValueRule.Finite(units, () => At("units"))
-                ?? At("units").Fault(RuleCodes.UnitsRange, $"{activity.Id} draws {units} units; it must be more than 0 and at most {Bounds.Units:0}.");
+                ?? At("units").Fault(RuleCodes.UnitsRange,
+                    $"{activity.Id} draws {units} units; it must be more than 0 and at most {Bounds.Units:0}.");
         if (string.IsNullOrEmpty(pool)) yield break;
         if (placed.Context.LastCapacity(pool) is not { } capacity)
             yield return At("pool").Fault(RuleCodes.PoolUnknown, $"There is no pool {TextRule.Shown(pool)}.");
@@ -35,6 +36,7 @@ internal static class DemandRule
             yield return At("pool").Fault(RuleCodes.DemandRepeated, $"{activity.Id} draws on the pool {pool} twice; add the units up.");
         else if (sound && units > capacity && !activity.Finished)
             yield return At("units").Fault(
-                RuleCodes.DemandNeverFits, $"{activity.Id} needs {units} of the pool {pool}, which in the end has {capacity}: it could never start.");
+                RuleCodes.DemandNeverFits, $"{activity.Id} needs {units} of the pool {pool}, which in the end has {capacity}: "
+                + "it could never start.");
     }
 }

@@ -31,6 +31,7 @@ internal static class EstimateRule
 
         foreach (var flaw in DistributionRule.Flaws(cost.Fixed, Quantity.ActivityCost, limits)) yield return flaw.At(At("fixed"));
         foreach (var flaw in DistributionRule.Flaws(cost.PerDay, Quantity.ActivityCost, limits)) yield return flaw.At(At("perDay"));
-        if (cost.Actual != 0 && ValueRule.Money(cost.Actual, placed.Context.MinorDigits, () => At("actual")) is { } actual) yield return actual;
+        if (cost.Actual != 0 && ValueRule.Money(cost.Actual, placed.Context.MinorDigits, () => At("actual")) is { } actual)
+            yield return actual;
     }
 }

@@ -38,7 +38,8 @@ internal static class LinkRule
     }
 
     private static Fault Lag(Link link, PlacedProject placed, int i, int k) =>
-        ValueRule.Within(link.Lag, -Bounds.WorkingDays, Bounds.WorkingDays, "lag in working days", RuleCodes.LagRange, () => At(placed, i, k).Under("lag"))!;
+        ValueRule.Within(link.Lag, -Bounds.WorkingDays, Bounds.WorkingDays, "lag in working days", RuleCodes.LagRange,
+            () => At(placed, i, k).Under("lag"))!;
 
     private static Place At(PlacedProject placed, int i, int k) => placed.Activity(i).Under("predecessors", k);
 }

@@ -14,7 +14,8 @@ internal static class MilestoneRule
             var activity = activities[i];
             if (activity.Milestone)
                 foreach (var (member, what) in Work(activity))
-                    yield return placed.Activity(i).Under(member).Fault(RuleCodes.MilestoneWork, $"{activity.Id} is a milestone and cannot have {what}.");
+                    yield return placed.Activity(i).Under(member).Fault(RuleCodes.MilestoneWork,
+                        $"{activity.Id} is a milestone and cannot have {what}.");
             if (activity.Milestone && activity.ActualStart is not null)
                 yield return placed.Activity(i).Under("actualStart").Fault(
                     RuleCodes.MilestoneStart, $"{activity.Id} is a milestone: it has no start, only an actual finish.");

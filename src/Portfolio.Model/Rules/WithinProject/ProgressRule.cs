@@ -12,7 +12,8 @@ internal static class ProgressRule
         for (var i = 0; i < activities.Count; i++)
         {
             var activity = activities[i];
-            if (activity.EarliestStart is not null && Range(placed, i, activity.EarliestStart, "earliestStart") is { } range) yield return range;
+            if (activity.EarliestStart is not null && Range(placed, i, activity.EarliestStart, "earliestStart") is { } range)
+                yield return range;
             if (!activity.Milestone)
                 foreach (var fault in Estimates(activity, placed, i))
                     yield return fault;
@@ -24,17 +25,21 @@ internal static class ProgressRule
     private static IEnumerable<Fault> Estimates(Activity activity, PlacedProject placed, int i)
     {
         if (activity.Duration is null && !activity.Finished)
-            yield return placed.Activity(i).Fault(RuleCodes.DurationMissing, $"{activity.Id} has no duration; only milestones and finished work can do without.");
+            yield return placed.Activity(i).Fault(RuleCodes.DurationMissing,
+                $"{activity.Id} has no duration; only milestones and finished work can do without.");
         if (activity.Remaining is null && activity.UnderWay)
             yield return placed.Activity(i).Fault(
                 RuleCodes.RemainingMissing, $"{activity.Id} has started and is not finished, so it must say how much work is remaining.");
         if (activity.Remaining is not null && activity.Finished)
-            yield return placed.Activity(i).Under("remaining").Fault(RuleCodes.RemainingFinished, $"{activity.Id} is finished, so no work can be remaining.");
+            yield return placed.Activity(i).Under("remaining").Fault(RuleCodes.RemainingFinished,
+                $"{activity.Id} is finished, so no work can be remaining.");
         if (activity.Remaining is not null && !activity.Started)
             yield return placed.Activity(i).Under("remaining").Fault(
-                RuleCodes.RemainingNotStarted, $"{activity.Id} has remaining work but no actual start; before the start only the duration counts.");
+                RuleCodes.RemainingNotStarted, $"{activity.Id} has remaining work but no actual start; before the start only "
+                + "the duration counts.");
         if (activity.Finished && activity.ActualStart is null)
-            yield return placed.Activity(i).Fault(RuleCodes.ActualStartMissing, $"{activity.Id} is finished, so it must also say when it started.");
+            yield return placed.Activity(i).Fault(RuleCodes.ActualStartMissing,
+                $"{activity.Id} is finished, so it must also say when it started.");
     }
 
     private static IEnumerable<Fault> Actuals(Activity activity, PlacedProject placed, int i)
@@ -54,7 +59,8 @@ internal static class ProgressRule
         if (date is not { } actual || status == DateOnly.MinValue || actual < status) return null;
         return placed.Activity(i).Under(member).Fault(
             RuleCodes.ActualNotBeforeStatus,
-            $"{actual:yyyy-MM-dd} is not before the status date {status:yyyy-MM-dd}; progress is reported up to the beginning of that day.");
+            $"{actual:yyyy-MM-dd} is not before the status date {status:yyyy-MM-dd}; progress is reported up to the beginning "
+            + "of that day.");
     }
 
     private static Fault? Range(PlacedProject placed, int i, DateOnly? date, string member) =>

@@ -33,7 +33,8 @@ internal static class ReferenceRule
             if (!placed.Context.HasDriver(id))
                 yield return at().Under("drivers", k).Fault(RuleCodes.DriverUnknown, $"There is no driver {TextRule.Shown(id)}.");
             else if (drivers.Take(k).Contains(id))
-                yield return at().Under("drivers", k).Fault(RuleCodes.DriverRepeated, $"The driver {id} is listed twice; a driver acts once.");
+                yield return at().Under("drivers", k).Fault(RuleCodes.DriverRepeated,
+                    $"The driver {id} is listed twice; a driver acts once.");
         }
     }
 }

@@ -14,19 +14,23 @@ internal static class BasicsRule
         if (TextRule.Name(settings.Name, "name", () => at.Under("name")) is { } name) yield return name;
         if (settings.Currency is { Length: > 0 } currency && !Currencies.Exists(currency))
             yield return at.Under("currency").Fault(
-                RuleCodes.CurrencyUnknown, $"\"{TextRule.Shown(currency)}\" is not an ISO 4217 currency code such as EUR, in capitals and with a minor unit.");
+                RuleCodes.CurrencyUnknown, $"\"{TextRule.Shown(currency)}\" is not an ISO 4217 currency code such as EUR, in "
+                + "capitals and with a minor unit.");
         if (settings.TimeZone is { } zone && !IsZone(zone))
             yield return at.Under("timeZone").Fault(
                 RuleCodes.TimeZoneUnknown, $"\"{TextRule.Shown(zone)}\" is not an IANA time zone such as Europe/Lisbon or UTC.");
         if (settings.FiscalYearStart is var start && !IsDayOfEveryYear(start))
             yield return at.Under("fiscalYearStart").Fault(
-                RuleCodes.FiscalYearStart, $"{start.Month:00}-{start.Day:00} is not a day of every year, so no fiscal year can start on it.");
+                RuleCodes.FiscalYearStart, $"{start.Month:00}-{start.Day:00} is not a day of every year, so no fiscal year can "
+                + "start on it.");
         foreach (var fault in Confidence(settings.Confidence, at, limits)) yield return fault;
         if (settings.Seed is < 0 or > Bounds.Seed)
-            yield return at.Under("seed").Fault(RuleCodes.SeedRange, $"The seed is {settings.Seed}; it must lie between 0 and {Bounds.Seed}.");
+            yield return at.Under("seed").Fault(RuleCodes.SeedRange,
+                $"The seed is {settings.Seed}; it must lie between 0 and {Bounds.Seed}.");
         if (settings.Iterations < limits.MinIterations || settings.Iterations > limits.MaxIterations)
             yield return at.Under("iterations").Fault(
-                RuleCodes.IterationsRange, $"{settings.Iterations} iterations are asked for; {limits.MinIterations} to {limits.MaxIterations} are possible.");
+                RuleCodes.IterationsRange, $"{settings.Iterations} iterations are asked for; {limits.MinIterations} to "
+                + $"{limits.MaxIterations} are possible.");
     }
 
     private static IEnumerable<Fault> Confidence(IReadOnlyList<double> levels, Place at, ModelLimits limits)
@@ -42,11 +46,13 @@ internal static class BasicsRule
                 yield return at.Under("confidence", i).Fault(
                     RuleCodes.ConfidenceRange, $"The confidence level is {levels[i]}; it must be above 0 and below 100.");
             else if (!seen.Add(levels[i]))
-                yield return at.Under("confidence", i).Fault(RuleCodes.ConfidenceRepeated, $"The confidence level {levels[i]} is listed twice.");
+                yield return at.Under("confidence", i).Fault(RuleCodes.ConfidenceRepeated,
+                    $"The confidence level {levels[i]} is listed twice.");
         }
     }
 
-    private static bool IsDayOfEveryYear(MonthDay day) => day.Month is >= 1 and <= 12 && day.Day >= 1 && day.Day <= DaysInMonth[day.Month - 1];
+    private static bool IsDayOfEveryYear(MonthDay day) =>
+        day.Month is >= 1 and <= 12 && day.Day >= 1 && day.Day <= DaysInMonth[day.Month - 1];
 
     // The zone database also holds the machine's own zone and whole copies of itself under other names; these are no IANA names.
     private static bool IsZone(string zone) =>

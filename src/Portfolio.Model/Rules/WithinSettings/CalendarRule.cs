@@ -27,9 +27,11 @@ internal static class CalendarRule
                 RuleCodes.IdReserved, $"The calendar {WorkCalendar.EveryDayId} always exists, with every day worked; choose another id.");
         // Extra days alone are allowed: some work is only possible in windows that are listed one by one.
         if (calendar.WorkingWeekdays.Count == 0 && calendar.ExtraWorkingDates.Count == 0)
-            yield return at.Fault(RuleCodes.CalendarNoWork, $"The calendar {calendar.Id} has no working day, so work on it would never end.");
+            yield return at.Fault(RuleCodes.CalendarNoWork,
+                $"The calendar {calendar.Id} has no working day, so work on it would never end.");
         if (calendar.NonWorkingDates.Count + calendar.ExtraWorkingDates.Count is var count && count > limits.CalendarDates)
-            yield return at.Fault(RuleCodes.LimitExceeded, $"The calendar {calendar.Id} lists {count} dates; at most {limits.CalendarDates} are allowed.");
+            yield return at.Fault(RuleCodes.LimitExceeded,
+                $"The calendar {calendar.Id} lists {count} dates; at most {limits.CalendarDates} are allowed.");
         foreach (var fault in Dates(calendar.NonWorkingDates, "nonWorkingDates", at)) yield return fault;
         foreach (var fault in Dates(calendar.ExtraWorkingDates, "extraWorkingDates", at)) yield return fault;
     }

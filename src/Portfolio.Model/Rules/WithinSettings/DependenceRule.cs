@@ -21,7 +21,8 @@ internal static class DependenceRule
             if (Background(stated, "correlation within a programme", () => at.Under("withinProgramme")) is { } range) yield return range;
             else if (betweenFault is null && stated < between)
                 yield return at.Under("withinProgramme").Fault(RuleCodes.DependenceWithin,
-                    $"The correlation within a programme is {stated}, below the {between} between any projects; it must be at least as high.");
+                    $"The correlation within a programme is {stated}, below the {between} between any projects; it must be at "
+                    + "least as high.");
         }
 
         foreach (var fault in Pairs(settings, at, limits)) yield return fault;
@@ -36,7 +37,8 @@ internal static class DependenceRule
         for (var i = 0; i < pairs.Count; i++)
         {
             var place = at.Under("pairs", i);
-            if (ValueRule.Within(pairs[i].Rank, -1, 1, "rank correlation", RuleCodes.RankRange, () => place.Under("rank")) is { } rank) yield return rank;
+            if (ValueRule.Within(pairs[i].Rank, -1, 1, "rank correlation", RuleCodes.RankRange, () => place.Under("rank")) is { } rank)
+                yield return rank;
             foreach (var fault in NodeFaults(pairs[i], drivers, place)) yield return fault;
             if (PairNode.Parse(pairs[i].First) is not { } first || PairNode.Parse(pairs[i].Second) is not { } second) continue;
             nodes.Add(first);
@@ -69,7 +71,8 @@ internal static class DependenceRule
     private static Fault? Together(RankPair pair, PairNode first, PairNode second, Place at) =>
         first == second ? at.Fault(RuleCodes.PairSelf, $"{pair.First} is paired with itself.")
         : !PairNode.CanPair(first.Kind, second.Kind) ? at.Fault(RuleCodes.PairKinds,
-            $"{pair.First} and {pair.Second} cannot be paired: only drivers and projects can, and a driver with the portfolio or a programme.")
+            $"{pair.First} and {pair.Second} cannot be paired: only drivers and projects can, and a driver with the portfolio "
+            + "or a programme.")
         : null;
 
     private static Fault? Background(double rank, string what, Func<Place> at) =>

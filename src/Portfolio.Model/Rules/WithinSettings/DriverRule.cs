@@ -17,11 +17,15 @@ internal static class DriverRule
         {
             var driver = drivers[i];
             if (TextRule.Name(driver.Name, "name", () => Of(i).Under("name")) is { } name) yield return name;
-            if (ValueRule.Probability(driver.Probability, "the driver", () => Of(i).Under("probability")) is { } chance) yield return chance;
+            if (ValueRule.Probability(driver.Probability, "the driver", () => Of(i).Under("probability")) is { } chance)
+                yield return chance;
             if (driver.DurationFactor is null && driver.CostFactor is null)
-                yield return Of(i).Fault(RuleCodes.DriverNoFactor, "The driver has neither a duration factor nor a cost factor, so it would do nothing.");
-            foreach (var flaw in DistributionRule.Flaws(driver.DurationFactor, Quantity.Factor, limits)) yield return flaw.At(Of(i).Under("durationFactor"));
-            foreach (var flaw in DistributionRule.Flaws(driver.CostFactor, Quantity.Factor, limits)) yield return flaw.At(Of(i).Under("costFactor"));
+                yield return Of(i).Fault(RuleCodes.DriverNoFactor,
+                    "The driver has neither a duration factor nor a cost factor, so it would do nothing.");
+            foreach (var flaw in DistributionRule.Flaws(driver.DurationFactor, Quantity.Factor, limits))
+                yield return flaw.At(Of(i).Under("durationFactor"));
+            foreach (var flaw in DistributionRule.Flaws(driver.CostFactor, Quantity.Factor, limits))
+                yield return flaw.At(Of(i).Under("costFactor"));
         }
     }
 }

@@ -32,7 +32,8 @@ internal static class PoolRules
             if (ValueRule.Date(changes[i].From, () => place.Under("from")) is { } date) yield return date;
             else if (i > 0 && changes[i].From != DateOnly.MinValue && changes[i].From <= changes[i - 1].From)
                 yield return place.Under("from").Fault(
-                    RuleCodes.CapacityOrder, $"Capacity changes must be listed by date, one a day; {changes[i].From:yyyy-MM-dd} follows {changes[i - 1].From:yyyy-MM-dd}.");
+                    RuleCodes.CapacityOrder, "Capacity changes must be listed by date, one a day; "
+                    + $"{changes[i].From:yyyy-MM-dd} follows {changes[i - 1].From:yyyy-MM-dd}.");
             if (Capacity(changes[i].Capacity, () => place.Under("capacity")) is { } capacity) yield return capacity;
         }
     }

@@ -27,7 +27,7 @@ public sealed record LinkJson
     {
         foreach (var misfit in Misfits)
             misfit.Report(reading, place);
-        if (Activity is null && Misfits.All(misfit => misfit.Path != "/activity"))
+        if (string.IsNullOrEmpty(Activity) && Misfits.All(misfit => misfit.Path != "/activity"))
             reading.Missing(place, "activity");
         var type = reading.Word(place, "type", Type, Words.LinkTypes, FaultCodes.TypeUnknown);
         return new Link(Activity ?? "", type ?? LinkType.FinishToStart, reading.Number(place, "lag", Lag) ?? 0);

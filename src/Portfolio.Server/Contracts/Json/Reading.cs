@@ -23,9 +23,10 @@ public sealed class Reading
             Refuse(owner, member, FaultCodes.Reserved, $"'{member}' is reserved and not served yet; leave it out.");
     }
 
+    /// <summary>A text that must say something; an empty one counts as missing.</summary>
     public string Required(Place owner, string member, string? text)
     {
-        if (text is null)
+        if (string.IsNullOrEmpty(text))
             Missing(owner, member);
         return text ?? "";
     }

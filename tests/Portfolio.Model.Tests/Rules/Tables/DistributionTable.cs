@@ -69,11 +69,13 @@ internal static class DistributionTable
         Case(FaultCodes.NumberNotFinite, "/points/1/p", Curve((0, 1), (Infinite, 2))),
     ];
 
-    private static Percentiles Curve(params (double P, double Value)[] points) => new([.. points.Select(p => new PercentilePoint(p.P, p.Value))]);
+    private static Percentiles Curve(params (double P, double Value)[] points) => new([.. points.Select(p =>
+        new PercentilePoint(p.P, p.Value))]);
 
     private static Outcome[] Outcomes(int count) => [.. Enumerable.Range(0, count).Select(i => new Outcome(i, 1.0 / count))];
 
-    private static PercentilePoint[] Points(int count) => [.. Enumerable.Range(0, count).Select(i => new PercentilePoint(100.0 * i / (count - 1), i))];
+    private static PercentilePoint[] Points(int count) => [.. Enumerable.Range(0, count).Select(i =>
+        new PercentilePoint(100.0 * i / (count - 1), i))];
 
     private static RuleCase Case(string code, string member, Distribution broken, Distribution? sound = null) =>
         new(code, "/projects/0/activities/1/duration" + member, "weir-lock/A20", Sound.WithDuration(broken), Sound.WithDuration(sound ?? new Constant(1)));

@@ -12,7 +12,8 @@ internal static class EventTable
 
     private static IEnumerable<RuleCase> OfProject =>
     [
-        new(RuleCodes.IdDuplicate, "/projects/0/riskEvents/1/id", "weir-lock/event/flood", Sound.WithProject(p => p with { RiskEvents = [.. p.RiskEvents, p.RiskEvents[0]] })),
+        new(RuleCodes.IdDuplicate,
+            "/projects/0/riskEvents/1/id", "weir-lock/event/flood", Sound.WithProject(p => p with { RiskEvents = [.. p.RiskEvents, p.RiskEvents[0]] })),
         Flood(RuleCodes.TextLength, "/name", e => e with { Name = new('n', 201) }),
         Flood(RuleCodes.ProbabilityRange, "/probability", e => e with { Probability = 1.5 }, e => e with { Probability = double.NaN }),
         Flood(FaultCodes.NumberNotFinite, "/probability", e => e with { Probability = double.PositiveInfinity }),
@@ -33,7 +34,8 @@ internal static class EventTable
 
     private static IEnumerable<RuleCase> OfSettings =>
     [
-        new(RuleCodes.IdDuplicate, "/settings/riskEvents/1/id", "event/storm", Sound.With(s => s with { RiskEvents = [.. s.RiskEvents, s.RiskEvents[0]] })),
+        new(RuleCodes.IdDuplicate,
+            "/settings/riskEvents/1/id", "event/storm", Sound.With(s => s with { RiskEvents = [.. s.RiskEvents, s.RiskEvents[0]] })),
         Storm(RuleCodes.ImpactTarget, "/impacts/0", Impacts(new Impact(null, null, null, Five)), Impacts(new Impact(null, "weir-lock", null, Five))),
         Storm(RuleCodes.ImpactTarget, "/impacts/0", Impacts(new Impact("weir-lock/A20", "weir-lock", null, Five))),
         Storm(RuleCodes.ImpactTarget, "/impacts/0/activity", Impacts(new Impact("A20", null, Five, null)), Impacts(new Impact("quay/B20", null, Five, Five))),
