@@ -14,16 +14,16 @@ internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits,
 
     /// <summary>The event's place; its subject is <c>event/{id}</c>, in a project <c>{project}/event/{id}</c>.</summary>
     public Place EventAt(int index, string id) =>
-        At.Under("riskEvents", index).About(Project is null ? "event/" + id : $"{Project.Here.Subject}/event/{id}");
+        At.Under("riskEvents", index).About(Project is null ? "event/" : $"{Project.Here.Subject}/event/", id, index);
 
     /// <summary>What the impact acts on must be there; of a settings' event only the form can be seen without the projects.</summary>
     public Fault? Target(Impact impact, Place at) => Project is null ? TargetOfSettings(impact, at) : TargetOfProject(impact, at);
 
     public Fault? Payer(Response response, Place at) => (Project, response.Project) switch
     {
-        (null, null) => at.Fault(RuleCodes.ResponsePayer, $"The response {response.Id} must name the project that pays for it."),
+        (null, null) => at.Fault(RuleCodes.ResponsePayer, "A response to an event of the portfolio must name the project that pays for it."),
         ({ } own, not null) => at.Under("project").Fault(
-            RuleCodes.ResponsePayer, $"The response {response.Id} names a payer; responses in a project are always paid by it, "
+            RuleCodes.ResponsePayer, "The response names a payer; responses in a project are always paid by it, "
             + $"here {own.Project.Id}."),
         _ => null,
     };

@@ -14,5 +14,8 @@ internal readonly record struct Place(string? Path, string Subject)
 
     public Place About(string subject) => this with { Subject = subject };
 
+    /// <summary>About one of a list: its id after the prefix, or its place where the id is missing.</summary>
+    public Place About(string prefix, string? id, int index) => About(prefix + (string.IsNullOrEmpty(id) ? index : id));
+
     public Fault Fault(string code, string message) => new(Path ?? "", Subject, code, message);
 }

@@ -7,7 +7,10 @@ internal sealed record PlacedProject(Project Project, ProjectOutline Outline, Po
 {
     public Place Here => new(Path, Project.Id);
 
-    public Place Activity(int index) => Here.Under("activities", index).About($"{Project.Id}/{Project.Activities[index].Id}");
+    public Place Activity(int index) => Here.Under("activities", index).About($"{Project.Id}/", Project.Activities[index].Id, index);
+
+    /// <summary>What messages call the activity.</summary>
+    public string Name(int index) => Project.Activities[index].Id is { Length: > 0 } id ? id : $"Activity {index + 1}";
 
     public bool Has(string activity) => Outline.Find(activity) >= 0;
 }

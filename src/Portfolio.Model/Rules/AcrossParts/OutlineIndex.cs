@@ -33,6 +33,6 @@ internal sealed class OutlineIndex
     public Place ActivityAt(int project, int activity)
     {
         var (outline, path) = Projects[project];
-        return new Place(path, $"{outline.Id}/{outline.ActivityIds[activity]}").Under("activities", activity);
+        return new Place(path, "").Under("activities", activity).About($"{outline.Id}/", outline.ActivityIds[activity], activity);
     }
 }

@@ -42,7 +42,7 @@ internal static class SettingsReferenceRule
     {
         for (var i = 0; i < events.Count; i++)
         {
-            var at = settingsAt.Under("riskEvents", i).About("event/" + events[i].Id);
+            var at = settingsAt.Under("riskEvents", i).About("event/", events[i].Id, i);
             foreach (var fault in Impacts(events[i].Impacts, at, whole)) yield return fault;
             for (var k = 0; k < events[i].Responses.Count; k++)
             {

@@ -10,7 +10,7 @@ internal static class ChanceBranchRule
     {
         var forks = placed.Project.ChanceBranches;
         if (forks.Count == 0) yield break;
-        Place Of(int f) => placed.Here.Under("chanceBranches", f).About($"{placed.Here.Subject}/branches/{forks[f].Id}");
+        Place Of(int f) => placed.Here.Under("chanceBranches", f).About($"{placed.Here.Subject}/branches/", forks[f].Id, f);
 
         foreach (var fault in Ids.Check(forks, f => f.Id, "fork", Of)) yield return fault;
         var branchOf = new Dictionary<string, string>(StringComparer.Ordinal);

@@ -9,17 +9,19 @@ internal static class DemandRule
     public static IEnumerable<Fault> Check(PlacedProject placed)
     {
         var activities = placed.Project.Activities;
+        var seen = new HashSet<string>(StringComparer.Ordinal);
         for (var i = 0; i < activities.Count; i++)
         {
             var activity = activities[i];
             if (activity.Milestone) continue;
+            seen.Clear();
             for (var k = 0; k < activity.Demands.Count; k++)
-                foreach (var fault in One(activity, k, placed, i))
+                foreach (var fault in One(activity, k, seen, placed, i))
                     yield return fault;
         }
     }
 
-    private static IEnumerable<Fault> One(Activity activity, int k, PlacedProject placed, int i)
+    private static IEnumerable<Fault> One(Activity activity, int k, HashSet<string> seen, PlacedProject placed, int i)
     {
         var (pool, units) = activity.Demands[k];
         Place At(string member) => placed.Activity(i).Under("demands", k).Under(member);
@@ -28,15 +30,15 @@ internal static class DemandRule
         if (!sound && !double.IsNaN(units))
             yield return ValueRule.Finite(units, () => At("units"))
                 ?? At("units").Fault(RuleCodes.UnitsRange,
-                    $"{activity.Id} draws {units} units; it must be more than 0 and at most {Bounds.Units:0}.");
+                    $"{placed.Name(i)} draws {units} units; it must be more than 0 and at most {Bounds.Units:0}.");
         if (string.IsNullOrEmpty(pool)) yield break;
         if (placed.Context.LastCapacity(pool) is not { } capacity)
             yield return At("pool").Fault(RuleCodes.PoolUnknown, $"There is no pool {TextRule.Shown(pool)}.");
-        else if (activity.Demands.Take(k).Any(d => d.Pool == pool))
-            yield return At("pool").Fault(RuleCodes.DemandRepeated, $"{activity.Id} draws on the pool {pool} twice; add the units up.");
+        else if (!seen.Add(pool))
+            yield return At("pool").Fault(RuleCodes.DemandRepeated, $"{placed.Name(i)} draws on the pool {pool} twice; add the units up.");
         else if (sound && units > capacity && !activity.Finished)
             yield return At("units").Fault(
-                RuleCodes.DemandNeverFits, $"{activity.Id} needs {units} of the pool {pool}, which in the end has {capacity}: "
+                RuleCodes.DemandNeverFits, $"{placed.Name(i)} needs {units} of the pool {pool}, which in the end has {capacity}: "
                 + "it could never start.");
     }
 }

@@ -15,14 +15,14 @@ internal static class MilestoneRule
             if (activity.Milestone)
                 foreach (var (member, what) in Work(activity))
                     yield return placed.Activity(i).Under(member).Fault(RuleCodes.MilestoneWork,
-                        $"{activity.Id} is a milestone and cannot have {what}.");
+                        $"{placed.Name(i)} is a milestone and cannot have {what}.");
             if (activity.Milestone && activity.ActualStart is not null)
                 yield return placed.Activity(i).Under("actualStart").Fault(
-                    RuleCodes.MilestoneStart, $"{activity.Id} is a milestone: it has no start, only an actual finish.");
+                    RuleCodes.MilestoneStart, $"{placed.Name(i)} is a milestone: it has no start, only an actual finish.");
             if (activity.Commitment is not { } promised) continue;
             if (!activity.Milestone)
                 yield return placed.Activity(i).Under("commitment").Fault(
-                    RuleCodes.CommitmentPlace, $"Only a milestone can carry a commitment, and {activity.Id} is none.");
+                    RuleCodes.CommitmentPlace, $"Only a milestone can carry a commitment, and {placed.Name(i)} is none.");
             var index = i;
             if (ValueRule.Date(promised, () => placed.Activity(index).Under("commitment")) is { } range) yield return range;
         }

@@ -26,20 +26,20 @@ internal static class ProgressRule
     {
         if (activity.Duration is null && !activity.Finished)
             yield return placed.Activity(i).Fault(RuleCodes.DurationMissing,
-                $"{activity.Id} has no duration; only milestones and finished work can do without.");
+                $"{placed.Name(i)} has no duration; only milestones and finished work can do without.");
         if (activity.Remaining is null && activity.UnderWay)
             yield return placed.Activity(i).Fault(
-                RuleCodes.RemainingMissing, $"{activity.Id} has started and is not finished, so it must say how much work is remaining.");
+                RuleCodes.RemainingMissing, $"{placed.Name(i)} has started and is not finished, so it must say how much work is remaining.");
         if (activity.Remaining is not null && activity.Finished)
             yield return placed.Activity(i).Under("remaining").Fault(RuleCodes.RemainingFinished,
-                $"{activity.Id} is finished, so no work can be remaining.");
+                $"{placed.Name(i)} is finished, so no work can be remaining.");
         if (activity.Remaining is not null && !activity.Started)
             yield return placed.Activity(i).Under("remaining").Fault(
-                RuleCodes.RemainingNotStarted, $"{activity.Id} has remaining work but no actual start; before the start only "
+                RuleCodes.RemainingNotStarted, $"{placed.Name(i)} has remaining work but no actual start; before the start only "
                 + "the duration counts.");
         if (activity.Finished && activity.ActualStart is null)
             yield return placed.Activity(i).Fault(RuleCodes.ActualStartMissing,
-                $"{activity.Id} is finished, so it must also say when it started.");
+                $"{placed.Name(i)} is finished, so it must also say when it started.");
     }
 
     private static IEnumerable<Fault> Actuals(Activity activity, PlacedProject placed, int i)
@@ -49,7 +49,7 @@ internal static class ProgressRule
         if (Actual(placed, i, finish, "actualFinish") is { } ofFinish) yield return ofFinish;
         if (finish < start && finish != DateOnly.MinValue)
             yield return placed.Activity(i).Under("actualFinish").Fault(
-                RuleCodes.ActualOrder, $"{activity.Id} finishes on {finish:yyyy-MM-dd}, before it starts on {start:yyyy-MM-dd}.");
+                RuleCodes.ActualOrder, $"{placed.Name(i)} finishes on {finish:yyyy-MM-dd}, before it starts on {start:yyyy-MM-dd}.");
     }
 
     private static Fault? Actual(PlacedProject placed, int i, DateOnly? date, string member)

@@ -27,12 +27,13 @@ internal static class ReferenceRule
 
     private static IEnumerable<Fault> Drivers(IReadOnlyList<string> drivers, PlacedProject placed, Func<Place> at)
     {
+        var seen = new HashSet<string>(StringComparer.Ordinal);
         for (var k = 0; k < drivers.Count; k++)
         {
             if (drivers[k] is not { } id) continue;
             if (!placed.Context.HasDriver(id))
                 yield return at().Under("drivers", k).Fault(RuleCodes.DriverUnknown, $"There is no driver {TextRule.Shown(id)}.");
-            else if (drivers.Take(k).Contains(id))
+            else if (!seen.Add(id))
                 yield return at().Under("drivers", k).Fault(RuleCodes.DriverRepeated,
                     $"The driver {id} is listed twice; a driver acts once.");
         }

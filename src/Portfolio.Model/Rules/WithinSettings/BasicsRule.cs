@@ -26,11 +26,10 @@ internal static class BasicsRule
         foreach (var fault in Confidence(settings.Confidence, at, limits)) yield return fault;
         if (settings.Seed is < 0 or > Bounds.Seed)
             yield return at.Under("seed").Fault(RuleCodes.SeedRange,
-                $"The seed is {settings.Seed}; it must lie between 0 and {Bounds.Seed}.");
+                $"The seed must be a whole number from 0 to {Bounds.Seed}.");
         if (settings.Iterations < limits.MinIterations || settings.Iterations > limits.MaxIterations)
             yield return at.Under("iterations").Fault(
-                RuleCodes.IterationsRange, $"{settings.Iterations} iterations are asked for; {limits.MinIterations} to "
-                + $"{limits.MaxIterations} are possible.");
+                RuleCodes.IterationsRange, $"The number of iterations must be from {limits.MinIterations} to {limits.MaxIterations}.");
     }
 
     private static IEnumerable<Fault> Confidence(IReadOnlyList<double> levels, Place at, ModelLimits limits)

@@ -9,7 +9,7 @@ internal static class CalendarRule
     public static IEnumerable<Fault> Check(Settings settings, Place at, ModelLimits limits)
     {
         var calendars = settings.Calendars;
-        Place Of(int i) => at.Under("calendars", i).About("calendar/" + calendars[i].Id);
+        Place Of(int i) => at.Under("calendars", i).About("calendar/", calendars[i].Id, i);
 
         foreach (var fault in Ids.Check(calendars, c => c.Id, "calendar", Of)) yield return fault;
         for (var i = 0; i < calendars.Count; i++)

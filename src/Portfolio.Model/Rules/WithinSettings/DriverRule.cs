@@ -10,7 +10,7 @@ internal static class DriverRule
     public static IEnumerable<Fault> Check(Settings settings, Place at, ModelLimits limits)
     {
         var drivers = settings.Drivers;
-        Place Of(int i) => at.Under("drivers", i).About("driver/" + drivers[i].Id);
+        Place Of(int i) => at.Under("drivers", i).About("driver/", drivers[i].Id, i);
 
         foreach (var fault in Ids.Check(drivers, d => d.Id, "driver", Of)) yield return fault;
         for (var i = 0; i < drivers.Count; i++)

@@ -9,7 +9,7 @@ internal static class PoolRules
     public static IEnumerable<Fault> Check(Settings settings, Place at, ModelLimits limits)
     {
         var pools = settings.Pools;
-        Place Of(int i) => at.Under("pools", i).About("pool/" + pools[i].Id);
+        Place Of(int i) => at.Under("pools", i).About("pool/", pools[i].Id, i);
 
         foreach (var fault in Ids.Check(pools, p => p.Id, "pool", Of)) yield return fault;
         for (var i = 0; i < pools.Count; i++)
