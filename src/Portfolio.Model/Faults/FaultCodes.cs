@@ -26,4 +26,7 @@ public static class FaultCodes
     // What only the engine's arithmetic can tell.
     public const string DistributionEnds = "distribution.ends";
     public const string DependenceNotPositive = "dependence.not-positive";
+
+    // A parameter of the query that cannot be read or is out of range; the subject is its name.
+    public const string ParameterInvalid = "parameter.invalid";
 }
