@@ -41,11 +41,8 @@ public sealed class AtomicityTests
     [MemberData(nameof(Names))]
     public async Task A_failure_before_any_statement_leaves_nothing_half_written(string name)
     {
-        await using var store = await TestStore.OpenAsync();
-        await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
-        await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
-        var held = (await store.ClaimAsync())!;
-        await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
+        var (store, held) = await BeginAsync();
+        await using var _ = store;
         var before = await store.DumpAsync();
 
         var failures = 0;
@@ -72,5 +69,48 @@ public sealed class AtomicityTests
         Assert.NotEqual(before, await store.DumpAsync());
         Assert.Equal("ok", await store.RawAsync<string>("pragma integrity_check"));
         Assert.Null((await store.Audit.VerifyAsync(TestStore.Cancellation)).FirstBroken);
+    }
+
+    /// <summary>The files as they lie on the disk before each statement are what a process that is killed there leaves behind.</summary>
+    [Theory]
+    [MemberData(nameof(Names))]
+    public async Task A_process_killed_before_any_statement_leaves_nothing_half_written(string name)
+    {
+        var (store, held) = await BeginAsync();
+        await using var _ = store;
+        var before = await store.DumpAsync();
+        var copies = new List<string>();
+        store.Database.BeforeStatement = _ => copies.Add(Copy(store.Folder, copies.Count));
+        await Writes[name](store, held);
+        store.Database.BeforeStatement = null;
+        copies.Add(Copy(store.Folder, copies.Count));
+        var after = await store.DumpAsync();
+
+        Assert.True(copies.Count > 3, $"only {copies.Count} steps");
+        foreach (var copy in copies)
+        {
+            await using (await Database.OpenAsync(copy, store.Clock, TestStore.Cancellation))
+            {
+            }
+            Assert.Equal(copy == copies[^1] ? after : before, await TableDump.DumpAsync(copy));
+        }
+    }
+
+    private static async Task<(TestStore Store, RunLease Held)> BeginAsync()
+    {
+        var store = await TestStore.OpenAsync();
+        await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
+        await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
+        var held = (await store.ClaimAsync())!;
+        await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
+        return (store, held);
+    }
+
+    private static string Copy(string folder, int step)
+    {
+        var copy = Directory.CreateDirectory(Path.Combine(folder, $"killed-{step}")).FullName;
+        foreach (var file in Directory.GetFiles(folder, "portfolio.db*").Where(file => !file.EndsWith("-shm", StringComparison.Ordinal)))
+            File.Copy(file, Path.Combine(copy, Path.GetFileName(file)));
+        return copy;
     }
 }

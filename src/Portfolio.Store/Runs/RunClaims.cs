@@ -8,7 +8,7 @@ public sealed class RunClaims(Database database)
     // A run whose worker vanished goes first; then the portfolio that was served longest ago, so that none starves behind another's queue.
     private static readonly string NextSql = $"""
         select r.id, r.engine_version from run r
-        where (r.state = 'queued' or r.state = 'running' and r.lease_until <= @Now) and {Granted.Whole(Right.Admin, "r.portfolio")}
+        where r.state in ('queued', 'running') and (r.state = 'queued' or r.lease_until <= @Now) and {Granted.Whole(Right.Admin, "r.portfolio")}
         order by case r.state when 'running' then 0 else 1 end,
           coalesce((select max(s.started_at) from run s where s.portfolio = r.portfolio), 0), r.sequence
         limit 1

@@ -7,9 +7,11 @@ namespace Portfolio.Store.Tests.Testing;
 /// <summary>Every row of every table as text: two equal dumps are two equal databases.</summary>
 internal static class TableDump
 {
-    public static async Task<string> DumpAsync(this TestStore store)
+    public static Task<string> DumpAsync(this TestStore store) => DumpAsync(store.Folder);
+
+    public static async Task<string> DumpAsync(string folder)
     {
-        await using var connection = new SqliteConnection($"Data Source={Path.Combine(store.Folder, "portfolio.db")};Pooling=False");
+        await using var connection = new SqliteConnection($"Data Source={Path.Combine(folder, "portfolio.db")};Pooling=False");
         await connection.OpenAsync(TestStore.Cancellation);
         var dump = new StringBuilder();
         foreach (var table in await ReadAsync(connection, "select name from sqlite_schema where type = 'table' and name not like 'sqlite_stat%' order by name"))

@@ -54,7 +54,7 @@ create table run (
 create index run_by_portfolio on run (portfolio, sequence);
 create index run_by_date on run (portfolio, as_of);
 create index run_served on run (portfolio, started_at);
-create index run_open on run (state, sequence) where state in ('queued', 'running');
+create index run_by_state on run (state, sequence);
 
 -- The run that stands for a date.
 create table series_point (
