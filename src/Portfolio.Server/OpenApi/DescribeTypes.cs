@@ -23,7 +23,7 @@ internal static class DescribeTypes
         // A nullable list of a type that is read by hand loses its items.
         if (context.JsonTypeInfo.ElementType is { } element && (element == typeof(LinkJson) || element == typeof(DistributionJson)))
             schema.Items = await context.GetOrCreateSchemaAsync(element, null, cancellation);
-        if (context.JsonPropertyInfo is { } member)
+        if (context.JsonPropertyInfo is { } member && member.DeclaringType.Namespace == typeof(DocumentJson).Namespace)
             Describe(schema, member.Name, Converter(member.AttributeProvider));
     }
 
