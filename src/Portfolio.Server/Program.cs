@@ -1,5 +1,36 @@
+using Portfolio.Server.Access;
+using Portfolio.Server.Documents;
+using Portfolio.Server.Endpoints;
+using Portfolio.Server.Hosting;
+using Portfolio.Server.OpenApi;
+using Portfolio.Server.Problems;
+
 var builder = WebApplication.CreateBuilder(args);
-builder.Services.AddOpenApi();
+#pragma warning disable RS0030 // The one place where the system's clock comes in.
+builder.Services.AddSingleton(TimeProvider.System);
+#pragma warning restore RS0030
+builder.Logging.AddJsonLogs();
+builder.AddWebServer();
+builder.Services.AddPortfolioOptions();
+builder.Services.AddStorage();
+builder.Services.AddAccess();
+builder.Services.AddProblems();
+builder.Services.AddDocuments();
+builder.Services.AddHealth();
+builder.Services.AddApiDescription();
+builder.RestWhenDescribing();
+
 var app = builder.Build();
-app.MapOpenApi("/openapi.json");
-app.Run();
+app.UseProblems();
+app.UseAccess();
+app.MapHealth();
+app.MapApiDescription();
+
+var api = app.MapGroup("/v1").Refuses(400, 401, 429);
+api.MapPortfolios();
+
+var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
+portfolio.MapDocument();
+portfolio.MapRevisions();
+
+await app.RunAsync();

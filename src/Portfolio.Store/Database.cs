@@ -25,13 +25,17 @@ public sealed class Database : IAsyncDisposable
     /// <summary>Told of each statement of a write, and of <c>commit</c>, before it is run: where tests let storage fail.</summary>
     internal Action<string>? BeforeStatement { get; set; }
 
-    /// <summary>Opens <c>portfolio.db</c> in the folder (made when missing), taking the folder for this process, and brings it to the newest migration.</summary>
+    /// <summary>
+    /// Opens <c>portfolio.db</c> in the folder (made when missing), taking the folder for this process, and brings it to the newest
+    /// migration.
+    /// </summary>
     /// <exception cref="StoreInUseException">Another process has the folder.</exception>
-    /// <exception cref="StoreSchemaException">The stored migrations are not this program's: a newer one wrote here, or one was changed.</exception>
+    /// <exception cref="StoreSchemaException">The stored steps are not this program's: a newer one wrote here, or one changed.</exception>
     public static Task<Database> OpenAsync(string directory, TimeProvider clock, CancellationToken cancellation) =>
         OpenAsync(directory, clock, SqliteMigrations.All, cancellation);
 
-    internal static async Task<Database> OpenAsync(string directory, TimeProvider clock, IReadOnlyList<Migration> migrations, CancellationToken cancellation)
+    internal static async Task<Database> OpenAsync(
+        string directory, TimeProvider clock, IReadOnlyList<Migration> migrations, CancellationToken cancellation)
     {
         cancellation.ThrowIfCancellationRequested();
         var database = new Database(SqliteFolder.Take(directory), clock);
@@ -94,8 +98,8 @@ public sealed class Database : IAsyncDisposable
     }
 
     /// <summary>
-    /// Writes in one transaction that holds the write lock from its beginning; it is committed when <paramref name="work"/> returns and rolled back when it throws.
-    /// Not to be nested: the inner one would wait for the outer one for ever.
+    /// Writes in one transaction that holds the write lock from its beginning; it is committed when <paramref name="work"/> returns and
+    /// rolled back when it throws. Not to be nested: the inner one would wait for the outer one for ever.
     /// </summary>
     internal async Task<T> WriteAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
     {

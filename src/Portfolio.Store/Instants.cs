@@ -2,12 +2,15 @@ using System.Globalization;
 
 namespace Portfolio.Store;
 
-/// <summary>How time is kept: instants as microseconds since 1970 in UTC, dates as ISO text. Both databases sort and compare these alike.</summary>
+/// <summary>
+/// How time is kept: instants as microseconds since 1970 in UTC, dates as ISO text. Both databases sort and compare these alike.
+/// </summary>
 internal static class Instants
 {
     private const long TicksPerMicrosecond = TimeSpan.TicksPerMillisecond / 1000;
 
-    public static long ToMicroseconds(this DateTimeOffset instant) => (instant.UtcTicks - DateTimeOffset.UnixEpoch.Ticks) / TicksPerMicrosecond;
+    public static long ToMicroseconds(this DateTimeOffset instant) =>
+        (instant.UtcTicks - DateTimeOffset.UnixEpoch.Ticks) / TicksPerMicrosecond;
 
     public static DateTimeOffset ToInstant(this long microseconds) => DateTimeOffset.UnixEpoch.AddTicks(microseconds * TicksPerMicrosecond);
 

@@ -30,9 +30,11 @@ public sealed class StoreTransaction
     internal Task<int> ExecuteAsync(string sql, object? parameters = null) => Connection.ExecuteAsync(Command(sql, parameters));
 
     /// <summary>The first row, or null (the default) when there is none.</summary>
-    internal Task<T?> FirstAsync<T>(string sql, object? parameters = null) => Connection.QueryFirstOrDefaultAsync<T>(Command(sql, parameters));
+    internal Task<T?> FirstAsync<T>(
+        string sql, object? parameters = null) => Connection.QueryFirstOrDefaultAsync<T>(Command(sql, parameters));
 
-    internal async Task<List<T>> ListAsync<T>(string sql, object? parameters = null) => [.. await Connection.QueryAsync<T>(Command(sql, parameters))];
+    internal async Task<List<T>> ListAsync<T>(string sql, object? parameters = null) =>
+        [.. await Connection.QueryAsync<T>(Command(sql, parameters))];
 
     /// <summary>Rows one by one, for results too large to hold.</summary>
     internal IAsyncEnumerable<T> StreamAsync<T>(string sql, object? parameters = null)

@@ -14,13 +14,16 @@ public sealed class AtomicityTests
         ["changed document"] = (store, _) => store.Documents.WriteAsync(
             Caller.System,
             new DocumentWrite { Portfolio = "works", Action = "document.put" },
-            (head, _) => Task.FromResult<Proposal>(TestStore.Parts(("quay", "b2"), ("weir", "c")) with { Removed = ["lock"], Order = ["weir", "quay"] }),
+            (head, _) => Task.FromResult<Proposal>(
+                TestStore.Parts(("quay", "b2"), ("weir", "c")) with { Removed = ["lock"], Order = ["weir", "quay"] }),
             TestStore.Cancellation),
         ["key"] = (store, _) => store.Keys.CreateAsync(
             Caller.System, "k", [new(Right.Read, "works", ["lock", "quay"]), new(Right.Finance, "*")], null, TestStore.Cancellation),
         ["run asked for"] = (store, _) => store.QueueAsync(RunScenes.Asked(RunScenes.Today)),
-        ["run due"] = (store, _) => store.Requests.CreateDueAsync(Caller.System, RunScenes.Asked(RunScenes.Today), RunScenes.Today, TestStore.Cancellation),
-        ["stop asked for"] = (store, held) => store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation),
+        ["run due"] = (store, _) => store.Requests.CreateDueAsync(
+            Caller.System, RunScenes.Asked(RunScenes.Today), RunScenes.Today, TestStore.Cancellation),
+        ["stop asked for"] = (
+            store, held) => store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation),
         ["claim after another engine"] = (store, _) =>
         {
             store.Clock.Advance(RunScenes.Lease);

@@ -30,7 +30,8 @@ public sealed class DatabaseTests
             await using (var old = await Database.OpenAsync(folder, clock, [.. SqliteMigrations.All.Take(2)], TestStore.Cancellation))
             {
                 Assert.Equal(2, await old.MigrationLevelAsync(TestStore.Cancellation));
-                await old.WriteAsync(open => open.ExecuteAsync("insert into portfolio (id, created_at) values ('works', 1)"), TestStore.Cancellation);
+                await old.WriteAsync(
+                    open => open.ExecuteAsync("insert into portfolio (id, created_at) values ('works', 1)"), TestStore.Cancellation);
             }
             await using var now = await Database.OpenAsync(folder, clock, TestStore.Cancellation);
             Assert.Equal(SqliteMigrations.All.Count, await now.MigrationLevelAsync(TestStore.Cancellation));
@@ -59,7 +60,8 @@ public sealed class DatabaseTests
         await using var store = await TestStore.OpenAsync();
         await store.RawAsync<long>(tampering);
         await store.Database.DisposeAsync();
-        var refused = await Assert.ThrowsAsync<StoreSchemaException>(() => Database.OpenAsync(store.Folder, store.Clock, TestStore.Cancellation));
+        var refused = await Assert.ThrowsAsync<StoreSchemaException>(
+            () => Database.OpenAsync(store.Folder, store.Clock, TestStore.Cancellation));
         Assert.Contains(told, refused.Message, StringComparison.Ordinal);
     }
 

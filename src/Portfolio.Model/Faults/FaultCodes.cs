@@ -29,4 +29,7 @@ public static class FaultCodes
 
     // A parameter of the query that cannot be read or is out of range; the subject is its name.
     public const string ParameterInvalid = "parameter.invalid";
+
+    // What the history does not allow.
+    public const string CurrencyFixed = "currency.fixed";
 }

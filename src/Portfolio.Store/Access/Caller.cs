@@ -10,7 +10,8 @@ public sealed record Grant(Right Right, string Portfolio, IReadOnlyList<string>?
 }
 
 /// <summary>
-/// Who asks: a key with the grants it had when it was looked up. Every query asks again in SQL, so a key that is revoked meanwhile finds nothing.
+/// Who asks: a key with the grants it had when it was looked up. Every query asks again in SQL, so a key that is revoked meanwhile finds
+/// nothing.
 /// </summary>
 public sealed record Caller(string KeyId, string Name, IReadOnlyList<Grant> Grants)
 {
@@ -26,7 +27,8 @@ public sealed record Caller(string KeyId, string Name, IReadOnlyList<Grant> Gran
 
     /// <summary>True when this project of the portfolio is reached with <paramref name="right"/> or one that includes it.</summary>
     public bool Holds(Right right, string portfolio, string project) =>
-        Grants.Any(grant => Suffices(grant, right) && Reaches(grant, portfolio) && grant.Projects?.Contains(project, StringComparer.Ordinal) != false);
+        Grants.Any(grant =>
+            Suffices(grant, right) && Reaches(grant, portfolio) && grant.Projects?.Contains(project, StringComparer.Ordinal) != false);
 
     /// <summary>True when some part of the portfolio, perhaps only single projects, is reached with the right.</summary>
     public bool HoldsSomewhere(Right right, string portfolio) => Grants.Any(grant => Suffices(grant, right) && Reaches(grant, portfolio));

@@ -2,7 +2,9 @@ using Portfolio.Store.Audit;
 
 namespace Portfolio.Store.Access;
 
-/// <summary>Keys and their grants. Of the presented text only the SHA-256 is kept: a slow hash is for passwords, not for 256 random bits.</summary>
+/// <summary>
+/// Keys and their grants. Of the presented text only the SHA-256 is kept: a slow hash is for passwords, not for 256 random bits.
+/// </summary>
 public sealed class KeyStore(Database database)
 {
     private const string Columns = "k.id, k.name, k.created_at, k.expires_at, k.revoked_at";
@@ -53,13 +55,18 @@ public sealed class KeyStore(Database database)
     /// <summary>True when an administrator key exists, so that nothing has to be generated.</summary>
     public Task<bool> HasAdministratorAsync(CancellationToken cancellation) => database.ReadAsync(HasAdministratorAsync, cancellation);
 
-    private static async Task<bool> HasAdministratorAsync(StoreTransaction open) => await open.FirstAsync<long>(AdministratorSql, new { open.Now }) > 0;
+    private static async Task<bool> HasAdministratorAsync(StoreTransaction open) =>
+        await open.FirstAsync<long>(AdministratorSql, new { open.Now }) > 0;
 
     private static readonly string MayAdministerSql = $"select case when {Granted.Everywhere(Right.Admin)} then 1 else 0 end";
 
     /// <summary>Makes a key; null when the caller is no administrator of all portfolios.</summary>
     public Task<NewKey?> CreateAsync(
-        Caller caller, string name, IReadOnlyList<Grant> grants, DateTimeOffset? expiresAt, CancellationToken cancellation) => database.WriteAsync(
+        Caller caller,
+        string name,
+        IReadOnlyList<Grant> grants,
+        DateTimeOffset? expiresAt,
+        CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             if (await open.FirstAsync<long>(MayAdministerSql, new { Caller = caller.KeyId, open.Now }) == 0)
@@ -76,7 +83,9 @@ public sealed class KeyStore(Database database)
         where k.id = @Id and k.secret_hash is not null and (k.id = @Caller or {Granted.Everywhere(Right.Admin)})
         """;
 
-    /// <summary>One key with its grants; null when there is none or the caller may not see it (administrators see all, others themselves).</summary>
+    /// <summary>
+    /// One key with its grants; null when there is none or the caller may not see it (administrators see all, others themselves).
+    /// </summary>
     public Task<StoredKey?> FindAsync(Caller caller, string id, CancellationToken cancellation) => database.ReadAsync(
         async open =>
         {
@@ -92,7 +101,8 @@ public sealed class KeyStore(Database database)
     private const string AllGrantsSql = "select key, granted, portfolio, project from key_grant";
 
     /// <summary>All keys, oldest first; none when the caller is no administrator.</summary>
-    public Task<IReadOnlyList<StoredKey>> ListAsync(Caller caller, CancellationToken cancellation) => database.ReadAsync<IReadOnlyList<StoredKey>>(
+    public Task<IReadOnlyList<StoredKey>> ListAsync(
+        Caller caller, CancellationToken cancellation) => database.ReadAsync<IReadOnlyList<StoredKey>>(
         async open =>
         {
             var rows = await open.ListAsync<KeyRow>(ListSql, new { Caller = caller.KeyId, open.Now });
@@ -121,15 +131,18 @@ public sealed class KeyStore(Database database)
         insert into api_key (id, name, secret_hash, created_at, expires_at) values (@Id, @Name, @Hash, @CreatedAt, @ExpiresAt)
         """;
 
-    private const string InsertGrantSql = "insert into key_grant (key, granted, portfolio, project) values (@Key, @Granted, @Portfolio, @Project)";
+    private const string InsertGrantSql =
+        "insert into key_grant (key, granted, portfolio, project) values (@Key, @Granted, @Portfolio, @Project)";
 
-    private static async Task<IReadOnlyList<GrantRow>> InsertAsync(StoreTransaction open, Caller caller, KeyRow key, string secret, IReadOnlyList<Grant> grants)
+    private static async Task<IReadOnlyList<GrantRow>> InsertAsync(
+        StoreTransaction open, Caller caller, KeyRow key, string secret, IReadOnlyList<Grant> grants)
     {
         await open.ExecuteAsync(InsertKeySql, new { key.Id, key.Name, Hash = KeySecret.HashOf(secret), key.CreatedAt, key.ExpiresAt });
         GrantRow[] rows = [.. grants.SelectMany(grant => GrantRow.From(key.Id, grant)).Distinct()];
         foreach (var row in rows)
             await open.ExecuteAsync(InsertGrantSql, row);
-        await AuditChain.AppendAsync(open, caller.KeyId, "key.create", $"keys/{key.Id}", new { key.Name, grants, expiresAt = key.ExpiresAt.ToInstant() });
+        await AuditChain.AppendAsync(
+            open, caller.KeyId, "key.create", $"keys/{key.Id}", new { key.Name, grants, expiresAt = key.ExpiresAt.ToInstant() });
         return rows;
     }
 }

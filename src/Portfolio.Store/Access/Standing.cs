@@ -1,6 +1,8 @@
 namespace Portfolio.Store.Access;
 
-/// <summary>Where a caller stands before a write: decided inside the transaction that writes, by the same conditions as every read.</summary>
+/// <summary>
+/// Where a caller stands before a write: decided inside the transaction that writes, by the same conditions as every read.
+/// </summary>
 /// <param name="Exists">There is such a portfolio.</param>
 /// <param name="Known">The caller has some grant on it; otherwise it must not learn that it exists.</param>
 /// <param name="Whole">The asked right, on the whole of it.</param>

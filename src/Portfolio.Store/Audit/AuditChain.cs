@@ -6,8 +6,9 @@ using System.Text.Json;
 namespace Portfolio.Store.Audit;
 
 /// <summary>
-/// How entries hang together. The hash of an entry is SHA-256, in lower-case hex, over its fields in the order sequence, microseconds, actor, action, object,
-/// detail, previous hash: each as UTF-8 text preceded by its length in bytes and a colon, so that no two entries read alike. Entry 1 follows sixty-four zeros.
+/// How entries hang together. The hash of an entry is SHA-256, in lower-case hex, over its fields in the order sequence, microseconds,
+/// actor, action, object, detail, previous hash: each as UTF-8 text preceded by its length in bytes and a colon, so that no two entries
+/// read alike. Entry 1 follows sixty-four zeros.
 /// </summary>
 internal static class AuditChain
 {

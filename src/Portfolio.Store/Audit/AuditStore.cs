@@ -26,11 +26,14 @@ public sealed class AuditStore(Database database)
         order by sequence desc limit @Limit
         """;
 
-    /// <summary>Entries, newest first, with numbers below <paramref name="before"/>; none unless the caller administers all portfolios.</summary>
+    /// <summary>
+    /// Entries, newest first, with numbers below <paramref name="before"/>; none unless the caller administers all portfolios.
+    /// </summary>
     public async Task<IReadOnlyList<AuditEntry>> ListAsync(Caller caller, long? before, int limit, CancellationToken cancellation)
     {
         var rows = await database.ReadAsync(
-            open => open.ListAsync<AuditRow>(ListSql, new { Caller = caller.KeyId, open.Now, Before = before, Limit = limit }), cancellation);
+            open => open.ListAsync<AuditRow>(
+                ListSql, new { Caller = caller.KeyId, open.Now, Before = before, Limit = limit }), cancellation);
         return [.. rows.Select(ToEntry)];
     }
 

@@ -42,7 +42,8 @@ public sealed partial class DocumentStore
         """;
 
     /// <summary>The revision that was current at an instant: the last one recorded at or before it.</summary>
-    public async Task<StoredRevision?> FindRevisionAtAsync(Caller caller, string portfolio, DateTimeOffset instant, CancellationToken cancellation)
+    public async Task<StoredRevision?> FindRevisionAtAsync(
+        Caller caller, string portfolio, DateTimeOffset instant, CancellationToken cancellation)
     {
         var row = await database.ReadAsync(
             open => open.FirstAsync<RevisionRow>(
@@ -59,10 +60,12 @@ public sealed partial class DocumentStore
         """;
 
     /// <summary>What a revision changed, in document order, as far as the caller may read the parts.</summary>
-    public async Task<IReadOnlyList<PartChange>> ListChangesAsync(Caller caller, string portfolio, long number, CancellationToken cancellation)
+    public async Task<IReadOnlyList<PartChange>> ListChangesAsync(
+        Caller caller, string portfolio, long number, CancellationToken cancellation)
     {
         var rows = await database.ReadAsync(
-            open => open.ListAsync<ChangeRow>(ChangesSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Number = number }), cancellation);
+            open => open.ListAsync<ChangeRow>(
+                ChangesSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Number = number }), cancellation);
         return [.. rows.Select(row => new PartChange(row.Project, row.OldHash, row.NewHash))];
     }
 

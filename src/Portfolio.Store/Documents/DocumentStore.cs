@@ -20,22 +20,27 @@ public sealed partial class DocumentStore(Database database)
     public async Task<IReadOnlyList<PortfolioEntry>> ListAsync(Caller caller, string? after, int limit, CancellationToken cancellation)
     {
         var rows = await database.ReadAsync(
-            open => open.ListAsync<PortfolioRow>(ListSql, new { Caller = caller.KeyId, open.Now, After = after, Limit = limit }), cancellation);
+            open => open.ListAsync<PortfolioRow>(
+                ListSql, new { Caller = caller.KeyId, open.Now, After = after, Limit = limit }), cancellation);
         return [.. rows.Select(row => new PortfolioEntry(row.Id, row.Number, row.CreatedAt.ToInstant(), row.ArchivedAt.ToInstant()))];
     }
 
     private static readonly string PartsSql = $"""
         select v.project, c.hash, c.bytes, c.size from revision_part v join part_content c on c.hash = v.hash
-        where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+        where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number
+          and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
         order by v.position
         """;
 
-    /// <summary>The document at a revision (null: the newest), with the parts that the caller may read; null when there is no such revision.</summary>
+    /// <summary>
+    /// The document at a revision (null: the newest), with the parts that the caller may read; null when there is no such revision.
+    /// </summary>
     public async Task<StoredDocument?> ReadAsync(Caller caller, string portfolio, long? revision, CancellationToken cancellation)
     {
         var (found, rows) = await database.ReadAsync(
             async open => await FindRevisionAsync(open, caller, portfolio, revision) is { } row
-                ? (row, await open.ListAsync<ContentRow>(PartsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, row.Number }))
+                ? (row, await open.ListAsync<ContentRow>(
+                    PartsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, row.Number }))
                 : (null, []),
             cancellation);
         return found is null ? null : new StoredDocument(found.ToRevision(), [.. rows.Select(row => row.ToPart())]);
@@ -55,7 +60,8 @@ public sealed partial class DocumentStore(Database database)
             {
                 if (await FindRevisionAsync(open, caller, portfolio, revision) is not { } found)
                     return null;
-                var rows = await open.ListAsync<PartRow>(HeadsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, found.Number });
+                var rows = await open.ListAsync<PartRow>(
+                    HeadsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, found.Number });
                 return [.. rows.Select(row => new PartHead(row.Project, row.Hash))];
             },
             cancellation);
@@ -73,7 +79,8 @@ public sealed partial class DocumentStore(Database database)
 
     /// <summary>One part at a revision (null: the newest). A project can also be read with the right to submit to it.</summary>
     /// <param name="project">The project's id, or <see cref="PartNames.Settings"/>.</param>
-    public async Task<StoredPart?> ReadPartAsync(Caller caller, string portfolio, string project, long? revision, CancellationToken cancellation)
+    public async Task<StoredPart?> ReadPartAsync(
+        Caller caller, string portfolio, string project, long? revision, CancellationToken cancellation)
     {
         var row = await database.ReadAsync(
             open => open.FirstAsync<ContentRow>(

@@ -7,7 +7,10 @@ public sealed record DocumentWrite
 {
     public required string Portfolio { get; init; }
 
-    /// <summary><see cref="Right.Manage"/>, or <see cref="Right.Submit"/> for updates. Making a portfolio needs <see cref="Right.Admin"/> whatever is said here.</summary>
+    /// <summary>
+    /// <see cref="Right.Manage"/>, or <see cref="Right.Submit"/> for updates. Making a portfolio needs <see cref="Right.Admin"/> whatever
+    /// is said here.
+    /// </summary>
     public Right Right { get; init; } = Right.Manage;
 
     /// <summary>Kept with the revision.</summary>
@@ -19,7 +22,9 @@ public sealed record DocumentWrite
     /// <summary>What the audit entry says it was done to; default the portfolio.</summary>
     public string? Object { get; init; }
 
-    /// <summary>Called last inside the transaction, for rows that stand or fall with the write. It sees the result that will be returned.</summary>
+    /// <summary>
+    /// Called last inside the transaction, for rows that stand or fall with the write. It sees the result that will be returned.
+    /// </summary>
     public Func<StoreTransaction, WriteResult, CancellationToken, Task>? Joining { get; init; }
 }
 

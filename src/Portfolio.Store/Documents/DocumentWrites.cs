@@ -8,8 +8,9 @@ namespace Portfolio.Store.Documents;
 public sealed partial class DocumentStore
 {
     /// <summary>
-    /// The one write path, one transaction: the head is read, <paramref name="decide"/> looks at it (null: the portfolio does not exist yet) and proposes, then
-    /// revision, parts, audit entry and outbox row are written. When <paramref name="decide"/> throws, nothing is kept. It must not write to the store itself.
+    /// The one write path, one transaction: the head is read, <paramref name="decide"/> looks at it (null: the portfolio does not exist
+    /// yet) and proposes, then revision, parts, audit entry and outbox row are written. When <paramref name="decide"/> throws, nothing is
+    /// kept. It must not write to the store itself.
     /// </summary>
     public async Task<WriteResult> WriteAsync(
         Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation)
@@ -126,7 +127,8 @@ public sealed partial class DocumentStore
         await OutboxStore.AppendAsync(open, write.Portfolio, "revision.created", $"{result.Revision}", payload);
     }
 
-    private Task AuditRefusalAsync(Caller caller, DocumentWrite write, WriteOutcome outcome, string summary, CancellationToken cancellation) =>
+    private Task AuditRefusalAsync(
+        Caller caller, DocumentWrite write, WriteOutcome outcome, string summary, CancellationToken cancellation) =>
         new AuditStore(database).AppendAsync(
             caller, write.Action, ObjectOf(write), new { outcome = "refused", because = outcome.ToString(), summary }, cancellation);
 

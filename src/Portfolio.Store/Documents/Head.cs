@@ -1,6 +1,8 @@
 namespace Portfolio.Store.Documents;
 
-/// <summary>The newest revision, seen from inside the transaction that may replace it. Valid only until the decision has been returned.</summary>
+/// <summary>
+/// The newest revision, seen from inside the transaction that may replace it. Valid only until the decision has been returned.
+/// </summary>
 public sealed class Head
 {
     private readonly StoreTransaction open;

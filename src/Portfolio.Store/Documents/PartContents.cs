@@ -2,14 +2,17 @@ using System.IO.Compression;
 
 namespace Portfolio.Store.Documents;
 
-/// <summary>Contents by hash, each kept once and compressed. The same project in a hundred revisions, or portfolios, takes the room of one.</summary>
+/// <summary>
+/// Contents by hash, each kept once and compressed. The same project in a hundred revisions, or portfolios, takes the room of one.
+/// </summary>
 internal static class PartContents
 {
     // Brotli at 5 brings a project of 55 KB to about a fifth within 2 ms; higher levels cost much more time for little room.
     private const int Quality = 5;
     private const int Window = 22;
 
-    private const string InsertSql = "insert into part_content (hash, bytes, size) values (@Hash, @Bytes, @Size) on conflict (hash) do nothing";
+    private const string InsertSql =
+        "insert into part_content (hash, bytes, size) values (@Hash, @Bytes, @Size) on conflict (hash) do nothing";
 
     private const string KnownSql = "select count(*) from part_content where hash = @Hash";
 
@@ -23,7 +26,8 @@ internal static class PartContents
 
     public static async Task<byte[]> ReadAsync(StoreTransaction open, string hash)
     {
-        var row = await open.FirstAsync<ContentRow>(ReadSql, new { Hash = hash }) ?? throw new StoreDamagedException($"The content {hash} of a part is missing.");
+        var row = await open.FirstAsync<ContentRow>(ReadSql, new { Hash = hash }) 
+            ?? throw new StoreDamagedException($"The content {hash} of a part is missing.");
         return row.Expand();
     }
 

@@ -6,7 +6,7 @@ internal sealed record PlannedPart(string Project, long Position, string? Before
 /// <summary>From a head and a proposed change to the rows of the next revision: only what differs.</summary>
 internal static class PartPlan
 {
-    /// <exception cref="ArgumentException">The change contradicts itself or the head: a mistake of the caller's, not of the document's author.</exception>
+    /// <exception cref="ArgumentException">The change contradicts itself or the head: the program's mistake, not the author's.</exception>
     public static IReadOnlyList<PlannedPart> Make(IReadOnlyList<PartRow> head, Change change)
     {
         var before = head.ToDictionary(row => row.Project, StringComparer.Ordinal);
@@ -16,7 +16,8 @@ internal static class PartPlan
             throw new ArgumentException("A part is both changed and removed.", nameof(change));
         var rows = new List<PlannedPart>();
         var last = -1L;
-        foreach (var project in Sequence([.. head.Select(row => row.Project)], [.. change.Parts.Select(part => part.Project)], removed, change))
+        string[] present = [.. head.Select(row => row.Project)];
+        foreach (var project in Sequence(present, [.. change.Parts.Select(part => part.Project)], removed, change))
         {
             var old = before.GetValueOrDefault(project);
             last = project == PartNames.Settings ? 0 : Math.Max(old is not null && old.Position > last ? old.Position : last + 1, 1);
@@ -25,7 +26,8 @@ internal static class PartPlan
             if (old is null || old.Hash != hash || old.Position != last)
                 rows.Add(new PlannedPart(project, last, old?.Hash, hash, bytes));
         }
-        rows.AddRange(head.Where(row => removed.Contains(row.Project)).Select(row => new PlannedPart(row.Project, row.Position, row.Hash, null, null)));
+        rows.AddRange(head.Where(row => removed.Contains(row.Project))
+            .Select(row => new PlannedPart(row.Project, row.Position, row.Hash, null, null)));
         return rows;
     }
 

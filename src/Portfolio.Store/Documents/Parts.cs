@@ -7,7 +7,9 @@ public static class PartNames
     public const string Settings = "";
 }
 
-/// <summary>A part of the document without its content. <paramref name="Hash"/> is the lower-case hex SHA-256 of the canonical bytes.</summary>
+/// <summary>
+/// A part of the document without its content. <paramref name="Hash"/> is the lower-case hex SHA-256 of the canonical bytes.
+/// </summary>
 /// <param name="Project">The project's id, or <see cref="PartNames.Settings"/>.</param>
 public sealed record PartHead(string Project, string Hash);
 
@@ -28,7 +30,9 @@ public sealed record StoredRevision
     public string? Note { get; init; }
 }
 
-/// <summary>What one revision did to one part; a null hash before is an addition, after a removal, the same hash twice a change of place.</summary>
+/// <summary>
+/// What one revision did to one part; a null hash before is an addition, after a removal, the same hash twice a change of place.
+/// </summary>
 public sealed record PartChange(string Project, string? Before, string? After);
 
 /// <summary>A portfolio as listed.</summary>

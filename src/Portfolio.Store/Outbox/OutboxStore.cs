@@ -29,10 +29,12 @@ public sealed class OutboxStore(Database database)
 
     /// <summary>Events after the cursor (0: from the first), oldest first, of the portfolios that the caller reads whole.</summary>
     /// <param name="portfolio">Only this one; null for all.</param>
-    public async Task<IReadOnlyList<OutboxEvent>> ReadAfterAsync(Caller caller, string? portfolio, long cursor, int limit, CancellationToken cancellation)
+    public async Task<IReadOnlyList<OutboxEvent>> ReadAfterAsync(
+        Caller caller, string? portfolio, long cursor, int limit, CancellationToken cancellation)
     {
         var rows = await database.ReadAsync(
-            open => open.ListAsync<Row>(ReadSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Cursor = cursor, Limit = limit }), cancellation);
+            open => open.ListAsync<Row>(
+                ReadSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Cursor = cursor, Limit = limit }), cancellation);
         return [.. rows.Select(row => row.ToEvent())];
     }
 
@@ -41,9 +43,17 @@ public sealed class OutboxStore(Database database)
         select coalesce(max(sequence), 0) + 1, @Now, @Portfolio, @Kind, @Subject, @Payload from outbox
         """;
 
-    internal static Task AppendAsync(StoreTransaction open, string portfolio, string kind, string subject, object payload) => open.ExecuteAsync(
+    internal static Task AppendAsync(
+        StoreTransaction open, string portfolio, string kind, string subject, object payload) => open.ExecuteAsync(
         InsertSql,
-        new { open.Now, Portfolio = portfolio, Kind = kind, Subject = subject, Payload = JsonSerializer.Serialize(payload, JsonSerializerOptions.Web) });
+        new
+        {
+            open.Now,
+            Portfolio = portfolio,
+            Kind = kind,
+            Subject = subject,
+            Payload = JsonSerializer.Serialize(payload, JsonSerializerOptions.Web),
+        });
 
     private sealed record Row
     {

@@ -5,7 +5,9 @@ namespace Portfolio.Store.Results;
 /// <param name="Json">Opaque to the store.</param>
 public sealed record ResultRow(string Scope, byte[] Json);
 
-/// <summary>The kept distribution of one metric of one scope, with the few figures that lists need. The bytes are opaque to the store.</summary>
+/// <summary>
+/// The kept distribution of one metric of one scope, with the few figures that lists need. The bytes are opaque to the store.
+/// </summary>
 /// <param name="Metric"><c>finish</c> or <c>cost</c>.</param>
 /// <param name="Base">Base value: minutes, or minor units.</param>
 /// <param name="Mean">The same unit.</param>

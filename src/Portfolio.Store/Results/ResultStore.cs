@@ -7,7 +7,8 @@ public sealed class ResultStore(Database database)
 {
     private static readonly string RowsSql = $"""
         select x.scope, x.json from result_row x join run r on r.id = x.run
-        where x.run = @Run and (@Scope is null or x.scope = @Scope) and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "r.portfolio", "x.project")}
+        where x.run = @Run and (@Scope is null or x.scope = @Scope) and r.portfolio = @Portfolio
+          and {Granted.Part(Right.Read, "r.portfolio", "x.project")}
         order by x.position
         """;
 
@@ -20,7 +21,8 @@ public sealed class ResultStore(Database database)
 
     private static async Task<ResultRow[]> RowsAsync(StoreTransaction open, Caller caller, string portfolio, string run, string? scope)
     {
-        var rows = await open.ListAsync<JsonRow>(RowsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Scope = scope });
+        var rows = await open.ListAsync<JsonRow>(
+            RowsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Scope = scope });
         return [.. rows.Select(row => new ResultRow(row.Scope, row.Json))];
     }
 
@@ -57,7 +59,8 @@ public sealed class ResultStore(Database database)
         """;
 
     /// <summary>The allocation at a level; null when none is kept. Needs a grant on the whole portfolio.</summary>
-    public async Task<AllocationRow?> FindAllocationAsync(Caller caller, string portfolio, string run, double level, CancellationToken cancellation)
+    public async Task<AllocationRow?> FindAllocationAsync(
+        Caller caller, string portfolio, string run, double level, CancellationToken cancellation)
     {
         var row = await database.ReadAsync(
             open => open.FirstAsync<LevelRow>(

@@ -6,7 +6,8 @@ namespace Portfolio.Store.Results;
 /// <summary>Keeps what a run leaves behind, inside the transaction that ends it.</summary>
 internal static class ResultWriting
 {
-    private const string InsertRowSql = "insert into result_row (run, scope, position, project, json) values (@Run, @Scope, @Position, @Project, @Json)";
+    private const string InsertRowSql =
+        "insert into result_row (run, scope, position, project, json) values (@Run, @Scope, @Position, @Project, @Json)";
 
     private const string InsertGridSql = """
         insert into grid (run, scope, metric, project, base_value, mean, sd, happens, bytes)
@@ -18,11 +19,14 @@ internal static class ResultWriting
     public static async Task KeepAsync(StoreTransaction open, string run, RunResult result)
     {
         foreach (var (position, row) in result.Rows.Index())
-            await open.ExecuteAsync(InsertRowSql, new { Run = run, row.Scope, Position = position, Project = ProjectOf(row.Scope), row.Json });
+            await open.ExecuteAsync(
+                InsertRowSql, new { Run = run, row.Scope, Position = position, Project = ProjectOf(row.Scope), row.Json });
         foreach (var grid in result.Grids)
         {
-            var kept = new { Run = run, grid.Scope, grid.Metric, Project = ProjectOf(grid.Scope), grid.Base, grid.Mean, grid.Sd, grid.Happens, grid.Bytes };
-            await open.ExecuteAsync(InsertGridSql, kept);
+            var project = ProjectOf(grid.Scope);
+            await open.ExecuteAsync(
+                InsertGridSql,
+                new { Run = run, grid.Scope, grid.Metric, Project = project, grid.Base, grid.Mean, grid.Sd, grid.Happens, grid.Bytes });
         }
         foreach (var allocation in result.Allocations)
             await open.ExecuteAsync(InsertAllocationSql, new { Run = run, allocation.Level, allocation.Bytes });

@@ -35,11 +35,16 @@ public enum RunRequestOutcome
     Archived,
     /// <summary>The date is closed and a run stands for it, or one accepted earlier is on its way to (409).</summary>
     DateHeld,
-    /// <summary><see cref="NewRun.Replaces"/> names no recorded run of this portfolio and date, or the new run is not recorded (422).</summary>
+    /// <summary>
+    /// <see cref="NewRun.Replaces"/> names no recorded run of this portfolio and date, or the new run is not recorded (422).
+    /// </summary>
     ReplacesUnknown,
     /// <summary><see cref="NewRun.Replaces"/> names a run that does not stand for the date (409).</summary>
     ReplacesNotThePoint,
 }
 
-/// <summary>The answer; <see cref="Run"/> is the new run, for <see cref="RunRequestOutcome.AlreadyDue"/> and <see cref="RunRequestOutcome.DateHeld"/> the one in the way, else null.</summary>
+/// <summary>
+/// The answer; <see cref="Run"/> is the new run, for <see cref="RunRequestOutcome.AlreadyDue"/> and <see
+/// cref="RunRequestOutcome.DateHeld"/> the one in the way, else null.
+/// </summary>
 public sealed record RunRequestResult(RunRequestOutcome Outcome, StoredRun? Run);

@@ -24,21 +24,26 @@ public sealed partial class RunRequests
         where id = @Id and cancel_requested = 0 and state in ('queued', 'running')
         """;
 
-    /// <summary>Asks a run to stop: a queued one is cancelled at once, a running one by its worker. Needs <see cref="Right.Manage"/>.</summary>
-    public Task<RunCancelResult> RequestCancelAsync(Caller caller, string portfolio, string run, CancellationToken cancellation) => database.WriteAsync(
+    /// <summary>
+    /// Asks a run to stop: a queued one is cancelled at once, a running one by its worker. Needs <see cref="Right.Manage"/>.
+    /// </summary>
+    public Task<RunCancelResult> RequestCancelAsync(
+        Caller caller, string portfolio, string run, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             var standing = await Standing.ReadAsync(open, caller, Right.Manage, portfolio);
             var row = await RunStore.FindAsync(open, caller, portfolio, run);
             if (row is null)
-                return new RunCancelResult(standing is { Exists: true, Known: true, Whole: false } ? RunCancelOutcome.Forbidden : RunCancelOutcome.NotFound, null);
+                return new RunCancelResult(
+                    standing is { Exists: true, Known: true, Whole: false } ? RunCancelOutcome.Forbidden : RunCancelOutcome.NotFound, null);
             if (!standing.Whole)
                 return new RunCancelResult(RunCancelOutcome.Forbidden, null);
             if (row.FinishedAt is not null)
                 return new RunCancelResult(RunCancelOutcome.AlreadyEnded, row.ToRun());
             if (await open.ExecuteAsync(CancelSql, new { row.Id, open.Now }) == 0)
                 return new RunCancelResult(RunCancelOutcome.Accepted, row.ToRun());
-            await RunEvents.TellAsync(open, caller, portfolio, run, row.State == "queued" ? "cancelled" : "cancel-requested", new { row.AsOf, row.Revision });
+            await RunEvents.TellAsync(
+                open, caller, portfolio, run, row.State == "queued" ? "cancelled" : "cancel-requested", new { row.AsOf, row.Revision });
             return new RunCancelResult(RunCancelOutcome.Accepted, (await RunStore.FindAsync(open, caller, portfolio, run))!.ToRun());
         },
         cancellation);

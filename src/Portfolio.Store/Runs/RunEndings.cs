@@ -19,7 +19,8 @@ public sealed record RunResult
 /// <summary>The three ways in which a running run ends. Each returns false, and writes nothing, when the lease was lost.</summary>
 public sealed class RunEndings(Database database)
 {
-    private const string Ended = "owner = null, lease_until = null, finished_at = @Now where id = @Id and fence = @Fence and state = 'running'";
+    private const string Ended =
+        "owner = null, lease_until = null, finished_at = @Now where id = @Id and fence = @Fence and state = 'running'";
 
     private const string SucceedSql = $"""
         update run set state = 'succeeded', result_digest = @ResultDigest, inputs_digest = @InputsDigest, warnings = @Warnings, {Ended}
@@ -46,20 +47,24 @@ public sealed class RunEndings(Database database)
     private const string FailSql = $"update run set state = 'failed', error = @Error, {Ended}";
 
     /// <param name="error">A sentence for people; no stack trace.</param>
-    public Task<bool> FailAsync(RunLease held, string error, CancellationToken cancellation) => EndAsync(FailSql, held, "failed", error, cancellation);
+    public Task<bool> FailAsync(RunLease held, string error, CancellationToken cancellation) =>
+        EndAsync(FailSql, held, "failed", error, cancellation);
 
     // Also for a worker that stops by itself: the request is then its own.
     private const string CancelSql = $"update run set state = 'cancelled', cancel_requested = 1, {Ended}";
 
-    public Task<bool> CancelAsync(RunLease held, CancellationToken cancellation) => EndAsync(CancelSql, held, "cancelled", null, cancellation);
+    public Task<bool> CancelAsync(RunLease held, CancellationToken cancellation) =>
+        EndAsync(CancelSql, held, "cancelled", null, cancellation);
 
-    private Task<bool> EndAsync(string sql, RunLease held, string what, string? error, CancellationToken cancellation) => database.WriteAsync(
+    private Task<bool> EndAsync(
+        string sql, RunLease held, string what, string? error, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             if (await open.ExecuteAsync(sql, new { held.Run.Id, held.Fence, open.Now, Error = error }) == 0)
                 return false;
             await RunBlocks.DropSamplesAsync(open, held.Run.Id);
-            await RunEvents.TellAsync(open, held.Caller, held.Run.Portfolio, held.Run.Id, what, new { held.Run.AsOf, held.Run.Revision, error });
+            await RunEvents.TellAsync(
+                open, held.Caller, held.Run.Portfolio, held.Run.Id, what, new { held.Run.AsOf, held.Run.Revision, error });
             return true;
         },
         cancellation);

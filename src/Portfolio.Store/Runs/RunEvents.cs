@@ -4,7 +4,9 @@ using Portfolio.Store.Outbox;
 
 namespace Portfolio.Store.Runs;
 
-/// <summary>What happens to a run is told twice in the transaction in which it happens: to the audit trail and to those who listen.</summary>
+/// <summary>
+/// What happens to a run is told twice in the transaction in which it happens: to the audit trail and to those who listen.
+/// </summary>
 internal static class RunEvents
 {
     public static async Task TellAsync(StoreTransaction open, Caller caller, string portfolio, string run, string what, object detail)

@@ -2,7 +2,9 @@ using Portfolio.Store.Access;
 
 namespace Portfolio.Store.Runs;
 
-/// <summary>A claimed run. Every write of a worker carries the fence: once another worker has claimed the run, none of them takes effect.</summary>
+/// <summary>
+/// A claimed run. Every write of a worker carries the fence: once another worker has claimed the run, none of them takes effect.
+/// </summary>
 /// <param name="Run">The run as it was claimed.</param>
 /// <param name="Fence">Rises with every claim of this run.</param>
 /// <param name="Caller">Who claimed it.</param>

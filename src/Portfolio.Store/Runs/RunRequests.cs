@@ -8,7 +8,10 @@ public sealed partial class RunRequests(Database database)
     /// <summary>Queues a run that somebody asked for. Needs <see cref="Right.Manage"/>.</summary>
     /// <param name="joining">Called last inside the transaction, for rows that stand or fall with the request; null for none.</param>
     public Task<RunRequestResult> CreateAsync(
-        Caller caller, NewRun run, Func<StoreTransaction, StoredRun, CancellationToken, Task>? joining, CancellationToken cancellation) => database.WriteAsync(
+        Caller caller,
+        NewRun run,
+        Func<StoreTransaction, StoredRun, CancellationToken, Task>? joining,
+        CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             if (await TurnedAsync(open, caller, run) is { } turned)
@@ -25,9 +28,11 @@ public sealed partial class RunRequests(Database database)
     private const string DueSql = "select id from run where portfolio = @Portfolio and due_date = @DueDate";
 
     /// <summary>
-    /// Queues the one run of a due date; a second time it returns the first. When the date is closed and held already the run is made all the same, but not recorded.
+    /// Queues the one run of a due date; a second time it returns the first. When the date is closed and held already the run is made all
+    /// the same, but not recorded.
     /// </summary>
-    public Task<RunRequestResult> CreateDueAsync(Caller caller, NewRun run, DateOnly dueDate, CancellationToken cancellation) => database.WriteAsync(
+    public Task<RunRequestResult> CreateDueAsync(
+        Caller caller, NewRun run, DateOnly dueDate, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             if (await TurnedAsync(open, caller, run) is { } turned)
@@ -55,10 +60,10 @@ public sealed partial class RunRequests(Database database)
     }
 
     private const string InsertSql = """
-        insert into run (id, sequence, portfolio, kind, recorded, as_of, date_ends_at, revision, overlay, seed, iterations, replaces, due_date, state,
-          trace_parent, queued_at, requested_by)
-        select @Id, coalesce(max(sequence), 0) + 1, @Portfolio, @Kind, @Recorded, @AsOf, @DateEndsAt, @Revision, @Overlay, @Seed, @Iterations, @Replaces, @DueDate,
-          'queued', @TraceParent, @Now, @Caller from run
+        insert into run (id, sequence, portfolio, kind, recorded, as_of, date_ends_at, revision, overlay, seed, iterations, replaces,
+          due_date, state, trace_parent, queued_at, requested_by)
+        select @Id, coalesce(max(sequence), 0) + 1, @Portfolio, @Kind, @Recorded, @AsOf, @DateEndsAt, @Revision, @Overlay, @Seed,
+          @Iterations, @Replaces, @DueDate, 'queued', @TraceParent, @Now, @Caller from run
         """;
 
     private static async Task<StoredRun> QueueAsync(StoreTransaction open, Caller caller, NewRun run, DateOnly? dueDate)

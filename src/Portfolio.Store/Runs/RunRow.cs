@@ -5,8 +5,9 @@ internal sealed record RunRow
 {
     /// <summary>Of a run called <c>r</c>; progress is what the stored blocks cover.</summary>
     public const string Columns = """
-        r.id, r.sequence, r.portfolio, r.kind, r.recorded, r.as_of, r.revision, r.overlay, r.seed, r.iterations, r.replaces, r.due_date, r.state, r.attempt,
-        r.cancel_requested, r.fence, r.trace_parent, r.engine_version, r.inputs_digest, r.result_digest, r.queued_at, r.started_at, r.finished_at,
+        r.id, r.sequence, r.portfolio, r.kind, r.recorded, r.as_of, r.revision, r.overlay, r.seed, r.iterations, r.replaces, r.due_date,
+        r.state, r.attempt, r.cancel_requested, r.fence, r.trace_parent, r.engine_version, r.inputs_digest, r.result_digest,
+        r.queued_at, r.started_at, r.finished_at,
         r.requested_by, r.warnings, r.error, r.date_ends_at,
         coalesce((select cast(sum(b.iterations) as bigint) from run_block b where b.run = r.id), 0) as iterations_done,
         (select count(*) from series_point p where p.run = r.id) as represents

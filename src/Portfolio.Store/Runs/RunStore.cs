@@ -18,11 +18,13 @@ public sealed class RunStore(Database database)
         open.FirstAsync<RunRow>(FindSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run });
 
     private static readonly string ListSql = $"""
-        select {RunRow.Columns} from run r where (@Before is null or r.sequence < @Before) and {Visible} order by r.sequence desc limit @Limit
+        select {RunRow.Columns} from run r where (@Before is null or r.sequence < @Before) and {Visible}
+        order by r.sequence desc limit @Limit
         """;
 
     /// <summary>Runs, newest first, with sequence numbers below <paramref name="before"/> (null: from the newest).</summary>
-    public Task<IReadOnlyList<StoredRun>> ListAsync(Caller caller, string portfolio, long? before, int limit, CancellationToken cancellation) =>
+    public Task<IReadOnlyList<StoredRun>> ListAsync(
+        Caller caller, string portfolio, long? before, int limit, CancellationToken cancellation) =>
         ListAsync(ListSql, caller, portfolio, new { Before = before, Limit = limit }, cancellation);
 
     private static readonly string PointSql = $"""
@@ -58,7 +60,8 @@ public sealed class RunStore(Database database)
     public Task<IReadOnlyList<StoredRun>> ListDueAsync(Caller caller, string portfolio, int limit, CancellationToken cancellation) =>
         ListAsync(DueSql, caller, portfolio, new { Limit = limit }, cancellation);
 
-    private static readonly string QueuedSql = $"select count(*) from run r where r.state = 'queued' and {Granted.Some(Right.Read, "r.portfolio")}";
+    private static readonly string QueuedSql =
+        $"select count(*) from run r where r.state = 'queued' and {Granted.Some(Right.Read, "r.portfolio")}";
 
     /// <summary>How many runs wait, over all portfolios that the caller reads.</summary>
     public Task<int> CountQueuedAsync(Caller caller, CancellationToken cancellation) =>
@@ -67,7 +70,8 @@ public sealed class RunStore(Database database)
     private async Task<StoredRun?> FirstAsync(string sql, Caller caller, string portfolio, object more, CancellationToken cancellation) =>
         (await database.ReadAsync(open => open.FirstAsync<RunRow>(sql, Asked(open, caller, portfolio, more)), cancellation))?.ToRun();
 
-    private async Task<IReadOnlyList<StoredRun>> ListAsync(string sql, Caller caller, string portfolio, object more, CancellationToken cancellation)
+    private async Task<IReadOnlyList<StoredRun>> ListAsync(
+        string sql, Caller caller, string portfolio, object more, CancellationToken cancellation)
     {
         var rows = await database.ReadAsync(open => open.ListAsync<RunRow>(sql, Asked(open, caller, portfolio, more)), cancellation);
         return [.. rows.Select(row => row.ToRun())];

@@ -1,18 +1,20 @@
 namespace Portfolio.Store.Runs;
 
 /// <summary>
-/// Which run stands for a date. While the date lasts, every recorded run may; the last one created before its end does. Afterwards the date is closed: a run
-/// is taken only where none stands and none accepted earlier is under way, or in the place of the one that stands.
+/// Which run stands for a date. While the date lasts, every recorded run may; the last one created before its end does. Afterwards the date
+/// is closed: a run is taken only where none stands and none accepted earlier is under way, or in the place of the one that stands.
 /// </summary>
 internal static class SeriesDates
 {
     private const string PointSql = "select run from series_point where portfolio = @Portfolio and as_of = @AsOf";
 
     private const string UnderWaySql = """
-        select id from run where portfolio = @Portfolio and as_of = @AsOf and recorded = 1 and state in ('queued', 'running') order by sequence limit 1
+        select id from run where portfolio = @Portfolio and as_of = @AsOf and recorded = 1 and state in ('queued', 'running')
+        order by sequence limit 1
         """;
 
-    private const string ReplaceableSql = "select count(*) from run where id = @Replaces and portfolio = @Portfolio and as_of = @AsOf and recorded = 1";
+    private const string ReplaceableSql =
+        "select count(*) from run where id = @Replaces and portfolio = @Portfolio and as_of = @AsOf and recorded = 1";
 
     /// <summary>What stands in the way of a new recorded run; null when nothing does.</summary>
     public static async Task<(RunRequestOutcome Outcome, string? Run)?> ObstacleAsync(StoreTransaction open, NewRun run)

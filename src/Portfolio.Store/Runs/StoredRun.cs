@@ -1,6 +1,8 @@
 namespace Portfolio.Store.Runs;
 
-/// <summary>queued → running → succeeded, failed or cancelled; running → queued when a worker stops in good order; queued → cancelled.</summary>
+/// <summary>
+/// queued → running → succeeded, failed or cancelled; running → queued when a worker stops in good order; queued → cancelled.
+/// </summary>
 public enum RunState
 {
     Queued,

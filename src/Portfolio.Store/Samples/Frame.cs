@@ -2,7 +2,9 @@ using System.Buffers.Binary;
 
 namespace Portfolio.Store.Samples;
 
-/// <summary>How values become small codes: (value − smallest) / divisor, and one more where 0 is needed for <see cref="Missing"/>.</summary>
+/// <summary>
+/// How values become small codes: (value − smallest) / divisor, and one more where 0 is needed for <see cref="Missing"/>.
+/// </summary>
 internal readonly record struct Frame(long Smallest, ulong Divisor, bool Misses)
 {
     /// <summary>Bytes of the head that <see cref="Write"/> fills.</summary>
@@ -59,8 +61,10 @@ internal readonly record struct Frame(long Smallest, ulong Divisor, bool Misses)
 
     public static (Frame Frame, int Count, int Width, int HighWidth, int Exceptions) Read(ReadOnlySpan<byte> head)
     {
-        var frame = new Frame(BinaryPrimitives.ReadInt64LittleEndian(head[4..]), BinaryPrimitives.ReadUInt64LittleEndian(head[12..]), head[22] != 0);
-        return (frame, BinaryPrimitives.ReadInt32LittleEndian(head), head[20], head[21], BinaryPrimitives.ReadInt32LittleEndian(head[23..]));
+        var frame = new Frame(
+            BinaryPrimitives.ReadInt64LittleEndian(head[4..]), BinaryPrimitives.ReadUInt64LittleEndian(head[12..]), head[22] != 0);
+        return (
+            frame, BinaryPrimitives.ReadInt32LittleEndian(head), head[20], head[21], BinaryPrimitives.ReadInt32LittleEndian(head[23..]));
     }
 
     /// <summary>The greatest common divisor of all distances; most often 1 after a few of them.</summary>

@@ -3,11 +3,11 @@ using System.Numerics;
 namespace Portfolio.Store.Samples;
 
 /// <summary>
-/// Whole numbers in little room, without loss: as distances from the smallest, divided by what all distances have in common (whole days, whole currency units),
-/// each in as many bits as most of them need; the high bits of the few that need more stand behind, with their places ("patched frame of reference",
-/// Zukowski, Héman, Nes and Boncz, "Super-scalar RAM-CPU cache compression", ICDE 2006). What does not happen takes no part in that and becomes 0.
-/// Layout, little-endian: count int32, smallest int64, divisor uint64, width byte, high width byte, missing byte, exceptions int32; then three packed runs:
-/// the low bits, the places, the high bits.
+/// Whole numbers in little room, without loss: as distances from the smallest, divided by what all distances have in common (whole days,
+/// whole currency units), each in as many bits as most of them need; the high bits of the few that need more stand behind, with their
+/// places ("patched frame of reference", Zukowski, Héman, Nes and Boncz, "Super-scalar RAM-CPU cache compression", ICDE 2006). What does
+/// not happen takes no part in that and becomes 0. Layout, little-endian: count int32, smallest int64, divisor uint64, width byte, high
+/// width byte, missing byte, exceptions int32; then three packed runs: the low bits, the places, the high bits.
 /// </summary>
 internal static class IntegerCodec
 {
@@ -58,7 +58,8 @@ internal static class IntegerCodec
         var placeWidth = PlaceWidth(count);
         var body = bytes[Frame.HeadSize..];
         if (count < 0 || exceptions < 0 || exceptions > count || width > 64 || width + highWidth > 64
-            || body.Length != (long)BitPacking.Size(count, width) + BitPacking.Size(exceptions, placeWidth) + BitPacking.Size(exceptions, highWidth))
+            || body.Length != (long)BitPacking.Size(count, width)
+                + BitPacking.Size(exceptions, placeWidth) + BitPacking.Size(exceptions, highWidth))
             throw new StoreDamagedException("A block of samples does not have the length that its head states.");
         var codes = new ulong[count];
         BitPacking.Unpack(body, width, codes);
@@ -74,7 +75,9 @@ internal static class IntegerCodec
         return values;
     }
 
-    /// <summary>The width with the least bits in all: a bit less for every value against a place and high bits for each that then does not fit.</summary>
+    /// <summary>
+    /// The width with the least bits in all: a bit less for every value against a place and high bits for each that then does not fit.
+    /// </summary>
     private static (int Width, int Exceptions, int Highest) ChooseWidth(ReadOnlySpan<ulong> codes)
     {
         Span<int> needing = stackalloc int[65];

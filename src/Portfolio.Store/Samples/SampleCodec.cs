@@ -2,7 +2,9 @@ using System.Runtime.InteropServices;
 
 namespace Portfolio.Store.Samples;
 
-/// <summary>Between the values of a block and the bytes that are kept. Codec 1 packs whole numbers, codec 2 keeps doubles as they are.</summary>
+/// <summary>
+/// Between the values of a block and the bytes that are kept. Codec 1 packs whole numbers, codec 2 keeps doubles as they are.
+/// </summary>
 internal static class SampleCodec
 {
     private const int Packed = 1;

@@ -21,7 +21,8 @@ public sealed class SampleStore(Database database)
     /// <param name="block">0, 1, 2 … in the order of iterations.</param>
     /// <param name="iterations">How many iterations the block covers: the length of every series.</param>
     /// <returns>False when the lease was lost; then nothing is written.</returns>
-    public Task<bool> WriteBlockAsync(RunLease held, int block, int iterations, IReadOnlyList<SeriesBlock> series, CancellationToken cancellation)
+    public Task<bool> WriteBlockAsync(
+        RunLease held, int block, int iterations, IReadOnlyList<SeriesBlock> series, CancellationToken cancellation)
     {
         // Packed before the write lock is taken, which others wait for.
         SampleRow[] rows = [.. series.Select(one => SampleRow.Of(held.Run.Id, block, one))];
@@ -45,7 +46,10 @@ public sealed class SampleStore(Database database)
     public async Task<IReadOnlyList<int>> ListBlocksAsync(RunLease held, CancellationToken cancellation) =>
         await database.ReadAsync(open => open.ListAsync<int>(BlocksSql, new { held.Run.Id }), cancellation);
 
-    /// <summary>A series written with <see cref="SeriesBlock.OfMinutes"/>, over all blocks in order; null when it is not kept or not the caller's to read.</summary>
+    /// <summary>
+    /// A series written with <see cref="SeriesBlock.OfMinutes"/>, over all blocks in order; null when it is not kept or not the caller's to
+    /// read.
+    /// </summary>
     /// <exception cref="StoreDamagedException">Stored bytes are not the ones that were written.</exception>
     public async Task<int[]?> ReadMinutesAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
     {
@@ -53,7 +57,10 @@ public sealed class SampleStore(Database database)
         return rows.Count == 0 ? null : Joined(rows.ConvertAll(row => SampleCodec.DecodeMinutes(row.Codec, row.Bytes)));
     }
 
-    /// <summary>A series written with <see cref="SeriesBlock.OfMoney"/>, over all blocks in order; null when it is not kept or not the caller's to read.</summary>
+    /// <summary>
+    /// A series written with <see cref="SeriesBlock.OfMoney"/>, over all blocks in order; null when it is not kept or not the caller's to
+    /// read.
+    /// </summary>
     /// <exception cref="StoreDamagedException">Stored bytes are not the ones that were written.</exception>
     public async Task<double[]?> ReadMoneyAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
     {
@@ -67,12 +74,13 @@ public sealed class SampleStore(Database database)
         order by s.block
         """;
 
-    private async Task<List<SampleRow>> ReadAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
+    private async Task<List<SampleRow>> ReadAsync(
+        Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
     {
+        var project = SeriesNames.ProjectOf(series);
         var rows = await database.ReadAsync(
             open => open.ListAsync<SampleRow>(
-                ReadSql,
-                new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Series = series, Project = SeriesNames.ProjectOf(series) }),
+                ReadSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Series = series, Project = project }),
             cancellation);
         rows.ForEach(row => row.Check());
         return rows;

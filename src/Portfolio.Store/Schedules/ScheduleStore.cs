@@ -31,7 +31,8 @@ public sealed class ScheduleStore(Database database)
 {
     private const string Columns = "s.portfolio, s.cron, s.iterations, s.enabled, s.changed_at";
 
-    private static readonly string FindSql = $"select {Columns} from schedule s where s.portfolio = @Portfolio and {Granted.Some(Right.Read, "s.portfolio")}";
+    private static readonly string FindSql =
+        $"select {Columns} from schedule s where s.portfolio = @Portfolio and {Granted.Some(Right.Read, "s.portfolio")}";
 
     public async Task<StoredSchedule?> FindAsync(Caller caller, string portfolio, CancellationToken cancellation) =>
         (await database.ReadAsync(open => FindAsync(open, caller, portfolio), cancellation))?.ToSchedule();
@@ -40,7 +41,8 @@ public sealed class ScheduleStore(Database database)
         open.FirstAsync<Row>(FindSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio });
 
     private const string PutSql = """
-        insert into schedule (portfolio, cron, iterations, enabled, changed_at) values (@Portfolio, @Cron, @Iterations, @Enabled, @ChangedAt)
+        insert into schedule (portfolio, cron, iterations, enabled, changed_at)
+        values (@Portfolio, @Cron, @Iterations, @Enabled, @ChangedAt)
         on conflict (portfolio) do update
           set cron = excluded.cron, iterations = excluded.iterations, enabled = excluded.enabled, changed_at = excluded.changed_at
         """;
@@ -58,11 +60,13 @@ public sealed class ScheduleStore(Database database)
             if (standing.Archived)
                 return SchedulePutOutcome.Archived;
             var old = await FindAsync(open, caller, portfolio);
-            var row = new Row { Portfolio = portfolio, Cron = cron, Iterations = iterations, Enabled = enabled ? 1 : 0, ChangedAt = open.Now };
+            var flag = enabled ? 1 : 0;
+            var row = new Row { Portfolio = portfolio, Cron = cron, Iterations = iterations, Enabled = flag, ChangedAt = open.Now };
             if (old is not null && old with { ChangedAt = row.ChangedAt } == row)
                 return SchedulePutOutcome.Unchanged;
             await open.ExecuteAsync(PutSql, row);
-            await AuditChain.AppendAsync(open, caller.KeyId, "schedule.put", $"portfolios/{portfolio}/schedule", new { cron, iterations, enabled });
+            await AuditChain.AppendAsync(
+                open, caller.KeyId, "schedule.put", $"portfolios/{portfolio}/schedule", new { cron, iterations, enabled });
             return SchedulePutOutcome.Stored;
         },
         cancellation);

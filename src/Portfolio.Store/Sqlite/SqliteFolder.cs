@@ -40,9 +40,16 @@ internal sealed class SqliteFolder : IDisposable
         }
     }
 
-    /// <summary>FULL: a commit that was answered survives the loss of power. Untrusted schema: functions hidden in a foreign file are not run.</summary>
-    public SqliteConnection OpenWriter() => Open(
-        "pragma journal_mode = wal; pragma synchronous = full; pragma trusted_schema = off; pragma journal_size_limit = 67108864; pragma cache_size = -16384;");
+    /// <summary>
+    /// FULL: a commit that was answered survives the loss of power. Untrusted schema: functions hidden in a foreign file are not run.
+    /// </summary>
+    public SqliteConnection OpenWriter() => Open("""
+        pragma journal_mode = wal;
+        pragma synchronous = full;
+        pragma trusted_schema = off;
+        pragma journal_size_limit = 67108864;
+        pragma cache_size = -16384;
+        """);
 
     public SqliteConnection OpenReader() => Open("pragma trusted_schema = off; pragma query_only = on;");
 

@@ -20,19 +20,23 @@ internal static class SqliteMigrations
     /// <summary>All steps of this program, by number, without gaps from 1.</summary>
     public static IReadOnlyList<Migration> All { get; } = Load();
 
-    private const string CreateTable =
-        "create table if not exists schema_migration (number integer primary key, name text not null, checksum text not null, applied_at integer not null) strict;";
+    private const string CreateTable = """
+        create table if not exists schema_migration (
+          number integer primary key, name text not null, checksum text not null, applied_at integer not null) strict;
+        """;
 
     public static void Apply(SqliteConnection connection, IReadOnlyList<Migration> migrations, long now)
     {
         SqliteFolder.Run(connection, CreateTable);
         var applied = ReadApplied(connection);
         if (applied.Count > migrations.Count)
-            throw new StoreSchemaException($"The storage is at step {applied.Count}, this program knows {migrations.Count}: a newer version has written it.");
+            throw new StoreSchemaException(
+                $"The storage is at step {applied.Count}, this program knows {migrations.Count}: a newer version has written it.");
         foreach (var (migration, checksum) in migrations.Zip(applied))
         {
             if (checksum != migration.Checksum)
-                throw new StoreSchemaException($"Step {migration.Number} ({migration.Name}) of the storage is not the one that this program would apply.");
+                throw new StoreSchemaException(
+                    $"Step {migration.Number} ({migration.Name}) of the storage is not the one that this program would apply.");
         }
         foreach (var migration in migrations.Skip(applied.Count))
             ApplyOne(connection, migration, now);
@@ -68,7 +72,8 @@ internal static class SqliteMigrations
     private static Migration[] Load()
     {
         var assembly = Assembly.GetExecutingAssembly();
-        return [.. assembly.GetManifestResourceNames().Where(name => name.StartsWith(Prefix, StringComparison.Ordinal)).Order(StringComparer.Ordinal).Select(Read)];
+        var steps = assembly.GetManifestResourceNames().Where(name => name.StartsWith(Prefix, StringComparison.Ordinal));
+        return [.. steps.Order(StringComparer.Ordinal).Select(Read)];
 
         Migration Read(string resource)
         {

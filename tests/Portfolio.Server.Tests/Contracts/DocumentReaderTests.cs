@@ -8,6 +8,8 @@ namespace Portfolio.Server.Tests.Contracts;
 
 public sealed class DocumentReaderTests
 {
+    private static readonly DocumentReader Reader = new(16);
+
     private const string Everything = """
         {"settings":{"name":"Harbour","currency":"EUR","timeZone":"UTC","weekEnds":"fri","fiscalYearStart":"04-01","confidence":[50,80],"seed":9007199254740991,"iterations":5000,"commitments":{"finish":"2028-03-31","budget":1000.50,"programmes":{"locks":{"finish":"2028-01-31"}}},"calendars":[{"id":"five","workingWeekdays":["mon","tue"],"nonWorkingDates":["2027-05-01"],"extraWorkingDates":[]}],"defaultCalendar":"five","pools":[{"id":"rig","name":"Piling rig","capacity":2,"capacityChanges":[{"from":"2027-06-01","capacity":1}]}],"poolRule":"inOrder","drivers":[{"id":"ground","probability":0.5,"durationFactor":{"type":"uniform","low":1,"high":1.5},"costFactor":1.1}],"dependence":{"betweenProjects":0.1,"withinProgramme":0.2,"pairs":[{"between":["driver/ground","project/weir"],"rank":0.3}],"repair":"nearest"},"riskEvents":[{"id":"storm","probability":0.1,"impacts":[{"activity":"weir/A","delay":5},{"project":"weir","cost":-10}],"responses":[{"id":"wait","cost":5.00,"taken":true,"project":"weir"}]}]},"projects":[{"id":"weir","name":"Wehr größer","programme":"locks","tags":{"a.b":"x"},"priority":3,"statusDate":"2027-01-04","calendar":"five","commitments":{"finish":"2028-01-01","budget":12.5},"correlation":0.3,"drivers":["ground"],"overhead":{"perDay":10.5,"actual":3},"activities":[{"id":"A","milestone":false,"duration":{"type":"pert","low":1,"mode":2,"high":4,"lowPercentile":10,"highPercentile":90,"weight":3},"cost":{"fixed":{"type":"lognormal","mean":10,"sd":2},"perDay":{"type":"lognormal","low":1,"high":2,"lowPercentile":5,"highPercentile":95},"actual":1.25},"predecessors":["B",{"activity":"B","type":"SS","lag":-2.5}],"demands":[{"pool":"rig","units":1}],"drivers":[],"calendar":"five","earliestStart":"2027-02-01","tags":{}},{"id":"B","duration":{"type":"discrete","outcomes":[{"value":1,"probability":0.25},{"value":2,"probability":0.75}]},"actualStart":"2027-01-01","remaining":{"type":"percentiles","points":[{"p":0,"value":1},{"p":100,"value":9}]}},{"id":"C","milestone":true,"commitment":"2027-12-01"}],"riskEvents":[{"id":"flood","probability":0.2,"impacts":[{"activity":"A","delay":{"type":"normal","mean":3,"sd":1,"min":0}}]}],"chanceBranches":[{"id":"fork","branches":[{"id":"x","probability":1,"activities":["A"]}]}]}]}
         """;
@@ -16,7 +18,7 @@ public sealed class DocumentReaderTests
     public void EveryMemberIsKeptAsSent()
     {
         var sent = Encoding.UTF8.GetBytes(Everything);
-        var document = DocumentReader.ReadDocument(sent);
+        var document = Reader.ReadDocument(sent);
         var projects = string.Join(",", document.Projects!.Select(project => Encoding.UTF8.GetString(DocumentReader.Bytes(project))));
         var written = $$"""{"settings":{{Encoding.UTF8.GetString(DocumentReader.Bytes(document.Settings!))}},"projects":[{{projects}}]}""";
         Assert.Equal(Everything.Trim(), written);
@@ -26,7 +28,7 @@ public sealed class DocumentReaderTests
     public void EveryMemberReachesTheModel()
     {
         var reading = new Reading();
-        var model = DocumentReader.ReadDocument(Encoding.UTF8.GetBytes(Everything)).ToModel(reading);
+        var model = Reader.ReadDocument(Encoding.UTF8.GetBytes(Everything)).ToModel(reading);
         Assert.Empty(reading.Faults);
         Assert.Equal((1L << 53) - 1, model.Settings.Seed);
         Assert.Equal(DayOfWeek.Friday, model.Settings.WeekEnds);
@@ -72,7 +74,7 @@ public sealed class DocumentReaderTests
     [InlineData("{\"settings\":{\"indices\":[[[[[[[[[[[[[[[[]]]]]]]]]]]]]]]]}}", "/settings/indices/0/0/0/0/0/0/0/0/0/0/0/0/0", "json.depth")]
     public void WhatIsNotTheRightJsonNamesTheFirstPlace(string json, string path, string code)
     {
-        var refused = Assert.Throws<JsonRefused>(() => DocumentReader.ReadDocument(Encoding.UTF8.GetBytes(json)));
+        var refused = Assert.Throws<JsonRefused>(() => Reader.ReadDocument(Encoding.UTF8.GetBytes(json)));
         Assert.Equal((path, code), (refused.Fault.Path, refused.Fault.Code));
     }
 
@@ -84,14 +86,14 @@ public sealed class DocumentReaderTests
     [InlineData("{\"settings\":{\"commitments\":{\"programmes\":{\"p\":null}}}}", "/settings/commitments/programmes/p")]
     public void NullInAListIsAValueOfTheWrongKind(string json, string path)
     {
-        var document = DocumentReader.ReadDocument(Encoding.UTF8.GetBytes(json));
+        var document = Reader.ReadDocument(Encoding.UTF8.GetBytes(json));
         Assert.Equal(path, Assert.Throws<JsonRefused>(() => document.ToModel(new Reading())).Fault.Path);
     }
 
     [Fact]
     public void MalformedJsonTellsLineAndColumn()
     {
-        var refused = Assert.Throws<JsonRefused>(() => DocumentReader.ReadDocument("{\n \"settings\": {\n  \"name\": \"ü\" \"currency\"\n}}"u8));
+        var refused = Assert.Throws<JsonRefused>(() => Reader.ReadDocument("{\n \"settings\": {\n  \"name\": \"ü\" \"currency\"\n}}"u8));
         Assert.Equal((3, 15), (refused.Line, refused.Column));
     }
 }

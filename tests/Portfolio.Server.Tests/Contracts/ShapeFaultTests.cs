@@ -1,12 +1,16 @@
 using System.Text;
+using Portfolio.Model.Rules;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
+using Portfolio.Server.Documents;
 
 namespace Portfolio.Server.Tests.Contracts;
 
 /// <summary>What can be read as JSON but says something unreadable: every such place is a fault, none hides another.</summary>
 public sealed class ShapeFaultTests
 {
+    private static readonly DocumentReader Reader = new(16);
+
     [Theory]
     [InlineData("""{"type":"gamma","shape":2}""", "/type", "type.unknown")]
     [InlineData("""{"low":1,"high":2}""", "", "member.missing")]
@@ -59,7 +63,7 @@ public sealed class ShapeFaultTests
             {"settings":{"weekEnds":"Sunday","poolRule":"x","calendars":[{"id":"c","workingWeekdays":["mo"]}],"fiscalYearStart":"13-01"},
              "projects":[{"id":"p","statusDate":"soon","riskEvents":[{"id":"e","impacts":[{"delay":{"type":"discrete","outcomes":[{}]}}]}]}]}
             """;
-        DocumentCheck.Check(DocumentReader.ReadDocument(Encoding.UTF8.GetBytes(json)), Encoding.UTF8.GetBytes(json), out var faults);
+        new DocumentCheck(ModelLimits.Default).Check(Reader.ReadDocument(Encoding.UTF8.GetBytes(json)), Encoding.UTF8.GetBytes(json), out var faults);
         string[] first = ["/settings", "/settings", "/settings/weekEnds", "/settings/poolRule", "/settings/calendars/0/workingWeekdays/0"];
         Assert.Equal(first, faults.Select(fault => fault.Path).Take(5));
         Assert.Contains(faults, fault => fault.Path == "/projects/0/riskEvents/0/impacts/0/delay/outcomes/0");
@@ -68,7 +72,7 @@ public sealed class ShapeFaultTests
     private static void Single(string project, string path, string? subject, string code)
     {
         var reading = new Reading();
-        DocumentReader.ReadProject(Encoding.UTF8.GetBytes(project)).ToModel(reading, "");
+        Reader.ReadProject(Encoding.UTF8.GetBytes(project)).ToModel(reading, "");
         var fault = Assert.Single(reading.Faults);
         Assert.Equal((path, code), (fault.Path, fault.Code));
         if (subject is not null)

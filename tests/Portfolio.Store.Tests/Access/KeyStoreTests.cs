@@ -38,7 +38,8 @@ public sealed class KeyStoreTests
         Assert.Equal("contractor", found.Name);
         Assert.Equivalent(grants, found.Grants, strict: true);
         Assert.Equivalent(grants, (await store.Keys.AuthenticateAsync(made.Secret, TestStore.Cancellation))!.Grants, strict: true);
-        Assert.Equal(0, await store.RawAsync<long>("select count(*) from api_key where secret_hash = @Secret or name = @Secret", new { made.Secret }));
+        Assert.Equal(0, await store.RawAsync<long>(
+            "select count(*) from api_key where secret_hash = @Secret or name = @Secret", new { made.Secret }));
     }
 
     [Fact]

@@ -139,7 +139,8 @@ public sealed class StrangerTests
         Assert.Equal(expected, result.Outcome);
         Assert.Equal(expected == WriteOutcome.Accepted ? 2 : 1, await store.CountAsync("revision"));
         var entry = (await store.Audit.ListAsync(Caller.System, null, 1, TestStore.Cancellation))[0];
-        Assert.Equal((caller.KeyId, expected == WriteOutcome.Accepted), (entry.Actor, entry.Detail.Contains("accepted", StringComparison.Ordinal)));
+        Assert.Equal(
+            (caller.KeyId, expected == WriteOutcome.Accepted), (entry.Actor, entry.Detail.Contains("accepted", StringComparison.Ordinal)));
     }
 
     [Theory]
@@ -169,7 +170,8 @@ public sealed class StrangerTests
         var (store, run) = await WithRunAsync();
         await using var _ = store;
         var caller = await store.CallerAsync(new Grant(right, portfolio));
-        Assert.Equal(asked, (await store.Requests.CreateAsync(caller, RunScenes.Asked(RunScenes.Today), null, TestStore.Cancellation)).Outcome);
+        Assert.Equal(
+            asked, (await store.Requests.CreateAsync(caller, RunScenes.Asked(RunScenes.Today), null, TestStore.Cancellation)).Outcome);
         Assert.Equal(stopped, (await store.Requests.RequestCancelAsync(caller, "works", run, TestStore.Cancellation)).Outcome);
         Assert.Equal(put, await store.Schedules.PutAsync(caller, "works", "0 3 * * *", 500, false, TestStore.Cancellation));
         Assert.Null(await store.Claims.ClaimAsync(caller, "w", "1.0", RunScenes.Lease, TestStore.Cancellation));

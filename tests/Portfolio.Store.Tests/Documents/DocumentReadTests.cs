@@ -63,7 +63,8 @@ public sealed class DocumentReadTests
     public async Task The_revision_current_at_an_instant_is_the_last_recorded_by_then(int minutes, long? expected)
     {
         await using var store = await WithThreeRevisionsAsync();
-        var found = await store.Documents.FindRevisionAtAsync(Caller.System, "works", TestStore.Start.AddMinutes(minutes), TestStore.Cancellation);
+        var found = await store.Documents.FindRevisionAtAsync(
+            Caller.System, "works", TestStore.Start.AddMinutes(minutes), TestStore.Cancellation);
         Assert.Equal(expected, found?.Number);
     }
 
@@ -74,7 +75,8 @@ public sealed class DocumentReadTests
         var page = await store.Documents.ListRevisionsAsync(Caller.System, "works", null, 2, TestStore.Cancellation);
         Assert.Equal([3, 2], page.Select(revision => revision.Number));
         Assert.Equal(("system", "lock is done", TestStore.Start.AddHours(2)), (page[0].Actor, page[0].Note, page[0].RecordedAt));
-        Assert.Equal([1], (await store.Documents.ListRevisionsAsync(Caller.System, "works", 2, 2, TestStore.Cancellation)).Select(revision => revision.Number));
+        Assert.Equal([1], (await store.Documents.ListRevisionsAsync(Caller.System, "works", 2, 2, TestStore.Cancellation)).Select(
+            revision => revision.Number));
         Assert.Null(await store.Documents.FindRevisionAsync(Caller.System, "works", 4, TestStore.Cancellation));
     }
 
@@ -100,7 +102,8 @@ public sealed class DocumentReadTests
     {
         await using var store = await WithThreeRevisionsAsync();
         await store.WriteAsync("works", ("lock", "a4"));
-        Assert.Equal("=s3 weir=c2 quay=b2 lock=a4", Texts(await store.Documents.ReadAsync(Caller.System, "works", null, TestStore.Cancellation)));
+        Assert.Equal(
+            "=s3 weir=c2 quay=b2 lock=a4", Texts(await store.Documents.ReadAsync(Caller.System, "works", null, TestStore.Cancellation)));
         Assert.Equal("=s3 weir=c2 quay=b2", Texts(await store.Documents.ReadAsync(Caller.System, "works", 3, TestStore.Cancellation)));
         var changes = await store.Documents.ListChangesAsync(Caller.System, "works", 4, TestStore.Cancellation);
         Assert.Equal([new PartChange("lock", null, Hash("a4"))], changes);
@@ -124,7 +127,8 @@ public sealed class DocumentReadTests
         await using var store = await WithThreeRevisionsAsync();
         await store.RawAsync<long>("update part_content set bytes = (select bytes from part_content where hash = @Other) where hash = @Hash",
             new { Hash = Hash("b2"), Other = Hash("c2") });
-        await Assert.ThrowsAsync<StoreDamagedException>(() => store.Documents.ReadAsync(Caller.System, "works", null, TestStore.Cancellation));
+        await Assert.ThrowsAsync<StoreDamagedException>(
+            () => store.Documents.ReadAsync(Caller.System, "works", null, TestStore.Cancellation));
     }
 
     private static string Hash(string text) => ContentHash.Of(Encoding.UTF8.GetBytes(text));

@@ -85,7 +85,8 @@ public sealed class DocumentWriteTests
         await using var store = await TestStore.OpenAsync();
         await store.WriteAsync("works", ("", "s"));
         await Assert.ThrowsAsync<TimeZoneNotFoundException>(
-            () => store.Documents.WriteAsync(Caller.System, Write, (_, _) => throw new TimeZoneNotFoundException(), TestStore.Cancellation));
+            () => store.Documents.WriteAsync(
+                Caller.System, Write, (_, _) => throw new TimeZoneNotFoundException(), TestStore.Cancellation));
         Assert.Equal((1, 1), (await store.CountAsync("revision"), await store.CountAsync("audit")));
         Assert.Equal(2, (await store.WriteAsync("works", ("", "t"))).Revision);
     }
@@ -103,13 +104,15 @@ public sealed class DocumentWriteTests
                 await store.Audit.AppendAsync(open, Caller.System, "joined", "x", new { });
             },
         };
-        var result = await store.Documents.WriteAsync(Caller.System, write, (_, _) => Task.FromResult<Proposal>(TestStore.Parts(("", "s"))), TestStore.Cancellation);
+        var result = await store.Documents.WriteAsync(
+            Caller.System, write, (_, _) => Task.FromResult<Proposal>(TestStore.Parts(("", "s"))), TestStore.Cancellation);
         Assert.Same(result, joined);
         Assert.Equal(2, await store.CountAsync("audit"));
 
         var failing = Write with { Joining = (_, _, _) => throw new IOException("no") };
         await Assert.ThrowsAsync<IOException>(
-            () => store.Documents.WriteAsync(Caller.System, failing, (_, _) => Task.FromResult<Proposal>(TestStore.Parts(("", "t"))), TestStore.Cancellation));
+            () => store.Documents.WriteAsync(
+                Caller.System, failing, (_, _) => Task.FromResult<Proposal>(TestStore.Parts(("", "t"))), TestStore.Cancellation));
         Assert.Equal((1, 2), (await store.CountAsync("revision"), await store.CountAsync("audit")));
     }
 

@@ -20,7 +20,8 @@ public sealed class PartPlanTests
     public void A_changed_project_keeps_its_place_and_a_new_one_goes_last() =>
         Assert.Equal(
             [("a", 1), ("c", 6)],
-            PartPlan.Make([Row("", 0), Row("a", 1), Row("b", 5)], new Change([Part("c"), Part("a", "x")])).Select(part => (part.Project, part.Position)));
+            PartPlan.Make([Row("", 0), Row("a", 1), Row("b", 5)], new Change([Part("c"), Part("a", "x")])).Select(
+                part => (part.Project, part.Position)));
 
     [Fact]
     public void A_new_order_moves_whatever_stands_before_its_forerunner() =>
@@ -55,6 +56,7 @@ public sealed class PartPlanTests
                 var left = applied.Where(entry => entry.Value.Hash is not null).OrderBy(entry => entry.Value.Position).ToArray();
                 Assert.Equal(sent, left.Select(entry => entry.Key));
                 Assert.Equal(parts.Select(part => ContentHash.Of(part.Bytes)), left.Select(entry => entry.Value.Hash!));
-                Assert.All(plan, part => Assert.True(part.Before != part.After || head.Single(row => row.Project == part.Project).Position != part.Position));
+                Assert.All(plan, part => Assert.True(
+                    part.Before != part.After || head.Single(row => row.Project == part.Project).Position != part.Position));
             });
 }

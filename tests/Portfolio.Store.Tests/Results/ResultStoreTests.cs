@@ -28,7 +28,8 @@ public sealed class ResultStoreTests
         var run = (await store.Runs.FindLatestAsync(Caller.System, "works", TestStore.Cancellation))!.Id;
         var rows = await store.Results.ListAsync(Caller.System, "works", run, TestStore.Cancellation);
         Assert.Equal([$"portfolio {run}", $"project/lock {run}", $"milestone/lock/M1 {run}"], rows.Select(row => Text(row.Json)));
-        Assert.Equal($"project/lock {run}", Text((await store.Results.FindAsync(Caller.System, "works", run, "project/lock", TestStore.Cancellation))?.Json));
+        Assert.Equal($"project/lock {run}", Text(
+            (await store.Results.FindAsync(Caller.System, "works", run, "project/lock", TestStore.Cancellation))?.Json));
         Assert.Null(await store.Results.FindAsync(Caller.System, "works", run, "project/quay", TestStore.Cancellation));
         Assert.Null(await store.Results.FindAsync(Caller.System, "harbour", run, "portfolio", TestStore.Cancellation));
     }
@@ -39,9 +40,11 @@ public sealed class ResultStoreTests
         await using var store = await WithPointsAsync(1);
         var run = (await store.Runs.FindLatestAsync(Caller.System, "works", TestStore.Cancellation))!.Id;
         var cost = (await store.Results.FindGridAsync(Caller.System, "works", run, "project/lock", "cost", TestStore.Cancellation))!;
-        Assert.Equal((1.0, 2.0, (double?)null, 1.0, $"project/lock cost {run}"), (cost.Base!.Value, cost.Mean!.Value, cost.Sd, cost.Happens, Text(cost.Bytes)));
+        Assert.Equal((1.0, 2.0, (double?)null, 1.0, $"project/lock cost {run}"), (
+            cost.Base!.Value, cost.Mean!.Value, cost.Sd, cost.Happens, Text(cost.Bytes)));
         var all = await store.Results.ListGridsAsync(Caller.System, "works", run, TestStore.Cancellation);
-        Assert.Equal([("portfolio", "finish"), ("project/lock", "finish"), ("project/lock", "cost")], all.Select(grid => (grid.Scope, grid.Metric)));
+        Assert.Equal(
+            [("portfolio", "finish"), ("project/lock", "finish"), ("project/lock", "cost")], all.Select(grid => (grid.Scope, grid.Metric)));
         Assert.Equal(run, Text((await store.Results.FindAllocationAsync(Caller.System, "works", run, 80, TestStore.Cancellation))?.Bytes));
         Assert.Null(await store.Results.FindAllocationAsync(Caller.System, "works", run, 80.5, TestStore.Cancellation));
     }
@@ -52,7 +55,8 @@ public sealed class ResultStoreTests
         await using var store = await WithPointsAsync(5);
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today.AddDays(-2), recorded: false));
         await store.WorkAsync();
-        var points = await store.Results.ListSeriesAsync(Caller.System, "works", "project/lock", "cost", null, null, TestStore.Cancellation);
+        var points = await store.Results.ListSeriesAsync(
+            Caller.System, "works", "project/lock", "cost", null, null, TestStore.Cancellation);
         Assert.Equal(Enumerable.Range(-4, 5).Select(RunScenes.Today.AddDays), points.Select(point => point.AsOf));
         Assert.All(points, point => Assert.Equal(($"project/lock cost {point.Run}", 1), (Text(point.Grid.Bytes), point.Revision)));
         var some = await store.Results.ListSeriesAsync(

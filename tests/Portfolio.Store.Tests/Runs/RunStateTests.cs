@@ -69,7 +69,8 @@ public sealed class RunStateTests
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         var asked = RunScenes.Asked(RunScenes.Today) with { Seed = (1L << 53) - 1, TraceParent = "00-1-1-01" };
         var queued = await store.QueueAsync(asked);
-        Assert.Equal((RunState.Queued, RunKind.Request, 1, 100, asked.Seed), (queued.State, queued.Kind, queued.Revision, queued.Iterations, queued.Seed));
+        Assert.Equal((RunState.Queued, RunKind.Request, 1, 100, asked.Seed), (
+            queued.State, queued.Kind, queued.Revision, queued.Iterations, queued.Seed));
         Assert.Equal((7, "system", "00-1-1-01"), (Guid.Parse(queued.Id).Version, queued.RequestedBy, queued.TraceParent));
 
         store.Clock.Advance(TimeSpan.FromMinutes(1));
@@ -83,7 +84,8 @@ public sealed class RunStateTests
         var done = await store.FindAsync(queued.Id);
         Assert.Equal((RunState.Succeeded, true, RunScenes.Digest, "[]"), (done.State, done.Represents, done.ResultDigest, done.Warnings));
         Assert.Equal(
-            (TestStore.Start, TestStore.Start.AddMinutes(1), TestStore.Start.AddMinutes(2)), (done.QueuedAt, done.StartedAt!.Value, done.FinishedAt!.Value));
+            (TestStore.Start, TestStore.Start.AddMinutes(1), TestStore.Start.AddMinutes(2)), (
+                done.QueuedAt, done.StartedAt!.Value, done.FinishedAt!.Value));
         var events = await store.Outbox.ReadAfterAsync(Caller.System, "works", 1, 10, TestStore.Cancellation);
         Assert.Equal(["run.queued", "run.succeeded"], events.Select(told => told.Kind));
         Assert.Equal(["run.succeeded", "run.queued"], (await store.Audit.ListAsync(Caller.System, null, 2, TestStore.Cancellation)).Select(entry => entry.Action));
@@ -97,7 +99,8 @@ public sealed class RunStateTests
         await store.Samples.WriteBlockAsync(held, 0, 60, RunScenes.Block(0), TestStore.Cancellation);
         Assert.True(await store.Endings.FailAsync(held, "The disk is full.", TestStore.Cancellation));
         var failed = await store.FindAsync(held.Run.Id);
-        Assert.Equal((RunState.Failed, "The disk is full.", false, 60), (failed.State, failed.Error, failed.Represents, failed.IterationsDone));
+        Assert.Equal(
+            (RunState.Failed, "The disk is full.", false, 60), (failed.State, failed.Error, failed.Represents, failed.IterationsDone));
         Assert.Equal(0, await store.CountAsync("sample"));
         Assert.Null(await store.Runs.FindLatestAsync(Caller.System, "works", TestStore.Cancellation));
     }

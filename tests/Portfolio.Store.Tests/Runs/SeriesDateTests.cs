@@ -129,7 +129,8 @@ public sealed class SeriesDateTests
         Assert.Equal(RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(LastWeek, replaces: foreign.Id)));
         Assert.Equal(RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(LastWeek, replaces: aside.Id)));
         Assert.Equal(RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(Today, replaces: old.Id)));
-        Assert.Equal(RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(LastWeek, recorded: false, replaces: old.Id)));
+        Assert.Equal(
+            RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(LastWeek, recorded: false, replaces: old.Id)));
         Assert.Equal(RunRequestOutcome.ReplacesUnknown, await AskAsync(store, RunScenes.Asked(LastWeek, replaces: "nothing")));
     }
 
@@ -146,7 +147,8 @@ public sealed class SeriesDateTests
         Assert.Null(await PointAsync(store, LastWeek.AddDays(-1)));
         var points = await store.Runs.ListPointsAsync(Caller.System, "works", LastWeek, Today, TestStore.Cancellation);
         Assert.Equal([older.Id, newer.Id], points.Select(run => run.Id));
-        Assert.Empty(await store.Runs.ListPointsAsync(Caller.System, "works", LastWeek.AddDays(1), Today.AddDays(-1), TestStore.Cancellation));
+        Assert.Empty(
+            await store.Runs.ListPointsAsync(Caller.System, "works", LastWeek.AddDays(1), Today.AddDays(-1), TestStore.Cancellation));
     }
 
     [Fact]

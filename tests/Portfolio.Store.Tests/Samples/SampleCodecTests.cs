@@ -6,10 +6,12 @@ namespace Portfolio.Store.Tests.Samples;
 public sealed class SampleCodecTests
 {
     private static readonly Gen<int> Minute = Gen.Frequency(
-        (6, Gen.Int[29_000_000, 31_000_000]), (1, Gen.Const(int.MinValue)), (1, Gen.Int), (1, Gen.Int[20_000, 22_000].Select(days => days * 1440)));
+        (6, Gen.Int[29_000_000, 31_000_000]), (1, Gen.Const(int.MinValue)), (1, Gen.Int), (
+            1, Gen.Int[20_000, 22_000].Select(days => days * 1440)));
 
     private static readonly Gen<double> Amount = Gen.Frequency(
-        (6, Gen.Long[0, 90_000_000_000].Select(minor => (double)minor)), (1, Gen.Long[-9007199254740992, 9007199254740992].Select(minor => (double)minor)));
+        (6, Gen.Long[0, 90_000_000_000].Select(minor => (double)minor)), (
+            1, Gen.Long[-9007199254740992, 9007199254740992].Select(minor => (double)minor)));
 
     private static int[] RoundTrip(int[] values)
     {
@@ -42,7 +44,8 @@ public sealed class SampleCodecTests
 
     [Fact]
     public void Any_doubles_at_all_come_back_bit_by_bit() =>
-        Gen.Frequency((3, Amount), (1, Gen.Double), (1, Gen.Const(-0.0)), (1, Gen.Const(double.NaN)), (1, Gen.Const(double.NegativeInfinity)))
+        Gen.Frequency(
+            (3, Amount), (1, Gen.Double), (1, Gen.Const(-0.0)), (1, Gen.Const(double.NaN)), (1, Gen.Const(double.NegativeInfinity)))
             .Array[0, 100].Sample(values => SameBits(values, RoundTrip(values)));
 
     [Theory]
@@ -57,7 +60,8 @@ public sealed class SampleCodecTests
     [Theory]
     [InlineData(long.MinValue, long.MaxValue, 0L)]
     [InlineData(long.MaxValue, long.MaxValue, long.MinValue)]
-    public void The_widest_range_fits(params long[] values) => Assert.Equal(values, IntegerCodec.Decode(IntegerCodec.Encode(values, mayMiss: false)));
+    public void The_widest_range_fits(
+        params long[] values) => Assert.Equal(values, IntegerCodec.Decode(IntegerCodec.Encode(values, mayMiss: false)));
 
     [Fact]
     public void Equal_values_whole_days_and_whole_currency_units_take_little_room()

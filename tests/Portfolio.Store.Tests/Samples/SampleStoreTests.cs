@@ -72,7 +72,8 @@ public sealed class SampleStoreTests
     [Fact]
     public async Task A_large_run_of_normal_finishes_and_costs_stays_small()
     {
-        // A tenth of 200 projects × (finish, cost, 10 milestones) × 10,000 iterations; finishes with a standard deviation of 60 days, costs of 2 million in cents.
+        // A tenth of 200 projects × (finish, cost, 10 milestones) × 10,000 iterations; finishes with a standard deviation of 60 days,
+        // costs of 2 million in cents.
         var (store, held) = await RunningAsync();
         await using var _ = store;
         await store.Database.MaintainAsync(TestStore.Cancellation);
@@ -84,7 +85,8 @@ public sealed class SampleStoreTests
             for (var project = 0; project < 20; project++)
             {
                 series.Add(SeriesBlock.OfMinutes($"finish/p{project}", Normal(seed, count, 30_000_000, 86_400)));
-                series.Add(SeriesBlock.OfMoney($"cost/p{project}", Array.ConvertAll(Normal(seed, count, 1_900_000_000, 200_000_000), value => (double)value)));
+                series.Add(SeriesBlock.OfMoney(
+                    $"cost/p{project}", Array.ConvertAll(Normal(seed, count, 1_900_000_000, 200_000_000), value => (double)value)));
                 for (var milestone = 0; milestone < 10; milestone++)
                     series.Add(SeriesBlock.OfMinutes($"milestone/p{project}/M{milestone}", Normal(seed, count, 29_500_000, 86_400)));
             }

@@ -6,7 +6,8 @@ namespace Portfolio.Store.Tests.Schedules;
 
 public sealed class ScheduleStoreTests
 {
-    private static Task<SchedulePutOutcome> PutAsync(TestStore store, string portfolio, string cron, bool enabled, int? iterations = null) =>
+    private static Task<SchedulePutOutcome> PutAsync(
+        TestStore store, string portfolio, string cron, bool enabled, int? iterations = null) =>
         store.Schedules.PutAsync(Caller.System, portfolio, cron, iterations, enabled, TestStore.Cancellation);
 
     [Fact]
@@ -22,7 +23,8 @@ public sealed class ScheduleStoreTests
         Assert.Equal(new StoredSchedule { Portfolio = "works", Cron = "0 2 * * *", Enabled = true, ChangedAt = TestStore.Start }, first);
         Assert.Equal(SchedulePutOutcome.Stored, await PutAsync(store, "works", "0 3 * * 1-5", enabled: false, iterations: 20_000));
         var second = (await store.Schedules.FindAsync(Caller.System, "works", TestStore.Cancellation))!;
-        Assert.Equal(("0 3 * * 1-5", 20_000, false, TestStore.Start.AddHours(1)), (second.Cron, second.Iterations!.Value, second.Enabled, second.ChangedAt));
+        Assert.Equal(("0 3 * * 1-5", 20_000, false, TestStore.Start.AddHours(1)), (
+            second.Cron, second.Iterations!.Value, second.Enabled, second.ChangedAt));
         var entries = await store.Audit.ListAsync(Caller.System, null, 10, TestStore.Cancellation);
         Assert.Equal(2, entries.Count(entry => entry.Action == "schedule.put"));
     }
@@ -36,9 +38,11 @@ public sealed class ScheduleStoreTests
             await store.WriteAsync(portfolio, ("", "s"));
             await PutAsync(store, portfolio, "0 2 * * *", enabled: portfolio != "basin");
         }
-        Assert.Equal(["harbour", "works"], (await store.Schedules.ListEnabledAsync(Caller.System, TestStore.Cancellation)).Select(schedule => schedule.Portfolio));
+        Assert.Equal(["harbour", "works"], (await store.Schedules.ListEnabledAsync(Caller.System, TestStore.Cancellation)).Select(
+            schedule => schedule.Portfolio));
         await store.RawAsync<long>("update portfolio set archived_at = 1 where id = 'works'");
-        Assert.Equal(["harbour"], (await store.Schedules.ListEnabledAsync(Caller.System, TestStore.Cancellation)).Select(schedule => schedule.Portfolio));
+        Assert.Equal(["harbour"], (await store.Schedules.ListEnabledAsync(Caller.System, TestStore.Cancellation)).Select(
+            schedule => schedule.Portfolio));
         Assert.Equal(SchedulePutOutcome.Archived, await PutAsync(store, "works", "0 4 * * *", enabled: true));
         Assert.Equal(SchedulePutOutcome.NotFound, await PutAsync(store, "nowhere", "0 4 * * *", enabled: true));
     }

@@ -14,7 +14,8 @@ internal static class TableDump
         await using var connection = new SqliteConnection($"Data Source={Path.Combine(folder, "portfolio.db")};Pooling=False");
         await connection.OpenAsync(TestStore.Cancellation);
         var dump = new StringBuilder();
-        foreach (var table in await ReadAsync(connection, "select name from sqlite_schema where type = 'table' and name not like 'sqlite_stat%' order by name"))
+        foreach (var table in await ReadAsync(
+            connection, "select name from sqlite_schema where type = 'table' and name not like 'sqlite_stat%' order by name"))
             dump.AppendLine(table).AppendJoin('\n', await ReadAsync(connection, $"select * from {table.Trim('|')}")).AppendLine();
         return dump.ToString();
     }
@@ -30,5 +31,6 @@ internal static class TableDump
         return rows;
     }
 
-    private static string Text(object value) => value is byte[] bytes ? Convert.ToHexString(bytes) : Convert.ToString(value, CultureInfo.InvariantCulture) ?? "";
+    private static string Text(object value) =>
+        value is byte[] bytes ? Convert.ToHexString(bytes) : Convert.ToString(value, CultureInfo.InvariantCulture) ?? "";
 }

@@ -71,7 +71,8 @@ public sealed class TestStore : IAsyncDisposable
     /// <summary>Statements on the file itself, past everything that the store guards.</summary>
     public async Task<T?> RawAsync<T>(string sql, object? parameters = null)
     {
-        await using var connection = new SqliteConnection($"Data Source={Path.Combine(Folder, "portfolio.db")};Foreign Keys=True;Pooling=False");
+        await using var connection = new SqliteConnection(
+            $"Data Source={Path.Combine(Folder, "portfolio.db")};Foreign Keys=True;Pooling=False");
         return await connection.ExecuteScalarAsync<T>(sql, parameters);
     }
 

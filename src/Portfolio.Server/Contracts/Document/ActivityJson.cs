@@ -20,7 +20,7 @@ public sealed record ActivityJson
     /// <summary>Working days; required unless milestone or finished.</summary>
     public DistributionJson? Duration { get; init; }
 
-    public CostJson? Cost { get; init; }
+    public ActivityCostJson? Cost { get; init; }
 
     public IReadOnlyList<LinkJson>? Predecessors { get; init; }
 
@@ -67,7 +67,7 @@ public sealed record ActivityJson
 }
 
 /// <summary>Cost to go, fixed and per working day, and what has been spent.</summary>
-public sealed record CostJson
+public sealed record ActivityCostJson
 {
     /// <summary>Money.</summary>
     public DistributionJson? Fixed { get; init; }

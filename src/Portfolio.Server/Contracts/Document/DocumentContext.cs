@@ -11,13 +11,12 @@ namespace Portfolio.Server.Contracts.Document;
 [JsonSerializable(typeof(ActivityJson))]
 internal sealed partial class DocumentContext : JsonSerializerContext
 {
-    public const int MaxDepth = 16;
-
-    public static readonly DocumentContext Strict = new(new JsonSerializerOptions(JsonSerializerDefaults.Strict)
+    /// <param name="maxDepth">Deepest nesting that is read.</param>
+    public static DocumentContext Strict(int maxDepth) => new(new JsonSerializerOptions(JsonSerializerDefaults.Strict)
     {
         PropertyNamingPolicy = JsonNamingPolicy.CamelCase,
         DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull,
-        MaxDepth = MaxDepth,
+        MaxDepth = maxDepth,
         // Stored and served as application/json, never inside a page: letters stay readable.
         Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping,
     });

@@ -5,31 +5,37 @@ using Portfolio.Server.Contracts.Json;
 
 namespace Portfolio.Server.Contracts.Document;
 
-/// <summary>From bytes to contract types and back. Throws <see cref="JsonRefused"/> for what is not JSON of the right shape (400).</summary>
-public static class DocumentReader
+/// <summary>From bytes to contract types and back. Reading throws <see cref="JsonRefused"/> for what is not JSON of the right shape (400).</summary>
+/// <param name="maxDepth">Deepest nesting that is read.</param>
+public sealed class DocumentReader(int maxDepth)
 {
-    public static DocumentJson ReadDocument(ReadOnlySpan<byte> json) => Read(json, DocumentContext.Strict.DocumentJson);
+    /// <summary>For what is stored: it was read with the limits of its day.</summary>
+    public static readonly DocumentReader OfStored = new(64);
 
-    public static SettingsJson ReadSettings(ReadOnlySpan<byte> json) => Read(json, DocumentContext.Strict.SettingsJson);
+    private readonly DocumentContext context = DocumentContext.Strict(maxDepth);
 
-    public static ProjectJson ReadProject(ReadOnlySpan<byte> json) => Read(json, DocumentContext.Strict.ProjectJson);
+    public DocumentJson ReadDocument(ReadOnlySpan<byte> json) => Read(json, context.DocumentJson);
+
+    public SettingsJson ReadSettings(ReadOnlySpan<byte> json) => Read(json, context.SettingsJson);
+
+    public ProjectJson ReadProject(ReadOnlySpan<byte> json) => Read(json, context.ProjectJson);
 
     /// <summary>The bytes in which settings are stored and digested: members in contract order, absent ones left out.</summary>
-    public static byte[] Bytes(SettingsJson settings) => JsonSerializer.SerializeToUtf8Bytes(settings, DocumentContext.Strict.SettingsJson);
+    public static byte[] Bytes(SettingsJson settings) => JsonSerializer.SerializeToUtf8Bytes(settings, OfStored.context.SettingsJson);
 
     /// <summary>The bytes in which a project is stored and digested.</summary>
-    public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, DocumentContext.Strict.ProjectJson);
+    public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, OfStored.context.ProjectJson);
 
     /// <summary>A document from its stored parts, which were checked when they were written.</summary>
     public static PortfolioDocument FromParts(ReadOnlySpan<byte> settings, IEnumerable<ReadOnlyMemory<byte>> projects)
     {
         var reading = new Reading();
         return new PortfolioDocument(
-            ReadSettings(settings).ToModel(reading, "/settings"),
-            [.. projects.Select((project, index) => ReadProject(project.Span).ToModel(reading, $"/projects/{index}"))]);
+            OfStored.ReadSettings(settings).ToModel(reading, "/settings"),
+            [.. projects.Select((project, index) => OfStored.ReadProject(project.Span).ToModel(reading, $"/projects/{index}"))]);
     }
 
-    internal static T Read<T>(ReadOnlySpan<byte> json, JsonTypeInfo<T> type)
+    private T Read<T>(ReadOnlySpan<byte> json, JsonTypeInfo<T> type)
         where T : class
     {
         // A byte order mark is tolerated (RFC 8259, section 8.1).
@@ -40,7 +46,7 @@ public static class DocumentReader
         }
         catch (JsonException refused)
         {
-            throw JsonRefused.From(json, refused, type);
+            throw JsonRefused.From(json, refused, type, maxDepth);
         }
     }
 }

@@ -1,3 +1,4 @@
+using System.Text;
 using System.Text.Json;
 
 namespace Portfolio.Server.Contracts.Document;
@@ -47,6 +48,8 @@ internal struct MemberNames
         "probability", "p", "outcomes", "points", "activity", "lag",
     ];
 
+    private static readonly byte[][] KnownUtf8 = [.. Known.Select(Encoding.UTF8.GetBytes)];
+
     private int seen;
     private HashSet<string>? others;
 
@@ -54,7 +57,7 @@ internal struct MemberNames
     public string Next(ref Utf8JsonReader reader)
     {
         var known = 0;
-        while (known < Known.Length && !reader.ValueTextEquals(Known[known]))
+        while (known < Known.Length && !reader.ValueTextEquals(KnownUtf8[known]))
             known++;
         var name = known < Known.Length ? Known[known] : reader.GetString()!;
         var repeated = known < Known.Length ? (seen & (1 << known)) != 0 : !(others ??= []).Add(name);

@@ -1,6 +1,5 @@
 using System.Text.Json.Serialization;
 using Portfolio.Model.Documents;
-using Portfolio.Model.Faults;
 using Portfolio.Server.Contracts.Json;
 
 namespace Portfolio.Server.Contracts.Document;
@@ -23,15 +22,15 @@ public sealed record RiskEventJson
     /// <param name="project">Whose event it is; null for the portfolio's.</param>
     internal RiskEvent ToModel(Reading reading, string path, string? project)
     {
-        var owner = project is null ? "" : project + "/";
+        var owner = project is null ? "" : $"{project}/";
         var place = new Place(path, $"{owner}event/{Id ?? path[(path.LastIndexOf('/') + 1)..]}");
         return new RiskEvent
         {
             Id = reading.Required(place, "id", Id),
             Name = Name,
             Probability = reading.RequiredNumber(place, "probability", Probability),
-            Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at }, project)),
-            Responses = reading.List(place, "responses", Responses, (response, at) => response.ToModel(reading, place with { Path = at }, project)),
+            Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at })),
+            Responses = reading.List(place, "responses", Responses, (response, at) => response.ToModel(reading, place with { Path = at })),
         };
     }
 }
@@ -51,11 +50,8 @@ public sealed record ImpactJson
     /// <summary>Money; negative for an opportunity.</summary>
     public DistributionJson? Cost { get; init; }
 
-    internal Impact ToModel(Reading reading, Place place, string? project)
-    {
-        ResponseJson.OnlyOfPortfolio(reading, place, Project, project);
-        return new Impact(Activity, project is null ? Project : null, Delay?.ToModel(reading, place, "delay"), Cost?.ToModel(reading, place, "cost"));
-    }
+    internal Impact ToModel(Reading reading, Place place) =>
+        new(Activity, Project, Delay?.ToModel(reading, place, "delay"), Cost?.ToModel(reading, place, "cost"));
 }
 
 /// <summary>When taken it replaces the event's probability and impacts and adds its certain cost.</summary>
@@ -79,24 +75,14 @@ public sealed record ResponseJson
     /// <summary>In the settings: the project that pays.</summary>
     public string? Project { get; init; }
 
-    internal Response ToModel(Reading reading, Place place, string? project)
+    internal Response ToModel(Reading reading, Place place) => new()
     {
-        OnlyOfPortfolio(reading, place, Project, project);
-        return new Response
-        {
-            Id = reading.Required(place, "id", Id),
-            Name = Name,
-            Cost = reading.Money(place, "cost", Cost) ?? 0,
-            Probability = reading.Number(place, "probability", Probability) ?? 0,
-            Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at }, project)),
-            Taken = Taken ?? false,
-            Project = project is null ? Project : null,
-        };
-    }
-
-    internal static void OnlyOfPortfolio(Reading reading, Place place, string? named, string? project)
-    {
-        if (named is not null && project is not null)
-            reading.Refuse(place, "project", FaultCodes.MemberUnknown, "Only events of the settings name a 'project'; here it is this project.");
-    }
+        Id = reading.Required(place, "id", Id),
+        Name = Name,
+        Cost = reading.Money(place, "cost", Cost) ?? 0,
+        Probability = reading.Number(place, "probability", Probability) ?? 0,
+        Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at })),
+        Taken = Taken ?? false,
+        Project = Project,
+    };
 }

@@ -90,10 +90,10 @@ public sealed record SettingsJson
     {
         if (FiscalYearStart is null)
             return new MonthDay(1, 1);
-        // 2023 has no 29 February: a year that starts on a day must have that day every year.
-        if (DateOnly.TryParseExact($"2023-{FiscalYearStart}", "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var day))
+        // 2024 has a 29 February: that it is not a day of every year is for the rules to say.
+        if (DateOnly.TryParseExact($"2024-{FiscalYearStart}", "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var day))
             return new MonthDay(day.Month, day.Day);
-        reading.Refuse(place, "fiscalYearStart", FaultCodes.DateFormat, "'fiscalYearStart' is not a month and day of every year, of the form 04-01.");
+        reading.Refuse(place, "fiscalYearStart", FaultCodes.DateFormat, "'fiscalYearStart' is not a month and day of the form 04-01.");
         return new MonthDay(1, 1);
     }
 }

@@ -2,7 +2,6 @@ using System.Text;
 using System.Text.Json;
 using System.Text.Json.Serialization.Metadata;
 using Portfolio.Model.Faults;
-using Portfolio.Server.Contracts.Document;
 
 namespace Portfolio.Server.Contracts.Json;
 
@@ -21,7 +20,7 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
         new(new Fault(path, "", FaultCodes.MemberKind, "A null cannot stand here."));
 
     /// <summary>Finds again what stopped the serializer, to say it in our own words: its messages name types of the program.</summary>
-    public static JsonRefused From(ReadOnlySpan<byte> json, JsonException refused, JsonTypeInfo type)
+    public static JsonRefused From(ReadOnlySpan<byte> json, JsonException refused, JsonTypeInfo type, int maxDepth)
     {
         var stop = Offset(json, refused);
         var walk = new PointerWalk(json);
@@ -32,8 +31,8 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
             {
                 var opens = walk.Token is JsonTokenType.StartObject or JsonTokenType.StartArray;
                 // Where any value is allowed the serializer stops one level before the one it refuses.
-                if (opens && walk.Depth >= DocumentContext.MaxDepth - (walk.Consumed >= stop ? 1 : 0))
-                    return At(json, walk, FaultCodes.JsonDepth, $"The JSON is nested deeper than {DocumentContext.MaxDepth} levels.");
+                if (opens && walk.Depth >= maxDepth - (walk.Consumed >= stop ? 1 : 0))
+                    return At(json, walk, FaultCodes.JsonDepth, $"The JSON is nested deeper than {maxDepth} levels.");
                 if (walk.Token == JsonTokenType.StartObject)
                     members.Push(new HashSet<string>(StringComparer.Ordinal));
                 else if (walk.Token == JsonTokenType.EndObject)

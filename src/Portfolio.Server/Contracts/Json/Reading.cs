@@ -5,7 +5,7 @@ namespace Portfolio.Server.Contracts.Json;
 
 /// <summary>
 /// Turns the texts and numbers of one request into the model's values and collects what could not be read. What could not be read becomes
-/// a value that the rules pass over (NaN, <see cref="DateOnly.MinValue"/>, ""), so that one mistake gives one fault.
+/// a value that the rules pass over (NaN, <see cref="DateOnly.MinValue"/>, null), so that one mistake gives one fault.
 /// </summary>
 public sealed class Reading
 {
@@ -23,12 +23,12 @@ public sealed class Reading
             Refuse(owner, member, FaultCodes.Reserved, $"'{member}' is reserved and not served yet; leave it out.");
     }
 
-    /// <summary>A text that must say something; an empty one counts as missing.</summary>
+    /// <summary>A text that must say something: an empty one counts as missing, and the null of a missing one is the sign for "reported".</summary>
     public string Required(Place owner, string member, string? text)
     {
         if (string.IsNullOrEmpty(text))
             Missing(owner, member);
-        return text ?? "";
+        return text!;
     }
 
     public DateOnly? Date(Place owner, string member, string? text)

@@ -1,0 +1,24 @@
+using System.Security.Cryptography;
+
+namespace Portfolio.Server.Access;
+
+/// <summary>The key of the first administrator, left in a file that only the server's user can read.</summary>
+internal static class FirstKey
+{
+    /// <summary>Makes a key of 256 random bits, writes it to the file and returns it.</summary>
+    public static string Write(string path)
+    {
+        var id = Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(8));
+        var key = $"pk_{id}_{Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(32))}";
+        File.Delete(path);
+        var options = new FileStreamOptions { Mode = FileMode.CreateNew, Access = FileAccess.Write };
+        if (!OperatingSystem.IsWindows())
+            options.UnixCreateMode = UnixFileMode.UserRead | UnixFileMode.UserWrite;
+        using var stream = new FileStream(path, options);
+        using var writer = new StreamWriter(stream);
+        writer.WriteLine(key);
+        writer.Flush();
+        stream.Flush(flushToDisk: true);
+        return key;
+    }
+}

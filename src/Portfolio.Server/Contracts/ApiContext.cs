@@ -1,0 +1,13 @@
+using System.Text.Json;
+using System.Text.Json.Serialization;
+using Portfolio.Server.Contracts.Portfolios;
+
+namespace Portfolio.Server.Contracts;
+
+/// <summary>Generated writers and readers of everything on the wire but the portfolio document.</summary>
+[JsonSourceGenerationOptions(JsonSerializerDefaults.Strict, PropertyNamingPolicy = JsonKnownNamingPolicy.CamelCase, DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
+[JsonSerializable(typeof(ProblemJson))]
+[JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
+[JsonSerializable(typeof(PageJson<RevisionJson>))]
+[JsonSerializable(typeof(WrittenJson))]
+internal sealed partial class ApiContext : JsonSerializerContext;

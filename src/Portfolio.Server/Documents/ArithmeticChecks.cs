@@ -1,0 +1,73 @@
+using Portfolio.Engine.Dependence;
+using Portfolio.Engine.Distributions;
+using Portfolio.Model.Distributions;
+using Portfolio.Model.Documents;
+using Portfolio.Model.Faults;
+
+namespace Portfolio.Server.Documents;
+
+/// <summary>The engine's pure checks over a whole document: whether correlations can exist together and stated percentiles have a distribution.</summary>
+internal static class ArithmeticChecks
+{
+    private const string Dependence = "/settings/dependence";
+
+    /// <param name="known">Faults found so far: what is at fault already is not worked out.</param>
+    public static IEnumerable<Fault> Of(PortfolioDocument document, IReadOnlyList<Fault> known)
+    {
+        var faults = new List<Fault>();
+        var spoilt = Spoilt(known);
+        StatedDistributions.Visit(document, stated =>
+        {
+            if (NeedsArithmetic(stated.Distribution) && !spoilt.Contains(stated.Path) && Flaw(stated) is { } fault)
+                faults.Add(fault);
+        });
+        if (CanJudgeDependence(document, known))
+            faults.AddRange(DependenceCheck.Check(document.Settings, document.Projects, Dependence));
+        return faults;
+    }
+
+    /// <summary>Places at fault and their owners: a distribution is spoilt by a fault in one of its members.</summary>
+    private static HashSet<string> Spoilt(IReadOnlyList<Fault> known)
+    {
+        var spoilt = new HashSet<string>(StringComparer.Ordinal);
+        foreach (var fault in known)
+        {
+            spoilt.Add(fault.Path);
+            if (fault.Path.LastIndexOf('/') is > 0 and var owner)
+                spoilt.Add(fault.Path[..owner]);
+        }
+        return spoilt;
+    }
+
+    private static bool NeedsArithmetic(Distribution stated) => stated switch
+    {
+        Triangular d => d.LowPercentile > 0 || d.HighPercentile < 100,
+        Pert d => d.LowPercentile > 0 || d.HighPercentile < 100,
+        Normal d => d.Min is not null || d.Max is not null,
+        LognormalByMoments or LognormalByPercentiles => true,
+        _ => false,
+    };
+
+    private static Fault? Flaw(StatedDistribution stated)
+    {
+        if (MarginalCheck.Fault(stated.Distribution) is { } sentence)
+            return new Fault(stated.Path, stated.Subject, FaultCodes.DistributionEnds, sentence);
+        // Ends stated as percentiles reach further out than they say. A normal's draws below 0 count as 0.
+        return stated is { MayBeNegative: false, Distribution: Triangular or Pert } && MarginalCheck.Lowest(stated.Distribution) is < 0 and var lowest
+            ? new Fault(stated.Path, stated.Subject, RuleCodes.DistributionNegative, FormattableString.Invariant(
+                $"With these percentiles the distribution reaches down to {lowest:0.###}; here it may not be negative."))
+            : null;
+    }
+
+    /// <summary>Nodes must have names of their own, and what was stated about them must be in order.</summary>
+    private static bool CanJudgeDependence(PortfolioDocument document, IReadOnlyList<Fault> known) =>
+        Distinct(document.Settings.Drivers.Select(driver => driver.Id))
+        && Distinct(document.Projects.Select(project => project.Id))
+        && !known.Any(fault => fault.Path.StartsWith(Dependence, StringComparison.Ordinal));
+
+    private static bool Distinct(IEnumerable<string?> ids)
+    {
+        var seen = new HashSet<string>(StringComparer.Ordinal);
+        return ids.All(id => id is not null && seen.Add(id));
+    }
+}

@@ -1,0 +1,64 @@
+using Portfolio.Model.Faults;
+using Portfolio.Server.Contracts.Document;
+using Portfolio.Server.Contracts.Json;
+using Portfolio.Server.Http;
+using Portfolio.Server.Problems;
+using Portfolio.Store.Documents;
+
+namespace Portfolio.Server.Documents;
+
+/// <summary>A whole document as it was sent: either the parts to store or the problem with it. Read and checked before any transaction.</summary>
+internal sealed class DocumentSubmission
+{
+    private readonly IReadOnlyList<ProposedPart> parts = [];
+    private readonly string? currency;
+    private readonly Problem? problem;
+
+    private DocumentSubmission(Problem problem) => this.problem = problem;
+
+    private DocumentSubmission(DocumentJson document)
+    {
+        currency = document.Settings!.Currency;
+        parts =
+        [
+            new ProposedPart(PartNames.Settings, DocumentReader.Bytes(document.Settings)),
+            .. document.Projects!.Select(project => new ProposedPart(project.Id!, DocumentReader.Bytes(project))),
+        ];
+        Tag = EntityTags.OfDocument(parts.Select(part => new PartHead(part.Project, ContentHash.Of(part.Bytes)))).ToString();
+    }
+
+    /// <summary>Entity tag of the document once it is stored.</summary>
+    public string? Tag { get; }
+
+    public static DocumentSubmission Of(ReadOnlySpan<byte> json, DocumentReader reader, DocumentCheck check)
+    {
+        try
+        {
+            var document = reader.ReadDocument(json);
+            return check.Check(document, json, out var faults) is null
+                ? new DocumentSubmission(Problem.Refused(faults))
+                : new DocumentSubmission(document);
+        }
+        catch (JsonRefused refused)
+        {
+            return new DocumentSubmission(Problem.Malformed(refused));
+        }
+    }
+
+    /// <summary>Looks at what is there now and proposes to replace it whole.</summary>
+    public async Task<Proposal> ReplaceAsync(Head? head, Preconditions conditions)
+    {
+        var refused = conditions.OfReplacing(head is null ? null : EntityTags.OfDocument(head.Parts)) ?? problem ?? await FixedCurrencyAsync(head);
+        return refused is null ? Change.Everything(head, parts) : new Refusal(refused, refused.Slug);
+    }
+
+    private async Task<Problem?> FixedCurrencyAsync(Head? head)
+    {
+        if (head is null || await head.ReadAsync(PartNames.Settings) is not { } settings)
+            return null;
+        var before = DocumentReader.OfStored.ReadSettings(settings).Currency;
+        if (before == currency || !await head.HasRunsAsync())
+            return null;
+        return Problem.Refused([new Fault("/settings/currency", "settings", FaultCodes.CurrencyFixed, $"The currency stays {before}: runs were made in it.")]);
+    }
+}

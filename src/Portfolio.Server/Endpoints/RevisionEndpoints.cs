@@ -1,0 +1,43 @@
+using System.ComponentModel.DataAnnotations;
+using System.Globalization;
+using System.Security.Claims;
+using Microsoft.AspNetCore.Http.HttpResults;
+using Portfolio.Server.Access;
+using Portfolio.Server.Contracts;
+using Portfolio.Server.Contracts.Portfolios;
+using Portfolio.Server.Http;
+using Portfolio.Server.Problems;
+using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
+
+namespace Portfolio.Server.Endpoints;
+
+internal static class RevisionEndpoints
+{
+    public static void MapRevisions(this IEndpointRouteBuilder portfolio)
+    {
+        var revisions = portfolio.MapGroup("/revisions").WithTags("Revisions").Needs(Right.Read);
+        revisions.MapGet("", List).WithName("listRevisions");
+        revisions.MapGet("/{number:long}", Get).WithName("getRevision").Produces<RevisionJson>();
+    }
+
+    /// <summary>Accepted writes, newest first.</summary>
+    /// <param name="cursor">Where the page before ended.</param>
+    /// <param name="limit">Items in a page.</param>
+    internal static async Task<Ok<PageJson<RevisionJson>>> List(
+        string portfolio, ClaimsPrincipal user, DocumentStore documents, HttpResponse response, CancellationToken cancellation,
+        string? cursor = null, [Range(1, Paging.Most)] int limit = Paging.Usual)
+    {
+        var found = await documents.ListRevisionsAsync(
+            user.Caller(), portfolio, Paging.Number(cursor), Paging.WithOneMore(limit), cancellation);
+        return TypedResults.Ok(Paging.Page(
+            response, found, limit, RevisionJson.From, revision => revision.Number.ToString(CultureInfo.InvariantCulture)));
+    }
+
+    /// <summary>One accepted write: when, by whom, with what note.</summary>
+    internal static async Task<IResult> Get(
+        string portfolio, long number, ClaimsPrincipal user, DocumentStore documents, CancellationToken cancellation) =>
+        await documents.FindRevisionAsync(user.Caller(), portfolio, number, cancellation) is { } revision
+            ? TypedResults.Ok(RevisionJson.From(revision))
+            : Problem.NotFound();
+}

@@ -1,0 +1,74 @@
+using System.ComponentModel.DataAnnotations;
+using Portfolio.Model.Rules;
+
+namespace Portfolio.Server.Hosting;
+
+/// <summary>The largest sizes that are accepted (<c>Limits</c>). Defaults are those of the API's description.</summary>
+public sealed class LimitOptions
+{
+    public const string Section = "Limits";
+
+    private const int MiB = 1024 * 1024;
+
+    /// <summary>Bytes of a whole document.</summary>
+    [Range(1024, 1024 * MiB)]
+    public int DocumentBody { get; set; } = 64 * MiB;
+
+    /// <summary>Bytes of any other body.</summary>
+    [Range(1024, 1024 * MiB)]
+    public int Body { get; set; } = 8 * MiB;
+
+    [Range(13, 64)]
+    public int JsonDepth { get; set; } = 16;
+
+    [Range(1, 100_000)]
+    public int Projects { get; set; } = 500;
+
+    /// <summary>Activities in one project.</summary>
+    [Range(1, 100_000)]
+    public int Activities { get; set; } = 5_000;
+
+    /// <summary>Different nodes named by the pairs of the dependence.</summary>
+    [Range(2, 2_000)]
+    public int PairedNodes { get; set; } = 500;
+
+    /// <summary>Points or outcomes of one distribution.</summary>
+    [Range(2, 100_000)]
+    public int Points { get; set; } = 1_000;
+
+    /// <summary>Stated dates of one calendar.</summary>
+    [Range(1, 100_000)]
+    public int CalendarDates { get; set; } = 5_000;
+
+    /// <summary>Changes of one pool's capacity.</summary>
+    [Range(1, 100_000)]
+    public int CapacityChanges { get; set; } = 1_000;
+
+    [Range(10, 10_000_000)]
+    public int Iterations { get; set; } = 1_000_000;
+
+    /// <summary>Confidence levels in one request.</summary>
+    [Range(1, 1_000)]
+    public int Levels { get; set; } = 99;
+
+    /// <summary>Bins of a histogram.</summary>
+    [Range(1, 100_000)]
+    public int Bins { get; set; } = 1_000;
+
+    /// <summary>Requests a second of one key.</summary>
+    [Range(1, 1_000_000)]
+    public int RequestsPerSecond { get; set; } = 2_000;
+
+    /// <summary>Those that the model's rules hold a document to.</summary>
+    public ModelLimits OfModel() => new()
+    {
+        Projects = Projects,
+        Activities = Activities,
+        PairedNodes = PairedNodes,
+        Points = Points,
+        CalendarDates = CalendarDates,
+        CapacityChanges = CapacityChanges,
+        MaxIterations = Iterations,
+        Levels = Levels,
+    };
+}

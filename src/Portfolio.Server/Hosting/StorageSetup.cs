@@ -1,0 +1,40 @@
+using Microsoft.Extensions.Options;
+using Portfolio.Store;
+using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
+using Portfolio.Store.Documents;
+using Portfolio.Store.Outbox;
+using Portfolio.Store.Results;
+using Portfolio.Store.Runs;
+using Portfolio.Store.Samples;
+using Portfolio.Store.Schedules;
+
+namespace Portfolio.Server.Hosting;
+
+/// <summary>The store and its concerns. The database is opened by whoever asks first, which is <see cref="StorageStart"/>, before anything is served.</summary>
+internal static class StorageSetup
+{
+    public static void AddStorage(this IServiceCollection services)
+    {
+        services.AddSingleton(Open);
+        services.AddSingleton<KeyStore>();
+        services.AddSingleton<AuditStore>();
+        services.AddSingleton<DocumentStore>();
+        services.AddSingleton<RunStore>();
+        services.AddSingleton<RunRequests>();
+        services.AddSingleton<RunClaims>();
+        services.AddSingleton<RunEndings>();
+        services.AddSingleton<SampleStore>();
+        services.AddSingleton<ResultStore>();
+        services.AddSingleton<ScheduleStore>();
+        services.AddSingleton<OutboxStore>();
+        services.AddHostedService<StorageStart>();
+    }
+
+    // At the start nothing else runs on this thread, so waiting here blocks nobody.
+    private static Database Open(IServiceProvider services) =>
+        Database.OpenAsync(
+            services.GetRequiredService<IOptions<StorageOptions>>().Value.Directory,
+            services.GetRequiredService<TimeProvider>(),
+            CancellationToken.None).GetAwaiter().GetResult();
+}

@@ -1,0 +1,35 @@
+using Microsoft.AspNetCore.Server.Kestrel.Core;
+
+namespace Portfolio.Server.Hosting;
+
+/// <summary>Where the server listens and what it accepts before any handler sees it; and how it logs.</summary>
+internal static class WebServerSetup
+{
+    private const string DefaultUrl = "http://127.0.0.1:5080";
+
+    public static void AddWebServer(this WebApplicationBuilder builder)
+    {
+        var configuration = builder.Configuration;
+        if (configuration["urls"] is null && configuration["http_ports"] is null && configuration["https_ports"] is null)
+            builder.WebHost.UseUrls(DefaultUrl);
+        builder.Services.AddOptions<KestrelServerOptions>().Configure<Microsoft.Extensions.Options.IOptions<LimitOptions>>((kestrel, limits) =>
+        {
+            kestrel.AddServerHeader = false;
+            // Handlers hold bodies to their own, smaller limits; this one stops what no handler would take.
+            kestrel.Limits.MaxRequestBodySize = limits.Value.DocumentBody;
+            kestrel.Limits.MaxConcurrentConnections = 10_000;
+            kestrel.Limits.MaxRequestHeadersTotalSize = 16 * 1024;
+        });
+    }
+
+    public static void AddJsonLogs(this ILoggingBuilder logging)
+    {
+        logging.ClearProviders();
+        logging.AddJsonConsole(console =>
+        {
+            console.UseUtcTimestamp = true;
+            console.TimestampFormat = "yyyy-MM-dd'T'HH:mm:ss.fff'Z'";
+        });
+        logging.AddFilter("Microsoft.AspNetCore", LogLevel.Warning);
+    }
+}

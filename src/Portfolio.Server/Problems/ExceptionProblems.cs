@@ -1,0 +1,39 @@
+using Microsoft.AspNetCore.Diagnostics;
+using Portfolio.Server.Contracts.Json;
+
+namespace Portfolio.Server.Problems;
+
+/// <summary>Says in our own words what an exception means to the client; never its message, which names types of the program.</summary>
+internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) : IExceptionHandler
+{
+    public async ValueTask<bool> TryHandleAsync(HttpContext context, Exception exception, CancellationToken cancellation)
+    {
+        if (context.RequestAborted.IsCancellationRequested)
+            return true;
+        var problem = exception switch
+        {
+            RequestRefused refused => refused.Problem,
+            JsonRefused refused => Problem.Malformed(refused),
+            BadHttpRequestException { StatusCode: 413 } => new Problem(413, "too-large", "The body is too large"),
+            BadHttpRequestException => Problem.BadRequest("A parameter of the address or a header cannot be read."),
+            _ => Unforeseen(exception),
+        };
+        await problem.ExecuteAsync(context);
+        return true;
+    }
+
+    private Problem Unforeseen(Exception exception)
+    {
+        LogUnforeseen(exception);
+        return new Problem(500, "internal", "The server failed", "The failure is logged under the trace id.");
+    }
+
+    [LoggerMessage(Level = LogLevel.Error, Message = "A request failed.")]
+    private partial void LogUnforeseen(Exception exception);
+}
+
+/// <summary>Stops a handler with a problem.</summary>
+internal sealed class RequestRefused(Problem problem) : Exception(problem.Slug)
+{
+    public Problem Problem { get; } = problem;
+}

@@ -1,0 +1,53 @@
+using System.Net;
+using Microsoft.Extensions.Options;
+using Portfolio.Server.Tests.Hosting;
+
+namespace Portfolio.Server.Tests;
+
+public sealed class StartTests
+{
+    [Fact]
+    public async Task TheFirstKeyIsLeftInAFileThatOnlyItsOwnerReads()
+    {
+        var directory = Directory.CreateTempSubdirectory("portfolio-");
+        try
+        {
+            string key;
+            await using (var server = new PortfolioServer(directory.FullName, ("Security:BootstrapKey", null)))
+            {
+                Assert.Equal(HttpStatusCode.Unauthorized, (await server.Client(key: null).ReadAsync("/v1/portfolios")).StatusCode);
+                var file = Path.Combine(directory.FullName, "first-key.txt");
+                if (!OperatingSystem.IsWindows())
+                    Assert.Equal(UnixFileMode.UserRead | UnixFileMode.UserWrite, File.GetUnixFileMode(file));
+                key = (await File.ReadAllTextAsync(file, TestContext.Current.CancellationToken)).Trim();
+                Assert.Equal(HttpStatusCode.OK, (await server.Client(key).ReadAsync("/v1/portfolios")).StatusCode);
+            }
+            await using var again = new PortfolioServer(directory.FullName, ("Security:BootstrapKey", null));
+            Assert.Equal(HttpStatusCode.OK, (await again.Client(key).ReadAsync("/v1/portfolios")).StatusCode);
+        }
+        finally
+        {
+            directory.Delete(recursive: true);
+        }
+    }
+
+    [Theory]
+    [InlineData("Security:BootstrapKey", "too short")]
+    [InlineData("Roles", "everything")]
+    [InlineData("Limits:JsonDepth", "5")]
+    [InlineData("Storage:Postgres", "Host=localhost")]
+    public async Task AWrongSettingStopsTheStart(string key, string value)
+    {
+        await using var server = new PortfolioServer(null, (key, value));
+        Assert.Throws<OptionsValidationException>(() => server.Client());
+    }
+
+    [Theory]
+    [InlineData("/health/live", """{"status":"ok","checks":{  }}""")]
+    [InlineData("/health/ready", """{"status":"ok","checks":{ "storage":"ok" }}""")]
+    public async Task HealthNeedsNoKey(string address, string answer)
+    {
+        await using var server = new PortfolioServer();
+        Assert.Equal(answer, await (await server.Client(key: null).ReadAsync(address)).TextAsync());
+    }
+}
