@@ -33,4 +33,4 @@ var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
 portfolio.MapDocument();
 portfolio.MapRevisions();
 
-await app.RunAsync();
+return await app.RunToEndAsync();

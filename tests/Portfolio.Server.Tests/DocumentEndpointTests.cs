@@ -44,6 +44,18 @@ public sealed class DocumentEndpointTests(ServerFixture fixture) : IClassFixture
         await (await client.PutJsonAsync("/v1/portfolios/nothing/document", Samples.Document(), "*")).ProblemAsync(412, "precondition-failed");
 
     [Fact]
+    public async Task CreateOnlyLeavesWhatIsThere()
+    {
+        const string address = "/v1/portfolios/once/document";
+        foreach (var status in new[] { HttpStatusCode.Created, HttpStatusCode.PreconditionFailed })
+        {
+            var request = new HttpRequestMessage(HttpMethod.Put, address) { Content = new StringContent(Samples.Document(), null, "application/json") };
+            request.Headers.TryAddWithoutValidation("If-None-Match", "*");
+            Assert.Equal(status, (await client.SendAsync(request, TestContext.Current.CancellationToken)).StatusCode);
+        }
+    }
+
+    [Fact]
     public async Task ThePastStaysReadableByRevisionAndByDate()
     {
         await using var server = new PortfolioServer();

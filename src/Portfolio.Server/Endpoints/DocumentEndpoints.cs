@@ -6,6 +6,7 @@ using Portfolio.Server.Contracts.Portfolios;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
@@ -18,11 +19,11 @@ internal static class DocumentEndpoints
     {
         var document = portfolio.MapGroup("/document").WithTags("Document");
         document.MapGet("", Get).WithName("getDocument").Needs(Right.Read)
-            .Produces<DocumentJson>().Produces(StatusCodes.Status304NotModified);
+            .Produces<DocumentJson>().ReadsConditionally();
         document.MapPut("", Put).WithName("putDocument").Needs(Right.Manage)
             .Accepts<DocumentJson>("application/json")
             .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)
-            .Refuses(409, 412, 413, 415, 422, 428);
+            .WritesConditionally().Refuses(409, 412, 413, 415, 422, 428);
     }
 
     /// <summary>The document as it was sent, defaults not filled in.</summary>

@@ -3,9 +3,7 @@ using Microsoft.AspNetCore.Hosting;
 using Microsoft.AspNetCore.Mvc.Testing;
 using Microsoft.AspNetCore.TestHost;
 using Microsoft.Extensions.DependencyInjection;
-using Microsoft.Extensions.Hosting;
 using Microsoft.Extensions.Time.Testing;
-using Portfolio.Store;
 using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Hosting;
@@ -16,7 +14,6 @@ public sealed class PortfolioServer : IAsyncDisposable
     public const string AdminKey = "the-administrator-key-of-the-tests-0123456789";
 
     private readonly WebApplicationFactory<Program> factory;
-    private bool started;
 
     /// <param name="directory">An existing folder to start on; null: a new one, removed at the end.</param>
     /// <param name="settings">Settings beside the folder and the key, such as <c>Limits:Body</c>; a null value takes one away.</param>
@@ -48,7 +45,6 @@ public sealed class PortfolioServer : IAsyncDisposable
     public HttpClient Client(string? key = AdminKey)
     {
         var client = factory.CreateClient();
-        started = true;
         if (key is not null)
             client.DefaultRequestHeaders.Authorization = new AuthenticationHeaderValue("Bearer", key);
         return client;
@@ -64,15 +60,28 @@ public sealed class PortfolioServer : IAsyncDisposable
 
     public async ValueTask DisposeAsync()
     {
-        if (started)
-        {
-            // The factory does not wait until the folder is free again.
-            await Services.GetRequiredService<IHost>().StopAsync();
-            await Services.GetRequiredService<Database>().DisposeAsync();
-        }
         await factory.DisposeAsync();
+        await FolderIsFreeAsync();
         if (OwnsDirectory)
             System.IO.Directory.Delete(Directory, recursive: true);
+    }
+
+    /// <summary>The factory does not wait for the end of the program, which lets go of the folder last.</summary>
+    private async Task FolderIsFreeAsync()
+    {
+        var hold = Path.Combine(Directory, "portfolio.lock");
+        while (File.Exists(hold))
+        {
+            try
+            {
+                using var free = new FileStream(hold, FileMode.Open, FileAccess.ReadWrite, FileShare.None);
+                return;
+            }
+            catch (IOException)
+            {
+                await Task.Delay(10, TestContext.Current.CancellationToken);
+            }
+        }
     }
 }
 

@@ -1,0 +1,35 @@
+using Microsoft.OpenApi;
+
+namespace Portfolio.Server.OpenApi;
+
+/// <summary>Adds the headers of conditional requests and the entity tag of the answer to a route's description.</summary>
+internal static class DescribeConditions
+{
+    /// <summary>A read that answers 304 to a client which has it already.</summary>
+    public static RouteHandlerBuilder ReadsConditionally(this RouteHandlerBuilder route) =>
+        route.Produces(StatusCodes.Status304NotModified).With("If-None-Match", "Entity tags that the client has; 304 when one is current.");
+
+    /// <summary>A write that says what it replaces.</summary>
+    public static RouteHandlerBuilder WritesConditionally(this RouteHandlerBuilder route) =>
+        route.With("If-Match", "Entity tag of what is replaced, or *; needed when something is there (428).")
+            .With("If-None-Match", "* to create only (412 when something is there).");
+
+    private static RouteHandlerBuilder With(this RouteHandlerBuilder route, string header, string description) =>
+        route.AddOpenApiOperationTransformer((operation, _, _) =>
+        {
+            (operation.Parameters ??= []).Add(new OpenApiParameter
+            {
+                Name = header,
+                In = ParameterLocation.Header,
+                Description = description,
+                Schema = new OpenApiSchema { Type = JsonSchemaType.String },
+            });
+            foreach (var (_, response) in (operation.Responses ?? []).Where(pair => pair.Key is "200" or "201" or "304"))
+                if (response is OpenApiResponse answer)
+                    (answer.Headers ??= new Dictionary<string, IOpenApiHeader>()).TryAdd("ETag", EntityTag());
+            return Task.CompletedTask;
+        });
+
+    private static OpenApiHeader EntityTag() =>
+        new() { Description = "Strong entity tag of what is answered or written.", Schema = new OpenApiSchema { Type = JsonSchemaType.String } };
+}
