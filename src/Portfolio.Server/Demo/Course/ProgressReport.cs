@@ -58,7 +58,7 @@ internal static class ProgressReport
     }
 
     /// <summary>Cost after so many days of work; <paramref name="share"/> of the fixed cost is spent.</summary>
-    private static CostJson? Spent(string project, ActivityJson activity, int done, double share)
+    private static ActivityCostJson? Spent(string project, ActivityJson activity, int done, double share)
     {
         if (activity.Cost is not { } cost)
             return null;

@@ -43,10 +43,10 @@ internal static class ScopeTable
         };
     }
 
-    private static CostJson Cost(string text, double factor)
+    private static ActivityCostJson Cost(string text, double factor)
     {
         var parts = text.Split('+', StringSplitOptions.TrimEntries);
-        return new CostJson
+        return new ActivityCostJson
         {
             Fixed = parts[0].Length == 0 ? null : Thousands(parts[0], factor, low: 0.92, high: 1.28),
             PerDay = parts.Length == 1 ? null : Thousands(parts[1], factor, low: 0.95, high: 1.15),

@@ -109,11 +109,11 @@ internal static class Happenings
         };
     });
 
-    private static CostJson Dearer(CostJson? cost, DistributionJson? by)
+    private static ActivityCostJson Dearer(ActivityCostJson? cost, DistributionJson? by)
     {
         var extra = Estimate.Middle(by);
         return cost?.Fixed is null
-            ? (cost ?? new CostJson()) with { Fixed = by }
+            ? (cost ?? new ActivityCostJson()) with { Fixed = by }
             : cost with { Fixed = Estimate.Shifted(cost.Fixed, extra) };
     }
 
