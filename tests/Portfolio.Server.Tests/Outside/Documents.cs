@@ -1,6 +1,8 @@
 using Portfolio.Engine;
 using Portfolio.Engine.Runs;
+using Portfolio.Model.Rules;
 using Portfolio.Server.Contracts.Document;
+using Portfolio.Server.Documents;
 
 namespace Portfolio.Server.Tests.Outside;
 
@@ -9,7 +11,7 @@ internal static class Documents
 {
     public static Plan Compile(byte[] json)
     {
-        var valid = DocumentCheck.Check(DocumentReader.ReadDocument(json), json, out var faults);
+        var valid = new DocumentCheck(ModelLimits.Default).Check(DocumentReader.OfStored.ReadDocument(json), json, out var faults);
         Assert.Empty(faults);
         return Plan.Compile(valid!);
     }
