@@ -4,6 +4,7 @@ using Portfolio.Server.Endpoints;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
+using Portfolio.Server.Results;
 
 var builder = WebApplication.CreateBuilder(args);
 #pragma warning disable RS0030 // The one place where the system's clock comes in.
@@ -16,6 +17,7 @@ builder.Services.AddStorage();
 builder.Services.AddAccess();
 builder.Services.AddProblems();
 builder.Services.AddDocuments();
+builder.Services.AddResults();
 builder.Services.AddHealth();
 builder.Services.AddApiDescription();
 builder.RestWhenDescribing();
@@ -32,5 +34,9 @@ api.MapPortfolios();
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
 portfolio.MapDocument();
 portfolio.MapRevisions();
+portfolio.MapResults();
+portfolio.MapDistribution();
+portfolio.MapSeries();
+portfolio.MapContingency();
 
 return await app.RunToEndAsync();

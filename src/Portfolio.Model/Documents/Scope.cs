@@ -20,6 +20,9 @@ public sealed record Scope(ScopeKind Kind, string? Programme = null, string? Pro
 
     public static Scope OfMilestone(string project, string activity) => new(ScopeKind.Milestone, Project: project, Activity: activity);
 
+    /// <summary>True for what joins several projects: a programme, the portfolio.</summary>
+    public bool IsTotal => Kind is ScopeKind.Portfolio or ScopeKind.Programme;
+
     public override string ToString() => Kind switch
     {
         ScopeKind.Programme => $"programme/{Programme}",

@@ -29,9 +29,15 @@ internal static class Paging
         if (found.Count <= limit)
             return new PageJson<TJson> { Items = [.. found.Select(from)] };
         var next = cursorOf(found[limit - 1]);
+        LinkNext(response, next);
+        return new PageJson<TJson> { Items = [.. found.Take(limit).Select(from)], Next = next };
+    }
+
+    /// <summary>Links the page that begins after the cursor.</summary>
+    public static void LinkNext(HttpResponse response, string next)
+    {
         var request = response.HttpContext.Request;
         var query = new QueryBuilder(request.Query.Where(pair => pair.Key != "cursor")) { { "cursor", next } };
         response.Headers.Link = $"<{request.PathBase}{request.Path}{query}>; rel=\"next\"";
-        return new PageJson<TJson> { Items = [.. found.Take(limit).Select(from)], Next = next };
     }
 }

@@ -27,6 +27,7 @@ internal static class ApiDescription
         {
             description.CreateSchemaReferenceId = SchemaNames.Of;
             description.AddDocumentTransformer(DescribeApi.Apply);
+            description.AddOperationTransformer(DescribeCsv.Apply);
             description.AddSchemaTransformer(DescribeTypes.Apply);
             description.AddDocumentTransformer(OpenAnswers.Apply);
         });

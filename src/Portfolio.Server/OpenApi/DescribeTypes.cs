@@ -3,6 +3,7 @@ using Microsoft.AspNetCore.OpenApi;
 using Microsoft.OpenApi;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
+using Portfolio.Server.Contracts.Results;
 
 namespace Portfolio.Server.OpenApi;
 
@@ -18,6 +19,8 @@ internal static class DescribeTypes
             (schema.Type, schema.Format) = (JsonSchemaType.String, "date-time");
         else if (type == typeof(LinkJson))
             LinkSchema.Write(schema);
+        else if (type == typeof(DateOrMoney) || type == typeof(DateOrMoney?))
+            DateOrMoneySchema.Write(schema);
         else if (DocumentMembers.Required.TryGetValue(type, out var required))
             Require(schema, required);
         // A nullable list of a type that is read by hand loses its items.

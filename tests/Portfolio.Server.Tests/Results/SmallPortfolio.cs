@@ -22,7 +22,7 @@ internal static class SmallPortfolio
     public static readonly string[] Projects =
     [
         """
-        {"id":"weir","programme":"locks","statusDate":"2026-11-30","commitments":{"finish":"2027-06-30","budget":120000},
+        {"id":"weir","programme":"locks","statusDate":"2026-11-30","commitments":{"finish":"2027-04-30","budget":120000},
          "activities":[
           {"id":"A","duration":{"type":"pert","low":40,"mode":60,"high":120},"cost":{"fixed":{"type":"triangular","low":20000.005,"mode":30000,"high":60000},"perDay":333.33}},
           {"id":"B","duration":{"type":"uniform","low":10,"high":90},"predecessors":["A"],"cost":{"perDay":750.5}},
