@@ -49,6 +49,9 @@ internal static class DemoHistory
         return weeks;
     }
 
+    /// <summary>A day whose history begins with the week that ends on this Sunday.</summary>
+    public static DateOnly DayAfter(DateOnly firstWeek) => firstWeek.AddDays((7 * (Length - 1)) + 1);
+
     private static double Pace(string project, string activity) => BestPace + (WorsePace * Math.Pow(Chance.Of($"{project}/{activity}/pace"), Skew));
 
     /// <summary>Work in a fork waits until the story takes the fork away.</summary>
