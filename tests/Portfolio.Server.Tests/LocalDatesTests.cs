@@ -2,7 +2,9 @@ using Portfolio.Server.Http;
 
 namespace Portfolio.Server.Tests;
 
-/// <summary>Transitions from the IANA time zone database: Sao Paulo skipped midnight on 2018-11-04, Havana repeated it on 2021-11-07.</summary>
+/// <summary>
+/// Transitions from the IANA time zone database: Sao Paulo skipped midnight on 2018-11-04, Havana repeated it on 2021-11-07.
+/// </summary>
 public sealed class LocalDatesTests
 {
     [Theory]

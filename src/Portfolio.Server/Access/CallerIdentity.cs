@@ -5,7 +5,8 @@ namespace Portfolio.Server.Access;
 
 /// <summary>The key behind a request, as ASP.NET's idea of a user.</summary>
 internal sealed class CallerIdentity(Caller caller)
-    : ClaimsIdentity([new Claim(ClaimTypes.NameIdentifier, caller.KeyId), new Claim(ClaimTypes.Name, caller.Name)], KeyAuthentication.SchemeName)
+    : ClaimsIdentity([new Claim(ClaimTypes.NameIdentifier, caller.KeyId), new Claim(ClaimTypes.Name, caller.Name)],
+        KeyAuthentication.SchemeName)
 {
     public Caller Caller { get; } = caller;
 

@@ -10,7 +10,9 @@ using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Access;
 
-/// <summary>Who asks, by the key presented as <c>Bearer</c> or as password of <c>Basic</c> (spreadsheets know only that; RFC 6750, RFC 7617).</summary>
+/// <summary>
+/// Who asks, by the key presented as <c>Bearer</c> or as password of <c>Basic</c> (spreadsheets know only that; RFC 6750, RFC 7617).
+/// </summary>
 internal sealed class KeyAuthentication(
     IOptionsMonitor<AuthenticationSchemeOptions> options, ILoggerFactory logs, UrlEncoder encoder, KeyStore keys)
     : AuthenticationHandler<AuthenticationSchemeOptions>(options, logs, encoder)

@@ -3,10 +3,14 @@ using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Access;
 
-/// <summary>The right that a route needs on the portfolio in its address, or on some project of it: the store decides about single projects.</summary>
+/// <summary>
+/// The right that a route needs on the portfolio in its address, or on some project of it: the store decides about single projects.
+/// </summary>
 internal sealed record RightRequirement(Right Right) : IAuthorizationRequirement;
 
-/// <summary>Tells three cases apart: the right is held; the portfolio is known but the right missing (403); nothing is granted on it (404).</summary>
+/// <summary>
+/// Tells three cases apart: the right is held; the portfolio is known but the right missing (403); nothing is granted on it (404).
+/// </summary>
 internal sealed class RightHandler : AuthorizationHandler<RightRequirement>
 {
     public const string Stranger = "stranger";

@@ -5,7 +5,8 @@ using Portfolio.Server.Contracts.Portfolios;
 namespace Portfolio.Server.Contracts;
 
 /// <summary>Generated writers and readers of everything on the wire but the portfolio document.</summary>
-[JsonSourceGenerationOptions(JsonSerializerDefaults.Strict, PropertyNamingPolicy = JsonKnownNamingPolicy.CamelCase, DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
+[JsonSourceGenerationOptions(
+    JsonSerializerDefaults.Strict, PropertyNamingPolicy = JsonKnownNamingPolicy.CamelCase, DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
 [JsonSerializable(typeof(ProblemJson))]
 [JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
 [JsonSerializable(typeof(PageJson<RevisionJson>))]

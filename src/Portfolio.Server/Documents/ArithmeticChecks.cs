@@ -6,7 +6,9 @@ using Portfolio.Model.Faults;
 
 namespace Portfolio.Server.Documents;
 
-/// <summary>The engine's pure checks over a whole document: whether correlations can exist together and stated percentiles have a distribution.</summary>
+/// <summary>
+/// The engine's pure checks over a whole document: whether correlations can exist together and stated percentiles have a distribution.
+/// </summary>
 internal static class ArithmeticChecks
 {
     private const string Dependence = "/settings/dependence";
@@ -53,7 +55,8 @@ internal static class ArithmeticChecks
         if (MarginalCheck.Fault(stated.Distribution) is { } sentence)
             return new Fault(stated.Path, stated.Subject, FaultCodes.DistributionEnds, sentence);
         // Ends stated as percentiles reach further out than they say. A normal's draws below 0 count as 0.
-        return stated is { MayBeNegative: false, Distribution: Triangular or Pert } && MarginalCheck.Lowest(stated.Distribution) is < 0 and var lowest
+        return stated is { MayBeNegative: false, Distribution: Triangular or Pert }
+            && MarginalCheck.Lowest(stated.Distribution) is < 0 and var lowest
             ? new Fault(stated.Path, stated.Subject, RuleCodes.DistributionNegative, FormattableString.Invariant(
                 $"With these percentiles the distribution reaches down to {lowest:0.###}; here it may not be negative."))
             : null;

@@ -27,9 +27,11 @@ internal sealed class DocumentCheck(ModelLimits limits)
 
     private static List<Fault> Together(PortfolioDocument model, bool withoutSettings, List<Fault> shape, IReadOnlyList<Fault> rules)
     {
-        // A rule that speaks of a member which could not be read repeats what is already said; so do all rules of settings that were not sent.
-        var unread = shape.Where(fault => fault.Code != FaultCodes.MemberMissing).Select(fault => fault.Path).ToHashSet(StringComparer.Ordinal);
-        var meant = rules.Where(fault => !unread.Contains(fault.Path) && !(withoutSettings && fault.Path.StartsWith("/settings", StringComparison.Ordinal)));
+        // A rule that speaks of a member which could not be read repeats what is already said; so do rules of settings that were not sent.
+        var unread = shape.Where(fault => fault.Code != FaultCodes.MemberMissing)
+            .Select(fault => fault.Path).ToHashSet(StringComparer.Ordinal);
+        var meant = rules.Where(fault => !unread.Contains(fault.Path)
+            && !(withoutSettings && fault.Path.StartsWith("/settings", StringComparison.Ordinal)));
         List<Fault> found = [.. shape, .. meant];
         found.AddRange(ArithmeticChecks.Of(model, found));
         return found;

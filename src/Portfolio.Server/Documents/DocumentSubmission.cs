@@ -7,7 +7,9 @@ using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Documents;
 
-/// <summary>A whole document as it was sent: either the parts to store or the problem with it. Read and checked before any transaction.</summary>
+/// <summary>
+/// A whole document as it was sent: either the parts to store or the problem with it. Read and checked before any transaction.
+/// </summary>
 internal sealed class DocumentSubmission
 {
     private readonly IReadOnlyList<ProposedPart> parts = [];
@@ -48,7 +50,8 @@ internal sealed class DocumentSubmission
     /// <summary>Looks at what is there now and proposes to replace it whole.</summary>
     public async Task<Proposal> ReplaceAsync(Head? head, Preconditions conditions)
     {
-        var refused = conditions.OfReplacing(head is null ? null : EntityTags.OfDocument(head.Parts)) ?? problem ?? await FixedCurrencyAsync(head);
+        var refused = conditions.OfReplacing(head is null ? null : EntityTags.OfDocument(head.Parts))
+            ?? problem ?? await FixedCurrencyAsync(head);
         return refused is null ? Change.Everything(head, parts) : new Refusal(refused, refused.Slug);
     }
 
@@ -59,6 +62,7 @@ internal sealed class DocumentSubmission
         var before = DocumentReader.OfStored.ReadSettings(settings).Currency;
         if (before == currency || !await head.HasRunsAsync())
             return null;
-        return Problem.Refused([new Fault("/settings/currency", "settings", FaultCodes.CurrencyFixed, $"The currency stays {before}: runs were made in it.")]);
+        var why = $"The currency stays {before}: runs were made in it.";
+        return Problem.Refused([new Fault("/settings/currency", "settings", FaultCodes.CurrencyFixed, why)]);
     }
 }

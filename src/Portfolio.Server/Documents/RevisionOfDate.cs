@@ -15,7 +15,9 @@ internal sealed class RevisionOfDate(DocumentStore documents)
         return (await documents.FindRevisionAtAsync(caller, portfolio, LocalDates.EndOf(date, zone), cancellation))?.Number;
     }
 
-    /// <summary>The zone of a portfolio's local dates. Read by the server itself: whoever may ask for a date need not see the settings.</summary>
+    /// <summary>
+    /// The zone of a portfolio's local dates. Read by the server itself: whoever may ask for a date need not see the settings.
+    /// </summary>
     public async Task<TimeZoneInfo> ZoneAsync(string portfolio, CancellationToken cancellation)
     {
         var settings = await documents.ReadPartAsync(Caller.System, portfolio, PartNames.Settings, null, cancellation);

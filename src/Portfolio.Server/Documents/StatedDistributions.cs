@@ -69,7 +69,8 @@ internal static class StatedDistributions
         }
     }
 
-    private static void One(Distribution? stated, bool mayBeNegative, string subject, string owner, string member, Action<StatedDistribution> visit)
+    private static void One(
+        Distribution? stated, bool mayBeNegative, string subject, string owner, string member, Action<StatedDistribution> visit)
     {
         if (stated is not null)
             visit(new StatedDistribution(stated, mayBeNegative, subject, owner, member));

@@ -30,8 +30,8 @@ internal static class DocumentEndpoints
     /// <param name="revision">A revision; left out: the newest.</param>
     /// <param name="asOf">The revision that was current at the end of this local date.</param>
     internal static async Task<IResult> Get(
-        string portfolio, ClaimsPrincipal user, DocumentStore documents, RevisionOfDate revisions, HttpContext http, CancellationToken cancellation,
-        long? revision = null, DateOnly? asOf = null)
+        string portfolio, ClaimsPrincipal user, DocumentStore documents, RevisionOfDate revisions, HttpContext http,
+        CancellationToken cancellation, long? revision = null, DateOnly? asOf = null)
     {
         if (revision is not null && asOf is not null)
             return Problem.BadRequest("Give 'revision' or 'asOf', not both.");
@@ -48,8 +48,8 @@ internal static class DocumentEndpoints
     /// <summary>Creates the portfolio or replaces everything at once.</summary>
     /// <param name="note">Kept with the revision.</param>
     internal static async Task<IResult> Put(
-        string portfolio, ClaimsPrincipal user, DocumentStore documents, DocumentReader reader, DocumentCheck check, IOptions<LimitOptions> limits,
-        HttpContext http, CancellationToken cancellation, string? note = null)
+        string portfolio, ClaimsPrincipal user, DocumentStore documents, DocumentReader reader, DocumentCheck check,
+        IOptions<LimitOptions> limits, HttpContext http, CancellationToken cancellation, string? note = null)
     {
         var write = new DocumentWrite { Portfolio = portfolio, Note = Notes.Checked(note), Action = "document.put" };
         var conditions = new Preconditions(http.Request);

@@ -11,7 +11,10 @@ using Portfolio.Store.Schedules;
 
 namespace Portfolio.Server.Hosting;
 
-/// <summary>The store and its concerns. The database is opened by whoever asks first, which is <see cref="StorageStart"/>, before anything is served.</summary>
+/// <summary>
+/// The store and its concerns. The database is opened by whoever asks first, which is <see cref="StorageStart"/>, before anything is
+/// served.
+/// </summary>
 internal static class StorageSetup
 {
     public static void AddStorage(this IServiceCollection services)

@@ -7,7 +7,8 @@ namespace Portfolio.Server.Hosting;
 
 /// <summary>Before the server listens: the database is open and migrated, and an administrator can get in.</summary>
 internal sealed partial class StorageStart(
-    Database database, KeyStore keys, IOptions<StorageOptions> storage, IOptions<SecurityOptions> security, ILogger<StorageStart> log) : IHostedService
+    Database database, KeyStore keys, IOptions<StorageOptions> storage, IOptions<SecurityOptions> security, ILogger<StorageStart> log)
+    : IHostedService
 {
     public async Task StartAsync(CancellationToken cancellation)
     {

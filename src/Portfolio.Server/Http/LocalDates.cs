@@ -17,5 +17,6 @@ internal static class LocalDates
     public static DateTimeOffset EndOf(DateOnly date, TimeZoneInfo zone) => StartOf(date.AddDays(1), zone).AddTicks(-1);
 
     /// <summary>The date on which an instant falls.</summary>
-    public static DateOnly Of(DateTimeOffset instant, TimeZoneInfo zone) => DateOnly.FromDateTime(TimeZoneInfo.ConvertTime(instant, zone).DateTime);
+    public static DateOnly Of(DateTimeOffset instant, TimeZoneInfo zone) =>
+        DateOnly.FromDateTime(TimeZoneInfo.ConvertTime(instant, zone).DateTime);
 }

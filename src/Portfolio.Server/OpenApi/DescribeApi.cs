@@ -20,7 +20,10 @@ internal static class DescribeApi
         document.Components.SecuritySchemes = new Dictionary<string, IOpenApiSecurityScheme>
         {
             ["bearer"] = new OpenApiSecurityScheme { Type = SecuritySchemeType.Http, Scheme = "bearer", Description = "A key." },
-            ["basic"] = new OpenApiSecurityScheme { Type = SecuritySchemeType.Http, Scheme = "basic", Description = "A key as password; any user name." },
+            ["basic"] = new OpenApiSecurityScheme
+            {
+                Type = SecuritySchemeType.Http, Scheme = "basic", Description = "A key as password; any user name.",
+            },
         };
         document.Security =
         [

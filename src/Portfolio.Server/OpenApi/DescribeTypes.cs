@@ -61,5 +61,6 @@ internal static class DescribeTypes
     }
 
     private static Type? Converter(System.Reflection.ICustomAttributeProvider? member) =>
-        member?.GetCustomAttributes(typeof(JsonConverterAttribute), inherit: false).OfType<JsonConverterAttribute>().FirstOrDefault()?.ConverterType;
+        member?.GetCustomAttributes(typeof(JsonConverterAttribute), inherit: false)
+            .OfType<JsonConverterAttribute>().FirstOrDefault()?.ConverterType;
 }

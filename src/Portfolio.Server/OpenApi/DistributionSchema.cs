@@ -3,7 +3,9 @@ using Portfolio.Server.Contracts.Document;
 
 namespace Portfolio.Server.OpenApi;
 
-/// <summary>A distribution: a number or one of eight closed objects told apart by their type. Written from the table that the reader goes by.</summary>
+/// <summary>
+/// A distribution: a number or one of eight closed objects told apart by their type. Written from the table that the reader goes by.
+/// </summary>
 internal static class DistributionSchema
 {
     public static void Write(OpenApiSchema schema)
@@ -60,7 +62,8 @@ internal static class LinkSchema
             ["activity"] = new OpenApiSchema { Type = JsonSchemaType.String },
             ["type"] = new OpenApiSchema
             {
-                Type = JsonSchemaType.String, Enum = [.. Contracts.Json.Words.LinkTypes.All.Select(word => (System.Text.Json.Nodes.JsonNode)word)],
+                Type = JsonSchemaType.String,
+                Enum = [.. Contracts.Json.Words.LinkTypes.All.Select(word => (System.Text.Json.Nodes.JsonNode)word)],
             },
             ["lag"] = DistributionSchema.Number(),
         });

@@ -44,26 +44,32 @@ internal sealed class Problem(int status, string slug, string title, string? det
 
     /// <summary>Readable, but wrong (422).</summary>
     public static Problem Refused(IReadOnlyList<Fault> faults) => new(
-        422, "refused", "The content is refused", faults.Count == 1 ? faults[0].Message : $"{faults.Count} faults were found; nothing was stored.")
+        422, "refused", "The content is refused",
+        faults.Count == 1 ? faults[0].Message : $"{faults.Count} faults were found; nothing was stored.")
     {
         Faults = [.. faults.Select(FaultJson.From)],
     };
 
     public static Problem BadRequest(string detail) => new(400, "bad-request", "The request cannot be understood", detail);
 
-    public static Problem Unauthorized() => new(401, "unauthorized", "A valid key is needed", "Present a key as 'Authorization: Bearer', or as the password of Basic.");
+    public static Problem Unauthorized() => new(401, "unauthorized", "A valid key is needed",
+        "Present a key as 'Authorization: Bearer', or as the password of Basic.");
 
-    public static Problem Forbidden() => new(403, "forbidden", "The key lacks the right", "The key has a grant on this portfolio, but not the right for this.");
+    public static Problem Forbidden() => new(403, "forbidden", "The key lacks the right",
+        "The key has a grant on this portfolio, but not the right for this.");
 
     public static Problem NotFound(string? detail = null) => new(404, "not-found", "There is no such thing here", detail);
 
     public static Problem Conflict(string slug, string title, string? detail = null) => new(409, slug, title, detail);
 
-    public static Problem PreconditionFailed() => new(412, "precondition-failed", "What is there has changed", "The ETag in If-Match is not that of what is there now. Read it again first.");
+    public static Problem PreconditionFailed() => new(412, "precondition-failed", "What is there has changed",
+        "The ETag in If-Match is not that of what is there now. Read it again first.");
 
     public static Problem TooLarge(int limit) => new(413, "too-large", "The body is too large", $"At most {limit} bytes are taken here.");
 
-    public static Problem PreconditionRequired() => new(428, "precondition-required", "Say what is replaced", "Send If-Match with the ETag of what is there, or * to replace whatever is there.");
+    public static Problem PreconditionRequired() => new(428, "precondition-required", "Say what is replaced",
+        "Send If-Match with the ETag of what is there, or * to replace whatever is there.");
 
-    public static Problem TooManyRequests() => new(429, "too-many-requests", "Too many requests", "This key asks faster than allowed; try again after the time in Retry-After.");
+    public static Problem TooManyRequests() => new(429, "too-many-requests", "Too many requests",
+        "This key asks faster than allowed; try again after the time in Retry-After.");
 }

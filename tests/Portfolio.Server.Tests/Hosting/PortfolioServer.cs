@@ -8,7 +8,9 @@ using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Hosting;
 
-/// <summary>The real server on a folder of its own, reached through HTTP alone; only its clock is a fake, and stands until it is moved.</summary>
+/// <summary>
+/// The real server on a folder of its own, reached through HTTP alone; only its clock is a fake, and stands until it is moved.
+/// </summary>
 public sealed class PortfolioServer : IAsyncDisposable
 {
     public const string AdminKey = "the-administrator-key-of-the-tests-0123456789";

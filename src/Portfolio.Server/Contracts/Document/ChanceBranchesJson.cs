@@ -34,5 +34,6 @@ public sealed record BranchJson
     public IReadOnlyList<string>? Activities { get; init; }
 
     internal Branch ToModel(Reading reading, Place place) => new(
-        reading.Required(place, "id", Id), reading.RequiredNumber(place, "probability", Probability), reading.Texts(place, "activities", Activities));
+        reading.Required(place, "id", Id), reading.RequiredNumber(place, "probability", Probability),
+        reading.Texts(place, "activities", Activities));
 }

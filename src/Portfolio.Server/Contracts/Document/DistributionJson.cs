@@ -12,7 +12,8 @@ public sealed class DistributionJson
     private readonly double[] values;
 
     /// <param name="values">Those in <paramref name="sent"/>, in its order.</param>
-    internal DistributionJson(string? type, Numbers sent, double[] values, IReadOnlyList<(double First, double Second)>? pairs, IReadOnlyList<Misfit> misfits)
+    internal DistributionJson(
+        string? type, Numbers sent, double[] values, IReadOnlyList<(double First, double Second)>? pairs, IReadOnlyList<Misfit> misfits)
     {
         Type = type;
         Sent = sent;

@@ -18,7 +18,10 @@ internal enum Numbers : ushort
     Max = 1 << 10,
 }
 
-/// <summary>One form of a distribution: its word, the members it needs and those it may have. The table is all that reading, writing and the schema know.</summary>
+/// <summary>
+/// One form of a distribution: its word, the members it needs and those it may have. The table is all that reading, writing and the schema
+/// know.
+/// </summary>
 /// <param name="List">Name of its list of pairs, if it has one, with the two members of a pair.</param>
 internal sealed record DistributionForm(string Type, Numbers Needs, Numbers May = Numbers.None, PairNames? List = null)
 {

@@ -5,7 +5,9 @@ using Portfolio.Server.Contracts.Json;
 
 namespace Portfolio.Server.Contracts.Document;
 
-/// <summary>From bytes to contract types and back. Reading throws <see cref="JsonRefused"/> for what is not JSON of the right shape (400).</summary>
+/// <summary>
+/// From bytes to contract types and back. Reading throws <see cref="JsonRefused"/> for what is not JSON of the right shape (400).
+/// </summary>
 /// <param name="maxDepth">Deepest nesting that is read.</param>
 public sealed class DocumentReader(int maxDepth)
 {

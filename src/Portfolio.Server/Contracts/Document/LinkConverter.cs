@@ -3,7 +3,9 @@ using System.Text.Json.Serialization;
 
 namespace Portfolio.Server.Contracts.Document;
 
-/// <summary>Reads a predecessor by hand, so that everything wrong inside it can be reported with the other faults of the document.</summary>
+/// <summary>
+/// Reads a predecessor by hand, so that everything wrong inside it can be reported with the other faults of the document.
+/// </summary>
 internal sealed class LinkConverter : JsonConverter<LinkJson>
 {
     public override LinkJson Read(ref Utf8JsonReader reader, Type type, JsonSerializerOptions options) => reader.TokenType switch

@@ -5,7 +5,9 @@ using Portfolio.Model.Faults;
 
 namespace Portfolio.Server.Contracts.Json;
 
-/// <summary>A body that is not JSON, or JSON with an unknown or repeated member or a value of the wrong kind (400). Names the first place.</summary>
+/// <summary>
+/// A body that is not JSON, or JSON with an unknown or repeated member or a value of the wrong kind (400). Names the first place.
+/// </summary>
 /// <param name="line">From 1, where known.</param>
 /// <param name="column">In characters from 1, where known.</param>
 public sealed class JsonRefused(Fault fault, int? line = null, int? column = null) : Exception(fault.Message)
@@ -50,10 +52,12 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
         }
         var (line, column) = Position(json, stop);
         return new JsonRefused(
-            new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed, $"The text is not valid JSON at line {line}, column {column}."), line, column);
+            new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed, $"The text is not valid JSON at line {line}, column {column}."),
+            line, column);
     }
 
-    private static JsonRefused AtStop(ReadOnlySpan<byte> json, PointerWalk walk, JsonTypeInfo type) => walk.Token == JsonTokenType.PropertyName
+    private static JsonRefused AtStop(ReadOnlySpan<byte> json, PointerWalk walk, JsonTypeInfo type) =>
+        walk.Token == JsonTokenType.PropertyName
         ? At(json, walk, FaultCodes.MemberUnknown, "There is no such member here.")
         : At(json, walk, FaultCodes.MemberKind, $"{ExpectedKind.At(type, walk.Pointer.ToString())} is expected here.");
 

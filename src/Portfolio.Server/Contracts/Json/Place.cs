@@ -7,5 +7,7 @@ public readonly record struct Place(string Path, string Subject)
     public string Member(string name) => $"{Path}/{Escape(name)}";
 
     public static string Escape(string name) =>
-        name.AsSpan().ContainsAny('~', '/') ? name.Replace("~", "~0", StringComparison.Ordinal).Replace("/", "~1", StringComparison.Ordinal) : name;
+        name.AsSpan().ContainsAny('~', '/')
+            ? name.Replace("~", "~0", StringComparison.Ordinal).Replace("/", "~1", StringComparison.Ordinal)
+            : name;
 }

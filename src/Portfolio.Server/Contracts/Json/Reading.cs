@@ -23,7 +23,9 @@ public sealed class Reading
             Refuse(owner, member, FaultCodes.Reserved, $"'{member}' is reserved and not served yet; leave it out.");
     }
 
-    /// <summary>A text that must say something: an empty one counts as missing, and the null of a missing one is the sign for "reported".</summary>
+    /// <summary>
+    /// A text that must say something: an empty one counts as missing, and the null of a missing one is the sign for "reported".
+    /// </summary>
     public string Required(Place owner, string member, string? text)
     {
         if (string.IsNullOrEmpty(text))
@@ -36,7 +38,8 @@ public sealed class Reading
         if (text is null)
             return null;
         // The model's sign for an unreadable date is itself unreadable here.
-        if (DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date) && date != DateOnly.MinValue)
+        if (DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date)
+            && date != DateOnly.MinValue)
             return date;
         Refuse(owner, member, FaultCodes.DateFormat, $"'{member}' is not a date of the form 2027-03-31.");
         return DateOnly.MinValue;
@@ -64,7 +67,9 @@ public sealed class Reading
         return Number(owner, member, value) ?? double.NaN;
     }
 
-    /// <summary>A whole number, brought into <paramref name="least"/>…<paramref name="most"/>, where the rules still see that it is out of range.</summary>
+    /// <summary>
+    /// A whole number, brought into <paramref name="least"/>…<paramref name="most"/>, where the rules still see that it is out of range.
+    /// </summary>
     public long? Whole(Place owner, string member, double? value, long least = int.MinValue, long most = int.MaxValue)
     {
         if (Number(owner, member, value) is not { } number || double.IsNaN(number))

@@ -36,7 +36,8 @@ public static class ReadingLists
     }
 
     /// <summary>Words that are unknown are left out of the list.</summary>
-    public static IReadOnlyList<T> WordList<T>(this Reading reading, Place owner, string member, IReadOnlyList<string>? items, Words<T> words)
+    public static IReadOnlyList<T> WordList<T>(
+        this Reading reading, Place owner, string member, IReadOnlyList<string>? items, Words<T> words)
         where T : struct, Enum
     {
         var known = new List<T>();
@@ -55,7 +56,8 @@ public static class ReadingLists
     {
         for (var i = 0; i < items?.Count; i++)
             if (!double.IsFinite(items[i]))
-                reading.Faults.Add(new Fault($"{owner.Path}/{member}/{i}", owner.Subject, FaultCodes.NumberNotFinite, "The number is too large."));
+                reading.Faults.Add(new Fault($"{owner.Path}/{member}/{i}", owner.Subject, FaultCodes.NumberNotFinite,
+                    "The number is too large."));
         return items ?? [];
     }
 
