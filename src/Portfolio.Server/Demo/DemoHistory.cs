@@ -52,7 +52,8 @@ internal static class DemoHistory
     /// <summary>A day whose history begins with the week that ends on this Sunday.</summary>
     public static DateOnly DayAfter(DateOnly firstWeek) => firstWeek.AddDays((7 * (Length - 1)) + 1);
 
-    private static double Pace(string project, string activity) => BestPace + (WorsePace * Math.Pow(Chance.Of($"{project}/{activity}/pace"), Skew));
+    private static double Pace(string project, string activity) =>
+        BestPace + (WorsePace * Math.Pow(Chance.Of($"{project}/{activity}/pace"), Skew));
 
     /// <summary>Work in a fork waits until the story takes the fork away.</summary>
     private static bool? Decided(Book book, string project, string activity)

@@ -29,7 +29,8 @@ public class DemoDocumentTests
     [Fact]
     public void Eight_drivers_all_in_use_with_correlations_of_every_kind()
     {
-        var used = First.Projects.SelectMany(project => project.Drivers.Concat(project.Activities.SelectMany(activity => activity.Drivers))).ToHashSet();
+        var used = First.Projects
+            .SelectMany(project => project.Drivers.Concat(project.Activities.SelectMany(activity => activity.Drivers))).ToHashSet();
         Assert.Equal(8, First.Settings.Drivers.Count);
         Assert.All(First.Settings.Drivers, driver => Assert.Contains(driver.Id, used));
         Assert.True(First.Settings.Dependence.BetweenProjects > 0);
@@ -64,7 +65,8 @@ public class DemoDocumentTests
         Assert.NotNull(First.Settings.Commitments);
         Assert.Equal(4, First.Settings.ProgrammeCommitments.Count);
         Assert.All(First.Projects, project => Assert.True(project.Commitments is { Finish: not null, Budget: > 0 }, project.Id));
-        Assert.All(First.Projects, project => Assert.Contains(project.Activities, activity => activity is { Milestone: true, Commitment: not null }));
+        Assert.All(First.Projects, project =>
+            Assert.Contains(project.Activities, activity => activity is { Milestone: true, Commitment: not null }));
         Assert.Equal(First.Settings.Commitments!.Budget, First.Projects.Sum(project => project.Commitments!.Budget));
         Assert.InRange(First.Settings.Commitments.Budget!.Value, 200_000_000m, 900_000_000m);
     }
@@ -78,7 +80,7 @@ public class DemoDocumentTests
             var duration => duration?.GetType().Name,
         }).OfType<string>().Distinct();
         Assert.Equal(
-            [nameof(Constant), nameof(Discrete), "Lognormal", nameof(Normal), nameof(Percentiles), nameof(Pert), nameof(Triangular), nameof(Uniform)],
+            ["Constant", "Discrete", "Lognormal", "Normal", "Percentiles", "Pert", "Triangular", "Uniform"],
             types.Order(StringComparer.Ordinal));
     }
 }

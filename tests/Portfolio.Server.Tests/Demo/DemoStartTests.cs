@@ -1,3 +1,4 @@
+using System.Text;
 using System.Text.Json;
 using Microsoft.Extensions.DependencyInjection;
 using Microsoft.Extensions.Hosting;
@@ -12,7 +13,9 @@ using Portfolio.Store.Schedules;
 
 namespace Portfolio.Server.Tests.Demo;
 
-/// <summary>The start with the demo on a real store. Runs are worked by a stand-in that ends each with made-up figures as soon as it is queued.</summary>
+/// <summary>
+/// The start with the demo on a real store. Runs are worked by a stand-in that ends each with made-up figures as soon as it is queued.
+/// </summary>
 public sealed class DemoStartTests : IAsyncDisposable
 {
     private const int Weeks = 26;
@@ -32,10 +35,12 @@ public sealed class DemoStartTests : IAsyncDisposable
         var said = await StartAsync(() => Work());
         var points = await Runs.ListPointsAsync(Caller.System, DemoPosting.Id, null, null, Cancellation);
         // The server's day is Monday, 4 January 2027.
-        Assert.Equal(Enumerable.Range(0, Weeks).Select(week => new DateOnly(2027, 1, 3).AddDays(-7 * (Weeks - 1 - week))), points.Select(run => run.AsOf));
+        var sundays = Enumerable.Range(0, Weeks).Select(week => new DateOnly(2027, 1, 3).AddDays(-7 * (Weeks - 1 - week)));
+        Assert.Equal(sundays, points.Select(run => run.AsOf));
         Assert.Equal(Enumerable.Range(1, Weeks).Select(week => (long)week), points.Select(run => run.Revision));
         Assert.All(points, run => Assert.Equal((true, 10_000), (run.Recorded, run.Iterations)));
-        Assert.False((await server.Services.GetRequiredService<ScheduleStore>().FindAsync(Caller.System, DemoPosting.Id, Cancellation))!.Enabled);
+        var schedules = server.Services.GetRequiredService<ScheduleStore>();
+        Assert.False((await schedules.FindAsync(Caller.System, DemoPosting.Id, Cancellation))!.Enabled);
         Assert.Contains("week  7 of 26  2026-08-23", said);
         Assert.Contains("week 26 of 26  2027-01-03", said);
         Assert.Contains("/v1/portfolios/harbour-water/runs/latest/results", said);
@@ -78,7 +83,8 @@ public sealed class DemoStartTests : IAsyncDisposable
     public async Task A_portfolio_of_the_same_name_is_left_alone()
     {
         var client = server.Client();
-        await client.PutAsync($"/v1/portfolios/{DemoPosting.Id}/document", new StringContent(Samples.Document(), System.Text.Encoding.UTF8, "application/json"), Cancellation);
+        using var other = new StringContent(Samples.Document(), Encoding.UTF8, "application/json");
+        await client.PutAsync($"/v1/portfolios/{DemoPosting.Id}/document", other, Cancellation);
         await Assert.ThrowsAsync<InvalidOperationException>(() => StartAsync(() => Work()));
         Assert.Equal(1, (await Documents.FindRevisionAsync(Caller.System, DemoPosting.Id, null, Cancellation))!.Number);
     }
@@ -90,8 +96,9 @@ public sealed class DemoStartTests : IAsyncDisposable
         server.Client();
         var console = new StringWriter();
         using var start = new DemoStart(
-            ActivatorUtilities.CreateInstance<DemoPosting>(server.Services), Runs, server.Services.GetRequiredService<ResultStore>(), server.Clock, console,
-            wake, () => new DemoAddresses("http://127.0.0.1:5080", null), server.Services.GetRequiredService<IHostApplicationLifetime>());
+            ActivatorUtilities.CreateInstance<DemoPosting>(server.Services), Runs, server.Services.GetRequiredService<ResultStore>(),
+            server.Clock, console, wake, () => new DemoAddresses("http://127.0.0.1:5080", null),
+            server.Services.GetRequiredService<IHostApplicationLifetime>());
         await start.TellAsync(Cancellation);
         return console.ToString();
     }
@@ -99,8 +106,9 @@ public sealed class DemoStartTests : IAsyncDisposable
     /// <summary>Ends the next run; false when none waits.</summary>
     private bool Work()
     {
-        var claims = server.Services.GetRequiredService<RunClaims>();
-        if (claims.ClaimAsync(Caller.System, "stand-in", "1", TimeSpan.FromMinutes(1), Cancellation).GetAwaiter().GetResult() is not { } held)
+        var claim = server.Services.GetRequiredService<RunClaims>()
+            .ClaimAsync(Caller.System, "stand-in", "1", TimeSpan.FromMinutes(1), Cancellation);
+        if (claim.GetAwaiter().GetResult() is not { } held)
             return false;
         var document = Documents.ReadAsync(Caller.System, DemoPosting.Id, held.Run.Revision, Cancellation).GetAwaiter().GetResult()!;
         string[] projects = [.. document.Parts.Select(part => part.Project).Where(project => project.Length > 0)];
@@ -121,7 +129,10 @@ public sealed class DemoStartTests : IAsyncDisposable
         return true;
     }
 
-    private static ResultRow Row(StoredRun run, string scope, string[]? projects) => new(scope, JsonSerializer.SerializeToUtf8Bytes(new ResultJson
+    private static ResultRow Row(StoredRun run, string scope, string[]? projects) =>
+        new(scope, JsonSerializer.SerializeToUtf8Bytes(Result(run, scope, projects), ResultsContext.Plain.ResultJson));
+
+    private static ResultJson Result(StoredRun run, string scope, string[]? projects) => new()
     {
         Scope = scope,
         Run = run.Id,
@@ -130,5 +141,5 @@ public sealed class DemoStartTests : IAsyncDisposable
         Projects = projects,
         Finish = DemoTableTests.Finish(run.AsOf.AddDays(400)),
         Cost = DemoTableTests.Cost(300_000_000m, 345_500_000m),
-    }, ResultsContext.Plain.ResultJson));
+    };
 }

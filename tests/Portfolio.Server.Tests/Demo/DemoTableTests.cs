@@ -48,7 +48,9 @@ public class DemoTableTests
 
     private static List<ResultJson> Rows(DateOnly portfolio, DateOnly programme, DateOnly project) =>
     [
-        Row("portfolio", portfolio, ["weir-lock"]), Row("programme/waterways", programme, ["weir-lock"]), Row("project/weir-lock", project, null),
+        Row("portfolio", portfolio, ["weir-lock"]),
+        Row("programme/waterways", programme, ["weir-lock"]),
+        Row("project/weir-lock", project, null),
         Row("milestone/weir-lock/M10", project, null),
     ];
 

@@ -19,7 +19,8 @@ internal static class DemoWeeks
     /// <summary>Canonical bytes of the parts as text, by project; "" for the settings.</summary>
     public static Dictionary<string, string> Parts(DemoWeek week)
     {
-        var parts = week.Document.Projects!.ToDictionary(project => project.Id!, project => Convert.ToBase64String(DocumentReader.Bytes(project)));
+        var parts = week.Document.Projects!
+            .ToDictionary(project => project.Id!, project => Convert.ToBase64String(DocumentReader.Bytes(project)));
         parts.Add("", Convert.ToBase64String(DocumentReader.Bytes(week.Document.Settings!)));
         return parts;
     }

@@ -8,8 +8,9 @@ namespace Portfolio.Server.Demo.Course;
 internal readonly record struct Ran(DateOnly? Start, DateOnly? Finish);
 
 /// <summary>
-/// What really happens on the sites, a day at a time: work begins when its predecessors allow and its crews are free, and takes as long as it takes. The
-/// planners see of it only what has been reported. A plain rule of its own, not the engine's: history is given, never computed from a forecast.
+/// What really happens on the sites, a day at a time: work begins when its predecessors allow and its crews are free, and takes as long
+/// as it takes. The planners see of it only what has been reported. A plain rule of its own, not the engine's: history is given, never
+/// computed from a forecast.
 /// </summary>
 /// <param name="pace">What a day of estimate really takes, by activity.</param>
 /// <param name="happens">Of an activity in a fork: true, false, or null while nobody knows and it has to wait.</param>
@@ -30,7 +31,8 @@ internal sealed class ActualCourse(Book book, Func<string, string, double> pace,
     private Book Book { get; } = book;
 
     /// <summary>The same until now, another way from here.</summary>
-    public ActualCourse From(Func<string, string, double> otherPace, Func<string, string, bool?> otherHappens) => new(this, otherPace, otherHappens);
+    public ActualCourse From(Func<string, string, double> otherPace, Func<string, string, bool?> otherHappens) =>
+        new(this, otherPace, otherHappens);
 
     public Ran Of(string project, string activity) => ran.GetValueOrDefault((project, activity));
 
@@ -88,7 +90,8 @@ internal sealed class ActualCourse(Book book, Func<string, string, double> pace,
     {
         var start = Of(project, activity.Id!).Start!.Value;
         var done = Book.DaysOf(activity).Between(start, next.AddDays(1));
-        var held = activity.Predecessors?.Any(link => link.Type == "FF" && !Passed(project, activity, link, Of(Split(project, link)).Finish)) == true;
+        var held = activity.Predecessors?
+            .Any(link => link.Type == "FF" && !Passed(project, activity, link, Of(Split(project, link)).Finish)) == true;
         if (!held && done >= Takes(project, activity))
             ran[(project, activity.Id!)] = new Ran(start, next);
     }
@@ -117,6 +120,7 @@ internal sealed class ActualCourse(Book book, Func<string, string, double> pace,
     private static double CapacityOn(PoolJson pool, DateOnly date)
     {
         var day = date.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture);
-        return pool.CapacityChanges?.LastOrDefault(change => string.CompareOrdinal(change.From, day) <= 0)?.Capacity ?? pool.Capacity!.Value;
+        var last = pool.CapacityChanges?.LastOrDefault(change => string.CompareOrdinal(change.From, day) <= 0);
+        return last?.Capacity ?? pool.Capacity!.Value;
     }
 }

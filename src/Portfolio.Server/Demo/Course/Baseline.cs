@@ -5,8 +5,8 @@ using Portfolio.Server.Demo.Scope;
 namespace Portfolio.Server.Demo.Course;
 
 /// <summary>
-/// What was promised at the beginning of the history: the finish of a plan in which everything takes what its planner thinks, some allowance, rounded up
-/// to the end of a month; and its cost, some allowance, rounded up to a hundred thousand.
+/// What was promised at the beginning of the history: the finish of a plan in which everything takes what its planner thinks, some
+/// allowance, rounded up to the end of a month; and its cost, some allowance, rounded up to a hundred thousand.
 /// </summary>
 internal static class Baseline
 {
@@ -24,7 +24,10 @@ internal static class Baseline
         var byProgramme = book.Projects.GroupBy(plan => plan.Programme!, StringComparer.Ordinal).ToDictionary(
             group => group.Key, group => Together(group.Select(plan => plan.Commitments!)), StringComparer.Ordinal);
         var (finish, budget) = (byProgramme.Values.Max(each => each.Finish), byProgramme.Values.Sum(each => each.Budget));
-        book.Settings = book.Settings with { Commitments = new PortfolioCommitmentsJson { Finish = finish, Budget = budget, Programmes = byProgramme } };
+        book.Settings = book.Settings with
+        {
+            Commitments = new PortfolioCommitmentsJson { Finish = finish, Budget = budget, Programmes = byProgramme },
+        };
     }
 
     /// <summary>Of an activity in a fork, whether its branch is the likeliest.</summary>
@@ -44,9 +47,11 @@ internal static class Baseline
             Commitments = new CommitmentsJson { Finish = Date(book, plan.Id!, finish), Budget = Money(book, course, plan) },
             Activities =
             [
-                .. plan.Activities!.Select(activity => activity.Commitment is null
-                    ? activity
-                    : activity with { Commitment = Date(book, $"{plan.Id}/{activity.Id}", course.Of(plan.Id!, activity.Id!).Finish!.Value) }),
+                .. from activity in plan.Activities!
+                   let done = course.Of(plan.Id!, activity.Id!).Finish!.Value
+                   select activity.Commitment is null
+                       ? activity
+                       : activity with { Commitment = Date(book, $"{plan.Id}/{activity.Id}", done) },
             ],
         };
     }
@@ -61,7 +66,8 @@ internal static class Baseline
     private static decimal Money(Book book, ActualCourse course, ProjectJson plan)
     {
         var work = plan.Activities!.Where(activity => Likely(book, plan.Id!, activity.Id!)).ToList();
-        var cost = work.Sum(activity => Estimate.Middle(activity.Cost?.Fixed) + (Estimate.Middle(activity.Cost?.PerDay) * Estimate.Middle(activity.Duration)));
+        var cost = work.Sum(activity =>
+            Estimate.Middle(activity.Cost?.Fixed) + (Estimate.Middle(activity.Cost?.PerDay) * Estimate.Middle(activity.Duration)));
         var first = work.Min(activity => course.Of(plan.Id!, activity.Id!).Start!.Value);
         var last = work.Max(activity => course.Of(plan.Id!, activity.Id!).Finish!.Value);
         cost += plan.Overhead!.PerDay!.Value * book.ProjectDays.Between(first, last);

@@ -5,8 +5,8 @@ using Portfolio.Server.Demo.Scope;
 namespace Portfolio.Server.Demo.Course;
 
 /// <summary>
-/// What the office plans at the moment: settings and projects with their current estimates, without progress; and what has befallen activities since.
-/// The story changes it week by week.
+/// What the office plans at the moment: settings and projects with their current estimates, without progress; and what has befallen
+/// activities since. The story changes it week by week.
 /// </summary>
 internal sealed class Book
 {
@@ -24,7 +24,8 @@ internal sealed class Book
         Projects = [.. Catalogue.Projects(week => SharedSettings.Written(WeekEnd(week)))];
         var first = firstWeek.AddYears(-YearsBefore);
         var days = firstWeek.AddYears(YearsAfter).DayNumber - first.DayNumber;
-        calendars = Settings.Calendars!.ToDictionary(calendar => calendar.Id!, calendar => new WorkDays(calendar, first, days), StringComparer.Ordinal);
+        calendars = Settings.Calendars!.ToDictionary(
+            calendar => calendar.Id!, calendar => new WorkDays(calendar, first, days), StringComparer.Ordinal);
     }
 
     /// <summary>Sunday of week 1.</summary>
@@ -60,5 +61,6 @@ internal sealed class Book
     }
 
     /// <summary>The estimate with what was lost since.</summary>
-    public DistributionJson Duration(string project, ActivityJson activity) => Estimate.Shifted(activity.Duration!, Hold(project, activity.Id!));
+    public DistributionJson Duration(string project, ActivityJson activity) =>
+        Estimate.Shifted(activity.Duration!, Hold(project, activity.Id!));
 }

@@ -7,7 +7,8 @@ internal static class Chance
 
     public static double Of(string key)
     {
-        // FNV-1a over the characters (Fowler, Noll and Vo), then the finalizer of splitmix64 (Steele, Lea and Flood 2014), so that similar keys part.
+        // FNV-1a over the characters (Fowler, Noll and Vo), then the finalizer of splitmix64 (Steele, Lea and Flood 2014), so that
+        // similar keys part.
         var hash = 0xcbf29ce484222325UL;
         foreach (var letter in key)
             hash = (hash ^ letter) * 0x100000001b3UL;

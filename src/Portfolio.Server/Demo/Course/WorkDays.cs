@@ -15,7 +15,8 @@ internal sealed class WorkDays
     {
         this.first = first;
         worked = new int[days + 1];
-        var closed = calendar.NonWorkingDates!.Select(text => DateOnly.ParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture)).ToHashSet();
+        var closed = calendar.NonWorkingDates!
+            .Select(text => DateOnly.ParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture)).ToHashSet();
         for (var day = 0; day < days; day++)
         {
             var date = first.AddDays(day);

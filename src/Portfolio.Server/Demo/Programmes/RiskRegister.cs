@@ -4,21 +4,22 @@ using Portfolio.Server.Demo.Scope;
 namespace Portfolio.Server.Demo.Programmes;
 
 /// <summary>
-/// The thirty risks of the first week. An impact is written <c>activity | delay in working days | cost in thousands</c>; without an activity it is a cost
-/// to the project, <c>=project</c> in the portfolio's own register.
+/// The thirty risks of the first week. An impact is written <c>activity | delay in working days | cost in thousands</c>; without an
+/// activity it is a cost to the project, <c>=project</c> in the portfolio's own register.
 /// </summary>
 internal static class RiskRegister
 {
     public static readonly IReadOnlyList<RiskEventJson> OfPortfolio =
     [
-        Risk("surge", "Storm surge floods open sites", 0.08, ["weir-lock/C60 | 10 15 30 | 250", "pumping-station-marsh/C10 | 8 12 25 | 180", "=quay-wall-north | | 300 400 900"],
-            Response("flood-plans", "Flood plans and stored barriers on every site", 0, 180, 0.08, ["weir-lock/C60 | 4 6 12 | 80"], "quay-wall-north")),
+        Risk("surge", "Storm surge floods open sites", 0.08,
+            ["weir-lock/C60 | 10 15 30 | 250", "pumping-station-marsh/C10 | 8 12 25 | 180", "=quay-wall-north | | 300 400 900"],
+            Response("flood-plans", "Flood plans, barriers in store", 0, 180, 0.08, ["weir-lock/C60 | 4 6 12 | 80"], "quay-wall-north")),
         Risk("funding-late", "State grant is paid a year late", 0.12, ["=dyke-east | | 250 400 800", "=weir-lock | | 200 300 700"],
             Response("bridging", "Bridging loan is arranged", 1, 60, 0.12, ["=dyke-east | | 80 120 240"], "dyke-east")),
     ];
 
     /// <summary>The registers of the projects.</summary>
-    public static readonly IReadOnlyDictionary<string, IReadOnlyList<RiskEventJson>> OfProjects = new Dictionary<string, IReadOnlyList<RiskEventJson>>
+    public static readonly IReadOnlyDictionary<string, RiskEventJson[]> OfProjects = new Dictionary<string, RiskEventJson[]>
     {
         ["weir-lock"] =
         [
@@ -113,7 +114,8 @@ internal static class RiskRegister
     /// <param name="taken">1 when it has been decided.</param>
     /// <param name="cost">Thousands.</param>
     /// <param name="project">Who pays for a response to a risk of the portfolio.</param>
-    private static ResponseJson Response(string id, string name, int taken, decimal cost, double probability, string[] impacts, string? project = null) => new()
+    private static ResponseJson Response(
+        string id, string name, int taken, decimal cost, double probability, string[] impacts, string? project = null) => new()
     {
         Id = id,
         Name = name,

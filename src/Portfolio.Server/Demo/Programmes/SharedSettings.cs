@@ -94,8 +94,11 @@ internal static class SharedSettings
     {
         var dates = new SortedSet<DateOnly>(years.SelectMany(Holidays));
         foreach (var year in years)
-            for (var date = new DateOnly(year, from.Month, from.Day); date <= new DateOnly(year + 1, to.Month, to.Day); date = date.AddDays(1))
+        {
+            var end = new DateOnly(year + 1, to.Month, to.Day);
+            for (var date = new DateOnly(year, from.Month, from.Day); date <= end; date = date.AddDays(1))
                 dates.Add(date);
+        }
         return [.. dates.Select(Written)];
     }
 

@@ -5,8 +5,9 @@ namespace Portfolio.Server.Demo.Scope;
 
 /// <summary>
 /// Estimates in the short hand of the demo's tables: <c>20</c> (certain), <c>10 20</c> (uniform), <c>10 14 25</c> (PERT),
-/// <c>triangular 10 14 25</c>, <c>triangular@10:90 …</c> or <c>pert@10:90 …</c> (the ends are percentiles), <c>normal 20 3</c>, <c>lognormal 20 6</c>,
-/// <c>lognormal@10:90 15 30</c>, <c>discrete 0:0.7 15:0.3</c> (value:probability), <c>percentiles 0:10 50:14 100:40</c> (p:value).
+/// <c>triangular 10 14 25</c>, <c>triangular@10:90 …</c> or <c>pert@10:90 …</c> (the ends are percentiles), <c>normal 20 3</c>,
+/// <c>lognormal 20 6</c>, <c>lognormal@10:90 15 30</c>, <c>discrete 0:0.7 15:0.3</c> (value:probability),
+/// <c>percentiles 0:10 50:14 100:40</c> (p:value).
 /// </summary>
 internal static class Estimate
 {
@@ -56,7 +57,8 @@ internal static class Estimate
                 : Math.Sqrt(estimate[Numbers.Low]!.Value * estimate[Numbers.High]!.Value))!.Value,
     };
 
-    public static DistributionJson Shifted(DistributionJson estimate, double by) => by == 0 ? estimate : Mapped(estimate, value => value + by, sd => sd);
+    public static DistributionJson Shifted(DistributionJson estimate, double by) =>
+        by == 0 ? estimate : Mapped(estimate, value => value + by, sd => sd);
 
     /// <summary>Everything multiplied and rounded to so many digits.</summary>
     public static DistributionJson Scaled(DistributionJson estimate, double by, int digits) =>
@@ -66,12 +68,13 @@ internal static class Estimate
     {
         if (estimate.Pairs is { } pairs)
         {
-            return new DistributionJson(estimate.Type, Numbers.None, [],
-                [.. pairs.Select(pair => estimate.Type == Points ? (pair.First, value(pair.Second)) : (value(pair.First), pair.Second))], []);
+            var mapped = pairs.Select(pair =>
+                estimate.Type == Points ? (pair.First, value(pair.Second)) : (value(pair.First), pair.Second));
+            return new DistributionJson(estimate.Type, Numbers.None, [], [.. mapped], []);
         }
         double[] values =
         [
-            .. Enum.GetValues<Numbers>().Where(number => number != Numbers.None && (estimate.Sent & number) != 0).Select(number => number switch
+            .. Enum.GetValues<Numbers>().Where(number => (estimate.Sent & number) != 0).Select(number => number switch
             {
                 Numbers.Sd => sd(estimate[number]!.Value),
                 Numbers.LowPercentile or Numbers.HighPercentile or Numbers.Weight or Numbers.Min => estimate[number]!.Value,
@@ -95,7 +98,8 @@ internal static class Estimate
         return below.Value + ((above.Value - below.Value) * (50 - below.P) / (above.P - below.P));
     }
 
-    private static (double, double) Pair(string text) => text.Split(':') is [var first, var second] ? (Number(first), Number(second)) : throw new FormatException(text);
+    private static (double, double) Pair(string text) =>
+        text.Split(':') is [var first, var second] ? (Number(first), Number(second)) : throw new FormatException(text);
 
     private static double Number(string text) => double.Parse(text, CultureInfo.InvariantCulture);
 }

@@ -34,7 +34,8 @@ internal sealed record ProjectPlan(string Id, string Name, int StartWeek, int Pr
 
     public ProjectJson ToProject(string programme, Func<int, string> dateOfWeek)
     {
-        var preparation = Stages.Preparation.Replace("{survey}", Survey, StringComparison.Ordinal).Replace("{permits}", Permits, StringComparison.Ordinal);
+        var preparation = Stages.Preparation
+            .Replace("{survey}", Survey, StringComparison.Ordinal).Replace("{permits}", Permits, StringComparison.Ordinal);
         var completion = Stages.Completion.Replace("{works}", WorksEnd, StringComparison.Ordinal);
         return new ProjectJson
         {
@@ -58,10 +59,15 @@ internal sealed record ProjectPlan(string Id, string Name, int StartWeek, int Pr
     }
 
     /// <summary>A fork of two or more ways: id, probability, activities.</summary>
-    public static ChanceBranchesJson Fork(string id, string name, params (string Id, double Probability, string[] Activities)[] branches) => new()
+    public static ChanceBranchesJson Fork(
+        string id, string name, params (string Id, double Probability, string[] Activities)[] branches) => new()
     {
         Id = id,
         Name = name,
-        Branches = [.. branches.Select(branch => new BranchJson { Id = branch.Id, Probability = branch.Probability, Activities = branch.Activities })],
+        Branches =
+        [
+            .. from branch in branches
+               select new BranchJson { Id = branch.Id, Probability = branch.Probability, Activities = branch.Activities },
+        ],
     };
 }

@@ -5,8 +5,9 @@ namespace Portfolio.Server.Demo.Scope;
 
 /// <summary>
 /// A scope of work as a table, one activity to a line: <c>id | name | working days | cost | after | with</c>.
-/// Days: an <see cref="Estimate"/> or <c>milestone</c>. Cost in thousands: <c>fixed</c>, <c>fixed+perDay</c> or <c>+perDay</c>, a number being a most
-/// likely value with the usual range around it, or <c>=600</c> a certain one. After: ids with <c>SS+5</c>, <c>FF+2</c>, <c>FS+3</c> behind them; <c>^</c> is the line above.
+/// Days: an <see cref="Estimate"/> or <c>milestone</c>. Cost in thousands: <c>fixed</c>, <c>fixed+perDay</c> or <c>+perDay</c>, a number
+/// being a most likely value with the usual range around it, or <c>=600</c> a certain one. After: ids with <c>SS+5</c>, <c>FF+2</c>,
+/// <c>FS+3</c> behind them; <c>^</c> is the line above.
 /// With: <c>@calendar</c>, <c>~driver</c>, <c>pool*units</c>, <c>!</c> a milestone that is promised.
 /// </summary>
 internal static class ScopeTable
@@ -36,7 +37,7 @@ internal static class ScopeTable
             Commitment = marks.Contains("!") ? Promised : null,
             Duration = milestone ? null : Estimate.Scaled(Estimate.Read(cells[2]), days, digits: 1),
             Cost = milestone || cells[3].Length == 0 ? null : Cost(cells[3], cost),
-            Predecessors = Some(cells[4].Split(',', StringSplitOptions.RemoveEmptyEntries | StringSplitOptions.TrimEntries).Select(text => Link(text, above))),
+            Predecessors = Some(cells[4].Split(',', StringSplitOptions.RemoveEmptyEntries).Select(text => Link(text, above))),
             Demands = Some(marks.Where(mark => mark.Contains('*', StringComparison.Ordinal)).Select(Demand)),
             Drivers = Some(marks.Where(mark => mark[0] == '~').Select(mark => mark[1..])),
             Calendar = marks.Where(mark => mark[0] == '@').Select(mark => mark[1..]).SingleOrDefault(),

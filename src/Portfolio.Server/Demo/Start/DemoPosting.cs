@@ -10,7 +10,9 @@ using Portfolio.Store.Schedules;
 
 namespace Portfolio.Server.Demo.Start;
 
-/// <summary>Posts the weeks of the demo as the office would have: one revision and one recorded run a week. What is there already is left alone.</summary>
+/// <summary>
+/// Posts the weeks of the demo as the office would have: one revision and one recorded run a week. What is there already is left alone.
+/// </summary>
 internal sealed class DemoPosting(
     DocumentStore documents, DocumentReader reader, DocumentCheck check, RunStore runs, RunRequests requests, ScheduleStore schedules)
 {
@@ -25,7 +27,8 @@ internal sealed class DemoPosting(
     private static readonly Caller Office = Caller.System;
 
     /// <summary>
-    /// The Sunday of the stored week 1; null when there is no portfolio yet. A history keeps its dates however often the demo is started later.
+    /// The Sunday of the stored week 1; null when there is no portfolio yet. A history keeps its dates however often the demo is started
+    /// later.
     /// </summary>
     /// <exception cref="InvalidOperationException">The portfolio of that name is somebody else's.</exception>
     public async Task<DateOnly?> FirstWeekAsync(CancellationToken cancellation)
@@ -35,7 +38,8 @@ internal sealed class DemoPosting(
         if (first.Revision.Note?.StartsWith(Mark(1), StringComparison.Ordinal) != true)
             throw new InvalidOperationException($"There is a portfolio '{Id}' that is not the demo. It is left as it is.");
         var project = first.Parts.First(part => part.Project != PartNames.Settings);
-        return DateOnly.ParseExact(DocumentReader.OfStored.ReadProject(project.Bytes).StatusDate!, "yyyy-MM-dd", CultureInfo.InvariantCulture);
+        var statusDate = DocumentReader.OfStored.ReadProject(project.Bytes).StatusDate!;
+        return DateOnly.ParseExact(statusDate, "yyyy-MM-dd", CultureInfo.InvariantCulture);
     }
 
     /// <summary>The runs that stand for weeks of the history already, weeks in order.</summary>

@@ -7,13 +7,13 @@ using Portfolio.Store.Runs;
 namespace Portfolio.Server.Demo.Start;
 
 /// <summary>
-/// The start with <c>--demo</c>: posts what is missing of the history, waits for its runs, prints the table. It talks to whoever sits at the console and
-/// only asks for runs; they are worked like any others. Safe to stop at any point and to start again.
+/// The start with <c>--demo</c>: posts what is missing of the history, waits for its runs, prints the table. It talks to whoever sits at
+/// the console and only asks for runs; they are worked like any others. Safe to stop at any point and to start again.
 /// </summary>
 /// <param name="wake">Asks the workers to look for runs.</param>
 internal sealed class DemoStart(
-    DemoPosting posting, RunStore runs, ResultStore results, TimeProvider clock, TextWriter console, Action wake, Func<DemoAddresses> addresses,
-    IHostApplicationLifetime process) : BackgroundService
+    DemoPosting posting, RunStore runs, ResultStore results, TimeProvider clock, TextWriter console, Action wake,
+    Func<DemoAddresses> addresses, IHostApplicationLifetime process) : BackgroundService
 {
     private static readonly TimeSpan BetweenLooks = TimeSpan.FromMilliseconds(100);
 

@@ -4,7 +4,9 @@ using Portfolio.Server.Contracts.Results;
 
 namespace Portfolio.Server.Demo.Start;
 
-/// <summary>The last week as a table for the console: when everything is done, how sure that is, and how it has moved since the week before.</summary>
+/// <summary>
+/// The last week as a table for the console: when everything is done, how sure that is, and how it has moved since the week before.
+/// </summary>
 /// <param name="now">Result rows of the last week, in the order of a run.</param>
 /// <param name="before">Those of the week before.</param>
 internal sealed class DemoTable(DateOnly asOf, IReadOnlyList<ResultJson> now, IReadOnlyList<ResultJson> before)
@@ -17,7 +19,7 @@ internal sealed class DemoTable(DateOnly asOf, IReadOnlyList<ResultJson> now, IR
     public string Render()
     {
         var text = new StringBuilder();
-        text.AppendLine(CultureInfo.InvariantCulture, $"{$"Week to {Date(asOf)}",-30}  {"base",-10}  {"P50",-10}  {"P80",-10}  {"promised",-10}  chance  P80 moved");
+        text.AppendLine(Line($"Week to {Date(asOf)}", ["base", "P50", "P80", "promised"], "chance", "P80 moved"));
         Append(text, Portfolio, indent: 0);
         foreach (var programme in now.Where(row => row.Scope.StartsWith(ProgrammePrefix, StringComparison.Ordinal)))
         {
@@ -34,9 +36,12 @@ internal sealed class DemoTable(DateOnly asOf, IReadOnlyList<ResultJson> now, IR
         var name = new string(' ', 2 * indent) + scope[(scope.IndexOf('/') + 1)..];
         var promised = finish.Commitment;
         var moved = Level(finish, Prudent).DayNumber - Level(Row(before, scope).Finish, Prudent).DayNumber;
-        text.AppendLine(CultureInfo.InvariantCulture,
-            $"{name,-30}  {Date(finish.Base),-10}  {Date(Level(finish, Median)),-10}  {Date(Level(finish, Prudent)),-10}  {Date(promised?.Date),-10}  {Chance(promised?.Probability),6}  {Days(moved)}");
+        string[] dates = [Date(finish.Base), Date(Level(finish, Median)), Date(Level(finish, Prudent)), Date(promised?.Date)];
+        text.AppendLine(Line(name, dates, Chance(promised?.Probability), Days(moved)));
     }
+
+    private static string Line(string name, string[] dates, string chance, string moved) =>
+        $"{name,-30}  {string.Join("  ", dates.Select(date => date.PadRight(10)))}  {chance,6}  {moved}";
 
     private string CostLine()
     {

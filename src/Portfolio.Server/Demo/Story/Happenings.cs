@@ -1,3 +1,4 @@
+using System.Globalization;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Demo.Course;
 using Portfolio.Server.Demo.Programmes;
@@ -17,8 +18,9 @@ internal static class Happenings
     public static Happening Reestimate(string project, string activity, string duration) => book =>
         book.Change(project, activity, each => each with { Duration = Estimate.Read(duration) });
 
-    public static Happening Reprice(string project, string activity, double factor) => book =>
-        book.Change(project, activity, each => each with { Cost = each.Cost! with { Fixed = Estimate.Scaled(each.Cost.Fixed!, factor, digits: 0) } });
+    public static Happening Reprice(string project, string activity, double factor) => book => book.Change(
+        project, activity,
+        each => each with { Cost = each.Cost! with { Fixed = Estimate.Scaled(each.Cost.Fixed!, factor, digits: 0) } });
 
     /// <summary>A risk has come true: what it was thought to do becomes part of the plan and it leaves the register.</summary>
     public static Happening Occurs(string project, string risk) => book =>
@@ -41,7 +43,10 @@ internal static class Happenings
 
     /// <summary>The office decides to do something about a risk.</summary>
     public static Happening Takes(string project, string risk, string response) => book =>
-        book.Change(project, plan => plan with { RiskEvents = [.. plan.RiskEvents!.Select(each => each.Id == risk ? Taken(each, response) : each)] });
+        book.Change(project, plan => plan with
+        {
+            RiskEvents = [.. plan.RiskEvents!.Select(each => each.Id == risk ? Taken(each, response) : each)],
+        });
 
     /// <summary>Work is added (a <see cref="ScopeTable"/>) before an activity that then also waits for it.</summary>
     public static Happening Adds(string project, string before, string table) => book =>
@@ -64,7 +69,11 @@ internal static class Happenings
         var change = new CapacityChangeJson { From = SharedSettings.Written(book.WeekEnd(afterWeek).AddDays(1)), Capacity = capacity };
         book.Settings = book.Settings with
         {
-            Pools = [.. book.Settings.Pools!.Select(each => each.Id == pool ? each with { CapacityChanges = After(each.CapacityChanges, change) } : each)],
+            Pools =
+            [
+                .. from each in book.Settings.Pools!
+                   select each.Id == pool ? each with { CapacityChanges = After(each.CapacityChanges, change) } : each,
+            ],
         };
     };
 
@@ -73,7 +82,11 @@ internal static class Happenings
     {
         book.Change(project, plan => plan with
         {
-            Commitments = new CommitmentsJson { Finish = Later(plan.Commitments!.Finish!, weeks), Budget = plan.Commitments.Budget + budget },
+            Commitments = new CommitmentsJson
+            {
+                Finish = Later(plan.Commitments!.Finish!, weeks),
+                Budget = plan.Commitments.Budget + budget,
+            },
         });
         var promised = book.Settings.Commitments!;
         var programme = book.Projects.Single(plan => plan.Id == project).Programme!;
@@ -86,7 +99,12 @@ internal static class Happenings
         Dictionary<string, CommitmentsJson> programmes = new(promised.Programmes, StringComparer.Ordinal) { [programme] = renewed };
         book.Settings = book.Settings with
         {
-            Commitments = promised with { Finish = programmes.Values.Max(each => each.Finish), Budget = promised.Budget + budget, Programmes = programmes },
+            Commitments = promised with
+            {
+                Finish = programmes.Values.Max(each => each.Finish),
+                Budget = promised.Budget + budget,
+                Programmes = programmes,
+            },
         };
     };
 
@@ -124,5 +142,5 @@ internal static class Happenings
         [.. (changes ?? []).Where(each => string.CompareOrdinal(each.From, added.From) < 0), added];
 
     private static string Later(string date, int weeks) =>
-        SharedSettings.Written(DateOnly.ParseExact(date, "yyyy-MM-dd", System.Globalization.CultureInfo.InvariantCulture).AddDays(7 * weeks));
+        SharedSettings.Written(DateOnly.ParseExact(date, "yyyy-MM-dd", CultureInfo.InvariantCulture).AddDays(7 * weeks));
 }

@@ -29,13 +29,13 @@ internal static class WeeklyStory
             Capacity("dive-teams", afterWeek: 6, 1), Returns("dive-teams", afterWeek: 19, 2), Closes("quay-wall-north", "ordnance")),
         Week("Dredging: laboratory classes the silt as polluted; it has to be treated ashore.",
             Resolves("dredging-approach", "silt", "polluted")),
-        Week("East dyke: clay fails the specification and the pit is changed; the risk has occurred. The option on a second pit came too late.",
+        Week("East dyke: clay fails the specification and the pit is changed; the risk has occurred. A second pit comes too late.",
             Occurs("dyke-east", "clay-quality")),
         Week("Ferry terminal: sheltered waiting area added at the request of the operator.",
             Adds("ferry-terminal", "Z10", """
-                G10 | Waiting area: design change        | 15 20 30 | 90      | M10      | ~design
-                G20 | Waiting area: structure            | 24 30 46 | 680+3   | ^, D20   | ~materials
-                G30 | Waiting area: glazing and services | 20 28 42 | 520     | ^        | ~labour
+                G10 | Waiting area: design change        | 15 20 30 | 90    | M10    | ~design
+                G20 | Waiting area: structure            | 24 30 46 | 680+3 | ^, D20 | ~materials
+                G30 | Waiting area: glazing and services | 20 28 42 | 520   | ^      | ~labour
                 """)),
         Week("North quay: anchor tests passed, the wall is held by ground anchors; their estimate is narrower now.",
             Resolves("quay-wall-north", "anchorage", "ground-anchors"), Reestimate("quay-wall-north", "C40", "30 36 48")),
@@ -55,17 +55,18 @@ internal static class WeeklyStory
             Resolves("storm-barrier", "bearings", "sound"),
             Identified("treatment-works", RiskRegister.Risk("supplier", "Blower supplier fails", 0.15, ["C50 | 20 40 90 | 200 400 1100"]))),
         Week("The cutter dredger has to be docked for a month; announced for week 21.",
-            Capacity("dredging-plant", afterWeek: 20, 0), Returns("dredging-plant", afterWeek: 25, 1), Closes("dredging-approach", "dredger-repair")),
+            Capacity("dredging-plant", afterWeek: 20, 0), Returns("dredging-plant", afterWeek: 25, 1),
+            Closes("dredging-approach", "dredger-repair")),
         Week("Storm barrier: a second blasting crew shortens the repair of gate 2.",
             Reestimate("storm-barrier", "C80", "38 46 64"), Reprice("storm-barrier", "C80", 1.1)),
         Week("Ferry terminal: a yard with a free berth will build the link span; shorter and narrower.",
             Reestimate("ferry-terminal", "C40", "normal 92 10"), Takes("ferry-terminal", "operator", "early-freeze")),
         Week("Treatment works: phosphorus removal added by the new discharge permit.",
             Adds("treatment-works", "E40", """
-                G10 | Phosphorus removal: design               | 20 28 45 | 160     | M10      | ~design
-                G20 | Phosphorus removal: tanks                | 30 38 58 | 1400+4  | ^, C30   | ~materials
-                G30 | Phosphorus removal: dosing plant         | 24 30 48 | 900     | ^        | ~labour
-                G40 | Phosphorus removal: loop checks          | 6 10     | 40+2    | ^        | commissioning-engineers*1
+                G10 | Phosphorus removal: design       | 20 28 45 | 160    | M10    | ~design
+                G20 | Phosphorus removal: tanks        | 30 38 58 | 1400+4 | ^, C30 | ~materials
+                G30 | Phosphorus removal: dosing plant | 24 30 48 | 900    | ^      | ~labour
+                G40 | Phosphorus removal: loop checks  | 6 10     | 40+2   | ^      | commissioning-engineers*1
                 """),
             Rebaselines("treatment-works", weeks: 8, budget: 2_900_000)),
         Week("One commissioning engineer leaves; three remain until a successor is trained.",
