@@ -2,9 +2,12 @@ using Portfolio.Server.Access;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Endpoints;
 using Portfolio.Server.Hosting;
+using Portfolio.Server.Jobs;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Results;
+using Portfolio.Server.Runs;
+using Portfolio.Server.Telemetry;
 
 var builder = WebApplication.CreateBuilder(args);
 #pragma warning disable RS0030 // The one place where the system's clock comes in.
@@ -18,7 +21,10 @@ builder.Services.AddAccess();
 builder.Services.AddProblems();
 builder.Services.AddDocuments();
 builder.Services.AddResults();
+builder.Services.AddRuns();
 builder.Services.AddHealth();
+builder.Services.AddTelemetry(builder.Configuration);
+builder.Services.AddJobs(builder.Configuration);
 builder.Services.AddApiDescription();
 builder.RestWhenDescribing();
 
@@ -34,6 +40,8 @@ api.MapPortfolios();
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
 portfolio.MapDocument();
 portfolio.MapRevisions();
+portfolio.MapRuns();
+portfolio.MapSchedule();
 portfolio.MapResults();
 portfolio.MapDistribution();
 portfolio.MapSeries();

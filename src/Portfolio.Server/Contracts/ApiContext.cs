@@ -1,6 +1,8 @@
 using System.Text.Json;
 using System.Text.Json.Serialization;
 using Portfolio.Server.Contracts.Portfolios;
+using Portfolio.Server.Contracts.Runs;
+using Portfolio.Server.Contracts.Schedules;
 
 namespace Portfolio.Server.Contracts;
 
@@ -11,4 +13,10 @@ namespace Portfolio.Server.Contracts;
 [JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
 [JsonSerializable(typeof(PageJson<RevisionJson>))]
 [JsonSerializable(typeof(WrittenJson))]
+[JsonSerializable(typeof(RunRequestJson))]
+[JsonSerializable(typeof(RunJson))]
+[JsonSerializable(typeof(PageJson<RunJson>))]
+[JsonSerializable(typeof(RunProgressJson))]
+[JsonSerializable(typeof(ScheduleJson))]
+[JsonSerializable(typeof(ScheduleStandingJson))]
 internal sealed partial class ApiContext : JsonSerializerContext;

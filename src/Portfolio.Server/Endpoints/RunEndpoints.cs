@@ -1,0 +1,100 @@
+using System.ComponentModel.DataAnnotations;
+using System.Globalization;
+using System.Security.Claims;
+using Microsoft.AspNetCore.Http.HttpResults;
+using Microsoft.Extensions.Options;
+using Portfolio.Server.Access;
+using Portfolio.Server.Contracts;
+using Portfolio.Server.Contracts.Runs;
+using Portfolio.Server.Hosting;
+using Portfolio.Server.Http;
+using Portfolio.Server.Jobs;
+using Portfolio.Server.Problems;
+using Portfolio.Server.Runs;
+using Portfolio.Store.Access;
+using Portfolio.Store.Runs;
+
+namespace Portfolio.Server.Endpoints;
+
+internal static class RunEndpoints
+{
+    public static void MapRuns(this IEndpointRouteBuilder portfolio)
+    {
+        var runs = portfolio.MapGroup("/runs").WithTags("Runs");
+        runs.MapPost("", Post).WithName("postRun").Needs(Right.Manage)
+            .Accepts<RunRequestJson>(isOptional: true, "application/json")
+            .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409, 413, 415, 422);
+        runs.MapGet("", List).WithName("listRuns").Needs(Right.Read);
+        runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read);
+        runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read);
+        runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage).Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409);
+    }
+
+    /// <summary>Asks for a run. Its revision is fixed now; it is worked as soon as a worker is free.</summary>
+    internal static async Task<IResult> Post(
+        string portfolio, ClaimsPrincipal user, RunIntake intake, RunView view, IOptions<LimitOptions> limits, HttpContext http, CancellationToken cancellation)
+    {
+        var asked = await JsonBody.ReadAsync(http.Request, ApiContext.Default.RunRequestJson, limits.Value.Body) ?? new RunRequestJson();
+        var run = await intake.TakeAsync(user.Caller(), portfolio, asked, cancellation);
+        return Accepted(http, view.Of(run, user.Caller()), portfolio);
+    }
+
+    /// <summary>Runs, newest first.</summary>
+    /// <param name="cursor">Where the page before ended.</param>
+    /// <param name="limit">Items in a page.</param>
+    internal static async Task<Ok<PageJson<RunJson>>> List(
+        string portfolio, ClaimsPrincipal user, RunStore runs, RunView view, HttpResponse response, CancellationToken cancellation,
+        string? cursor = null, [Range(1, Paging.Most)] int limit = Paging.Usual)
+    {
+        var found = await runs.ListAsync(user.Caller(), portfolio, Paging.Number(cursor), Paging.WithOneMore(limit), cancellation);
+        return TypedResults.Ok(Paging.Page(
+            response, found, limit, run => view.Of(run, user.Caller()), run => run.Sequence.ToString(CultureInfo.InvariantCulture)));
+    }
+
+    /// <summary>One run; Content-Location names it where the address does not.</summary>
+    /// <param name="run">An id, or latest: the point of the series with the greatest date.</param>
+    /// <param name="asOf">With latest: the point of this date or of the nearest earlier one.</param>
+    internal static async Task<Ok<RunJson>> Get(
+        string portfolio, string run, ClaimsPrincipal user, RunView view, HttpContext http, CancellationToken cancellation, DateOnly? asOf = null)
+    {
+        var found = await view.FindAsync(user.Caller(), portfolio, run, asOf, cancellation);
+        http.Response.Headers.ContentLocation = AddressOf(http, portfolio, found.Id);
+        return TypedResults.Ok(view.Of(found, user.Caller()));
+    }
+
+    /// <summary>Progress as server-sent events: progress while it goes on, ended at last.</summary>
+    /// <param name="run">An id, or latest.</param>
+    internal static async Task<ServerSentEventsResult<RunProgressJson>> Follow(
+        string portfolio, string run, ClaimsPrincipal user, RunView view, RunStream stream, CancellationToken cancellation)
+    {
+        var found = await view.FindAsync(user.Caller(), portfolio, run, null, cancellation);
+        return TypedResults.ServerSentEvents(stream.FollowAsync(user.Caller(), found, cancellation));
+    }
+
+    /// <summary>Asks a run that has not ended to stop. Results are never deleted.</summary>
+    internal static async Task<IResult> Cancel(
+        string portfolio, string run, ClaimsPrincipal user, RunRequests requests, RunView view, RunSignal signal, HttpContext http, CancellationToken cancellation)
+    {
+        var result = await requests.RequestCancelAsync(user.Caller(), portfolio, run, cancellation);
+        switch (result)
+        {
+            case { Outcome: RunCancelOutcome.Accepted, Run: { } stopping }:
+                signal.Give();
+                return Accepted(http, view.Of(stopping, user.Caller()), portfolio);
+            case { Outcome: RunCancelOutcome.AlreadyEnded }:
+                return Problem.Conflict("run-ended", "The run has ended", "It can no longer be stopped; its results stay.");
+            case { Outcome: RunCancelOutcome.Forbidden }:
+                return Problem.Forbidden();
+            default:
+                return Problem.NotFound();
+        }
+    }
+
+    private static Accepted<RunJson> Accepted(HttpContext http, RunJson run, string portfolio)
+    {
+        http.Response.Headers.RetryAfter = "1";
+        return TypedResults.Accepted(AddressOf(http, portfolio, run.Id), run);
+    }
+
+    private static string AddressOf(HttpContext http, string portfolio, string run) => $"{http.Request.PathBase}/v1/portfolios/{portfolio}/runs/{run}";
+}

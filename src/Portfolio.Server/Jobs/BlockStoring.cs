@@ -1,0 +1,62 @@
+using System.Diagnostics;
+using System.Threading.Channels;
+using Portfolio.Engine;
+using Portfolio.Engine.Runs;
+using Portfolio.Server.Telemetry;
+using Portfolio.Store.Runs;
+using Portfolio.Store.Samples;
+
+namespace Portfolio.Server.Jobs;
+
+/// <summary>
+/// Carries finished blocks from the threads of the engine to the one writer of the store. The queue is short: when the store is slower, the engine waits, and
+/// memory stays bounded.
+/// </summary>
+internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan)
+{
+    private const int Waiting = 2;
+
+    private readonly Channel<BlockSamples> queue = Channel.CreateBounded<BlockSamples>(new BoundedChannelOptions(Waiting) { SingleReader = true });
+
+    /// <summary>Called from the engine's own threads, which may wait.</summary>
+    public void Add(BlockSamples block, CancellationToken cancellation)
+    {
+        var waiting = queue.Writer.WriteAsync(block, cancellation);
+        if (!waiting.IsCompletedSuccessfully)
+            waiting.AsTask().GetAwaiter().GetResult();
+    }
+
+    /// <summary>No more blocks will come.</summary>
+    public void Complete() => queue.Writer.TryComplete();
+
+    /// <summary>Stores blocks until there are no more.</summary>
+    /// <exception cref="LeaseLost">The run belongs to another worker now.</exception>
+    public async Task StoreAsync(CancellationToken cancellation)
+    {
+        await foreach (var block in queue.Reader.ReadAllAsync(cancellation))
+        {
+            using var span = ServerTelemetry.Spans.StartActivity("run.block");
+            span?.SetTag("portfolio.run", held.Run.Id).SetTag("portfolio.block", block.Block).SetTag("portfolio.iterations", block.Count);
+            if (!await samples.WriteBlockAsync(held, block.Block, block.Count, [.. Series(block)], cancellation))
+                throw new LeaseLost();
+            span?.SetStatus(ActivityStatusCode.Ok);
+        }
+    }
+
+    private IEnumerable<SeriesBlock> Series(BlockSamples block)
+    {
+        var projects = plan.Document.Projects;
+        for (var p = 0; p < projects.Count; p++)
+        {
+            if (projects[p].Activities.Count == 0)
+                continue;
+            yield return SeriesBlock.OfMinutes(SeriesNames.Finish(projects[p].Id), block.Finish[p]);
+            yield return SeriesBlock.OfMoney(SeriesNames.Cost(projects[p].Id), block.Cost[p]);
+        }
+        for (var m = 0; m < plan.Milestones.Count; m++)
+        {
+            var milestone = plan.Milestones[m];
+            yield return SeriesBlock.OfMinutes(SeriesNames.Milestone(projects[milestone.Project].Id, milestone.Activity.Id), block.MilestoneFinish[m]);
+        }
+    }
+}

@@ -1,0 +1,24 @@
+using Portfolio.Server.Hosting;
+
+namespace Portfolio.Server.Jobs;
+
+/// <summary>The jobs, and what wakes them.</summary>
+internal static class JobSetup
+{
+    /// <summary>A process that is told to stop has ended within this time: runs go back to the queue, streams close.</summary>
+    private static readonly TimeSpan StopsWithin = TimeSpan.FromSeconds(4.5);
+
+    public static void AddJobs(this IServiceCollection services, IConfiguration configuration)
+    {
+        services.AddOptions<EngineOptions>().BindConfiguration(EngineOptions.Section).ValidateDataAnnotations().ValidateOnStart();
+        services.Configure<HostOptions>(host => host.ShutdownTimeout = StopsWithin);
+        services.AddSingleton<RunSignal>();
+        services.AddSingleton<RunProgress>();
+        services.AddSingleton<RunWorker>();
+        services.AddSingleton<Nightly>();
+        services.AddSingleton<Sweep>();
+        var engine = configuration.GetSection(EngineOptions.Section).Get<EngineOptions>() ?? new EngineOptions();
+        if ((configuration.Get<RoleOptions>() ?? new RoleOptions()).Works)
+            services.AddWakeUps(engine.Runs);
+    }
+}

@@ -1,0 +1,58 @@
+using Portfolio.Server.Tests.Hosting;
+using Portfolio.Server.Tests.Runs;
+
+namespace Portfolio.Server.Tests.Jobs;
+
+public sealed class KilledServerTests
+{
+    // Ten blocks.
+    private const string Run = """{"iterations":40960}""";
+
+    [Fact]
+    public async Task KilledOrStoppedARunGoesOnAfterTheRestartAndGivesTheSameBits()
+    {
+        Assert.SkipWhen(OperatingSystem.IsWindows(), "Signals of Unix are sent.");
+        var directory = Directory.CreateTempSubdirectory("portfolio-");
+        try
+        {
+            string killed, stopped;
+            using (var first = await ServerProcess.StartAsync(directory.FullName))
+            {
+                await first.Client.PutJsonAsync("/v1/portfolios/p/document", RunSamples.Uncertain(projects: 10, activities: 100));
+                killed = await first.Client.RunAsync("p", Run);
+                await UntilSomeBlocksAreStoredAsync(first.Client, killed);
+                await first.KillAsync();
+            }
+            using (var second = await ServerProcess.StartAsync(directory.FullName))
+            {
+                var resumed = await second.Client.UntilAsync("p", killed, "succeeded");
+                Assert.Equal(2, resumed.GetProperty("attempt").GetInt32());
+                stopped = await second.Client.RunAsync("p", Run);
+                await UntilSomeBlocksAreStoredAsync(second.Client, stopped);
+                Assert.Equal(0, await second.StopAsync());
+            }
+            using var third = await ServerProcess.StartAsync(directory.FullName);
+            var again = await third.Client.UntilAsync("p", stopped, "succeeded");
+            Assert.Equal(2, again.GetProperty("attempt").GetInt32());
+            var undisturbed = await third.Client.SucceedAsync("p", Run);
+            Assert.Equal(1, undisturbed.GetProperty("attempt").GetInt32());
+            var before = await third.Client.ReadRunAsync("p", killed);
+            Assert.Equal(undisturbed.Text("resultDigest"), before.Text("resultDigest"));
+            Assert.Equal(undisturbed.Text("resultDigest"), again.Text("resultDigest"));
+        }
+        finally
+        {
+            directory.Delete(recursive: true);
+        }
+    }
+
+    // Two threads work two blocks at a time at most beside those waiting to be stored.
+    private static async Task UntilSomeBlocksAreStoredAsync(HttpClient client, string run)
+    {
+        while (await client.ReadRunAsync("p", run) is var now && now.GetProperty("progress").GetDouble() < 0.4)
+        {
+            Assert.True(now.State() is "queued" or "running", now.ToString());
+            await Task.Delay(20, TestContext.Current.CancellationToken);
+        }
+    }
+}
