@@ -22,7 +22,8 @@ internal static class ContingencyEndpoints
     /// <param name="asOf">A date; the run that stands for it or the nearest earlier one.</param>
     /// <param name="format"><c>json</c> or <c>csv</c>; left out, <c>Accept</c> decides.</param>
     internal static async Task<IResult> Get(
-        string portfolio, ClaimsPrincipal user, ContingencyReading contingencies, RunChoice runs, HttpContext http, CancellationToken cancellation,
+        string portfolio, ClaimsPrincipal user, ContingencyReading contingencies, RunChoice runs, HttpContext http,
+        CancellationToken cancellation,
         string? level = null, string? run = null, string? asOf = null, string? format = null)
     {
         if (!user.Caller().Holds(Right.Read, portfolio)) return Problem.Forbidden();
@@ -31,6 +32,8 @@ internal static class ContingencyEndpoints
         var query = new RunQuery(portfolio, run ?? RunChoice.Latest, asOf, format, user, http, runs, cancellation);
         var answer = await query.FindAsync(faults);
         return await answer.OfAsync<ContingencyJson>(
-            async () => await contingencies.ReadAsync(query.Caller, answer.Run, asked, cancellation), ResultsContext.Plain.ContingencyJson, FigureTables.Of);
+            async () => await contingencies.ReadAsync(answer.Run, asked, cancellation),
+            ResultsContext.Plain.ContingencyJson,
+            FigureTables.Of);
     }
 }

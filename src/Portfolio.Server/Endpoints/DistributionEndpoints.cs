@@ -22,9 +22,10 @@ internal static class DistributionEndpoints
     /// <summary>Histogram and cumulative table: the chance of being done by each date, or within each amount.</summary>
     /// <param name="scope"><c>portfolio</c>, <c>programme/p</c>, <c>project/p</c> or <c>milestone/p/a</c>; usually the portfolio.</param>
     /// <param name="metric"><c>finish</c> or <c>cost</c>; usually the finish.</param>
-    /// <param name="bin"><c>day</c>, <c>week</c> or <c>month</c> of a finish, usually a week; a number of bins of a cost, usually 50.</param>
+    /// <param name="bin"><c>day</c>, <c>week</c> or <c>month</c> of a finish, usually a week; of a cost a number of bins, 50.</param>
     internal static async Task<IResult> Get(
-        [AsParameters] RunQuery query, OutcomesReading outcomes, IOptions<LimitOptions> limits, string? scope = null, string? metric = null, string? bin = null)
+        [AsParameters] RunQuery query, OutcomesReading outcomes, IOptions<LimitOptions> limits,
+        string? scope = null, string? metric = null, string? bin = null)
     {
         var (faults, most) = (new QueryFaults(), limits.Value.Bins);
         var about = ScopeParameter.Read(faults, scope);
@@ -36,8 +37,8 @@ internal static class DistributionEndpoints
         var answer = await query.FindAsync(faults);
         return await answer.OfAsync(
             () => isCost
-                ? outcomes.OfCostAsync(query.Caller, answer.Run, about, bins, query.Cancellation)
-                : outcomes.OfFinishAsync(query.Caller, answer.Run, about, width, most, query.Cancellation),
+                ? outcomes.OfCostAsync(answer.Run, about, bins, query.Cancellation)
+                : outcomes.OfFinishAsync(answer.Run, about, width, most, query.Cancellation),
             ResultsContext.Plain.OutcomesJson,
             FigureTables.Of);
     }

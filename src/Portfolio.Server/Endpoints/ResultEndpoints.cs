@@ -28,59 +28,65 @@ internal static class ResultEndpoints
     internal static void Represents<T>(this RouteHandlerBuilder route) =>
         route.Produces<T>(StatusCodes.Status200OK, "application/json", CsvTable.MediaType).Produces(StatusCodes.Status304NotModified);
 
-    /// <summary>All results: the portfolio, its programmes, its projects, their milestones. As CSV one line for each scope and level, and no pages.</summary>
+    /// <summary>All results: portfolio, programmes, projects, milestones. As CSV one line for each scope and level, and no pages.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>
     /// <param name="cursor">Where the page before ended.</param>
     /// <param name="limit">Rows in a page, 1 to 1000; usually 100.</param>
     internal static async Task<IResult> List(
-        [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null, string? cursor = null, string? limit = null)
+        [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits,
+        string? levels = null, string? cursor = null, string? limit = null)
     {
         var faults = new QueryFaults();
         var asked = LevelParameter.Several(faults, "levels", levels, limits.Value.Levels);
-        var page = (Skip: faults.Whole("cursor", cursor, 0, 0, int.MaxValue), Take: faults.Whole("limit", limit, Paging.Usual, 1, Paging.Most));
+        var (skip, take) = (faults.Whole("cursor", cursor, 0, 0, int.MaxValue), faults.Whole("limit", limit, Paging.Usual, 1, Paging.Most));
         var answer = await query.FindAsync(faults);
-        var (skip, take) = answer.Representation.IsCsv ? (0, int.MaxValue) : page;
+        if (answer.Representation.IsCsv) (skip, take) = (0, int.MaxValue);
         return await answer.OfAsync<ResultListJson>(
             async () =>
             {
-                var list = await reading.ListAsync(query.Caller, answer.Run, skip, take, asked, query.Cancellation);
+                var list = await reading.ListAsync(answer.Run, skip, take, asked, query.Cancellation);
                 if (list.Next is { } next) Paging.LinkNext(query.Http.Response, next);
                 return list;
             },
             ResultsContext.Plain.ResultListJson,
-            list => ResultsCsv.Of($"results-{answer.Run.AsOf:yyyy-MM-dd}", list.Items));
+            list => ResultsCsv.Of($"results-{answer.Run.Run.AsOf:yyyy-MM-dd}", list.Items));
     }
 
     /// <summary>The portfolio as a whole.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>
-    internal static Task<IResult> OfPortfolio([AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
+    internal static Task<IResult> OfPortfolio(
+        [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
         OneAsync(query, reading, limits, levels, Scope.Portfolio);
 
     /// <summary>The projects of one programme together.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>
-    internal static Task<IResult> OfProgramme(string programme, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
+    internal static Task<IResult> OfProgramme(
+        string programme, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
         OneAsync(query, reading, limits, levels, Scope.OfProgramme(programme));
 
     /// <summary>One project.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>
-    internal static Task<IResult> OfProject(string project, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
+    internal static Task<IResult> OfProject(
+        string project, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
         OneAsync(query, reading, limits, levels, Scope.OfProject(project));
 
     /// <summary>One milestone.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>
     internal static Task<IResult> OfMilestone(
-        string project, string activity, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels = null) =>
+        string project, string activity, [AsParameters] RunQuery query, ResultReading reading, IOptions<LimitOptions> limits,
+        string? levels = null) =>
         OneAsync(query, reading, limits, levels, Scope.OfMilestone(project, activity));
 
-    private static async Task<IResult> OneAsync(RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels, Scope scope)
+    private static async Task<IResult> OneAsync(
+        RunQuery query, ResultReading reading, IOptions<LimitOptions> limits, string? levels, Scope scope)
     {
         var faults = new QueryFaults();
         var asked = LevelParameter.Several(faults, "levels", levels, limits.Value.Levels);
         if (query.IsHidden(scope)) return Problem.Forbidden();
         var answer = await query.FindAsync(faults);
         return await answer.OfAsync(
-            () => reading.FindAsync(query.Caller, answer.Run, scope, asked, query.Cancellation),
+            () => reading.FindAsync(answer.Run, scope, asked, query.Cancellation),
             ResultsContext.Plain.ResultJson,
-            row => ResultsCsv.Of($"result-{answer.Run.AsOf:yyyy-MM-dd}", [row]));
+            row => ResultsCsv.Of($"result-{answer.Run.Run.AsOf:yyyy-MM-dd}", [row]));
     }
 }

@@ -12,8 +12,8 @@ using Portfolio.Store.Runs;
 namespace Portfolio.Server.Endpoints;
 
 /// <summary>
-/// An answer about one run on its way. Figures never change once a run has ended, so the run, the address and what the caller may see make a strong
-/// entity tag without a look at them.
+/// An answer about one run on its way. Figures never change once a run has ended, so the run, the address and what the caller may see make
+/// a strong entity tag without a look at them.
 /// </summary>
 internal sealed class RunAnswer
 {
@@ -22,25 +22,26 @@ internal sealed class RunAnswer
 
     private RunAnswer(HttpContext http, StoredRun run, Caller caller, Representation representation)
     {
-        (this.http, Run, Representation) = (http, run, representation);
+        (this.http, Run, Representation) = (http, new(caller, run), representation);
         tag = TagOf(http.Request, run, caller, representation);
     }
 
-    public StoredRun Run { get; }
+    public SeenRun Run { get; }
 
     public Representation Representation { get; }
 
     public static async Task<RunAnswer> FindAsync(RunQuery query, QueryFaults faults)
     {
         var asOf = faults.Date("asOf", query.AsOf);
-        if (asOf is not null && query.Run != RunChoice.Latest) faults.Add("asOf", "'asOf' goes with the run 'latest', not with a run's id.");
+        if (asOf is not null && query.Run != RunChoice.Latest)
+            faults.Add("asOf", "'asOf' goes with the run 'latest', not with a run's id.");
         var representation = Representation.Of(query.Http.Request, query.Format, faults);
         faults.Refuse();
         var run = await query.Runs.ChooseAsync(query.Caller, query.Portfolio, query.Run, asOf, query.Cancellation);
         return new(query.Http, run, query.Caller, representation);
     }
 
-    /// <summary>304 when the client has it already, else the figures in the representation asked for, with the address at which they stay.</summary>
+    /// <summary>304 when the client has it already, else the figures as JSON or CSV, with the address at which they stay.</summary>
     /// <param name="read">Reads the figures; null when there are none (404).</param>
     public async Task<IResult> OfAsync<T>(Func<Task<T?>> read, JsonTypeInfo<T> type, Func<T, CsvTable> table)
         where T : class
@@ -48,7 +49,7 @@ internal sealed class RunAnswer
         if (new Preconditions(http.Request).HasAlready(tag)) return Read.NotModified(http, tag);
         if (await read() is not { } figures) return Problem.NotFound("The run has no such scope.");
         http.Response.GetTypedHeaders().ETag = tag;
-        http.Response.Headers.ContentLocation = AddressOf(http.Request, Run);
+        http.Response.Headers.ContentLocation = AddressOf(http.Request, Run.Run);
         return Representation.Answer(figures, type, table);
     }
 

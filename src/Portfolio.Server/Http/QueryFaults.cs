@@ -21,14 +21,16 @@ internal sealed class QueryFaults
 
     public string Word(string parameter, string? text, string usual, IReadOnlyList<string> words)
     {
-        if (text is not null && !words.Contains(text, StringComparer.Ordinal)) Add(parameter, $"'{parameter}' must be one of {string.Join(", ", words)}.");
+        if (text is not null && !words.Contains(text, StringComparer.Ordinal))
+            Add(parameter, $"'{parameter}' must be one of {string.Join(", ", words)}.");
         return text ?? usual;
     }
 
     public int Whole(string parameter, string? text, int usual, int least, int most)
     {
         if (text is null) return usual;
-        if (int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) && number >= least && number <= most) return number;
+        if (int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) && number >= least && number <= most)
+            return number;
         Add(parameter, $"'{parameter}' must be a whole number from {least} to {most}.");
         return usual;
     }

@@ -22,11 +22,13 @@ internal sealed class Representation
         var accepted = request.GetTypedHeaders().Accept;
         if (accepted.Count == 0) return new(isCsv: false);
         var (json, csv) = (Quality(accepted, JsonType), Quality(accepted, CsvTable.MediaType));
-        if (json == 0 && csv == 0) throw new RequestRefused(new Problem(406, "not-acceptable", "No such representation", "There are application/json and text/csv."));
+        if (json == 0 && csv == 0)
+            throw new RequestRefused(new Problem(406, "not-acceptable", "No such representation", "There are JSON and CSV."));
         return new(csv > json);
     }
 
-    public IResult Answer<T>(T value, JsonTypeInfo<T> type, Func<T, CsvTable> table) => IsCsv ? table(value) : TypedResults.Json(value, type);
+    public IResult Answer<T>(T value, JsonTypeInfo<T> type, Func<T, CsvTable> table) =>
+        IsCsv ? table(value) : TypedResults.Json(value, type);
 
     // The most specific range that names the type decides its quality.
     private static double Quality(IEnumerable<MediaTypeHeaderValue> accepted, string type)

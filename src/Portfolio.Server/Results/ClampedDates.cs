@@ -18,8 +18,18 @@ internal sealed class ClampedDates
         },
     };
 
-    /// <summary>Their ids in document order.</summary>
-    public IReadOnlyList<string> In(PortfolioDocument document) => [.. projects.Order().Select(p => document.Projects[p].Id)];
+    /// <summary>One caution that names them in document order; none when there are none.</summary>
+    public IEnumerable<Warning> Cautions(PortfolioDocument document)
+    {
+        if (projects.Count > 0)
+        {
+            yield return new(
+                RunWarnings.DatesClamped,
+                $"In some iterations these projects finish after {Instants.ToDate(Instants.LastDay):yyyy-MM-dd}, the last date there is; " +
+                "such finishes are counted on that day.",
+                [.. projects.Order().Select(p => document.Projects[p].Id)]);
+        }
+    }
 
     private static int Latest(ReadOnlySpan<int> finishes)
     {

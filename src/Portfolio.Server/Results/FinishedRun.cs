@@ -9,8 +9,8 @@ using Portfolio.Store.Runs;
 namespace Portfolio.Server.Results;
 
 /// <summary>
-/// From the iterations of a run to all that is kept of it for ever: rows, grids, allocations, digests and cautions. Pure but for the reading
-/// of samples. Equal plans and samples give equal figures, whatever the run's id.
+/// From the iterations of a run to all that is kept of it for ever: rows, grids, allocations, digests and cautions. Pure but for the
+/// reading of samples. Equal plans and samples give equal figures, whatever the run's id.
 /// </summary>
 public static class FinishedRun
 {
@@ -26,7 +26,8 @@ public static class FinishedRun
         var results = RunResults.Of(document, clamped.Watching(samples.With(plan, facts.Iterations)), kept, cancellation);
         var rows = results.Rows.OrderBy(row => row.Scope.Kind).ToArray(); // a stable sort: each kind keeps its order
         var contingencies = kept.Select(level => Contingency.At(level, rows[0].Cost!, results.Projects)!).ToArray();
-        var warnings = RunWarnings.Of(document, facts.AsOf, plan.Warnings, clamped.In(document), Configured(contingencies, document.Settings));
+        var cautions = plan.Warnings.Concat(clamped.Cautions(document));
+        var warnings = RunWarnings.Of(document, facts.AsOf, cautions, Configured(contingencies, document.Settings));
         return new RunResult
         {
             ResultDigest = results.Digest,
@@ -34,7 +35,7 @@ public static class FinishedRun
             Warnings = JsonSerializer.Serialize(warnings, ResultsContext.Plain.IReadOnlyListWarningJson),
             Rows = new ResultRows(plan, facts).Of(rows),
             Grids = [.. rows.SelectMany(GridsOf)],
-            Allocations = [.. contingencies.Select(contingency => new AllocationRow((double)contingency.Level.Percent, ContingencyBytes.ToBytes(contingency)))],
+            Allocations = [.. contingencies.Select(AllocationOf)],
         };
     }
 
@@ -44,6 +45,9 @@ public static class FinishedRun
         return contingencies.Where(contingency => levels.Contains(contingency.Level));
     }
 
+    private static AllocationRow AllocationOf(Contingency contingency) =>
+        new((double)contingency.Level.Percent, ContingencyBytes.ToBytes(contingency));
+
     private static IEnumerable<GridRow> GridsOf(ScopeResult row)
     {
         yield return GridOf(row.Scope, Metrics.Finish, row.Finish);
@@ -52,8 +56,8 @@ public static class FinishedRun
 
     private static GridRow GridOf(Scope scope, string metric, Grid grid)
     {
-        var happens = grid.Happening > 0;
-        return new(scope.ToString(), metric, BaseOf(grid), happens ? grid.Mean : null, happens ? grid.Sd : null, grid.Happens, GridBytes.ToBytes(grid));
+        var (mean, sd) = grid.Happening > 0 ? (grid.Mean, grid.Sd) : ((double?)null, (double?)null);
+        return new(scope.ToString(), metric, BaseOf(grid), mean, sd, grid.Happens, GridBytes.ToBytes(grid));
     }
 
     // The base of a finish is a day in the grid; its row holds minutes: the end of that day.

@@ -2,7 +2,6 @@ using System.Text.Json;
 using Portfolio.Model.Documents;
 using Portfolio.Server.Contracts.Results;
 using Portfolio.Store.Access;
-using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Results;
 
@@ -13,10 +12,11 @@ internal sealed class KeptWarnings
 
     public IReadOnlyList<WarningJson> All { get; }
 
-    public static KeptWarnings Read(StoredRun run, Caller caller)
+    public static KeptWarnings Read(SeenRun run)
     {
-        var kept = run.Warnings is null ? [] : JsonSerializer.Deserialize(run.Warnings, ResultsContext.Plain.IReadOnlyListWarningJson)!;
-        return new(caller.Holds(Right.Read, run.Portfolio) ? kept : [.. kept.Select(warning => Seen(warning, run.Portfolio, caller)).OfType<WarningJson>()]);
+        var kept = run.Run.Warnings is { } json ? JsonSerializer.Deserialize(json, ResultsContext.Plain.IReadOnlyListWarningJson)! : [];
+        var seen = run.Caller.Holds(Right.Read, run.Portfolio) ? kept : kept.Select(warning => Seen(warning, run)).OfType<WarningJson>();
+        return new([.. seen]);
     }
 
     /// <summary>Those that concern a scope.</summary>
@@ -26,12 +26,15 @@ internal sealed class KeptWarnings
         return [.. All.Where(warning => warning.Scopes is null || warning.Scopes.Contains(written, StringComparer.Ordinal))];
     }
 
-    private static WarningJson? Seen(WarningJson warning, string portfolio, Caller caller)
+    private static WarningJson? Seen(WarningJson warning, SeenRun run)
     {
         if (warning.Scopes is not { } scopes) return warning;
-        var own = scopes.Where(scope => Scope.Parse(scope) is { Project: { } project } && caller.Holds(Right.Read, portfolio, project)).ToArray();
-        if (own.Length == 0) return null;
-        var ids = own.Select(scope => Scope.Parse(scope)!.Project!).ToHashSet(StringComparer.Ordinal);
-        return warning with { Scopes = own, Subjects = warning.Subjects is { } subjects ? [.. subjects.Where(subject => RunWarnings.Names(subject, ids.Contains) is not null)] : null };
+        var own = scopes.Select(Scope.Parse).Select(scope => scope?.Project).OfType<string>()
+            .Where(project => run.Caller.Holds(Right.Read, run.Portfolio, project)).ToHashSet(StringComparer.Ordinal);
+        return own.Count == 0 ? null : warning with
+        {
+            Scopes = [.. own.Select(project => Scope.OfProject(project).ToString())],
+            Subjects = warning.Subjects?.Where(subject => RunWarnings.Names(subject, own.Contains) is not null).ToArray(),
+        };
     }
 }

@@ -36,6 +36,7 @@ internal static class LevelParameter
     private static bool TryRead(string text, out Level level)
     {
         level = default;
-        return decimal.TryParse(text, NumberStyles.AllowDecimalPoint, CultureInfo.InvariantCulture, out var percent) && Level.TryOf(percent, out level);
+        return decimal.TryParse(text, NumberStyles.AllowDecimalPoint, CultureInfo.InvariantCulture, out var percent)
+            && Level.TryOf(percent, out level);
     }
 }

@@ -3,9 +3,7 @@ using Portfolio.Model.Documents;
 using Portfolio.Server.Contracts.Results;
 using Portfolio.Server.Http;
 using Portfolio.Server.Problems;
-using Portfolio.Store.Access;
 using Portfolio.Store.Results;
-using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Results;
 
@@ -15,26 +13,31 @@ internal sealed class OutcomesReading(ResultStore results, ScopeIterations itera
     /// <summary>The finish by day, week or month.</summary>
     /// <returns>Null when the run has no such scope, or not for this caller.</returns>
     /// <exception cref="RequestRefused">There would be more than <paramref name="most"/> bins.</exception>
-    public async Task<OutcomesJson?> OfFinishAsync(Caller caller, StoredRun run, Scope scope, DateBin bin, int most, CancellationToken cancellation)
+    public async Task<OutcomesJson?> OfFinishAsync(SeenRun run, Scope scope, DateBin bin, int most, CancellationToken cancellation)
     {
-        if (await results.FindGridAsync(caller, run.Portfolio, run.Id, scope.ToString(), Metrics.Finish, cancellation) is not { } row) return null;
-        var finishes = await iterations.FinishesAsync(caller, run, scope, cancellation);
-        var weekEnds = (await facts.OfAsync(run.Portfolio, run.Revision, cancellation)).WeekEnds;
-        var grid = GridBytes.FromBytes(row.Bytes);
+        if (await FindAsync(run, scope, Metrics.Finish, cancellation) is not { } grid) return null;
+        var finishes = await iterations.FinishesAsync(run, scope, cancellation);
+        var weekEnds = (await facts.OfAsync(run.Portfolio, run.Run.Revision, cancellation)).WeekEnds;
         var bins = DistributionTable.OfFinish(finishes, grid.Dates, bin, weekEnds, most) ?? throw TooMany(most);
-        return Json(run, scope, Metrics.Finish, grid.Happening, bins.Select(entry => new BinJson(new(entry.From), new(entry.To), entry.Count, entry.Share, entry.Cumulative)));
+        return Json(run, scope, Metrics.Finish, grid.Happening, bins.Select(entry => Bin(entry, date => new(date))));
     }
 
     /// <summary>The cost in so many bins.</summary>
     /// <returns>Null when the run has no such scope with a cost, or not for this caller.</returns>
-    public async Task<OutcomesJson?> OfCostAsync(Caller caller, StoredRun run, Scope scope, int bins, CancellationToken cancellation)
+    public async Task<OutcomesJson?> OfCostAsync(SeenRun run, Scope scope, int bins, CancellationToken cancellation)
     {
-        if (await results.FindGridAsync(caller, run.Portfolio, run.Id, scope.ToString(), Metrics.Cost, cancellation) is null) return null;
-        var costs = await iterations.CostsAsync(caller, run, scope, cancellation);
-        var digits = (await facts.OfAsync(run.Portfolio, run.Revision, cancellation)).Digits;
-        return Json(run, scope, Metrics.Cost, costs.Length, DistributionTable.OfCost(costs, bins).Select(entry =>
-            new BinJson(new(MinorUnits.ToMoney(entry.From, digits)), new(MinorUnits.ToMoney(entry.To, digits)), entry.Count, entry.Share, entry.Cumulative)));
+        if (await FindAsync(run, scope, Metrics.Cost, cancellation) is null) return null;
+        var costs = await iterations.CostsAsync(run, scope, cancellation);
+        var digits = (await facts.OfAsync(run.Portfolio, run.Run.Revision, cancellation)).Digits;
+        var table = DistributionTable.OfCost(costs, bins);
+        return Json(
+            run, scope, Metrics.Cost, costs.Length, table.Select(entry => Bin(entry, minor => new(MinorUnits.ToMoney(minor, digits)))));
     }
+
+    private async Task<Grid?> FindAsync(SeenRun run, Scope scope, string metric, CancellationToken cancellation) =>
+        await results.FindGridAsync(run.Caller, run.Portfolio, run.Id, scope.ToString(), metric, cancellation) is { } row
+            ? GridBytes.FromBytes(row.Bytes)
+            : null;
 
     private static RequestRefused TooMany(int most)
     {
@@ -43,12 +46,15 @@ internal sealed class OutcomesReading(ResultStore results, ScopeIterations itera
         return faults.ToException();
     }
 
-    private static OutcomesJson Json(StoredRun run, Scope scope, string metric, int iterations, IEnumerable<BinJson> bins) => new()
+    private static BinJson Bin<T>(Bin<T> bin, Func<T, DateOrMoney> end) =>
+        new(end(bin.From), end(bin.To), bin.Count, bin.Share, bin.Cumulative);
+
+    private static OutcomesJson Json(SeenRun run, Scope scope, string metric, int iterations, IEnumerable<BinJson> bins) => new()
     {
         Scope = scope.ToString(),
         Run = run.Id,
-        AsOf = run.AsOf,
-        Revision = run.Revision,
+        AsOf = run.Run.AsOf,
+        Revision = run.Run.Revision,
         Metric = metric,
         Iterations = iterations,
         Bins = [.. bins],

@@ -6,7 +6,9 @@ using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Results;
 
-/// <summary>The settings by which the figures of a revision are read. For requests that may read the figures: no right to the settings is asked for.</summary>
+/// <summary>
+/// The settings by which the figures of a revision are read. For requests that may read the figures: no right to the settings is asked for.
+/// </summary>
 internal sealed class PortfolioFacts(DocumentStore documents)
 {
     /// <param name="revision">Null: the newest.</param>

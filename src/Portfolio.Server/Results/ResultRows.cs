@@ -12,24 +12,28 @@ internal sealed class ResultRows(Plan plan, RunFacts facts)
 {
     private readonly IReadOnlyList<Level> levels = RunLevels.Configured(plan.Document.Settings);
     private readonly int digits = Money.MinorDigits(plan.Document.Settings.Currency);
-    private readonly HashSet<string> inBranches =
-        [.. plan.Milestones.Where(milestone => milestone.InBranch).Select(milestone => Scope.OfMilestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id).ToString())];
+    private readonly HashSet<Scope> inBranches =
+    [
+        .. plan.Milestones.Where(milestone => milestone.InBranch)
+            .Select(milestone => Scope.OfMilestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id)),
+    ];
 
-    public IReadOnlyList<ResultRow> Of(IEnumerable<ScopeResult> rows) =>
-        [.. rows.Select(Json).Select(json => new ResultRow(json.Scope, JsonSerializer.SerializeToUtf8Bytes(json, ResultsContext.Plain.ResultJson)))];
+    public IReadOnlyList<ResultRow> Of(IEnumerable<ScopeResult> rows) => [.. rows.Select(Json).Select(Row)];
+
+    private static ResultRow Row(ResultJson json) =>
+        new(json.Scope, JsonSerializer.SerializeToUtf8Bytes(json, ResultsContext.Plain.ResultJson));
 
     private ResultJson Json(ScopeResult row)
     {
         var finish = FinishSummary.Of(row.Finish, levels);
-        var scope = row.Scope.ToString();
         return new()
         {
-            Scope = scope,
+            Scope = row.Scope.ToString(),
             Run = facts.Run,
             AsOf = facts.AsOf,
             Revision = facts.Revision,
             Projects = Members(row.Scope),
-            Happens = inBranches.Contains(scope) ? finish.Happens : null,
+            Happens = inBranches.Contains(row.Scope) ? finish.Happens : null,
             Finish = FinishJson.From(finish),
             Cost = row.Cost is { } cost ? CostJson.From(CostSummary.Of(cost, levels, digits)) : null,
             Joint = row.Joint is { } joint ? new(joint.Finish, MinorUnits.ToMoney(joint.Budget, digits), joint.Probability) : null,

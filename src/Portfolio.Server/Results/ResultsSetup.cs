@@ -7,7 +7,9 @@ internal static class ResultsSetup
     {
         services.AddSingleton<RunChoice>();
         services.AddSingleton<PortfolioFacts>();
+        services.AddSingleton<ScopeMembers>();
         services.AddSingleton<ScopeIterations>();
+        services.AddSingleton<RowLevels>();
         services.AddSingleton<ResultReading>();
         services.AddSingleton<OutcomesReading>();
         services.AddSingleton<ContingencyReading>();

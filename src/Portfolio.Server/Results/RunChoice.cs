@@ -17,10 +17,16 @@ internal sealed class RunChoice(RunStore runs)
         var found = run != Latest ? await runs.FindAsync(caller, portfolio, run, cancellation)
             : asOf is { } date ? await runs.FindPointAsync(caller, portfolio, date, cancellation)
             : await runs.FindLatestAsync(caller, portfolio, cancellation);
-        if (found is null)
-            throw new RequestRefused(Problem.NotFound(run != Latest ? "There is no such run." : asOf is null ? "No run has become a point of the series yet." : "No run stands for this date or an earlier one."));
-        return found.State == RunState.Succeeded ? found : throw new RequestRefused(Problem.Conflict("run-without-results", "The run has no results", Why(found)));
+        if (found is null) throw new RequestRefused(Problem.NotFound(Missing(run, asOf)));
+        if (found.State != RunState.Succeeded)
+            throw new RequestRefused(Problem.Conflict("run-without-results", "The run has no results", Why(found)));
+        return found;
     }
+
+    private static string Missing(string run, DateOnly? asOf) =>
+        run != Latest ? "There is no such run."
+        : asOf is null ? "No run has become a point of the series yet."
+        : "No run stands for this date or an earlier one.";
 
     private static string Why(StoredRun run) => run.State switch
     {

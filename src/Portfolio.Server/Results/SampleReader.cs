@@ -5,8 +5,8 @@ using Portfolio.Store.Samples;
 namespace Portfolio.Server.Results;
 
 /// <summary>
-/// Reads the iterations of one series at a time, all blocks in order, by the names of <see cref="SeriesNames"/>; null when a series is not kept.
-/// It runs on a worker's own thread and therefore waits for storage instead of yielding.
+/// Reads the iterations of one series at a time, all blocks in order, by the names of <see cref="SeriesNames"/>; null when a series is not
+/// kept. It runs on a worker's own thread and therefore waits for storage instead of yielding.
 /// </summary>
 /// <param name="Minutes">Finishes: minutes, <see cref="int.MinValue"/> where it does not happen.</param>
 /// <param name="Money">Costs: whole minor units.</param>
@@ -21,7 +21,8 @@ public sealed record SampleReader(Func<string, int[]?> Minutes, Func<string, dou
         ProjectSamples OfProject(int p)
         {
             var id = plan.Document.Projects[p].Id;
-            return new(Read(Minutes, SeriesNames.Finish(id)), Read(Money, SeriesNames.Cost(id)), plan.Base.Finish[p], (long)plan.Base.Cost[p]);
+            var (finishes, costs) = (Read(Minutes, SeriesNames.Finish(id)), Read(Money, SeriesNames.Cost(id)));
+            return new(finishes, costs, plan.Base.Finish[p], (long)plan.Base.Cost[p]);
         }
 
         MilestoneSamples OfMilestone(int p, int a)

@@ -24,5 +24,5 @@ internal sealed class RunView(RunStore runs, RunProgress progress)
     }
 
     public RunJson Of(StoredRun run, Caller caller) =>
-        RunJson.From(run, progress.Of(run), run.Warnings is null ? null : KeptWarnings.Read(run, caller).All);
+        RunJson.From(run, progress.Of(run), run.Warnings is null ? null : KeptWarnings.Read(new SeenRun(caller, run)).All);
 }

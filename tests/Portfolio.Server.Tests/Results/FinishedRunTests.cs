@@ -29,7 +29,8 @@ public sealed class FinishedRunTests
         var rows = Rows(result);
         foreach (var figure in new Func<CostJson, decimal>[] { cost => cost.Base, cost => cost.Mean })
         {
-            Assert.Equal(figure(rows["portfolio"].Cost!), rows.Values.Where(row => row.Scope.StartsWith("project/", StringComparison.Ordinal)).Sum(row => figure(row.Cost!)));
+            var projects = rows.Values.Where(row => row.Scope.StartsWith("project/", StringComparison.Ordinal));
+            Assert.Equal(figure(rows["portfolio"].Cost!), projects.Sum(row => figure(row.Cost!)));
             Assert.Equal(figure(rows["programme/locks"].Cost!), figure(rows["project/weir"].Cost!) + figure(rows["project/pumps"].Cost!));
         }
         Assert.Equal(102, result.Allocations.Count); // 0.5, 1…99, 99.5 and the configured 82.5
@@ -77,11 +78,12 @@ public sealed class FinishedRunTests
     {
         var plan = SmallPortfolio.Plan();
         var first = SmallPortfolio.Finish(plan, SmallPortfolio.Facts(), threads: 1);
-        var second = SmallPortfolio.Finish(SmallPortfolio.Plan(), SmallPortfolio.Facts("0190a6f0-0000-7000-8000-000000000002") with { AsOf = new(2026, 12, 2), Revision = 8 }, threads: 3);
+        var facts = SmallPortfolio.Facts("0190a6f0-0000-7000-8000-000000000002") with { AsOf = new(2026, 12, 2), Revision = 8 };
+        var second = SmallPortfolio.Finish(SmallPortfolio.Plan(), facts, threads: 3);
         Assert.Equal(first.ResultDigest, second.ResultDigest);
         Assert.Equal(first.InputsDigest, second.InputsDigest);
-        Assert.Equal(first.Grids.Select(grid => Convert.ToHexString(grid.Bytes)), second.Grids.Select(grid => Convert.ToHexString(grid.Bytes)));
-        Assert.Equal(first.Allocations.Select(row => Convert.ToHexString(row.Bytes)), second.Allocations.Select(row => Convert.ToHexString(row.Bytes)));
+        Assert.Equal(first.Grids.Select(grid => grid.Bytes), second.Grids.Select(grid => grid.Bytes));
+        Assert.Equal(first.Allocations.Select(row => row.Bytes), second.Allocations.Select(row => row.Bytes));
         var other = SmallPortfolio.Finish(plan, SmallPortfolio.Facts(seed: 2));
         Assert.NotEqual(first.ResultDigest, other.ResultDigest);
         Assert.NotEqual(first.InputsDigest, other.InputsDigest);
@@ -100,7 +102,8 @@ public sealed class FinishedRunTests
         var (plan, facts) = (SmallPortfolio.Plan(), SmallPortfolio.Facts());
         var samples = SmallPortfolio.Samples(plan, facts);
         var holed = samples with { Minutes = series => series == SeriesNames.Finish("quay") ? null : samples.Minutes(series) };
-        Assert.Contains("finish/quay", Assert.Throws<InvalidOperationException>(() => FinishedRun.Build(plan, holed, facts, TestContext.Current.CancellationToken)).Message, StringComparison.Ordinal);
+        var missing = Assert.Throws<InvalidOperationException>(() => FinishedRun.Build(plan, holed, facts, TestContext.Current.CancellationToken));
+        Assert.Contains("finish/quay", missing.Message, StringComparison.Ordinal);
     }
 
     internal static Dictionary<string, ResultJson> Rows(RunResult result) => result.Rows

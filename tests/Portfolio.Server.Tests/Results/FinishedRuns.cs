@@ -1,4 +1,6 @@
 using Microsoft.Extensions.DependencyInjection;
+using Portfolio.Engine;
+using Portfolio.Server.Results;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
@@ -14,36 +16,53 @@ internal static class FinishedRuns
 
     private static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
+    /// <summary>A server that works no runs itself, so that the tests decide what a run leaves.</summary>
+    public static PortfolioServer Server() => new(null, ("Roles", "api"));
+
     public static async Task PutAsync(PortfolioServer server, string portfolio) =>
         Assert.True((await server.Client().PutJsonAsync($"/v1/portfolios/{portfolio}/document", Document, "*")).IsSuccessStatusCode
             || (await server.Client().PutJsonAsync($"/v1/portfolios/{portfolio}/document", Document)).IsSuccessStatusCode);
 
     /// <summary>Makes a run that stands for a date, works it and stores what it leaves.</summary>
     /// <param name="projects">What is simulated instead of the stored document, so that runs differ.</param>
-    public static async Task<string> MakeAsync(PortfolioServer server, string portfolio, DateOnly asOf, bool keepSamples = true, params string[] projects)
+    public static async Task<string> MakeAsync(
+        PortfolioServer server, string portfolio, DateOnly asOf, bool keepSamples = true, params string[] projects)
     {
         var run = await QueueAsync(server, portfolio, asOf);
-        var held = await server.Services.GetRequiredService<RunClaims>().ClaimAsync(Caller.System, "test", "1", TimeSpan.FromMinutes(5), Cancellation);
+        var claims = server.Services.GetRequiredService<RunClaims>();
+        var held = await claims.ClaimAsync(Caller.System, "test", "1", TimeSpan.FromMinutes(5), Cancellation);
         Assert.Equal(run, held!.Run.Id);
         var plan = SmallPortfolio.Plan(SmallPortfolio.Settings, projects);
         var facts = SmallPortfolio.Facts(run) with { AsOf = asOf, Revision = 1 };
         var samples = SmallPortfolio.Samples(plan, facts);
         if (keepSamples)
         {
-            IEnumerable<SeriesBlock> costs = plan.Document.Projects.Select(project => SeriesBlock.OfMoney(SeriesNames.Cost(project.Id), samples.Money(SeriesNames.Cost(project.Id))));
-            IEnumerable<SeriesBlock> finishes = plan.Document.Projects.Select(project => SeriesNames.Finish(project.Id))
-                .Concat(plan.Milestones.Select(milestone => SeriesNames.Milestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id)))
-                .Select(series => SeriesBlock.OfMinutes(series, samples.Minutes(series)));
-            Assert.True(await server.Services.GetRequiredService<SampleStore>().WriteBlockAsync(held, 0, facts.Iterations, [.. costs, .. finishes], Cancellation));
+            var store = server.Services.GetRequiredService<SampleStore>();
+            Assert.True(await store.WriteBlockAsync(held, 0, facts.Iterations, [.. Series(plan, samples)], Cancellation));
         }
-        var result = Portfolio.Server.Results.FinishedRun.Build(plan, samples, facts, Cancellation);
+        var result = FinishedRun.Build(plan, samples, facts, Cancellation);
         Assert.True(await server.Services.GetRequiredService<RunEndings>().SucceedAsync(held, result, Cancellation));
         return run;
     }
 
+    private static IEnumerable<SeriesBlock> Series(Plan plan, SampleReader samples)
+    {
+        foreach (var project in plan.Document.Projects)
+        {
+            yield return SeriesBlock.OfMinutes(SeriesNames.Finish(project.Id), samples.Minutes(SeriesNames.Finish(project.Id)));
+            yield return SeriesBlock.OfMoney(SeriesNames.Cost(project.Id), samples.Money(SeriesNames.Cost(project.Id)));
+        }
+        foreach (var milestone in plan.Milestones)
+        {
+            var series = SeriesNames.Milestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id);
+            yield return SeriesBlock.OfMinutes(series, samples.Minutes(series));
+        }
+    }
+
     public static async Task<string> QueueAsync(PortfolioServer server, string portfolio, DateOnly asOf)
     {
-        var revision = await server.Services.GetRequiredService<DocumentStore>().FindRevisionAsync(Caller.System, portfolio, null, Cancellation);
+        var documents = server.Services.GetRequiredService<DocumentStore>();
+        var revision = await documents.FindRevisionAsync(Caller.System, portfolio, null, Cancellation);
         var asked = new NewRun
         {
             Portfolio = portfolio,
@@ -63,7 +82,7 @@ internal static class FinishedRuns
 /// <summary>A server with one finished run of the small portfolio, <c>works</c>, for 2027-01-03.</summary>
 public sealed class FinishedRunFixture : IAsyncLifetime
 {
-    internal PortfolioServer Server { get; } = new();
+    internal PortfolioServer Server { get; } = FinishedRuns.Server();
 
     internal string Run { get; private set; } = "";
 

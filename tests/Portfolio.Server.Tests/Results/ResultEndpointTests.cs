@@ -83,7 +83,7 @@ public sealed class ResultEndpointTests(FinishedRunFixture fixture) : IClassFixt
     [Fact]
     public async Task AQueuedRunHasNoResultsYet()
     {
-        await using var server = new PortfolioServer();
+        await using var server = FinishedRuns.Server();
         await FinishedRuns.PutAsync(server, "works");
         var run = await FinishedRuns.QueueAsync(server, "works", new(2027, 1, 3));
         var problem = await (await server.Client().ReadAsync($"{Base}{run}/results")).ProblemAsync(409, "run-without-results");
@@ -103,7 +103,8 @@ public sealed class ResultEndpointTests(FinishedRunFixture fixture) : IClassFixt
             Assert.Equal(asked, Levels(row.GetProperty("finish")));
             if (row.TryGetProperty("cost", out var cost)) Assert.Equal(asked, Levels(cost));
         }
-        Assert.All((await (await client.ReadAsync($"{Results}?levels={levels}")).JsonAsync()).GetProperty("items").EnumerateArray(), row => Assert.Equal(asked, Levels(row.GetProperty("finish"))));
+        var list = await (await client.ReadAsync($"{Results}?levels={levels}")).JsonAsync();
+        Assert.All(list.GetProperty("items").EnumerateArray(), row => Assert.Equal(asked, Levels(row.GetProperty("finish"))));
     }
 
     [Fact]
@@ -181,7 +182,8 @@ public sealed class ResultEndpointTests(FinishedRunFixture fixture) : IClassFixt
     {
         var limited = await fixture.Server.ClientAsync(new Grant(Right.Read, "works", ["weir"]));
         Assert.Equal(["project/weir", "milestone/weir/M"], Scopes(await (await limited.ReadAsync(Results)).JsonAsync()));
-        foreach (var total in new[] { "results/portfolio", "results/programme/locks", "distribution", "distribution?scope=programme/locks&metric=cost" })
+        string[] totals = ["results/portfolio", "results/programme/locks", "distribution", "distribution?scope=programme/locks&metric=cost"];
+        foreach (var total in totals)
             await (await limited.ReadAsync($"{Base}latest/{total}")).ProblemAsync(403, "forbidden");
         await (await limited.ReadAsync($"{Results}/project/quay")).ProblemAsync(404, "not-found");
         await (await limited.ReadAsync($"{Base}latest/distribution?scope=milestone/quay/S")).ProblemAsync(404, "not-found");
@@ -196,12 +198,15 @@ public sealed class ResultEndpointTests(FinishedRunFixture fixture) : IClassFixt
         await FinishedRuns.MakeAsync(fixture.Server, "old", new(2027, 1, 3), keepSamples: false);
         const string old = "/v1/portfolios/old/runs/latest/";
         Assert.Equal(HttpStatusCode.OK, (await client.ReadAsync($"{old}results?levels=0.5,17,82.5,99.5")).StatusCode);
-        foreach (var address in new[] { "results?levels=33.25", "results/project/weir?levels=33.25", "distribution", "distribution?scope=project/weir&metric=cost" })
+        string[] gone = ["results?levels=33.25", "results/project/weir?levels=33.25", "distribution", "distribution?scope=project/weir&metric=cost"];
+        foreach (var address in gone)
             await (await client.ReadAsync(old + address)).ProblemAsync(410, "iterations-expired");
         await (await client.ReadAsync("/v1/portfolios/old/contingency?level=33.25")).ProblemAsync(410, "iterations-expired");
     }
 
-    private static IEnumerable<string> Scopes(JsonElement list) => list.GetProperty("items").EnumerateArray().Select(row => row.GetProperty("scope").GetString()!);
+    private static IEnumerable<string> Scopes(JsonElement list) =>
+        list.GetProperty("items").EnumerateArray().Select(row => row.GetProperty("scope").GetString()!);
 
-    private static IEnumerable<decimal> Levels(JsonElement metric) => metric.GetProperty("percentiles").EnumerateArray().Select(at => at.GetProperty("p").GetDecimal());
+    private static IEnumerable<decimal> Levels(JsonElement metric) =>
+        metric.GetProperty("percentiles").EnumerateArray().Select(at => at.GetProperty("p").GetDecimal());
 }

@@ -6,7 +6,10 @@ namespace Portfolio.Server.Tests.Results;
 
 public sealed class RunWarningsTests
 {
-    private const string Fresh = """{"id":"quay","programme":"harbour","statusDate":"2026-11-30","activities":[{"id":"A","duration":{"type":"uniform","low":10,"high":20},"cost":{"fixed":5}}]}""";
+    private const string Fresh = """
+        {"id":"quay","programme":"harbour","statusDate":"2026-11-30",
+         "activities":[{"id":"A","duration":{"type":"uniform","low":10,"high":20},"cost":{"fixed":5}}]}
+        """;
 
     [Fact]
     public void EveryRunSaysWhatItsFiguresAreNot()
@@ -46,13 +49,18 @@ public sealed class RunWarningsTests
     public void RareRisksMakeLevelsUnderAdd()
     {
         // Each project alone holds nothing at 80 %, the four together do: 1 − 0.85⁴ = 48 % of iterations meet at least one loss.
-        string Risky(string id) => $$"""{"id":"{{id}}","statusDate":"2026-11-30","activities":[{"id":"A","duration":5}],"riskEvents":[{"id":"loss","probability":0.15,"impacts":[{"cost":1000}]}]}""";
+        string Risky(string id) => $$"""
+            {"id":"{{id}}","statusDate":"2026-11-30","activities":[{"id":"A","duration":5}],
+             "riskEvents":[{"id":"loss","probability":0.15,"impacts":[{"cost":1000}]}]}
+            """;
         var warning = Single(Of(Risky("a"), Risky("b"), Risky("c"), Risky("d")), "levels.under-add");
         Assert.Equal(["portfolio"], warning.Scopes!);
     }
 
-    private static string Old(string id, string statusDate) =>
-        $$$"""{"id":"{{{id}}}","programme":"locks","statusDate":"{{{statusDate}}}","activities":[{"id":"A","duration":{"type":"uniform","low":10,"high":20}}]}""";
+    private static string Old(string id, string statusDate) => $$$"""
+        {"id":"{{{id}}}","programme":"locks","statusDate":"{{{statusDate}}}",
+         "activities":[{"id":"A","duration":{"type":"uniform","low":10,"high":20}}]}
+        """;
 
     private static WarningJson Single(IEnumerable<WarningJson> warnings, string code) => Assert.Single(warnings, warning => warning.Code == code);
 

@@ -9,14 +9,17 @@ public sealed class SeriesFixture : IAsyncLifetime
 {
     internal static readonly DateOnly[] Dates = [new(2026, 11, 28), new(2026, 11, 29), new(2026, 11, 30), new(2026, 12, 1), new(2027, 1, 3)];
 
-    internal PortfolioServer Server { get; } = new();
+    internal PortfolioServer Server { get; } = FinishedRuns.Server();
 
     public async ValueTask InitializeAsync()
     {
         await FinishedRuns.PutAsync(Server, "works");
-        foreach (var (days, date) in Dates.Index())
-            await FinishedRuns.MakeAsync(Server, "works", date, keepSamples: false, [.. SmallPortfolio.Projects.Select(project => project.Replace("\"duration\":30", $"\"duration\":{30 + 10 * days}").Replace("\"low\":40", $"\"low\":{40 + days}"))]);
+        foreach (var (later, date) in Dates.Index())
+            await FinishedRuns.MakeAsync(Server, "works", date, keepSamples: false, [.. SmallPortfolio.Projects.Select(project => Grown(project, later))]);
     }
+
+    // The weir's shortest duration grows from point to point.
+    private static string Grown(string project, int days) => project.Replace("\"low\":40", $"\"low\":{40 + days}", StringComparison.Ordinal);
 
     public ValueTask DisposeAsync() => Server.DisposeAsync();
 }
@@ -48,7 +51,8 @@ public sealed class SeriesEndpointTests(SeriesFixture fixture) : IClassFixture<S
         Assert.True(dates[^1] > dates[0]); // the estimate grew
         var row = await (await client.ReadAsync($"/v1/portfolios/works/runs/{points[2].GetProperty("run").GetString()}/results/project/weir")).JsonAsync();
         var level = row.GetProperty("finish").GetProperty("percentiles")[0];
-        foreach (var member in new[] { "value", "samplingLow", "samplingHigh" }) Assert.Equal(level.GetProperty(member).GetString(), points[2].GetProperty(member).GetString());
+        foreach (var member in new[] { "value", "samplingLow", "samplingHigh" })
+            Assert.Equal(level.GetProperty(member).GetString(), points[2].GetProperty(member).GetString());
         Assert.Equal(row.GetProperty("finish").GetProperty("base").GetString(), points[2].GetProperty("base").GetString());
     }
 

@@ -24,7 +24,8 @@ internal static class SmallPortfolio
         """
         {"id":"weir","programme":"locks","statusDate":"2026-11-30","commitments":{"finish":"2027-04-30","budget":120000},
          "activities":[
-          {"id":"A","duration":{"type":"pert","low":40,"mode":60,"high":120},"cost":{"fixed":{"type":"triangular","low":20000.005,"mode":30000,"high":60000},"perDay":333.33}},
+          {"id":"A","duration":{"type":"pert","low":40,"mode":60,"high":120},
+           "cost":{"fixed":{"type":"triangular","low":20000.005,"mode":30000,"high":60000},"perDay":333.33}},
           {"id":"B","duration":{"type":"uniform","low":10,"high":90},"predecessors":["A"],"cost":{"perDay":750.5}},
           {"id":"M","milestone":true,"predecessors":["B"],"commitment":"2027-05-31"}]}
         """,
@@ -45,8 +46,8 @@ internal static class SmallPortfolio
 
     public static Plan Plan(string settings = Settings, params string[] projects)
     {
-        var document = DocumentReader.FromParts(
-            Encoding.UTF8.GetBytes(settings), (projects.Length > 0 ? projects : Projects).Select(project => (ReadOnlyMemory<byte>)Encoding.UTF8.GetBytes(project)));
+        var parts = (projects.Length > 0 ? projects : Projects).Select(project => (ReadOnlyMemory<byte>)Encoding.UTF8.GetBytes(project));
+        var document = DocumentReader.FromParts(Encoding.UTF8.GetBytes(settings), parts);
         var valid = ValidPortfolio.Check(document, out var faults);
         Assert.Empty(faults);
         return Engine.Plan.Compile(valid!);
@@ -71,7 +72,10 @@ internal static class SmallPortfolio
             money[SeriesNames.Cost(project.Id)] = [.. blocks.Values.SelectMany(block => block.Cost[p])];
         }
         foreach (var (m, milestone) in plan.Milestones.Index())
-            minutes[SeriesNames.Milestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id)] = [.. blocks.Values.SelectMany(block => block.MilestoneFinish[m])];
+        {
+            var series = SeriesNames.Milestone(plan.Document.Projects[milestone.Project].Id, milestone.Activity.Id);
+            minutes[series] = [.. blocks.Values.SelectMany(block => block.MilestoneFinish[m])];
+        }
         return new(minutes.GetValueOrDefault, money.GetValueOrDefault);
     }
 }

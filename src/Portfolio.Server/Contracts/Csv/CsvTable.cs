@@ -3,8 +3,8 @@ using CsvHelper;
 namespace Portfolio.Server.Contracts.Csv;
 
 /// <summary>
-/// A table as RFC 4180 text: header row, CRLF, ISO dates, dot decimals; a text that a spreadsheet would run as a formula gets an apostrophe in front.
-/// Columns are only ever appended.
+/// A table as RFC 4180 text: header row, CRLF, ISO dates, dot decimals; a text that a spreadsheet would run as a formula
+/// gets an apostrophe in front. Columns are only ever appended.
 /// </summary>
 /// <param name="Name">Of the file, without ending.</param>
 /// <param name="Lines">Cells in the order of the header: text, dates, numbers or null.</param>

@@ -11,7 +11,8 @@ internal static class FigureTables
         series.Points.Select(point => (IReadOnlyList<object?>)
         [
             point.AsOf, point.Run, point.Revision, series.Scope, series.Metric, series.Level,
-            Cell(point.Value), Cell(point.SamplingLow), Cell(point.SamplingHigh), Cell(point.Base), (object?)point.ChangeDays ?? point.Change,
+            Cell(point.Value), Cell(point.SamplingLow), Cell(point.SamplingHigh), Cell(point.Base),
+            (object?)point.ChangeDays ?? point.Change,
         ]));
 
     public static CsvTable Of(ContingencyJson contingency) => new(
@@ -28,7 +29,8 @@ internal static class FigureTables
         ["run", "asOf", "revision", "scope", "metric", "from", "to", "count", "share", "cumulative"],
         outcomes.Bins.Select(bin => (IReadOnlyList<object?>)
         [
-            outcomes.Run, outcomes.AsOf, outcomes.Revision, outcomes.Scope, outcomes.Metric, Cell(bin.From), Cell(bin.To), bin.Count, bin.Share, bin.Cumulative,
+            outcomes.Run, outcomes.AsOf, outcomes.Revision, outcomes.Scope, outcomes.Metric,
+            Cell(bin.From), Cell(bin.To), bin.Count, bin.Share, bin.Cumulative,
         ]));
 
     private static object? Cell(DateOrMoney? value) => (object?)value?.Date ?? value?.Money;

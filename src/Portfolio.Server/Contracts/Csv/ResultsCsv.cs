@@ -28,8 +28,10 @@ internal static class ResultsCsv
     [
         row.Scope, row.Run, row.AsOf, row.Revision, row.Happens, date?.P ?? amount?.P,
         date?.Value, date?.SamplingLow, date?.SamplingHigh, amount?.Value, amount?.SamplingLow, amount?.SamplingHigh,
-        row.Finish.Base, row.Finish.BaseProbability, row.Finish.Mean, row.Finish.SdDays, row.Finish.Commitment?.Date, row.Finish.Commitment?.Probability,
-        row.Cost?.Base, row.Cost?.BaseProbability, row.Cost?.Mean, row.Cost?.Sd, row.Cost?.Commitment?.Budget, row.Cost?.Commitment?.Probability,
+        row.Finish.Base, row.Finish.BaseProbability, row.Finish.Mean, row.Finish.SdDays,
+        row.Finish.Commitment?.Date, row.Finish.Commitment?.Probability,
+        row.Cost?.Base, row.Cost?.BaseProbability, row.Cost?.Mean, row.Cost?.Sd,
+        row.Cost?.Commitment?.Budget, row.Cost?.Commitment?.Probability,
         row.Joint?.Probability,
     ];
 }

@@ -4,7 +4,10 @@ using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Contracts.Results;
 
-/// <summary>The money to hold above the base so that the portfolio keeps within it at a level, and how it is shared out. The allocations add up to the total.</summary>
+/// <summary>
+/// The money to hold above the base so that the portfolio keeps within it at a level, and how it is shared out. The allocations make the
+/// total.
+/// </summary>
 public sealed record ContingencyJson
 {
     public required string Run { get; init; }

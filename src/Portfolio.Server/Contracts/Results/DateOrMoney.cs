@@ -24,9 +24,10 @@ internal sealed class DateOrMoneyConverter : JsonConverter<DateOrMoney>
 {
     private const string Iso = "yyyy-MM-dd";
 
-    public override DateOrMoney Read(ref Utf8JsonReader reader, Type type, JsonSerializerOptions options) => reader.TokenType == JsonTokenType.Number
-        ? new(reader.GetDecimal())
-        : new(DateOnly.ParseExact(reader.GetString()!, Iso, CultureInfo.InvariantCulture));
+    public override DateOrMoney Read(ref Utf8JsonReader reader, Type type, JsonSerializerOptions options) =>
+        reader.TokenType == JsonTokenType.Number
+            ? new(reader.GetDecimal())
+            : new(DateOnly.ParseExact(reader.GetString()!, Iso, CultureInfo.InvariantCulture));
 
     public override void Write(Utf8JsonWriter writer, DateOrMoney value, JsonSerializerOptions options)
     {

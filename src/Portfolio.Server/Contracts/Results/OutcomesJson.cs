@@ -1,6 +1,6 @@
 namespace Portfolio.Server.Contracts.Results;
 
-/// <summary>Histogram and cumulative table of one metric of one scope: the chance of being done by each date, or within each amount.</summary>
+/// <summary>Histogram and cumulative table of a metric of a scope: the chance of being done by each date, or within each amount.</summary>
 public sealed record OutcomesJson
 {
     public required string Scope { get; init; }

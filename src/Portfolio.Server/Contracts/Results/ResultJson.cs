@@ -15,7 +15,7 @@ public sealed record ResultJson
     /// <summary>Of the portfolio or a programme: the projects whose figures it joins.</summary>
     public IReadOnlyList<string>? Projects { get; init; }
 
-    /// <summary>Of a milestone in a chance branch: the share of iterations in which it happens, 0–1. Its other figures are over these.</summary>
+    /// <summary>Of a milestone in a chance branch: the share of iterations in which it happens, 0–1. The rest is over these.</summary>
     public double? Happens { get; init; }
 
     public required FinishJson Finish { get; init; }
