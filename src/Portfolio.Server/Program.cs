@@ -1,4 +1,5 @@
 using Portfolio.Server.Access;
+using Portfolio.Server.Demo.Start;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Endpoints;
 using Portfolio.Server.Hosting;
@@ -25,6 +26,7 @@ builder.Services.AddRuns();
 builder.Services.AddHealth();
 builder.Services.AddTelemetry(builder.Configuration);
 builder.Services.AddJobs(builder.Configuration);
+builder.Services.AddDemo(args);
 builder.Services.AddApiDescription();
 builder.RestWhenDescribing();
 

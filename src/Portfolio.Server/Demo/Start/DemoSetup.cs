@@ -2,6 +2,7 @@ using Microsoft.AspNetCore.Hosting.Server;
 using Microsoft.AspNetCore.Hosting.Server.Features;
 using Microsoft.Extensions.Options;
 using Portfolio.Server.Hosting;
+using Portfolio.Server.Jobs;
 using Portfolio.Store.Results;
 using Portfolio.Store.Runs;
 
@@ -12,8 +13,7 @@ internal static class DemoSetup
 {
     public const string Argument = "--demo";
 
-    /// <param name="wake">Gives the function that asks the workers to look for runs.</param>
-    public static void AddDemo(this IServiceCollection services, string[] arguments, Func<IServiceProvider, Action> wake)
+    public static void AddDemo(this IServiceCollection services, string[] arguments)
     {
         if (!arguments.Contains(Argument, StringComparer.Ordinal))
             return;
@@ -24,7 +24,7 @@ internal static class DemoSetup
             provider.GetRequiredService<ResultStore>(),
             provider.GetRequiredService<TimeProvider>(),
             Console.Out,
-            wake(provider),
+            provider.GetRequiredService<RunSignal>().Give,
             () => Addresses(provider),
             provider.GetRequiredService<IHostApplicationLifetime>()));
     }
