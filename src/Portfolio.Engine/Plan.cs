@@ -27,6 +27,7 @@ public sealed class Plan
         Dependence = DependenceModel.Build(settings, document.Projects);
         Drivers = [.. settings.Drivers.Select(d => new DriverFactors(d))];
         Stages = Stages.Of(Network);
+        Layout = RowLayout.Compact(Network, Stages);
         var inputs = new BaseInputs(Network, Estimates, Events, Forks);
         if (Stages.Dispatched.Length > 0)
         {
@@ -73,6 +74,8 @@ public sealed class Plan
     internal DriverFactors[] Drivers { get; }
 
     internal Stages Stages { get; }
+
+    internal RowLayout Layout { get; }
 
     internal PoolNetwork? Pools { get; }
 

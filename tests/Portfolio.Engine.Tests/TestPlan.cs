@@ -1,5 +1,6 @@
 using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Inputs;
+using Portfolio.Engine.Networks;
 using Portfolio.Engine.Pools;
 using Portfolio.Engine.Runs;
 using Portfolio.Model.Distributions;
@@ -45,12 +46,14 @@ internal static class TestPlan
     public static (double Start, double Finish)[] BaseDates(this Plan plan) =>
         [.. plan.BaseInstants().Select(x => (Days(x.Start), Days(x.Finish)))];
 
-    /// <summary>Base start and finish of every activity in document order, as instants.</summary>
+    /// <summary>Base start and finish of every activity in document order, as minutes since 1970-01-01.</summary>
     public static (int Start, int Finish)[] BaseInstants(this Plan plan)
     {
-        var outcomes = new Outcomes(plan, new BaseInputs(plan.Network, plan.Estimates, plan.Events, plan.Forks), 1);
-        outcomes.Schedule();
-        return [.. Enumerable.Range(0, plan.Network.Count).Select(a => (outcomes.Rows.Start(a, 1)[0], outcomes.Rows.Finish(a, 1)[0]))];
+        var inputs = new BaseInputs(plan.Network, plan.Estimates, plan.Events, plan.Forks);
+        var outcomes = new Outcomes(plan, inputs, 1, RowLayout.Full(plan.Network.Count));
+        outcomes.Work(new BlockSamples(0, 1, plan.Network.Projects.Count, plan.Milestones.Count), 0);
+        int Minute(Span<int> row) => plan.Network.Scale.ToMinutes(row[0]);
+        return [.. Enumerable.Range(0, plan.Network.Count).Select(a => (Minute(outcomes.Rows.Start(a, 1)), Minute(outcomes.Rows.Finish(a, 1))))];
     }
 
     /// <summary>Finishes of the first project in days from the status date, rising.</summary>

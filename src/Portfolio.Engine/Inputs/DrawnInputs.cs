@@ -1,4 +1,3 @@
-using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Dependence;
 using Portfolio.Engine.Draws;
 using Portfolio.Engine.Networks;
@@ -24,7 +23,7 @@ internal sealed class DrawnInputs : ChunkInputs
     private readonly double[] _delays;        // [delay row] working days
     private readonly double[] _eventCost;     // [project] money
     private readonly int[] _picks;            // [fork]
-    private readonly double[] _uniforms, _scores, _values, _rates;
+    private readonly double[] _uniforms, _scores, _values;
     private ulong _seed;
     private long _first;
     private int _count;
@@ -40,7 +39,7 @@ internal sealed class DrawnInputs : ChunkInputs
         _delays = new double[events.DelayRows * capacity];
         _eventCost = new double[network.Projects.Count * capacity];
         _picks = new int[forks.Count * capacity];
-        (_uniforms, _scores, _values, _rates) = (new double[capacity], new double[capacity], new double[capacity], new double[capacity]);
+        (_uniforms, _scores, _values) = (new double[capacity], new double[capacity], new double[capacity]);
     }
 
     public override int Count => _count;
@@ -64,56 +63,29 @@ internal sealed class DrawnInputs : ChunkInputs
         if (_estimates.Duration[activity] is { } estimate)
         {
             Draw(estimate, activity, days);
-            for (var k = 0; k < days.Length; k++)
-                days[k] = Math.Max(days[k], 0);
-            Multiply(_durationFactor, activity, days);
+            ValueRows.Floor(days);
+            foreach (var driver in _estimates.DurationDrivers[activity])
+                ValueRows.Multiply(days, Row(_durationFactor, driver));
         }
         else
         {
             days.Clear();
         }
         if (_events.DelayRow[activity] is >= 0 and var delay)
-        {
-            var delays = Row(_delays, delay);
-            for (var k = 0; k < days.Length; k++)
-                days[k] += delays[k];
-        }
-        for (var k = 0; k < days.Length; k++)
-            minutes[k] = Minutes.OfWork(days[k]);
+            ValueRows.Add(days, Row(_delays, delay));
+        ValueRows.ToMinutes(days, minutes);
         ClearAbsent(activity, minutes);
     }
 
     public override void AddCosts(int activity, ReadOnlySpan<int> minutes, Span<double> cost)
     {
-        var (fixedCost, rate) = (_estimates.Fixed[activity], _estimates.Rate[activity]);
-        if (fixedCost is null && rate is null)
-            return;
-        var values = _values.AsSpan(0, _count);
-        values.Clear();
-        if (fixedCost is not null)
-        {
-            Draw(fixedCost, activity, values);
-            Multiply(_costFactor, activity, values);
-        }
-        if (rate is not null)
-        {
-            var rates = _rates.AsSpan(0, _count);
-            Draw(rate, activity, rates);
-            Multiply(_costFactor, activity, rates);
-            for (var k = 0; k < values.Length; k++)
-                values[k] += rates[k] * Minutes.Days(minutes[k]);
-        }
-        ClearAbsent(activity, values);
-        for (var k = 0; k < values.Length; k++)
-            cost[k] += values[k];
+        if (_estimates.Fixed[activity] is { } fixedCost)
+            ValueRows.Add(cost, CostRow(fixedCost, activity));
+        if (_estimates.Rate[activity] is { } rate)
+            ValueRows.AddWorked(cost, CostRow(rate, activity), minutes);
     }
 
-    public override void AddEventCosts(int project, Span<double> cost)
-    {
-        var row = Row(_eventCost, project);
-        for (var k = 0; k < cost.Length; k++)
-            cost[k] += row[k];
-    }
+    public override void AddEventCosts(int project, Span<double> cost) => ValueRows.Add(cost, Row(_eventCost, project));
 
     private Span<double> Row(double[] rows, int row) => rows.AsSpan(row * _count, _count);
 
@@ -129,11 +101,7 @@ internal sealed class DrawnInputs : ChunkInputs
         var project = _network.ProjectOf[activity];
         var (loading, own) = (_estimates.Loading[project], _estimates.Own[project]);
         if (loading > 0)
-        {
-            var factor = Row(_factors, project);
-            for (var k = 0; k < scores.Length; k++)
-                scores[k] = loading * factor[k] + own * scores[k];
-        }
+            ValueRows.Mix(loading, Row(_factors, project), own, scores);
         estimate.Marginal.Read(scores, values);
     }
 
@@ -147,18 +115,19 @@ internal sealed class DrawnInputs : ChunkInputs
     private Span<double> Scores(ulong key)
     {
         var scores = _scores.AsSpan(0, _count);
-        NormalScore.Inverse(UniformsOf(key), scores);
+        NormalScore.Fill(_seed, key, _first, scores);
         return scores;
     }
 
-    private void Multiply(double[] factors, int activity, Span<double> values)
+    // A fixed cost or daily rate with its drivers; 0 where the activity does not happen.
+    private Span<double> CostRow(Estimate estimate, int activity)
     {
-        foreach (var driver in _estimates.Drivers[activity])
-        {
-            var factor = Row(factors, driver);
-            for (var k = 0; k < values.Length; k++)
-                values[k] *= factor[k];
-        }
+        var values = _values.AsSpan(0, _count);
+        Draw(estimate, activity, values);
+        foreach (var driver in _estimates.CostDrivers[activity])
+            ValueRows.Multiply(values, Row(_costFactor, driver));
+        ClearAbsent(activity, values);
+        return values;
     }
 
     private void ClearAbsent<T>(int activity, Span<T> row) where T : struct

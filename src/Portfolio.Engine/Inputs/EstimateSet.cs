@@ -14,8 +14,11 @@ internal sealed class EstimateSet
 
     public required Estimate?[] Rate { get; init; }
 
-    /// <summary>[activity] indices of the drivers that act on it, each once.</summary>
-    public required int[][] Drivers { get; init; }
+    /// <summary>[activity] indices of the drivers that act on its work, each once.</summary>
+    public required int[][] DurationDrivers { get; init; }
+
+    /// <summary>[activity] indices of the drivers that act on its costs, each once.</summary>
+    public required int[][] CostDrivers { get; init; }
 
     /// <summary>[project] √r, the weight of the project's factor in its estimates' scores.</summary>
     public required double[] Loading { get; init; }
@@ -34,7 +37,8 @@ internal sealed class EstimateSet
             Duration = new Estimate?[n],
             Fixed = new Estimate?[n],
             Rate = new Estimate?[n],
-            Drivers = new int[n][],
+            DurationDrivers = new int[n][],
+            CostDrivers = new int[n][],
             Loading = [.. network.Projects.Select(p => Math.Sqrt(RankCorrelation.ToNormal(p.Correlation ?? 0)))],
             Own = [.. network.Projects.Select(p => Math.Sqrt(1 - RankCorrelation.ToNormal(p.Correlation ?? 0)))],
             BaseMinutes = new int[n],
@@ -44,7 +48,7 @@ internal sealed class EstimateSet
         {
             var activity = network.Activities[a];
             var project = network.Projects[network.ProjectOf[a]];
-            set.Drivers[a] = [];
+            (set.DurationDrivers[a], set.CostDrivers[a]) = ([], []);
             if (activity.Finished)
                 continue;
             var key = $"project/{project.Id}/activity/{activity.Id}/";
@@ -52,7 +56,9 @@ internal sealed class EstimateSet
                 set.Duration[a] = Estimate.Of(activity.UnderWay ? activity.Remaining : activity.Duration, key + "duration", held);
             set.Fixed[a] = Estimate.Of(activity.Cost?.Fixed, key + "fixed", held);
             set.Rate[a] = Estimate.Of(activity.Cost?.PerDay, key + "perDay", held);
-            set.Drivers[a] = [.. project.Drivers.Concat(activity.Drivers).Distinct(StringComparer.Ordinal).Select(d => driverIndex[d])];
+            var drivers = project.Drivers.Concat(activity.Drivers).Distinct(StringComparer.Ordinal).Select(d => driverIndex[d]).ToArray();
+            set.DurationDrivers[a] = [.. drivers.Where(d => settings.Drivers[d].DurationFactor is not null)];
+            set.CostDrivers[a] = [.. drivers.Where(d => settings.Drivers[d].CostFactor is not null)];
             set.BaseMinutes[a] = Minutes.OfWork(set.Duration[a]?.Base ?? 0);
         }
         return set;

@@ -1,4 +1,3 @@
-using System.Numerics;
 using Portfolio.Engine.Inputs;
 
 namespace Portfolio.Engine.Networks;
@@ -24,14 +23,16 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
             return;
         }
         EarliestStarts(activity, start, null);
-        Finishes(activity, start, finish);
+        InstantRows.Add(network.Calendar[activity], start, rows.Work(activity, count), finish);
         if (network.UnderWay(activity))
             start.Fill(network.ActualStart[activity]);
+        else if (network.StartMatters[activity])
+            InstantRows.Begin(network.Calendar[activity], start, rows.Work(activity, count));
     }
 
     /// <summary>
-    /// Earliest starts by the status date, <c>earliestStart</c> and the links, moved to a working instant where there is work to do;
-    /// with <paramref name="beforePools"/> by the links from work that no pool can move.
+    /// Earliest starts by the status date, <c>earliestStart</c> and the links; with <paramref name="beforePools"/> by the links from work that
+    /// no pool can move. Not yet moved to a working instant.
     /// </summary>
     public void EarliestStarts(int activity, Span<int> starts, Stages? beforePools)
     {
@@ -43,21 +44,11 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
             if (beforePools is null || beforePools.IsBefore(link.Predecessor))
                 Bind(activity, link, starts);
         }
-        var calendar = network.Calendar[activity];
-        if (calendar.EveryDay)
-            return;
-        var work = rows.Work(activity, starts.Length);
-        for (var k = 0; k < starts.Length; k++)
-            starts[k] = work[k] > 0 ? calendar.Begin(starts[k]) : starts[k];
     }
 
-    private void Finishes(int activity, ReadOnlySpan<int> starts, Span<int> finishes)
-    {
-        var calendar = network.Calendar[activity];
-        var work = rows.Work(activity, starts.Length);
-        for (var k = 0; k < starts.Length; k++)
-            finishes[k] = calendar.Add(starts[k], work[k]);
-    }
+    /// <summary>True when the activity stands in a branch that iteration k of the chunk does not take.</summary>
+    public bool Absent(int activity, int k) =>
+        network.Fork[activity] is >= 0 and var fork && inputs.Picks(fork)[k] != network.Branch[activity];
 
     // Work that does not happen passes on dates only: its earliest start does not count.
     private void WaitFor(int activity, int earliest, Span<int> starts)
@@ -76,42 +67,25 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
         ReadOnlySpan<int> moved = from;
         if (link.Lag != 0)
         {
-            Shift(activity, link, from, bounds);
+            if (network.Fork[activity] >= 0 || network.Fork[link.Predecessor] >= 0)
+                ShiftWhatHappens(activity, link, from, bounds);
+            else
+                InstantRows.Shift(network.Calendar[activity], from, link.Lag, bounds);
             moved = bounds;
         }
         if (!link.ToStart)
         {
-            var calendar = network.Calendar[activity];
-            var work = rows.Work(activity, starts.Length);
-            for (var k = 0; k < bounds.Length; k++)
-                bounds[k] = calendar.Back(moved[k], work[k]);
+            InstantRows.Back(network.Calendar[activity], moved, rows.Work(activity, starts.Length), bounds);
             moved = bounds;
         }
-        Latest(moved, starts);
+        InstantRows.Latest(moved, starts);
     }
 
     // Links into and out of work that does not happen act without lag.
-    private void Shift(int activity, in NetworkLink link, ReadOnlySpan<int> from, Span<int> bounds)
+    private void ShiftWhatHappens(int activity, in NetworkLink link, ReadOnlySpan<int> from, Span<int> bounds)
     {
         var calendar = network.Calendar[activity];
-        var mayBeAbsent = network.Fork[activity] >= 0 || network.Fork[link.Predecessor] >= 0;
         for (var k = 0; k < bounds.Length; k++)
-        {
-            var lag = mayBeAbsent && (Absent(activity, k) || Absent(link.Predecessor, k)) ? 0 : link.Lag;
-            bounds[k] = calendar.Shift(from[k], lag);
-        }
-    }
-
-    /// <summary>True when the activity stands in a branch that iteration k of the chunk does not take.</summary>
-    public bool Absent(int activity, int k) =>
-        network.Fork[activity] is >= 0 and var fork && inputs.Picks(fork)[k] != network.Branch[activity];
-
-    private static void Latest(ReadOnlySpan<int> bounds, Span<int> starts)
-    {
-        var k = 0;
-        for (; k <= starts.Length - Vector<int>.Count; k += Vector<int>.Count)
-            Vector.Max(new Vector<int>(bounds[k..]), new Vector<int>(starts[k..])).CopyTo(starts[k..]);
-        for (; k < starts.Length; k++)
-            starts[k] = Math.Max(starts[k], bounds[k]);
+            bounds[k] = calendar.Shift(from[k], Absent(activity, k) || Absent(link.Predecessor, k) ? 0 : link.Lag);
     }
 }

@@ -31,7 +31,7 @@ internal static class LatestFinish
 
     private static ScheduleRows PoolFree(Network network, BaseInputs inputs)
     {
-        var rows = new ScheduleRows(network.Count, 1);
+        var rows = new ScheduleRows(RowLayout.Full(network.Count), 1);
         var pass = new ForwardPass(network, rows, inputs);
         foreach (var activity in network.Order)
         {

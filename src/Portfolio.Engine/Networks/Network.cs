@@ -5,8 +5,8 @@ namespace Portfolio.Engine.Networks;
 
 /// <summary>
 /// The activities and links of a whole portfolio in flat arrays. An activity is its index in document order over all projects. Links
-/// stand with their successor: those of activity a are <c>LinkStart[a] … LinkStart[a + 1] − 1</c>. Instants are minutes since
-/// 1970-01-01, lags minutes. Immutable once built.
+/// stand with their successor: those of activity a are <c>LinkStart[a] … LinkStart[a + 1] − 1</c>. Instants are on the scale of
+/// <see cref="Scale"/>, lags minutes. Immutable once built.
 /// </summary>
 internal sealed class Network
 {
@@ -21,6 +21,9 @@ internal sealed class Network
     public required int[] ProjectStart { get; init; }
 
     public required int[] ProjectOf { get; init; }
+
+    /// <summary>The scale of all instants: working time where one calendar serves the whole network, else minutes.</summary>
+    public required WorkTime Scale { get; init; }
 
     public required WorkTime[] Calendar { get; init; }
 
@@ -64,9 +67,12 @@ internal sealed class Network
 
     public ReadOnlySpan<NetworkLink> LinksOf(int activity) => Links.AsSpan(LinkStart[activity]..LinkStart[activity + 1]);
 
+    /// <summary>[activity] true when its start is read as an instant: by a link, or by overhead on another calendar.</summary>
+    public required bool[] StartMatters { get; init; }
+
     public ReadOnlySpan<int> SuccessorsOf(int activity) => Successors.AsSpan(SuccessorStart[activity]..SuccessorStart[activity + 1]);
 
-    /// <summary>True when the activity has work on one of the project's activities before the status date.</summary>
+    /// <summary>True when work on one of the project's activities has started.</summary>
     public bool Begun(int project)
     {
         for (var a = ProjectStart[project]; a < ProjectStart[project + 1]; a++)

@@ -31,19 +31,22 @@ internal static class NetworkBuilder
         var calendars = Calendars(document);
         var (fork, branch) = Forks(projects, index, n);
         var (successorStart, successors) = Successors(n, links, linkStart);
-        WorkTime CalendarOf(string? id) => calendars[id ?? document.Settings.DefaultCalendar];
+        var scale = Scale(document, calendars);
+        WorkTime CalendarOf(string? id) => scale.Working ? scale : calendars[id ?? document.Settings.DefaultCalendar];
         return new Network
         {
             Projects = projects,
             Activities = activities,
             ProjectStart = projectStart,
             ProjectOf = projectOf,
+            Scale = scale,
+            StartMatters = StartMatters(links, [.. projectOf.Select(p => !scale.Working && projects[p].Overhead is not null)]),
             Calendar = [.. activities.Select((x, a) => CalendarOf(x.Calendar ?? projects[projectOf[a]].Calendar))],
             ProjectCalendar = [.. projects.Select(p => CalendarOf(p.Calendar))],
-            Status = [.. projectOf.Select(p => WorkTime.Instant(projects[p].StatusDate))],
-            EarliestStart = [.. activities.Select(x => x is { EarliestStart: { } d, Started: false } ? WorkTime.Instant(d) : Network.None)],
-            ActualStart = [.. activities.Select(ActualStart)],
-            ActualFinish = [.. activities.Select(x => x.ActualFinish is { } d ? WorkTime.Instant(d) + WorkTime.MinutesPerDay : Network.None)],
+            Status = [.. projectOf.Select(p => scale.BeginningOf(projects[p].StatusDate))],
+            EarliestStart = [.. activities.Select(x => x is { EarliestStart: { } d, Started: false } ? scale.BeginningOf(d) : Network.None)],
+            ActualStart = [.. activities.Select(a => ActualStart(a, scale))],
+            ActualFinish = [.. activities.Select(x => x.ActualFinish is { } d ? scale.EndOf(d) : Network.None)],
             LinkStart = linkStart,
             Links = links,
             Fork = fork,
@@ -55,11 +58,11 @@ internal static class NetworkBuilder
     }
 
     // A finished milestone has one instant, the end of its day; other finished work runs from the beginning of its first day.
-    private static int ActualStart(Activity activity) => activity switch
+    private static int ActualStart(Activity activity, WorkTime scale) => activity switch
     {
-        { Milestone: true, ActualFinish: { } day } => WorkTime.Instant(day) + WorkTime.MinutesPerDay,
-        { ActualStart: { } day } => WorkTime.Instant(day),
-        { ActualFinish: { } day } => WorkTime.Instant(day),
+        { Milestone: true, ActualFinish: { } day } => scale.EndOf(day),
+        { ActualStart: { } day } => scale.BeginningOf(day),
+        { ActualFinish: { } day } => scale.BeginningOf(day),
         _ => Network.None,
     };
 
@@ -94,6 +97,22 @@ internal static class NetworkBuilder
             .DefaultIfEmpty(new DateOnly(1970, 1, 1)).Min();
         return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay)
             .ToDictionary(c => c.Id, c => new WorkTime(c, first.AddDays(-DaysBefore)), StringComparer.Ordinal);
+    }
+
+    // One calendar for all: working time. Otherwise minutes, which every calendar understands.
+    private static WorkTime Scale(PortfolioDocument document, Dictionary<string, WorkTime> calendars)
+    {
+        var used = document.Projects.Where(p => p.Activities.Count > 0)
+            .SelectMany(p => p.Activities.Select(a => a.Calendar ?? p.Calendar).Append(p.Calendar))
+            .Select(id => id ?? document.Settings.DefaultCalendar).Distinct(StringComparer.Ordinal).ToArray();
+        return used is [var only] && calendars[only].InWorkingTime() is { } working ? working : calendars[WorkCalendar.EveryDayId];
+    }
+
+    private static bool[] StartMatters(NetworkLink[] links, bool[] matters)
+    {
+        foreach (var link in links)
+            matters[link.Predecessor] |= !link.FromFinish;
+        return matters;
     }
 
     private static (int[] Fork, int[] Branch) Forks(IReadOnlyList<Project> projects, Dictionary<(string, string), int> index, int n)

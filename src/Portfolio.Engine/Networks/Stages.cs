@@ -1,7 +1,7 @@
 namespace Portfolio.Engine.Networks;
 
 /// <summary>
-/// Splits a network at the pools. What no pool can move (<see cref="Before"/>) and what only follows (<see cref="After"/>) is worked row
+/// Splits a network at the pools. What no pool can move and what only follows (<see cref="After"/>) is worked row
 /// by row over all iterations of a chunk; only what lies between (<see cref="Dispatched"/>) needs the dispatcher, one iteration at a time.
 /// </summary>
 internal sealed class Stages
@@ -11,12 +11,13 @@ internal sealed class Stages
     private Stages(byte[] stage, Network network)
     {
         _stage = stage;
-        Before = [.. network.Order.Where(a => stage[a] == 0)];
+        First = [.. network.Order.Where(a => stage[a] != 2)];
         Dispatched = [.. network.Order.Where(a => stage[a] == 1)];
         After = [.. network.Order.Where(a => stage[a] == 2)];
     }
 
-    public int[] Before { get; }
+    /// <summary>What is placed before the dispatcher works and what is made ready for it, predecessors first.</summary>
+    public int[] First { get; }
 
     public int[] Dispatched { get; }
 

@@ -9,14 +9,19 @@ internal static class Line
     /// <summary>All unfinished activities, by index, given the pool network of <see cref="Stages.Whole"/>.</summary>
     public static int[] OfBase(Network network, PoolNetwork whole, Stages everything, BaseInputs inputs)
     {
-        var rows = new ScheduleRows(network.Count, 1);
+        var rows = new ScheduleRows(RowLayout.Full(network.Count), 1);
         var pass = new ForwardPass(network, rows, inputs);
-        foreach (var activity in everything.Before)
-            pass.Place(activity);
-        foreach (var activity in everything.Dispatched)
+        foreach (var activity in everything.First)
         {
-            inputs.Durations(activity, rows.Work(activity, 1));
-            pass.EarliestStarts(activity, rows.Start(activity, 1), everything);
+            if (everything.IsDispatched(activity))
+            {
+                inputs.Durations(activity, rows.Work(activity, 1));
+                pass.EarliestStarts(activity, rows.Start(activity, 1), everything);
+            }
+            else
+            {
+                pass.Place(activity);
+            }
         }
         var sequence = new List<int>(whole.Count);
         new PassingDispatcher(whole, pass, rows) { Sequence = sequence }.Run(0);

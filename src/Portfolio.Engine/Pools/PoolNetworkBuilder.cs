@@ -9,7 +9,7 @@ internal static class PoolNetworkBuilder
 {
     public static PoolNetwork Build(Network network, Stages stages, Settings settings, EstimateSet estimates, int[] latestFinish)
     {
-        var pools = settings.Pools.Select(p => new SharedPool(p)).ToArray();
+        var pools = settings.Pools.Select(p => new SharedPool(p, network.Scale)).ToArray();
         var demanding = stages.Dispatched.Where(a => network.Activities[a].Demands.Count > 0)
             .OrderBy(a => network.UnderWay(a) ? 0 : 1)
             .ThenBy(a => network.Projects[network.ProjectOf[a]].Priority)

@@ -6,11 +6,11 @@ namespace Portfolio.Engine.Pools;
 /// <summary>A pool's capacity over time: steps from an instant on, the first from the beginning of time. Immutable.</summary>
 internal sealed class SharedPool
 {
-    public SharedPool(Pool stated)
+    public SharedPool(Pool stated, WorkTime scale)
     {
         Id = stated.Id;
         var changes = stated.CapacityChanges.OrderBy(c => c.From).ToArray();
-        From = [int.MinValue, .. changes.Select(c => WorkTime.Instant(c.From))];
+        From = [int.MinValue, .. changes.Select(c => scale.BeginningOf(c.From))];
         Capacity = [stated.Capacity, .. changes.Select(c => c.Capacity)];
     }
 

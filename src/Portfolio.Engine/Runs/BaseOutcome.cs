@@ -8,8 +8,12 @@ namespace Portfolio.Engine.Runs;
 /// </summary>
 public sealed class BaseOutcome
 {
-    private BaseOutcome(int projects, int milestones) =>
-        (Finish, Cost, MilestoneFinish) = (new int[projects], new double[projects], new int[milestones]);
+    private BaseOutcome(BlockSamples samples)
+    {
+        Finish = [.. samples.Finish.Select(row => row[0])];
+        Cost = [.. samples.Cost.Select(row => row[0])];
+        MilestoneFinish = [.. samples.MilestoneFinish.Select(row => row[0])];
+    }
 
     /// <summary>[project] in document order.</summary>
     public int[] Finish { get; }
@@ -22,17 +26,8 @@ public sealed class BaseOutcome
 
     internal static BaseOutcome Of(Plan plan, BaseInputs inputs)
     {
-        var milestones = MilestoneInfo.Activities(plan.Network);
-        var outcome = new BaseOutcome(plan.Network.Projects.Count, milestones.Length);
-        var outcomes = new Outcomes(plan, inputs, 1);
-        outcomes.Schedule();
-        for (var p = 0; p < outcome.Finish.Length; p++)
-        {
-            outcomes.Finish(p, outcome.Finish.AsSpan(p, 1));
-            outcomes.Cost(p, outcome.Finish.AsSpan(p, 1), outcome.Cost.AsSpan(p, 1));
-        }
-        for (var m = 0; m < milestones.Length; m++)
-            outcomes.MilestoneFinish(milestones[m], outcome.MilestoneFinish.AsSpan(m, 1));
-        return outcome;
+        var samples = new BlockSamples(0, 1, plan.Network.Projects.Count, MilestoneInfo.Activities(plan.Network).Length);
+        new Outcomes(plan, inputs, 1).Work(samples, 0);
+        return new BaseOutcome(samples);
     }
 }

@@ -1,14 +1,13 @@
-using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Inputs;
 using Portfolio.Engine.Networks;
 using Portfolio.Engine.Pools;
-using Portfolio.Model.Documents;
 
 namespace Portfolio.Engine.Runs;
 
 /// <summary>
-/// Works a chunk of iterations through: schedules, then forms finishes and costs (contract section 4, items 6–8). Belongs to one thread;
-/// allocates nothing per chunk.
+/// Works a chunk of iterations through, activity by activity: draws its work, places it, adds its cost and its dates to its project
+/// (contract section 4, items 6–8). Only what pools can move is set aside for the dispatcher in between. Belongs to one thread; allocates
+/// nothing per chunk.
 /// </summary>
 internal sealed class Outcomes
 {
@@ -18,130 +17,81 @@ internal sealed class Outcomes
     private readonly ScheduleRows _rows;
     private readonly ForwardPass _pass;
     private readonly Dispatcher? _dispatcher;
-    private readonly int[] _firstStart;
-    private readonly double[] _cost;
+    private readonly ProjectRows _projects;
+    private readonly int[] _milestone; // [activity] place among the milestones, or −1
 
-    public Outcomes(Plan plan, ChunkInputs inputs, int capacity)
+    public Outcomes(Plan plan, ChunkInputs inputs, int capacity, RowLayout? layout = null)
     {
         (_plan, _network, _inputs) = (plan, plan.Network, inputs);
-        _rows = new ScheduleRows(_network.Count, capacity);
+        _rows = new ScheduleRows(layout ?? plan.Layout, capacity);
         _pass = new ForwardPass(_network, _rows, inputs);
-        _firstStart = new int[capacity];
-        _cost = new double[capacity];
+        _projects = new ProjectRows(_network, capacity);
+        _milestone = new int[_network.Count];
+        Array.Fill(_milestone, -1);
+        foreach (var (activity, place) in MilestoneInfo.Activities(_network).Select((a, m) => (a, m)))
+            _milestone[activity] = place;
         if (plan.Pools is { } pools)
             _dispatcher = plan.LocalLine is { } line ? new InOrderDispatcher(pools, _pass, _rows, line) : new PassingDispatcher(pools, _pass, _rows);
     }
 
-    /// <summary>Starts, finishes and work of the chunk last scheduled.</summary>
+    /// <summary>What the chunk last worked left; of every activity only with a full layout.</summary>
     public ScheduleRows Rows => _rows;
 
-    /// <summary>Places every activity in every iteration of the chunk that the inputs stand at.</summary>
-    public void Schedule()
+    /// <summary>Works the iterations that the inputs stand at and writes them to the samples from <paramref name="offset"/> on.</summary>
+    public void Work(BlockSamples samples, int offset)
     {
         var count = _inputs.Count;
-        for (var a = 0; a < _network.Count; a++)
+        _projects.Begin(_inputs);
+        foreach (var activity in _plan.Stages.First)
         {
-            if (!_network.Finished(a))
-                _inputs.Durations(a, _rows.Work(a, count));
-        }
-        foreach (var activity in _plan.Stages.Before)
-            _pass.Place(activity);
-        if (_dispatcher is not null)
-        {
-            foreach (var activity in _plan.Stages.Dispatched)
+            Draw(activity, count);
+            if (_plan.Stages.IsDispatched(activity))
                 _pass.EarliestStarts(activity, _rows.Start(activity, count), _plan.Stages);
-            for (var k = 0; k < count; k++)
-                _dispatcher.Run(k);
+            else
+                Finish(activity, samples, offset);
         }
+        for (var k = 0; k < count && _dispatcher is not null; k++)
+            _dispatcher.Run(k);
+        foreach (var activity in _plan.Stages.Dispatched)
+            Count(activity, samples, offset);
         foreach (var activity in _plan.Stages.After)
-            _pass.Place(activity);
+        {
+            Draw(activity, count);
+            Finish(activity, samples, offset);
+        }
+        for (var p = 0; p < _network.Projects.Count; p++)
+            _projects.End(p, _plan.MinorPerUnit, samples.Finish[p].AsSpan(offset, count), samples.Cost[p].AsSpan(offset, count));
     }
 
-    /// <summary>Finish of a project, the latest finish of what happens; <see cref="BlockSamples.Absent"/> without activities.</summary>
-    public void Finish(int project, Span<int> finish)
+    private void Draw(int activity, int count)
     {
-        finish.Fill(BlockSamples.Absent);
-        for (var a = _network.ProjectStart[project]; a < _network.ProjectStart[project + 1]; a++)
-        {
-            var row = _rows.Finish(a, finish.Length);
-            for (var k = 0; k < finish.Length; k++)
-            {
-                if (row[k] > finish[k] && !_pass.Absent(a, k))
-                    finish[k] = row[k];
-            }
-        }
+        if (!_network.Finished(activity))
+            _inputs.Durations(activity, _rows.Work(activity, count));
     }
 
-    /// <summary>Cost of a project in whole minor units, given its finishes.</summary>
-    public void Cost(int project, ReadOnlySpan<int> finish, Span<double> minor)
+    private void Finish(int activity, BlockSamples samples, int offset)
     {
-        var cost = _cost.AsSpan(0, finish.Length);
-        cost.Clear();
-        if (_network.ProjectStart[project] < _network.ProjectStart[project + 1])
-        {
-            _inputs.AddEventCosts(project, cost);
-            AddActivities(project, cost);
-            AddOverhead(project, finish, cost);
-        }
-        for (var k = 0; k < cost.Length; k++)
-            minor[k] = Money.ToMinor(cost[k], _plan.MinorPerUnit);
+        _pass.Place(activity);
+        Count(activity, samples, offset);
     }
 
-    /// <summary>Finish of a milestone, <see cref="BlockSamples.Absent"/> where it does not happen.</summary>
-    public void MilestoneFinish(int activity, Span<int> finish)
+    private void Count(int activity, BlockSamples samples, int offset)
     {
-        _rows.Finish(activity, finish.Length).CopyTo(finish);
-        for (var k = 0; k < finish.Length; k++)
-        {
-            if (_pass.Absent(activity, k))
-                finish[k] = BlockSamples.Absent;
-        }
+        var count = _inputs.Count;
+        var finish = _rows.Finish(activity, count);
+        if (!_network.Finished(activity))
+            _inputs.AddCosts(activity, _rows.Work(activity, count), _projects.Cost(_network.ProjectOf[activity], count));
+        if (_network.Fork[activity] < 0)
+            _projects.Cover(_network.ProjectOf[activity], _rows.Start(activity, count), finish);
+        else
+            _projects.CoverWhere(_network.ProjectOf[activity], _rows.Start(activity, count), finish, _inputs.Picks(_network.Fork[activity]), _network.Branch[activity]);
+        if (_milestone[activity] >= 0)
+            Reach(activity, finish, samples.MilestoneFinish[_milestone[activity]].AsSpan(offset, count));
     }
 
-    private void AddActivities(int project, Span<double> cost)
+    private void Reach(int milestone, ReadOnlySpan<int> finish, Span<int> reached)
     {
-        var actual = 0.0;
-        for (var a = _network.ProjectStart[project]; a < _network.ProjectStart[project + 1]; a++)
-        {
-            actual += (double)(_network.Activities[a].Cost?.Actual ?? 0);
-            if (!_network.Finished(a))
-                _inputs.AddCosts(a, _rows.Work(a, cost.Length), cost);
-        }
-        for (var k = 0; k < cost.Length; k++)
-            cost[k] += actual;
-    }
-
-    // Per working day from the first start (the status date once anything has started) to the finish, never below 0.
-    private void AddOverhead(int project, ReadOnlySpan<int> finish, Span<double> cost)
-    {
-        if (_network.Projects[project].Overhead is not { } overhead)
-            return;
-        var first = _firstStart.AsSpan(0, cost.Length);
-        FirstStarts(project, finish, first);
-        var calendar = _network.ProjectCalendar[project];
-        for (var k = 0; k < cost.Length; k++)
-        {
-            var worked = Math.Max(calendar.Worked(finish[k]) - calendar.Worked(first[k]), 0);
-            cost[k] += overhead.PerDay * Minutes.Days(worked) + (double)overhead.Actual;
-        }
-    }
-
-    private void FirstStarts(int project, ReadOnlySpan<int> finish, Span<int> first)
-    {
-        if (_network.Begun(project))
-        {
-            first.Fill(WorkTime.Instant(_network.Projects[project].StatusDate));
-            return;
-        }
-        finish.CopyTo(first);
-        for (var a = _network.ProjectStart[project]; a < _network.ProjectStart[project + 1]; a++)
-        {
-            var row = _rows.Start(a, first.Length);
-            for (var k = 0; k < first.Length; k++)
-            {
-                if (row[k] < first[k] && !_pass.Absent(a, k))
-                    first[k] = row[k];
-            }
-        }
+        for (var k = 0; k < reached.Length; k++)
+            reached[k] = _pass.Absent(milestone, k) ? BlockSamples.Absent : _network.Scale.ToMinutes(finish[k]);
     }
 }

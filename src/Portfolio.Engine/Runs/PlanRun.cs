@@ -6,7 +6,7 @@ namespace Portfolio.Engine.Runs;
 internal sealed class PlanRun
 {
     private const int LargestChunk = 256;
-    private const int RowBytes = 12 << 20; // aim for the schedule rows of a thread
+    private const int RowBytes = 8 << 20; // most that the schedule rows of a thread should take
 
     private readonly Plan _plan;
     private readonly ulong _seed;
@@ -15,7 +15,6 @@ internal sealed class PlanRun
     private readonly RunOptions _options;
     private readonly Action<BlockSamples> _sink;
     private readonly int _chunk;
-    private readonly int[] _milestones;
     private readonly BlockSamples?[] _blocks;
     private readonly int[] _left; // [block] iterations still to do
     private int _next; // next chunk to take
@@ -28,8 +27,7 @@ internal sealed class PlanRun
         if (first % BlockSamples.Size != 0)
             throw new ArgumentOutOfRangeException(nameof(first), "A run begins at a block.");
         (_plan, _seed, _first, _count, _options, _sink) = (plan, seed, first, count, options, sink);
-        _chunk = ChunkSize(plan.Network.Count);
-        _milestones = MilestoneInfo.Activities(plan.Network);
+        _chunk = ChunkSize(plan.Layout.Rows);
         var blocks = (count + BlockSamples.Size - 1) / BlockSamples.Size;
         _blocks = new BlockSamples?[blocks];
         _left = [.. Enumerable.Range(0, blocks).Select(InBlock)];
@@ -38,11 +36,11 @@ internal sealed class PlanRun
     public void Work(CancellationToken cancellation) =>
         EngineThreads.Work(Math.Max(1, Math.Min(_options.Threads, (_count + _chunk - 1) / _chunk)), stop => WorkChunks(stop), cancellation);
 
-    // A power of two that divides a block, so that three rows of ints per activity stay near the cache.
-    private static int ChunkSize(int activities)
+    // A power of two that divides a block, so that the rows stay near the cache.
+    private static int ChunkSize(int rows)
     {
         var size = LargestChunk;
-        while (size > 32 && (long)size * activities * 3 * sizeof(int) > RowBytes)
+        while (size > 32 && (long)size * rows * sizeof(int) > RowBytes)
             size /= 2;
         return size;
     }
@@ -58,7 +56,6 @@ internal sealed class PlanRun
                 return;
             var count = (int)Math.Min(_chunk, _count - from);
             inputs.Begin(_seed, _first + from, count);
-            outcomes.Schedule();
             Store(outcomes, (int)from, count);
         }
     }
@@ -68,14 +65,7 @@ internal sealed class PlanRun
         var block = from / BlockSamples.Size;
         var offset = from - block * BlockSamples.Size;
         var samples = Block(block);
-        for (var p = 0; p < samples.Finish.Length; p++)
-        {
-            var finish = samples.Finish[p].AsSpan(offset, count);
-            outcomes.Finish(p, finish);
-            outcomes.Cost(p, finish, samples.Cost[p].AsSpan(offset, count));
-        }
-        for (var m = 0; m < _milestones.Length; m++)
-            outcomes.MilestoneFinish(_milestones[m], samples.MilestoneFinish[m].AsSpan(offset, count));
+        outcomes.Work(samples, offset);
         if (Interlocked.Add(ref _left[block], -count) == 0)
         {
             _blocks[block] = null;
@@ -89,7 +79,7 @@ internal sealed class PlanRun
         lock (_blocks)
         {
             var number = checked((int)(_first / BlockSamples.Size)) + block;
-            return _blocks[block] ??= new BlockSamples(number, InBlock(block), _plan.Network.Projects.Count, _milestones.Length);
+            return _blocks[block] ??= new BlockSamples(number, InBlock(block), _plan.Network.Projects.Count, _plan.Milestones.Count);
         }
     }
 

@@ -92,8 +92,8 @@ public sealed class WorkTimeTests
     public void WhatLiesBeyondTheLastDateIsClamped()
     {
         var calendar = new WorkTime(WorkCalendar.EveryDay, Monday);
-        Assert.Equal(WorkTime.Horizon, calendar.Add(WorkTime.Horizon - 10, 20));
-        Assert.Equal(WorkTime.Horizon, calendar.Begin(WorkTime.Horizon + 10));
+        Assert.Equal(WorkTime.HorizonMinutes, calendar.Add(WorkTime.HorizonMinutes - 10, 20));
+        Assert.Equal(WorkTime.HorizonMinutes, calendar.Begin(WorkTime.HorizonMinutes + 10));
     }
 
     private static void ForRandomCalendars(Action<WorkTime, int, int> law)
