@@ -82,8 +82,8 @@ public sealed class WorkTimeTests
             for (var (day, worked) = (Monday.AddDays(-30), 0); day < Monday.AddDays(400); day = day.AddDays(1))
             {
                 Assert.Equal(worked, calendar.Worked(WorkTime.Instant(day)));
-                var works = (stated.WorkingWeekdays.Contains(day.DayOfWeek) && !stated.NonWorkingDates.Contains(day)) || stated.ExtraWorkingDates.Contains(day);
-                worked += works ? Day : 0;
+                var ordinary = stated.WorkingWeekdays.Contains(day.DayOfWeek) && !stated.NonWorkingDates.Contains(day);
+                worked += ordinary || stated.ExtraWorkingDates.Contains(day) ? Day : 0;
             }
         }
     }

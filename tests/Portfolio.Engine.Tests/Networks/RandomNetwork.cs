@@ -25,7 +25,10 @@ internal sealed class RandomNetwork
     public Activity[] Activities { get; }
 
     public static WorkCalendar FiveDays { get; } = new(
-        "five", [DayOfWeek.Monday, DayOfWeek.Tuesday, DayOfWeek.Wednesday, DayOfWeek.Thursday, DayOfWeek.Friday], [Start.AddDays(9)], [Start.AddDays(12)]);
+        "five",
+        [DayOfWeek.Monday, DayOfWeek.Tuesday, DayOfWeek.Wednesday, DayOfWeek.Thursday, DayOfWeek.Friday],
+        [Start.AddDays(9)],
+        [Start.AddDays(12)]);
 
     public Plan Compile(PoolRule rule) => Compile(rule, null, Activities, Pools);
 
@@ -61,8 +64,12 @@ internal sealed class RandomNetwork
     {
         var p = _random.Next(Pools.Length);
         var more = 0.5 * _random.Next(1, 4);
-        var changes = Pools[p].CapacityChanges.Select(c => c with { Capacity = c.Capacity + more });
-        return [.. Pools.Select((pool, i) => i == p ? pool with { Capacity = pool.Capacity + _random.Next(0, 2) * more, CapacityChanges = [.. changes] } : pool)];
+        var larger = Pools[p] with
+        {
+            Capacity = Pools[p].Capacity + _random.Next(0, 2) * more,
+            CapacityChanges = [.. Pools[p].CapacityChanges.Select(c => c with { Capacity = c.Capacity + more })],
+        };
+        return [.. Pools.Select((pool, i) => i == p ? larger : pool)];
     }
 
     private Activity[] Changed(int a, Activity to) => [.. Activities.Select((activity, i) => i == a ? to : activity)];
@@ -81,7 +88,8 @@ internal sealed class RandomNetwork
 
     private Pool Pool(int number)
     {
-        var changes = Enumerable.Range(0, _random.Next(0, 3)).Select(i => new CapacityChange(Start.AddDays(4 + 7 * i + _random.Next(0, 6)), _random.Next(0, 4))).ToList();
+        var changes = Enumerable.Range(0, _random.Next(0, 3))
+            .Select(i => new CapacityChange(Start.AddDays(4 + 7 * i + _random.Next(0, 6)), _random.Next(0, 4))).ToList();
         changes.Add(new CapacityChange(Start.AddDays(30), _random.Next(2, 4)));
         return new Pool($"pool-{number}", null, _random.Next(1, 4), changes);
     }

@@ -41,7 +41,8 @@ public sealed class SevenActivityNetworkTests
     [InlineData(6, 11)]
     public void LongerWorkBehindAFinishToFinishLinkEndsEarlierAndIsWarnedOf(double b, double finish)
     {
-        var plan = Compile(Work("A", 10), Work("B", b, new Link("A", LinkType.FinishToFinish)), Work("C", 6, new Link("B", LinkType.StartToStart, 1)));
+        var plan = Compile(
+            Work("A", 10), Work("B", b, new Link("A", LinkType.FinishToFinish)), Work("C", 6, new Link("B", LinkType.StartToStart, 1)));
         Assert.Equal(finish, plan.BaseDates().Max(x => x.Finish));
         Assert.Equal(["project/B"], plan.Warnings.Single(w => w.Code == "schedule.reverse").Subjects);
     }

@@ -22,14 +22,14 @@ internal static class Agreement
         {
             if (!outside.Scopes.TryGetValue(scope, out var theirs))
                 continue;
-            Compare($"{scope} finish (days)", [.. finish.Select(t => t / (double)Instants.MinutesPerDay - outside.Epoch)], theirs.Finish, 1, found);
+            Compare($"{scope} finish (days)", [.. finish.Select(t => Days(t) - outside.Epoch)], theirs.Finish, 1, found);
             if (theirs.Cost is not null)
                 Compare($"{scope} cost", [.. cost.Select(minor => minor / plan.MinorPerUnit)], theirs.Cost, 1 / plan.MinorPerUnit, found);
         }
         return found.ToString();
     }
 
-    /// <summary>Finish and cost of the projects, the programmes and the portfolio, and the finishes of milestones in the iterations in which they happen.</summary>
+    /// <summary>Finish and cost of projects, programmes and the portfolio; finishes of milestones in the iterations in which they happen.</summary>
     private static IEnumerable<(string Scope, IEnumerable<int> Finish, IEnumerable<double> Cost)> Series(Plan plan, Samples samples)
     {
         var projects = plan.Document.Projects;
@@ -66,6 +66,8 @@ internal static class Agreement
                 found.AppendLine($"{name}: P{level.Level} {value:F4}, outside {level.Value:F4} ± {error:F4}");
         }
     }
+
+    private static double Days(int instant) => instant / (double)Instants.MinutesPerDay;
 
     private static double Both(double ours, double theirs) => Math.Sqrt(ours * ours + theirs * theirs);
 

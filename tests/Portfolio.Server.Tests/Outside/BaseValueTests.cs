@@ -9,19 +9,29 @@ namespace Portfolio.Server.Tests.Outside;
 /// <summary>Base values against a simulator that shares no code: to the day and the cent, on documents that use every rule at once.</summary>
 public sealed class BaseValueTests
 {
-    private static int Count => SharedFolder.Long ? 3_000 : 200;
+    // In few documents one of these decides a date; found among thousands by leaving the rule out on one side.
+    private static readonly int[] RareCases =
+    [
+        1247, 1936, 2122, // the latest finish moved back to the end of work
+        1544, 2469, // a place in the order held by work of no length
+        279, 293, 308, // finished work behind unfinished bounds no latest finish
+        94, 211, 236, // latest finishes through links into other projects
+    ];
+
+    private static readonly int[] Seeds =
+        SharedFolder.Long ? [.. Enumerable.Range(1, 3_000)] : [.. Enumerable.Range(1, 200).Union(RareCases)];
 
     [Fact]
     public async Task BaseValuesOfRandomDocumentsAreThoseOfTheSimulatorOutside()
     {
-        var documents = Enumerable.Range(1, Count).Select(seed => RandomDocument.Json(seed, RuleOf(seed))).ToList();
+        var documents = Seeds.Select(seed => RandomDocument.Json(seed, RuleOf(seed))).ToList();
         var answers = await Oracle.Base(documents, TestContext.Current.CancellationToken);
-        Assert.Equal(Count, answers.Count);
+        Assert.Equal(Seeds.Length, answers.Count);
         var differences = new StringBuilder();
-        for (var i = 0; i < Count; i++)
+        for (var i = 0; i < Seeds.Length; i++)
         {
             foreach (var difference in Differences(Documents.Compile(documents[i]), answers[i]))
-                differences.AppendLine($"document {i + 1}, {RuleOf(i + 1) ?? "no pools"}: {difference}");
+                differences.AppendLine($"document {Seeds[i]}, {RuleOf(Seeds[i]) ?? "no pools"}: {difference}");
         }
         Assert.True(differences.Length == 0, differences.ToString());
     }
@@ -53,8 +63,8 @@ public sealed class BaseValueTests
     [InlineData("\"lowPercentile\"")]
     public void RandomDocumentsUseEveryRule(string written)
     {
-        var users = Enumerable.Range(1, Count).Count(seed => Encoding.UTF8.GetString(RandomDocument.Json(seed, RuleOf(seed) ?? "passing")).Contains(written));
-        Assert.True(users > Count / 5, $"{written} stands in {users} of {Count} documents.");
+        var users = Seeds.Count(seed => Encoding.UTF8.GetString(RandomDocument.Json(seed, RuleOf(seed) ?? "passing")).Contains(written));
+        Assert.True(users > Seeds.Length / 5, $"{written} stands in {users} of {Seeds.Length} documents.");
     }
 
     private static string? RuleOf(int seed) => (seed % 5) switch { 0 => null, 1 or 2 => "passing", _ => "inOrder" };
@@ -83,8 +93,8 @@ public sealed class BaseValueTests
         foreach (var (project, finish, cost) in projects)
             yield return new BaseRow(Scope.OfProject(project.Id), default(DateRule).Date(finish), cost, 1);
         foreach (var programme in projects.Where(p => p.Item.Programme is not null).GroupBy(p => p.Item.Programme!))
-            yield return new BaseRow(Scope.OfProgramme(programme.Key), default(DateRule).Date(programme.Max(p => p.Finish)), programme.Sum(p => p.Cost), programme.Count());
-        yield return new BaseRow(Scope.Portfolio, default(DateRule).Date(projects.Max(p => p.Finish)), projects.Sum(p => p.Cost), projects.Count);
+            yield return Together(Scope.OfProgramme(programme.Key), [.. programme.Select(p => (p.Finish, p.Cost))]);
+        yield return Together(Scope.Portfolio, [.. projects.Select(p => (p.Finish, p.Cost))]);
         foreach (var (index, milestone) in plan.Milestones.Index())
         {
             var project = plan.Document.Projects[milestone.Project];
@@ -93,6 +103,9 @@ public sealed class BaseValueTests
                 yield return new BaseRow(Scope.OfMilestone(project.Id, milestone.Activity.Id), rule.Date(finish), 0, 0);
         }
     }
+
+    private static BaseRow Together(Scope scope, (int Finish, double Cost)[] projects) =>
+        new(scope, default(DateRule).Date(projects.Max(p => p.Finish)), projects.Sum(p => p.Cost), projects.Length);
 
     private static string Time(double days, int epoch) =>
         new DateTime(1970, 1, 1).AddMinutes(Math.Round((epoch + days) * Instants.MinutesPerDay)).ToString("yyyy-MM-dd HH:mm", null);

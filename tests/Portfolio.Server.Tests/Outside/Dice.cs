@@ -13,7 +13,7 @@ internal sealed class Dice(int seed)
     /// <summary>A whole number from <paramref name="low"/> to <paramref name="high"/>, both possible.</summary>
     public int Whole(int low, int high) => _random.Next(low, high + 1);
 
-    /// <summary>Eighths of a day: sums of such numbers are exact in binary, so that a simulator that counts in days makes no rounding error.</summary>
+    /// <summary>Eighths of a day: sums of these are exact in binary, so that a simulator that counts in days rounds nothing.</summary>
     public double Days(double low, double high) => Whole((int)(low * 8), (int)(high * 8)) / 8.0;
 
     /// <summary>An amount with so many digits after the point.</summary>

@@ -48,7 +48,10 @@ internal static class RandomActivities
     {
         var json = activity.Json;
         if (activity.Progress == Progress.Ahead || dice.Chance(0.5))
-            json["duration"] = activity.Progress == Progress.UnderWay || !dice.Chance(0.1) ? RandomDistribution.Days(dice, dice.Days(0.5, 15)) : 0;
+        {
+            var some = activity.Progress == Progress.UnderWay || !dice.Chance(0.1);
+            json["duration"] = some ? RandomDistribution.Days(dice, dice.Days(0.5, 15)) : 0;
+        }
         if (!json.ContainsKey("duration") && activity.Progress == Progress.UnderWay)
             json["duration"] = dice.Days(1, 9);
         if (dice.Chance(0.7))

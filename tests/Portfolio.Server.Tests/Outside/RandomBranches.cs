@@ -27,7 +27,10 @@ internal static class RandomBranches
             if (chosen.Any(a => a.Started))
                 begun = b;
             free.RemoveAll(chosen.Contains);
-            branches.Add(new JsonObject { ["id"] = $"branch-{b}", ["probability"] = probabilities[b], ["activities"] = Dice.Texts(chosen.Select(a => a.Id)) });
+            branches.Add(new JsonObject
+            {
+                ["id"] = $"branch-{b}", ["probability"] = probabilities[b], ["activities"] = Dice.Texts(chosen.Select(a => a.Id)),
+            });
         }
         return new JsonObject { ["id"] = $"fork-{number}", ["branches"] = Dice.List(branches) };
     }

@@ -60,7 +60,8 @@ internal static class RandomDistribution
     {
         ["type"] = "percentiles",
         ["points"] = Dice.List(
-            new[] { (0, 0.5), (25, 0.75), (75, 1.25), (80, 1.25), (100, 2.5) }.Select(x => new JsonObject { ["p"] = x.Item1, ["value"] = middle * x.Item2 })),
+            new[] { (0, 0.5), (25, 0.75), (75, 1.25), (80, 1.25), (100, 2.5) }
+                .Select(x => new JsonObject { ["p"] = x.Item1, ["value"] = middle * x.Item2 })),
     };
 
     private static JsonObject Triangular(double low, double mode, double high) => Of("triangular", ("low", low), ("mode", mode), ("high", high));

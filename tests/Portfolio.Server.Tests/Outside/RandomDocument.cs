@@ -71,7 +71,8 @@ internal static class RandomDocument
 
     private static JsonObject Project(Dice dice, RandomProject project, IReadOnlyList<string> calendars, bool prioritised)
     {
-        var stated = new JsonObject { ["id"] = project.Id, ["statusDate"] = Dice.Date(project.Status), ["tags"] = new JsonObject { ["region"] = dice.Pick("a", "b") } };
+        var stated = new JsonObject { ["id"] = project.Id, ["statusDate"] = Dice.Date(project.Status) };
+        stated["tags"] = new JsonObject { ["region"] = dice.Pick("a", "b") };
         if (project.Programme is { } programme)
             stated["programme"] = programme;
         if (prioritised && dice.Chance(0.8))
@@ -83,9 +84,15 @@ internal static class RandomDocument
         if (dice.Chance(0.4))
             stated["drivers"] = Dice.Texts([$"driver-{dice.Whole(0, RandomSettings.Drivers - 1)}"]);
         if (dice.Chance(0.7))
-            stated["overhead"] = new JsonObject { ["perDay"] = dice.Money(50, 900, project.Digits), ["actual"] = dice.Money(0, 9000, project.Digits) };
+        {
+            var (perDay, actual) = (dice.Money(50, 900, project.Digits), dice.Money(0, 9000, project.Digits));
+            stated["overhead"] = new JsonObject { ["perDay"] = perDay, ["actual"] = actual };
+        }
         if (dice.Chance(0.5))
-            stated["commitments"] = new JsonObject { ["finish"] = Dice.Date(project.Status.AddDays(dice.Whole(50, 300))), ["budget"] = dice.Money(1e4, 1e6, project.Digits) };
+        {
+            var finish = Dice.Date(project.Status.AddDays(dice.Whole(50, 300)));
+            stated["commitments"] = new JsonObject { ["finish"] = finish, ["budget"] = dice.Money(1e4, 1e6, project.Digits) };
+        }
         stated["activities"] = Dice.List(project.Activities.Select(a => a.Json));
         stated["riskEvents"] = RandomRisks.OfProject(dice, project);
         if (RandomBranches.Of(dice, project) is { Count: > 0 } branches)

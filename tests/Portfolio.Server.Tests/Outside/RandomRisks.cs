@@ -2,7 +2,10 @@ using System.Text.Json.Nodes;
 
 namespace Portfolio.Server.Tests.Outside;
 
-/// <summary>Risk events of random documents: delays and costs, opportunities, responses taken and not, also on work that is finished or may not happen.</summary>
+/// <summary>
+/// Risk events of random documents: delays and costs, opportunities, responses taken and not, also on work that is finished or may not
+/// happen.
+/// </summary>
 internal static class RandomRisks
 {
     public static JsonArray OfProject(Dice dice, RandomProject project) =>

@@ -2,7 +2,9 @@ using System.Text.Json.Nodes;
 
 namespace Portfolio.Server.Tests.Outside;
 
-/// <summary>Settings of a random document: calendars, pools whose capacity rises and falls, drivers, dependence and the portfolio's own events.</summary>
+/// <summary>
+/// Settings of a random document: calendars, pools whose capacity rises and falls, drivers, dependence and the portfolio's own events.
+/// </summary>
 internal static class RandomSettings
 {
     public const int Pools = 3;
@@ -102,5 +104,6 @@ internal static class RandomSettings
         return stated;
     }
 
-    private static JsonObject Pair(string first, string second, double rank) => new() { ["between"] = Dice.Texts([first, second]), ["rank"] = rank };
+    private static JsonObject Pair(string first, string second, double rank) =>
+        new() { ["between"] = Dice.Texts([first, second]), ["rank"] = rank };
 }

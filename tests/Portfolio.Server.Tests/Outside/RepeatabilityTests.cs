@@ -8,7 +8,9 @@ using Portfolio.Engine.Runs;
 
 namespace Portfolio.Server.Tests.Outside;
 
-/// <summary>Every draw is a function of seed, key and iteration alone (contract section 4, item 11): the same bits however a run is worked.</summary>
+/// <summary>
+/// Every draw is a function of seed, key and iteration alone (contract section 4, item 11): the same bits however a run is worked.
+/// </summary>
 public sealed class RepeatabilityTests
 {
     private const int Iterations = 2 * BlockSamples.Size + 1000;
@@ -134,7 +136,8 @@ public sealed class RepeatabilityTests
     private static JsonNode Another(string driver) => JsonNode.Parse(
         """
         { "id": "another", "programme": "north", "statusDate": "2026-11-05", "correlation": 0.4, "drivers": ["DRIVER"], "activities": [
-            { "id": "A", "duration": { "type": "pert", "low": 3, "mode": 5, "high": 12 }, "cost": { "fixed": { "type": "uniform", "low": 1, "high": 2 } } },
+            { "id": "A", "duration": { "type": "pert", "low": 3, "mode": 5, "high": 12 },
+              "cost": { "fixed": { "type": "uniform", "low": 1, "high": 2 } } },
             { "id": "B", "milestone": true, "predecessors": ["A"] } ] }
         """.Replace("DRIVER", driver, StringComparison.Ordinal))!;
 

@@ -12,7 +12,8 @@ internal static class SharedFolder
     /// <summary>Folder that holds the solution.</summary>
     public static string Repository { get; } = FindRepository();
 
-    private static string Root => Environment.GetEnvironmentVariable("PORTFOLIO_SHARED") ?? Path.GetFullPath(Path.Combine(Repository, "..", "shared"));
+    private static string Root =>
+        Environment.GetEnvironmentVariable("PORTFOLIO_SHARED") ?? Path.GetFullPath(Path.Combine(Repository, "..", "shared"));
 
     /// <summary>A program among the checks; skips the test where there is none.</summary>
     public static string Check(string name) => Existing(Path.Combine(Root, "checks", name));

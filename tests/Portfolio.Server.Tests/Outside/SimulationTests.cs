@@ -3,12 +3,14 @@ using System.Text.Json.Nodes;
 
 namespace Portfolio.Server.Tests.Outside;
 
-/// <summary>Simulations against a simulator that shares no code and draws its own random numbers, at P10, P50, P80 and P90 and in the mean.</summary>
+/// <summary>
+/// Simulations against a simulator that shares no code and draws its own random numbers, at P10, P50, P80 and P90 and in the mean.
+/// </summary>
 public sealed class SimulationTests
 {
     private const int Iterations = 20_000;
 
-    /// <summary>The simulator outside takes milliseconds for an iteration with pools, so those documents are small here, and larger when tests may take long.</summary>
+    /// <summary>The simulator outside takes milliseconds for an iteration with pools; such documents are small unless tests may take long.</summary>
     [Theory]
     [InlineData(4, 50, 0, null, 20_000, false)]
     [InlineData(2, 20, 2, "passing", 2_000, false)]
@@ -31,8 +33,13 @@ public sealed class SimulationTests
     public async Task RandomDocumentsAgree(string? poolRule, int outside)
     {
         var count = poolRule is null ? 12 : 4;
-        await Agree([.. Enumerable.Range(301, SharedFolder.Long ? count * 5 : count).Select(seed => RandomDocument.Json(seed, poolRule))], outside);
+        var seeds = Enumerable.Range(301, SharedFolder.Long ? count * 5 : count);
+        await Agree([.. seeds.Select(seed => RandomDocument.Json(seed, poolRule))], outside);
     }
+
+    /// <summary>Strong ties of every kind, so that leaving any of them out would show in the totals.</summary>
+    [Fact]
+    public Task StrongDependenceAgrees() => Agree([StrongDependence.Json()], Iterations);
 
     private static async Task Agree(IReadOnlyList<byte[]> documents, int outside)
     {
@@ -48,8 +55,7 @@ public sealed class SimulationTests
 
     private static async Task<JsonNode> Invent(int projects, int activities, int pools)
     {
-        string[] arguments =
-            [SharedFolder.Check("make_portfolio.py"), "--projects", $"{projects}", "--activities", $"{activities}", "--pools", $"{pools}", "--drivers", "6"];
-        return JsonNode.Parse(await Python.Run(arguments, "", TestContext.Current.CancellationToken))!;
+        string[] sizes = ["--projects", $"{projects}", "--activities", $"{activities}", "--pools", $"{pools}", "--drivers", "6"];
+        return JsonNode.Parse(await Python.Run([SharedFolder.Check("make_portfolio.py"), .. sizes], "", TestContext.Current.CancellationToken))!;
     }
 }
