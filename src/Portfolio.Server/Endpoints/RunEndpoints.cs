@@ -27,12 +27,14 @@ internal static class RunEndpoints
         runs.MapGet("", List).WithName("listRuns").Needs(Right.Read);
         runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read);
         runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read);
-        runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage).Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409);
+        runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage)
+            .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409);
     }
 
     /// <summary>Asks for a run. Its revision is fixed now; it is worked as soon as a worker is free.</summary>
     internal static async Task<IResult> Post(
-        string portfolio, ClaimsPrincipal user, RunIntake intake, RunView view, IOptions<LimitOptions> limits, HttpContext http, CancellationToken cancellation)
+        string portfolio, ClaimsPrincipal user, RunIntake intake, RunView view, IOptions<LimitOptions> limits, HttpContext http,
+        CancellationToken cancellation)
     {
         var asked = await JsonBody.ReadAsync(http.Request, ApiContext.Default.RunRequestJson, limits.Value.Body) ?? new RunRequestJson();
         var run = await intake.TakeAsync(user.Caller(), portfolio, asked, cancellation);
@@ -55,7 +57,8 @@ internal static class RunEndpoints
     /// <param name="run">An id, or latest: the point of the series with the greatest date.</param>
     /// <param name="asOf">With latest: the point of this date or of the nearest earlier one.</param>
     internal static async Task<Ok<RunJson>> Get(
-        string portfolio, string run, ClaimsPrincipal user, RunView view, HttpContext http, CancellationToken cancellation, DateOnly? asOf = null)
+        string portfolio, string run, ClaimsPrincipal user, RunView view, HttpContext http, CancellationToken cancellation,
+        DateOnly? asOf = null)
     {
         var found = await view.FindAsync(user.Caller(), portfolio, run, asOf, cancellation);
         http.Response.Headers.ContentLocation = AddressOf(http, portfolio, found.Id);
@@ -73,7 +76,8 @@ internal static class RunEndpoints
 
     /// <summary>Asks a run that has not ended to stop. Results are never deleted.</summary>
     internal static async Task<IResult> Cancel(
-        string portfolio, string run, ClaimsPrincipal user, RunRequests requests, RunView view, RunSignal signal, HttpContext http, CancellationToken cancellation)
+        string portfolio, string run, ClaimsPrincipal user, RunRequests requests, RunView view, RunSignal signal, HttpContext http,
+        CancellationToken cancellation)
     {
         var result = await requests.RequestCancelAsync(user.Caller(), portfolio, run, cancellation);
         switch (result)
@@ -96,5 +100,6 @@ internal static class RunEndpoints
         return TypedResults.Accepted(AddressOf(http, portfolio, run.Id), run);
     }
 
-    private static string AddressOf(HttpContext http, string portfolio, string run) => $"{http.Request.PathBase}/v1/portfolios/{portfolio}/runs/{run}";
+    private static string AddressOf(HttpContext http, string portfolio, string run) =>
+        $"{http.Request.PathBase}/v1/portfolios/{portfolio}/runs/{run}";
 }

@@ -23,15 +23,16 @@ internal static class ScheduleEndpoints
     }
 
     /// <summary>When the portfolio is run by itself, and what became of the last due dates.</summary>
-    internal static async Task<IResult> Get(string portfolio, ClaimsPrincipal user, ScheduleStanding standing, CancellationToken cancellation) =>
+    internal static async Task<IResult> Get(
+        string portfolio, ClaimsPrincipal user, ScheduleStanding standing, CancellationToken cancellation) =>
         await standing.ReadAsync(user.Caller(), portfolio, cancellation) is { } schedule
             ? TypedResults.Ok(schedule)
             : Problem.NotFound("No schedule is set.");
 
     /// <summary>Sets when the portfolio is run by itself.</summary>
     internal static async Task<IResult> Put(
-        string portfolio, ClaimsPrincipal user, ScheduleStore schedules, ScheduleStanding standing, IOptions<LimitOptions> limits, HttpContext http,
-        CancellationToken cancellation)
+        string portfolio, ClaimsPrincipal user, ScheduleStore schedules, ScheduleStanding standing, IOptions<LimitOptions> limits,
+        HttpContext http, CancellationToken cancellation)
     {
         var sent = await JsonBody.ReadAsync(http.Request, ApiContext.Default.ScheduleJson, limits.Value.Body) ?? new ScheduleJson();
         var asked = ScheduleRequest.Of(sent, limits.Value.Iterations);
@@ -39,7 +40,8 @@ internal static class ScheduleEndpoints
             return Problem.Refused(asked.Faults);
         return await schedules.PutAsync(user.Caller(), portfolio, asked.Cron, asked.Iterations, asked.Enabled, cancellation) switch
         {
-            SchedulePutOutcome.Stored or SchedulePutOutcome.Unchanged => TypedResults.Ok(await standing.ReadAsync(user.Caller(), portfolio, cancellation)),
+            SchedulePutOutcome.Stored or SchedulePutOutcome.Unchanged =>
+                TypedResults.Ok(await standing.ReadAsync(user.Caller(), portfolio, cancellation)),
             SchedulePutOutcome.Forbidden => Problem.Forbidden(),
             SchedulePutOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
             _ => Problem.NotFound(),

@@ -31,5 +31,6 @@ internal static class WebServerSetup
             console.TimestampFormat = "yyyy-MM-dd'T'HH:mm:ss.fff'Z'";
         });
         logging.AddFilter("Microsoft.AspNetCore", LogLevel.Warning);
+        logging.AddFilter("Hangfire", LogLevel.Warning);
     }
 }

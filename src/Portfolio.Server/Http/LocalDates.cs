@@ -17,8 +17,8 @@ internal static class LocalDates
         DateOnly.FromDateTime(TimeZoneInfo.ConvertTime(instant, zone).DateTime);
 
     /// <summary>
-    /// The first instant at which the clocks of the zone show this time or a later one: of a time that comes twice the first, of one that is left out the
-    /// end of the gap.
+    /// The first instant at which the clocks of the zone show this time or a later one: of a time that comes twice the first, of one that
+    /// is left out the end of the gap.
     /// </summary>
     public static DateTimeOffset InstantOf(DateTime local, TimeZoneInfo zone)
     {

@@ -9,14 +9,15 @@ using Portfolio.Store.Samples;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// Carries finished blocks from the threads of the engine to the one writer of the store. The queue is short: when the store is slower, the engine waits, and
-/// memory stays bounded.
+/// Carries finished blocks from the threads of the engine to the one writer of the store. The queue is short: when the store is slower,
+/// the engine waits, and memory stays bounded.
 /// </summary>
 internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan)
 {
     private const int Waiting = 2;
 
-    private readonly Channel<BlockSamples> queue = Channel.CreateBounded<BlockSamples>(new BoundedChannelOptions(Waiting) { SingleReader = true });
+    private readonly Channel<BlockSamples> queue =
+        Channel.CreateBounded<BlockSamples>(new BoundedChannelOptions(Waiting) { SingleReader = true });
 
     /// <summary>Called from the engine's own threads, which may wait.</summary>
     public void Add(BlockSamples block, CancellationToken cancellation)
@@ -56,7 +57,8 @@ internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan
         for (var m = 0; m < plan.Milestones.Count; m++)
         {
             var milestone = plan.Milestones[m];
-            yield return SeriesBlock.OfMinutes(SeriesNames.Milestone(projects[milestone.Project].Id, milestone.Activity.Id), block.MilestoneFinish[m]);
+            var name = SeriesNames.Milestone(projects[milestone.Project].Id, milestone.Activity.Id);
+            yield return SeriesBlock.OfMinutes(name, block.MilestoneFinish[m]);
         }
     }
 }

@@ -3,8 +3,8 @@ using Portfolio.Store.Runs;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// Keeps the lease of a run while it is worked, every third of its length and whenever the signal is given, and ends the work when the run is asked to stop or
-/// was lost to another worker.
+/// Keeps the lease of a run while it is worked, every third of its length and whenever the signal is given, and ends the work when the run
+/// is asked to stop or was lost to another worker.
 /// </summary>
 internal sealed class LeaseWatch : IAsyncDisposable
 {

@@ -12,10 +12,11 @@ using Portfolio.Store.Schedules;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// Makes the runs that have become due: for each enabled schedule the one of its latest due date, if there is none yet. Earlier dates that were missed stay
-/// missing. Safe to run at any time and by several at once: the store keeps one run per due date.
+/// Makes the runs that have become due: for each enabled schedule the one of its latest due date, if there is none yet. Earlier dates that
+/// were missed stay missing. Safe to run at any time and by several at once: the store keeps one run per due date.
 /// </summary>
-public sealed class Nightly(ScheduleStore schedules, DocumentStore documents, RunStore runs, RunRequests requests, TimeProvider clock, ILogger<Nightly> log)
+public sealed class Nightly(
+    ScheduleStore schedules, DocumentStore documents, RunStore runs, RunRequests requests, TimeProvider clock, ILogger<Nightly> log)
 {
     /// <summary>Looks at every schedule; one that fails does not keep the others waiting.</summary>
     public async Task MakeDueAsync(CancellationToken cancellation)
@@ -37,7 +38,8 @@ public sealed class Nightly(ScheduleStore schedules, DocumentStore documents, Ru
     {
         var settings = await SettingsAsync(schedule.Portfolio, null, cancellation);
         var zone = TimeZoneInfo.FindSystemTimeZoneById(settings.TimeZone);
-        var times = new DueTimes(DueTimes.Parse(schedule.Cron) ?? throw new InvalidOperationException($"The stored schedule '{schedule.Cron}' cannot be read."), zone);
+        var cron = DueTimes.Parse(schedule.Cron) ?? throw new InvalidOperationException($"The schedule '{schedule.Cron}' cannot be read.");
+        var times = new DueTimes(cron, zone);
         var made = await runs.ListDueAsync(Caller.System, schedule.Portfolio, 1, cancellation);
         if (times.Latest(schedule.ChangedAt, clock.GetUtcNow(), made.Count > 0 ? made[0].DueDate : null) is not { } due)
             return;
@@ -50,7 +52,8 @@ public sealed class Nightly(ScheduleStore schedules, DocumentStore documents, Ru
             RunLog.Due(log, schedule.Portfolio, queued.Id, due.Date);
     }
 
-    private async Task<NewRun> RunOfAsync(StoredSchedule schedule, DateOnly date, long revision, TimeZoneInfo zone, CancellationToken cancellation)
+    private async Task<NewRun> RunOfAsync(
+        StoredSchedule schedule, DateOnly date, long revision, TimeZoneInfo zone, CancellationToken cancellation)
     {
         var settings = await SettingsAsync(schedule.Portfolio, revision, cancellation);
         return new NewRun

@@ -7,7 +7,9 @@ using Portfolio.Store.Samples;
 
 namespace Portfolio.Server.Jobs;
 
-/// <summary>The work on one claimed run: the missing blocks, then the results. Safe to begin again at any point: blocks that are stored are kept.</summary>
+/// <summary>
+/// The work on one claimed run: the missing blocks, then the results. Safe to begin again at any point: blocks that are stored are kept.
+/// </summary>
 internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, RunProgress progress, int threads)
 {
     /// <summary>Works all blocks that are missing, stores them as they are finished, and builds what the run leaves behind.</summary>
@@ -41,7 +43,8 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         await Task.WhenAll(stored, worked);
     }
 
-    private bool Simulate(StoredRun run, FrozenRevision revision, IReadOnlyList<BlockGap> gaps, BlockStoring storing, CancellationToken cancellation)
+    private bool Simulate(
+        StoredRun run, FrozenRevision revision, IReadOnlyList<BlockGap> gaps, BlockStoring storing, CancellationToken cancellation)
     {
         try
         {
@@ -61,9 +64,13 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         }
     }
 
-    private SampleReader Samples(RunLease held) => new(
-        series => samples.ReadMinutesAsync(held.Caller, held.Run.Portfolio, held.Run.Id, series, CancellationToken.None).GetAwaiter().GetResult(),
-        series => samples.ReadMoneyAsync(held.Caller, held.Run.Portfolio, held.Run.Id, series, CancellationToken.None).GetAwaiter().GetResult());
+    private SampleReader Samples(RunLease held)
+    {
+        var (caller, portfolio, run) = (held.Caller, held.Run.Portfolio, held.Run.Id);
+        return new SampleReader(
+            series => samples.ReadMinutesAsync(caller, portfolio, run, series, CancellationToken.None).GetAwaiter().GetResult(),
+            series => samples.ReadMoneyAsync(caller, portfolio, run, series, CancellationToken.None).GetAwaiter().GetResult());
+    }
 
     private static RunFacts Facts(StoredRun run, FrozenRevision revision) =>
         new(run.Id, run.AsOf, run.Revision, run.Seed, run.Iterations, revision.PartHashes, run.Overlay);

@@ -11,19 +11,21 @@ using Portfolio.Store.Samples;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// Works queued runs, and runs whose worker has vanished, one after the other until there are none. Claims first, finishes last; to be woken twice, or killed
-/// at any point, does no harm.
+/// Works queued runs, and runs whose worker has vanished, one after the other until there are none. Claims first, finishes last; to be
+/// woken twice, or killed at any point, does no harm.
 /// </summary>
 public sealed class RunWorker(
-    RunClaims claims, RunEndings endings, DocumentStore documents, SampleStore samples, RunSignal signal, RunProgress progress, RunMeasures measures,
-    TimeProvider clock, IOptions<EngineOptions> options, ILogger<RunWorker> log)
+    RunClaims claims, RunEndings endings, DocumentStore documents, SampleStore samples, RunSignal signal, RunProgress progress,
+    RunMeasures measures, TimeProvider clock, IOptions<EngineOptions> options, ILogger<RunWorker> log)
 {
     private readonly EngineOptions settings = options.Value;
     private readonly SemaphoreSlim free = new(options.Value.Runs);
     private readonly string owner = $"{Environment.MachineName}/{Environment.ProcessId}";
     private int asked;
 
-    /// <summary>Works until no run is left. When this process works as many runs as it may already, those who work are told to look again.</summary>
+    /// <summary>
+    /// Works until no run is left. When this process works as many runs as it may already, those who work are told to look again.
+    /// </summary>
     /// <param name="stopping">The process ends: the run goes back to the queue and keeps its blocks.</param>
     public async Task WorkAsync(CancellationToken stopping)
     {
@@ -98,7 +100,8 @@ public sealed class RunWorker(
         }
     }
 
-    // A stored block forgives an attempt: a long run that is interrupted often still comes to its end, one that takes the process down with it does not go on for ever.
+    // A stored block forgives an attempt: a long run that is interrupted often still comes to its end, one that takes the process down
+    // with it does not go on for ever.
     private static void GiveUpAfter(int attempts, StoredRun run)
     {
         var blocks = run.IterationsDone / Engine.Runs.BlockSamples.Size;

@@ -5,7 +5,10 @@ using Portfolio.Store.Schedules;
 
 namespace Portfolio.Server.Jobs;
 
-/// <summary>What is done every minute whatever signals were lost: due runs are made, the standing is measured. Working what is there comes after it.</summary>
+/// <summary>
+/// What is done every minute whatever signals were lost: due runs are made, the standing is measured. Working what is there comes after
+/// it.
+/// </summary>
 public sealed class Sweep(Nightly nightly, RunStore runs, ScheduleStore schedules, RunMeasures measures)
 {
     // A run older than these many due dates is no longer looked for.

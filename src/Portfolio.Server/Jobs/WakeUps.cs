@@ -9,8 +9,8 @@ using Portfolio.Store.Runs;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// Hangfire wakes the jobs: every minute, and when a signal is given. It decides nothing and remembers nothing: what there is to do stands in our tables.
-/// No other file knows it.
+/// Hangfire wakes the jobs: every minute, and when a signal is given. It decides nothing and remembers nothing: what there is to do stands
+/// in our tables. No other file knows it.
 /// </summary>
 internal static class WakeUps
 {
@@ -18,8 +18,10 @@ internal static class WakeUps
 
     public static void AddWakeUps(this IServiceCollection services, int runs)
     {
-        services.AddSingleton<JobStorage>(_ => new InMemoryStorage(new InMemoryStorageOptions { MaxExpirationTime = TimeSpan.FromMinutes(5) }));
-        services.AddHangfire((provider, hangfire) => hangfire.UseLogProvider(new WakeUpLogs(provider.GetRequiredService<ILoggerFactory>())));
+        services.AddSingleton<JobStorage>(
+            _ => new InMemoryStorage(new InMemoryStorageOptions { MaxExpirationTime = TimeSpan.FromMinutes(5) }));
+        services.AddHangfire(
+            (provider, hangfire) => hangfire.UseLogProvider(new WakeUpLogs(provider.GetRequiredService<ILoggerFactory>())));
         // Leases of the process before are ended first.
         services.AddHostedService<JobStart>();
         services.AddHangfireServer(server =>
@@ -52,8 +54,8 @@ internal sealed class WokenJobs(Sweep sweep, RunWorker worker, IHostApplicationL
 }
 
 /// <summary>
-/// At the start: one process owns the folder, so whoever held a lease is gone and its runs go on at once; then a first sweep, which also catches up what became
-/// due meanwhile.
+/// At the start: one process owns the folder, so whoever held a lease is gone and its runs go on at once; then a first sweep, which also
+/// catches up what became due meanwhile.
 /// </summary>
 internal sealed class JobStart(
     RunClaims claims, RunSignal signal, IBackgroundJobClient client, IRecurringJobManager recurring, ILogger<JobStart> log) : IHostedService
@@ -80,7 +82,9 @@ internal sealed class JobStart(
 internal sealed class JobHealth(JobStorage storage) : IHealthCheck
 {
     public Task<HealthCheckResult> CheckHealthAsync(HealthCheckContext context, CancellationToken cancellation) =>
-        Task.FromResult(storage.GetMonitoringApi().Servers().Count > 0 ? HealthCheckResult.Healthy() : HealthCheckResult.Unhealthy("No worker has started yet."));
+        Task.FromResult(storage.GetMonitoringApi().Servers().Count > 0
+            ? HealthCheckResult.Healthy()
+            : HealthCheckResult.Unhealthy("No worker has started yet."));
 }
 
 /// <summary>

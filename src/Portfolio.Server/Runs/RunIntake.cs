@@ -16,7 +16,8 @@ namespace Portfolio.Server.Runs;
 
 /// <summary>Takes requests for runs: settles them, writes the row and asks for a wake-up. Nothing is simulated here.</summary>
 internal sealed class RunIntake(
-    DocumentStore documents, RevisionOfDate dates, RunRequests requests, RunSignal signal, TimeProvider clock, IOptions<LimitOptions> limits)
+    DocumentStore documents, RevisionOfDate dates, RunRequests requests, RunSignal signal, TimeProvider clock,
+    IOptions<LimitOptions> limits)
 {
     /// <exception cref="RequestRefused">The run is not taken.</exception>
     public async Task<StoredRun> TakeAsync(Caller caller, string portfolio, RunRequestJson asked, CancellationToken cancellation)
@@ -31,7 +32,7 @@ internal sealed class RunIntake(
         if (order.Faults.Count > 0)
             throw new RequestRefused(Problem.Refused(order.Faults));
         if (!await HasActivitiesAsync(portfolio, revision, cancellation))
-            throw Refused("", RunFaultCodes.NothingToRun, $"Revision {revision} holds no activity, so there is nothing whose finish could be forecast.");
+            throw Refused("", RunFaultCodes.NothingToRun, $"Revision {revision} holds no activity whose finish could be forecast.");
         var result = await requests.CreateAsync(caller, run, null, cancellation);
         if (result is not { Outcome: RunRequestOutcome.Created, Run: { } made })
             throw new RequestRefused(Why(result, run));
@@ -41,7 +42,8 @@ internal sealed class RunIntake(
 
     private async Task<long> RevisionAsync(Caller caller, string portfolio, double? asked, CancellationToken cancellation)
     {
-        var newest = await documents.FindRevisionAsync(caller, portfolio, null, cancellation) ?? throw new RequestRefused(Problem.NotFound());
+        var newest = await documents.FindRevisionAsync(caller, portfolio, null, cancellation)
+            ?? throw new RequestRefused(Problem.NotFound());
         if (asked is not { } number)
             return newest.Number;
         if (number >= 1 && number <= newest.Number && number == Math.Truncate(number))
@@ -83,14 +85,22 @@ internal sealed class RunIntake(
         RunRequestOutcome.Forbidden => Problem.Forbidden(),
         RunRequestOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
         RunRequestOutcome.DateHeld => Problem.Conflict(
-            "date-closed", "The date is closed", $"{run.AsOf:yyyy-MM-dd} has ended, and run {result.Run?.Id} stands for it or is about to. Say \"replaces\" to put another in its place."),
+            "date-closed", "The date is closed",
+            $"{run.AsOf:yyyy-MM-dd} has ended, and run {result.Run?.Id} stands or will stand for it; 'replaces' puts another in its place."),
         RunRequestOutcome.ReplacesNotThePoint => Problem.Conflict(
             "not-the-point", "The run does not stand for its date",
-            result.Run is { } point ? $"For {run.AsOf:yyyy-MM-dd} stands run {point.Id}." : $"No run stands for {run.AsOf:yyyy-MM-dd} yet."),
+            result.Run is { } point
+                ? $"For {run.AsOf:yyyy-MM-dd} stands run {point.Id}."
+                : $"No run stands for {run.AsOf:yyyy-MM-dd} yet."),
         RunRequestOutcome.ReplacesUnknown => Problem.Refused(
-            [new Fault("/replaces", "run", RunFaultCodes.ReplacesUnknown, "'replaces' must name a recorded run of the same date, and the new run must be recorded too.")]),
+        [
+            new Fault(
+                "/replaces", "run", RunFaultCodes.ReplacesUnknown,
+                "'replaces' must name a recorded run of the same date, and the new run must be recorded too."),
+        ]),
         _ => Problem.NotFound(),
     };
 
-    private static RequestRefused Refused(string path, string code, string message) => new(Problem.Refused([new Fault(path, "run", code, message)]));
+    private static RequestRefused Refused(string path, string code, string message) =>
+        new(Problem.Refused([new Fault(path, "run", code, message)]));
 }

@@ -8,7 +8,9 @@ using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Runs;
 
-/// <summary>What a run is asked for with, settled against the settings: what was left out is filled in, what cannot be is refused.</summary>
+/// <summary>
+/// What a run is asked for with, settled against the settings: what was left out is filled in, what cannot be is refused.
+/// </summary>
 /// <param name="settings">Those of the revision that is run.</param>
 /// <param name="zone">The portfolio's zone of local dates, today.</param>
 /// <param name="mostIterations">The largest number of iterations that is taken.</param>
@@ -49,7 +51,7 @@ internal sealed class RunOrder(Settings settings, TimeZoneInfo zone, DateTimeOff
         if (reading.Date(Body, "asOf", asked) is not { } date || date == DateOnly.MinValue)
             return today;
         if (date > today)
-            reading.Refuse(Body, "asOf", RunFaultCodes.DateInFuture, $"'asOf' lies in the future: today is {today:yyyy-MM-dd} in {zone.Id}.");
+            reading.Refuse(Body, "asOf", RunFaultCodes.DateInFuture, $"'asOf' is in the future: today is {today:yyyy-MM-dd} in {zone.Id}.");
         else if (date < EarliestDate)
             reading.Refuse(Body, "asOf", RunFaultCodes.OutOfRange, $"'asOf' lies before {EarliestDate:yyyy-MM-dd}.");
         else

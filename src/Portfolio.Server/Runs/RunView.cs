@@ -20,7 +20,9 @@ internal sealed class RunView(RunStore runs, RunProgress progress)
         var found = run != RunChoice.Latest ? await runs.FindAsync(caller, portfolio, run, cancellation)
             : asOf is { } date ? await runs.FindPointAsync(caller, portfolio, date, cancellation)
             : await runs.FindLatestAsync(caller, portfolio, cancellation);
-        return found ?? throw new RequestRefused(Problem.NotFound(run == RunChoice.Latest ? "No run stands for a date yet." : "There is no such run."));
+        return found
+            ?? throw new RequestRefused(Problem.NotFound(
+                run == RunChoice.Latest ? "No run stands for a date yet." : "There is no such run."));
     }
 
     public RunJson Of(StoredRun run, Caller caller) =>

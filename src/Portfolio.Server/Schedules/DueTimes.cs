@@ -4,8 +4,8 @@ using Portfolio.Server.Http;
 namespace Portfolio.Server.Schedules;
 
 /// <summary>
-/// When a schedule is due: at most once per local date, at the first time of the date that the cron expression names. A time that does not exist that day is due
-/// at the first instant after the gap, one that exists twice the first time.
+/// When a schedule is due: at most once per local date, at the first time of the date that the cron expression names. A time that does not
+/// exist that day is due at the first instant after the gap, one that exists twice the first time.
 /// </summary>
 /// <param name="cron">Five fields, <see cref="Parse"/>.</param>
 /// <param name="zone">The zone of local dates.</param>
@@ -19,7 +19,8 @@ internal sealed class DueTimes(CronExpression cron, TimeZoneInfo zone)
     /// <summary>The expression; null when it has not five fields that can be read, or names a time that never comes.</summary>
     public static CronExpression? Parse(string text)
     {
-        if (text.Split((char[])[' ', '\t'], StringSplitOptions.RemoveEmptyEntries).Length != Fields || !CronExpression.TryParse(text, CronFormat.Standard, out var cron))
+        var fields = text.Split((char[])[' ', '\t'], StringSplitOptions.RemoveEmptyEntries);
+        if (fields.Length != Fields || !CronExpression.TryParse(text, CronFormat.Standard, out var cron))
             return null;
         return cron.GetNextOccurrence(DateTime.UnixEpoch) is null ? null : cron;
     }
@@ -46,7 +47,10 @@ internal sealed class DueTimes(CronExpression cron, TimeZoneInfo zone)
         }
     }
 
-    /// <summary>What a sweep has to make: the latest date that has become due, unless it or a later one was made already. Earlier ones that were missed stay missing.</summary>
+    /// <summary>
+    /// What a sweep has to make: the latest date that has become due, unless it or a later one was made already. Earlier ones that were
+    /// missed stay missing.
+    /// </summary>
     /// <param name="since">When the schedule was set.</param>
     /// <param name="made">The latest due date that has its run.</param>
     public (DateOnly Date, DateTimeOffset At)? Latest(DateTimeOffset since, DateTimeOffset now, DateOnly? made)
@@ -56,7 +60,10 @@ internal sealed class DueTimes(CronExpression cron, TimeZoneInfo zone)
         return null;
     }
 
-    /// <summary>The first due instant after <paramref name="after"/> of a date later than <paramref name="beyond"/>; null when none comes within decades.</summary>
+    /// <summary>
+    /// The first due instant after <paramref name="after"/> of a date later than <paramref name="beyond"/>; null when none comes within
+    /// decades.
+    /// </summary>
     public DateTimeOffset? Next(DateTimeOffset after, DateOnly? beyond)
     {
         var date = LocalDates.Of(after, zone);

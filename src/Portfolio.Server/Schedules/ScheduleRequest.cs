@@ -16,10 +16,18 @@ internal sealed record ScheduleRequest(string Cron, int? Iterations, bool Enable
         var reading = new Reading();
         var cron = reading.Required(Body, "cron", sent.Cron);
         if (sent.Cron is not null && DueTimes.Parse(cron) is null)
-            reading.Refuse(Body, "cron", RunFaultCodes.CronFormat, "'cron' must be five fields (minute, hour, day of month, month, weekday) that name a time which comes, such as 30 2 * * *.");
+        {
+            reading.Refuse(
+                Body, "cron", RunFaultCodes.CronFormat,
+                "'cron' must be five fields (minute, hour, day of month, month, weekday) and name a time that comes: 30 2 * * *.");
+        }
         var iterations = (int?)reading.Whole(Body, "iterations", sent.Iterations, RunOrder.FewestIterations - 1, mostIterations + 1L);
         if (iterations < RunOrder.FewestIterations || iterations > mostIterations)
-            reading.Refuse(Body, "iterations", RunFaultCodes.OutOfRange, $"'iterations' must be from {RunOrder.FewestIterations} to {mostIterations}.");
+        {
+            reading.Refuse(
+                Body, "iterations", RunFaultCodes.OutOfRange,
+                $"'iterations' must be from {RunOrder.FewestIterations} to {mostIterations}.");
+        }
         return new ScheduleRequest(cron, iterations, sent.Enabled ?? true, reading.Faults);
     }
 }

@@ -26,7 +26,8 @@ public sealed class RunMeasures
     /// <summary>An attempt has ended.</summary>
     internal void Ended(StoredRun run, string outcome, TimeSpan took)
     {
-        KeyValuePair<string, object?>[] attributes = [new("outcome", outcome), new("trigger", run.Kind == RunKind.Nightly ? "schedule" : "request")];
+        var trigger = run.Kind == RunKind.Nightly ? "schedule" : "request";
+        KeyValuePair<string, object?>[] attributes = [new("outcome", outcome), new("trigger", trigger)];
         duration.Record(took.TotalSeconds, attributes);
         if (outcome != "succeeded")
             return;
@@ -38,12 +39,13 @@ public sealed class RunMeasures
 
     /// <summary>What a sweep has seen.</summary>
     /// <param name="queued">Runs that wait.</param>
-    /// <param name="lastGood">When the nightly run that is longest ago among the last good ones ended; null when nothing is scheduled or none has succeeded yet.</param>
+    /// <param name="lastGood">When the one longest ago of the last good nightly runs ended; null when there is none.</param>
     internal void Swept(int queued, DateTimeOffset? lastGood) => standing = new Standing(queued, lastGood);
 
     private IEnumerable<Measurement<int>> Queue() => standing is { } seen ? [new(seen.Queued)] : [];
 
-    private IEnumerable<Measurement<double>> Age() => standing is { LastGood: { } ended } ? [new((clock.GetUtcNow() - ended).TotalSeconds)] : [];
+    private IEnumerable<Measurement<double>> Age() =>
+        standing is { LastGood: { } ended } ? [new((clock.GetUtcNow() - ended).TotalSeconds)] : [];
 
     private sealed record Standing(int Queued, DateTimeOffset? LastGood);
 }

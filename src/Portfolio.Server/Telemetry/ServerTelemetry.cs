@@ -14,10 +14,13 @@ internal static class ServerTelemetry
     /// <summary>W3C trace context of what is going on here, to be kept with what it asks for; null when nothing is traced.</summary>
     public static string? TraceParent => Activity.Current?.Id;
 
-    /// <summary>The span of one attempt at a run: a trace of its own, linked to the request or the sweep that asked for it, which may be long over.</summary>
+    /// <summary>
+    /// The span of one attempt at a run: a trace of its own, linked to the request or the sweep that asked for it, which may be long over.
+    /// </summary>
     public static Activity? RunSpan(StoredRun run)
     {
-        ActivityLink[] links = ActivityContext.TryParse(run.TraceParent, null, isRemote: true, out var asked) ? [new ActivityLink(asked)] : [];
+        var known = ActivityContext.TryParse(run.TraceParent, null, isRemote: true, out var asked);
+        ActivityLink[] links = known ? [new ActivityLink(asked)] : [];
         // Whatever woke the worker is not what asked for the run.
         Activity.Current = null;
         return Spans.StartActivity(ActivityKind.Internal, name: "run", links: links)

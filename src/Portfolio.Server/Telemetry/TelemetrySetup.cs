@@ -19,6 +19,7 @@ internal static class TelemetrySetup
         services.AddOpenTelemetry()
             .ConfigureResource(resource => resource.AddService("portfolio"))
             .WithTracing(tracing => tracing.AddSource(ServerTelemetry.Name).AddAspNetCoreInstrumentation().AddOtlpExporter())
-            .WithMetrics(metrics => metrics.AddMeter(ServerTelemetry.Name).AddAspNetCoreInstrumentation().AddRuntimeInstrumentation().AddOtlpExporter());
+            .WithMetrics(metrics => metrics
+                .AddMeter(ServerTelemetry.Name).AddAspNetCoreInstrumentation().AddRuntimeInstrumentation().AddOtlpExporter());
     }
 }

@@ -5,8 +5,8 @@ namespace Portfolio.Server.Tests.Jobs;
 
 public sealed class KilledServerTests
 {
-    // Ten blocks.
-    private const string Run = """{"iterations":40960}""";
+    // Twenty blocks.
+    private const string Run = """{"iterations":81920}""";
 
     [Fact]
     public async Task KilledOrStoppedARunGoesOnAfterTheRestartAndGivesTheSameBits()
@@ -18,7 +18,7 @@ public sealed class KilledServerTests
             string killed, stopped;
             using (var first = await ServerProcess.StartAsync(directory.FullName))
             {
-                await first.Client.PutJsonAsync("/v1/portfolios/p/document", RunSamples.Uncertain(projects: 10, activities: 100));
+                await first.Client.PutJsonAsync("/v1/portfolios/p/document", RunSamples.Uncertain(projects: 10, activities: 30));
                 killed = await first.Client.RunAsync("p", Run);
                 await UntilSomeBlocksAreStoredAsync(first.Client, killed);
                 await first.KillAsync();
@@ -49,7 +49,7 @@ public sealed class KilledServerTests
     // Two threads work two blocks at a time at most beside those waiting to be stored.
     private static async Task UntilSomeBlocksAreStoredAsync(HttpClient client, string run)
     {
-        while (await client.ReadRunAsync("p", run) is var now && now.GetProperty("progress").GetDouble() < 0.4)
+        while (await client.ReadRunAsync("p", run) is var now && now.GetProperty("progress").GetDouble() < 0.2)
         {
             Assert.True(now.State() is "queued" or "running", now.ToString());
             await Task.Delay(20, TestContext.Current.CancellationToken);

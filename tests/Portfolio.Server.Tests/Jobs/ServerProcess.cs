@@ -24,7 +24,11 @@ internal sealed class ServerProcess : IDisposable
             RedirectStandardOutput = true,
             Environment =
             {
-                ["ASPNETCORE_URLS"] = address, ["Storage__Directory"] = directory, ["Security__BootstrapKey"] = PortfolioServer.AdminKey,
+                ["ASPNETCORE_URLS"] = address,
+                ["Storage__Directory"] = directory,
+                ["Security__BootstrapKey"] = PortfolioServer.AdminKey,
+                // However many processors there are: blocks come one after the other.
+                ["Engine__Threads"] = "1",
             },
         };
         var process = Process.Start(start)!;

@@ -21,7 +21,7 @@ public sealed record RunRequestJson
     /// <summary>The local date for which the run stands, not in the future. Left out: today.</summary>
     public string? AsOf { get; init; }
 
-    /// <summary>Whether it shall be a point of the series. Left out: true, but false when seed or iterations differ from the settings.</summary>
+    /// <summary>Whether it shall be a point of the series. Left out: true when seed and iterations are those of the settings.</summary>
     public bool? Recorded { get; init; }
 
     /// <summary>Id of the run that stands for the date and shall be replaced.</summary>

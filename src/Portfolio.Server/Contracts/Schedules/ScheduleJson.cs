@@ -6,7 +6,7 @@ namespace Portfolio.Server.Contracts.Schedules;
 /// <summary>When a portfolio is run by itself.</summary>
 public sealed record ScheduleJson
 {
-    /// <summary>Five fields (minute, hour, day of month, month, weekday) in the time zone of the settings; due at most once per local date.</summary>
+    /// <summary>Minute, hour, day of month, month, weekday, in the time zone of the settings; due at most once per local date.</summary>
     public string? Cron { get; init; }
 
     /// <summary>Whole number 10…1,000,000. Left out: that of the settings.</summary>
