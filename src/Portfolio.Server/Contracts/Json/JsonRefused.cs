@@ -42,7 +42,13 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
                 else if (walk.Token == JsonTokenType.PropertyName && !members.Peek().Add(walk.Pointer.ToString()))
                     return At(json, walk, FaultCodes.MemberDuplicate, "The member appears twice in this object.");
                 if (walk.Consumed >= stop)
-                    return AtStop(json, walk, type);
+                {
+                    var found = AtStop(json, walk, type);
+                    // Text cut short stops the serializer at its last good token as well: reading on then throws.
+                    if (json[(int)walk.Consumed..].Trim(" \t\r\n,"u8).IsEmpty)
+                        walk.Read();
+                    return found;
+                }
             }
         }
         catch (Exception malformed) when (malformed is JsonException or InvalidOperationException)
