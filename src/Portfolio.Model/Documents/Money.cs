@@ -20,7 +20,4 @@ public static class Money
 
     /// <summary>The amount in whole minor units, half away from zero.</summary>
     public static double ToMinor(double amount, double minorPerUnit) => Math.Round(amount * minorPerUnit, MidpointRounding.AwayFromZero);
-
-    /// <summary>An amount in whole minor units as money with the currency's digits.</summary>
-    public static decimal FromMinor(double minor, int digits) => new decimal(minor) / (decimal)Math.Pow(10, digits);
 }
