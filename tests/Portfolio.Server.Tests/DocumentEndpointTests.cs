@@ -70,8 +70,8 @@ public sealed class DocumentEndpointTests(ServerFixture fixture) : IClassFixture
         Assert.Equal(Samples.Document(days: 6), await (await admin.ReadAsync(address + "?asOf=2027-01-05")).TextAsync());
         await (await admin.ReadAsync(address + "?asOf=2027-01-03")).ProblemAsync(404, "not-found");
         await (await admin.ReadAsync(address + "?revision=3")).ProblemAsync(404, "not-found");
-        await (await admin.ReadAsync(address + "?revision=1&asOf=2027-01-04")).ProblemAsync(400, "bad-request");
-        await (await admin.ReadAsync(address + "?revision=one")).ProblemAsync(400, "bad-request");
+        await (await admin.ReadAsync(address + "?revision=1&asOf=2027-01-04")).ProblemAsync(422, "refused");
+        await (await admin.ReadAsync(address + "?revision=one")).ProblemAsync(422, "refused");
     }
 
     [Fact]
@@ -95,8 +95,8 @@ public sealed class DocumentEndpointTests(ServerFixture fixture) : IClassFixture
         var single = await (await client.ReadAsync(portfolio + "/revisions/2")).JsonAsync();
         Assert.Equal("2027-01-04T12:00:00Z", single.GetProperty("recordedAt").GetString());
         await (await client.ReadAsync(portfolio + "/revisions/9")).ProblemAsync(404, "not-found");
-        await (await client.ReadAsync(portfolio + "/revisions?limit=0")).ProblemAsync(400, "bad-request");
-        await (await client.ReadAsync(portfolio + "/revisions?cursor=x")).ProblemAsync(400, "bad-request");
+        await (await client.ReadAsync(portfolio + "/revisions?limit=0")).ProblemAsync(422, "refused");
+        await (await client.ReadAsync(portfolio + "/revisions?cursor=x")).ProblemAsync(422, "refused");
     }
 
     [Fact]
@@ -124,6 +124,6 @@ public sealed class DocumentEndpointTests(ServerFixture fixture) : IClassFixture
         await deleted.ProblemAsync(405, "method-not-allowed");
         Assert.Contains("GET", deleted.Content.Headers.Allow);
         await (await small.ReadAsync("/v1/nowhere")).ProblemAsync(404, "not-found");
-        await (await small.PutJsonAsync(address + "?note=" + new string('n', 501), Samples.Document())).ProblemAsync(400, "bad-request");
+        await (await small.PutJsonAsync(address + "?note=" + new string('n', 501), Samples.Document())).ProblemAsync(422, "refused");
     }
 }

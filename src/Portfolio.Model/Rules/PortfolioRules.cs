@@ -13,6 +13,10 @@ public sealed record PlacedOutline(ProjectOutline Outline, string? Path);
 /// </summary>
 public static class PortfolioRules
 {
+    /// <summary>The fault of a portfolio's own id; none when it is sound. The id stands in the address, so the path is "".</summary>
+    public static IEnumerable<Fault> CheckId(string portfolio) =>
+        TextRule.Id(portfolio, () => new Place("", "portfolio")) is { } fault ? [fault] : [];
+
     /// <param name="settings">Sent or stored.</param>
     /// <param name="settingsPath">Pointer of the settings in what was sent; null: they are stored.</param>
     /// <param name="projects">All projects, in document order.</param>

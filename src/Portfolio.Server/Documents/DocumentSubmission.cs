@@ -1,4 +1,5 @@
 using Portfolio.Model.Faults;
+using Portfolio.Model.Rules;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
 using Portfolio.Server.Http;
@@ -32,14 +33,15 @@ internal sealed class DocumentSubmission
     /// <summary>Entity tag of the document once it is stored.</summary>
     public string? Tag { get; }
 
-    public static DocumentSubmission Of(ReadOnlySpan<byte> json, DocumentReader reader, DocumentCheck check)
+    /// <param name="portfolio">The id in the address, judged with the rest.</param>
+    public static DocumentSubmission Of(string portfolio, ReadOnlySpan<byte> json, DocumentReader reader, DocumentCheck check)
     {
         try
         {
             var document = reader.ReadDocument(json);
-            return check.Check(document, json, out var faults) is null
-                ? new DocumentSubmission(Problem.Refused(faults))
-                : new DocumentSubmission(document);
+            check.Check(document, json, out var faults);
+            faults = [.. PortfolioRules.CheckId(portfolio), .. faults];
+            return faults.Count > 0 ? new DocumentSubmission(Problem.Refused(faults)) : new DocumentSubmission(document);
         }
         catch (JsonRefused refused)
         {

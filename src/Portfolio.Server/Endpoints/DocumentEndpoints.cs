@@ -19,7 +19,7 @@ internal static class DocumentEndpoints
     {
         var document = portfolio.MapGroup("/document").WithTags("Document");
         document.MapGet("", Get).WithName("getDocument").Needs(Right.Read)
-            .Produces<DocumentJson>().ReadsConditionally();
+            .Produces<DocumentJson>().ReadsConditionally().Refuses(422);
         document.MapPut("", Put).WithName("putDocument").Needs(Right.Manage)
             .Accepts<DocumentJson>("application/json")
             .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)
@@ -31,11 +31,14 @@ internal static class DocumentEndpoints
     /// <param name="asOf">The revision that was current at the end of this local date.</param>
     internal static async Task<IResult> Get(
         string portfolio, ClaimsPrincipal user, DocumentStore documents, RevisionOfDate revisions, HttpContext http,
-        CancellationToken cancellation, long? revision = null, DateOnly? asOf = null)
+        CancellationToken cancellation, long? revision = null, string? asOf = null)
     {
+        var faults = new QueryFaults();
         if (revision is not null && asOf is not null)
-            return Problem.BadRequest("Give 'revision' or 'asOf', not both.");
-        if (asOf is { } date && (revision = await revisions.FindAsync(user.Caller(), portfolio, date, cancellation)) is null)
+            faults.Add("asOf", "Give 'revision' or 'asOf', not both.");
+        var asked = faults.Date("asOf", asOf);
+        faults.Refuse();
+        if (asked is { } date && (revision = await revisions.FindAsync(user.Caller(), portfolio, date, cancellation)) is null)
             return Problem.NotFound("The portfolio had no revision at that date.");
         if (await documents.ReadHeadsAsync(user.Caller(), portfolio, revision, cancellation) is { } heads
             && EntityTags.OfDocument(heads) is var tag && new Preconditions(http.Request).HasAlready(tag))
@@ -55,7 +58,7 @@ internal static class DocumentEndpoints
         var conditions = new Preconditions(http.Request);
         DocumentSubmission submission;
         using (var body = await RequestBody.ReadAsync(http.Request, limits.Value.DocumentBody))
-            submission = DocumentSubmission.Of(body.Bytes, reader, check);
+            submission = DocumentSubmission.Of(portfolio, body.Bytes, reader, check);
         var result = await documents.WriteAsync(user.Caller(), write, (head, _) => submission.ReplaceAsync(head, conditions), cancellation);
         return Written.Answer(http, portfolio, result, submission.Tag);
     }

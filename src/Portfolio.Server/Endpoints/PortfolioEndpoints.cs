@@ -5,6 +5,7 @@ using Portfolio.Server.Access;
 using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Portfolios;
 using Portfolio.Server.Http;
+using Portfolio.Server.Problems;
 using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Endpoints;
@@ -14,7 +15,7 @@ internal static class PortfolioEndpoints
     public static void MapPortfolios(this IEndpointRouteBuilder api)
     {
         var portfolios = api.MapGroup("/portfolios").WithTags("Portfolios");
-        portfolios.MapGet("", List).WithName("listPortfolios");
+        portfolios.MapGet("", List).WithName("listPortfolios").Refuses(422);
     }
 
     /// <summary>Portfolios on which the key has any grant, by id.</summary>

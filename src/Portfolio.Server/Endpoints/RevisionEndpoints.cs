@@ -17,7 +17,7 @@ internal static class RevisionEndpoints
     public static void MapRevisions(this IEndpointRouteBuilder portfolio)
     {
         var revisions = portfolio.MapGroup("/revisions").WithTags("Revisions").Needs(Right.Read);
-        revisions.MapGet("", List).WithName("listRevisions");
+        revisions.MapGet("", List).WithName("listRevisions").Refuses(422);
         revisions.MapGet("/{number:long}", Get).WithName("getRevision").Produces<RevisionJson>();
     }
 

@@ -32,12 +32,10 @@ internal sealed class RunAnswer
 
     public static async Task<RunAnswer> FindAsync(RunQuery query, QueryFaults faults)
     {
-        var asOf = faults.Date("asOf", query.AsOf);
-        if (asOf is not null && query.Run != RunChoice.Latest)
-            faults.Add("asOf", "'asOf' goes with the run 'latest', not with a run's id.");
+        var asOf = RunChoice.AsOf(faults, query.Run, query.AsOf);
         var representation = Representation.Of(query.Http.Request, query.Format, faults);
         faults.Refuse();
-        var run = await query.Runs.ChooseAsync(query.Caller, query.Portfolio, query.Run, asOf, query.Cancellation);
+        var run = await query.Runs.WithResultsAsync(query.Caller, query.Portfolio, query.Run, asOf, query.Cancellation);
         return new(query.Http, run, query.Caller, representation);
     }
 

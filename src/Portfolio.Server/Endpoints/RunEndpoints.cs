@@ -10,6 +10,7 @@ using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.Problems;
+using Portfolio.Server.Results;
 using Portfolio.Server.Runs;
 using Portfolio.Store.Access;
 using Portfolio.Store.Runs;
@@ -24,8 +25,8 @@ internal static class RunEndpoints
         runs.MapPost("", Post).WithName("postRun").Needs(Right.Manage)
             .Accepts<RunRequestJson>(isOptional: true, "application/json")
             .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409, 413, 415, 422);
-        runs.MapGet("", List).WithName("listRuns").Needs(Right.Read);
-        runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read);
+        runs.MapGet("", List).WithName("listRuns").Needs(Right.Read).Refuses(422);
+        runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read).Refuses(422);
         runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read);
         runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage)
             .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409);
@@ -57,10 +58,13 @@ internal static class RunEndpoints
     /// <param name="run">An id, or latest: the point of the series with the greatest date.</param>
     /// <param name="asOf">With latest: the point of this date or of the nearest earlier one.</param>
     internal static async Task<Ok<RunJson>> Get(
-        string portfolio, string run, ClaimsPrincipal user, RunView view, HttpContext http, CancellationToken cancellation,
-        DateOnly? asOf = null)
+        string portfolio, string run, ClaimsPrincipal user, RunChoice runs, RunView view, HttpContext http, CancellationToken cancellation,
+        string? asOf = null)
     {
-        var found = await view.FindAsync(user.Caller(), portfolio, run, asOf, cancellation);
+        var faults = new QueryFaults();
+        var date = RunChoice.AsOf(faults, run, asOf);
+        faults.Refuse();
+        var found = await runs.FindAsync(user.Caller(), portfolio, run, date, cancellation);
         http.Response.Headers.ContentLocation = AddressOf(http, portfolio, found.Id);
         return TypedResults.Ok(view.Of(found, user.Caller()));
     }
@@ -68,9 +72,9 @@ internal static class RunEndpoints
     /// <summary>Progress as server-sent events: progress while it goes on, ended at last.</summary>
     /// <param name="run">An id, or latest.</param>
     internal static async Task<ServerSentEventsResult<RunProgressJson>> Follow(
-        string portfolio, string run, ClaimsPrincipal user, RunView view, RunStream stream, CancellationToken cancellation)
+        string portfolio, string run, ClaimsPrincipal user, RunChoice runs, RunStream stream, CancellationToken cancellation)
     {
-        var found = await view.FindAsync(user.Caller(), portfolio, run, null, cancellation);
+        var found = await runs.FindAsync(user.Caller(), portfolio, run, null, cancellation);
         return TypedResults.ServerSentEvents(stream.FollowAsync(user.Caller(), found, cancellation));
     }
 

@@ -1,5 +1,3 @@
-using Portfolio.Server.Problems;
-
 namespace Portfolio.Server.Http;
 
 /// <summary>The note that may come with any write and is kept with its revision.</summary>
@@ -10,5 +8,5 @@ internal static class Notes
     public static string? Checked(string? note) =>
         note is null || (note.Length <= Longest && !note.Any(char.IsControl))
             ? note
-            : throw new RequestRefused(Problem.BadRequest($"'note' may have {Longest} characters and no control characters."));
+            : throw QueryFaults.Of("note", $"'note' may have {Longest} characters and no control characters.");
 }

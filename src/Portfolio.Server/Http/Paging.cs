@@ -1,6 +1,5 @@
 using Microsoft.AspNetCore.Http.Extensions;
 using Portfolio.Server.Contracts;
-using Portfolio.Server.Problems;
 
 namespace Portfolio.Server.Http;
 
@@ -12,13 +11,13 @@ internal static class Paging
 
     /// <summary>What to ask the store for: one more than the page holds tells whether there is another.</summary>
     public static int WithOneMore(int limit) =>
-        limit is >= 1 and <= Most ? limit + 1 : throw new RequestRefused(Problem.BadRequest($"'limit' must be from 1 to {Most}."));
+        limit is >= 1 and <= Most ? limit + 1 : throw QueryFaults.Of("limit", $"'limit' must be a whole number from 1 to {Most}.");
 
     /// <summary>A cursor that is a number; null for the first page.</summary>
     public static long? Number(string? cursor) =>
         cursor is null ? null
         : long.TryParse(cursor, System.Globalization.CultureInfo.InvariantCulture, out var number) ? number
-        : throw new RequestRefused(Problem.BadRequest("'cursor' is not one that this list gave."));
+        : throw QueryFaults.Of("cursor", "'cursor' is not one that this list gave.");
 
     /// <summary>The page, with its link to the next.</summary>
     /// <param name="found">Up to one more than <paramref name="limit"/>.</param>

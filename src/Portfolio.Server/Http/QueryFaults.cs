@@ -11,6 +11,14 @@ internal sealed class QueryFaults
 
     public void Add(string parameter, string message) => faults.Add(new("", parameter, FaultCodes.ParameterInvalid, message));
 
+    /// <summary>The refusal of one parameter.</summary>
+    public static RequestRefused Of(string parameter, string message)
+    {
+        var faults = new QueryFaults();
+        faults.Add(parameter, message);
+        return faults.ToException();
+    }
+
     public DateOnly? Date(string parameter, string? text)
     {
         if (text is null) return null;

@@ -1,5 +1,7 @@
+using System.Text.RegularExpressions;
 using Microsoft.AspNetCore.Diagnostics;
 using Portfolio.Server.Contracts.Json;
+using Portfolio.Server.Http;
 
 namespace Portfolio.Server.Problems;
 
@@ -15,12 +17,18 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
             RequestRefused refused => refused.Problem,
             JsonRefused refused => Problem.Malformed(refused),
             BadHttpRequestException { StatusCode: 413 } => new Problem(413, "too-large", "The body is too large"),
+            BadHttpRequestException unread when Unread().Match(unread.Message) is { Success: true } match =>
+                QueryFaults.Of(match.Groups["name"].Value, $"'{match.Groups["name"].Value}' cannot be read.").Problem,
             BadHttpRequestException => Problem.BadRequest("A parameter of the address or a header cannot be read."),
             _ => Unforeseen(exception),
         };
         await problem.ExecuteAsync(context);
         return true;
     }
+
+    // The only place where the framework tells which parameter of the query it could not read.
+    [GeneratedRegex("^Failed to bind parameter \"\\S+ (?<name>\\w+)\" from ")]
+    private static partial Regex Unread();
 
     private Problem Unforeseen(Exception exception)
     {

@@ -45,7 +45,7 @@ internal sealed class Problem(int status, string slug, string title, string? det
     /// <summary>Readable, but wrong (422).</summary>
     public static Problem Refused(IReadOnlyList<Fault> faults) => new(
         422, "refused", "The content is refused",
-        faults.Count == 1 ? faults[0].Message : $"{faults.Count} faults were found; nothing was stored.")
+        faults.Count == 1 ? faults[0].Message : $"{faults.Count} faults were found; 'errors' names them.")
     {
         Faults = [.. faults.Select(FaultJson.From)],
     };

@@ -39,12 +39,8 @@ internal sealed class OutcomesReading(ResultStore results, ScopeIterations itera
             ? GridBytes.FromBytes(row.Bytes)
             : null;
 
-    private static RequestRefused TooMany(int most)
-    {
-        var faults = new QueryFaults();
-        faults.Add("bin", $"The finishes spread over more than {most} bins: ask for wider ones.");
-        return faults.ToException();
-    }
+    private static RequestRefused TooMany(int most) =>
+        QueryFaults.Of("bin", $"The finishes spread over more than {most} bins: ask for wider ones.");
 
     private static BinJson Bin<T>(Bin<T> bin, Func<T, DateOrMoney> end) =>
         new(end(bin.From), end(bin.To), bin.Count, bin.Share, bin.Cumulative);

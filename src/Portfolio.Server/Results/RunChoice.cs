@@ -1,23 +1,40 @@
+using Portfolio.Server.Http;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
 using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Results;
 
-/// <summary>Finds the run that a request means and has results.</summary>
+/// <summary>Finds the run that a request means: by its id, or as the point of the series.</summary>
 internal sealed class RunChoice(RunStore runs)
 {
     public const string Latest = "latest";
 
+    /// <summary>Reads the date that may go with <see cref="Latest"/>.</summary>
+    public static DateOnly? AsOf(QueryFaults faults, string run, string? asOf)
+    {
+        if (asOf is not null && run != Latest)
+            faults.Add("asOf", "'asOf' goes with the run 'latest', not with a run's id.");
+        return faults.Date("asOf", asOf);
+    }
+
     /// <param name="run">An id, or <see cref="Latest"/>.</param>
     /// <param name="asOf">With <see cref="Latest"/>: the point of this date or of the nearest earlier one.</param>
-    /// <exception cref="RequestRefused">404 when there is none, 409 when it has no results.</exception>
-    public async Task<StoredRun> ChooseAsync(Caller caller, string portfolio, string run, DateOnly? asOf, CancellationToken cancellation)
+    /// <exception cref="RequestRefused">There is none for this caller (404).</exception>
+    public async Task<StoredRun> FindAsync(Caller caller, string portfolio, string run, DateOnly? asOf, CancellationToken cancellation)
     {
         var found = run != Latest ? await runs.FindAsync(caller, portfolio, run, cancellation)
             : asOf is { } date ? await runs.FindPointAsync(caller, portfolio, date, cancellation)
             : await runs.FindLatestAsync(caller, portfolio, cancellation);
-        if (found is null) throw new RequestRefused(Problem.NotFound(Missing(run, asOf)));
+        return found ?? throw new RequestRefused(Problem.NotFound(Missing(run, asOf)));
+    }
+
+    /// <summary>The same, of runs that have results.</summary>
+    /// <exception cref="RequestRefused">404 when there is none, 409 when it has no results.</exception>
+    public async Task<StoredRun> WithResultsAsync(
+        Caller caller, string portfolio, string run, DateOnly? asOf, CancellationToken cancellation)
+    {
+        var found = await FindAsync(caller, portfolio, run, asOf, cancellation);
         if (found.State != RunState.Succeeded)
             throw new RequestRefused(Problem.Conflict("run-without-results", "The run has no results", Why(found)));
         return found;

@@ -49,10 +49,6 @@ internal sealed class SeriesReading(ResultStore results, ContingencyReading cont
         return PointFigures.OfParts(json, contingency, parts, digits);
     }
 
-    private static RequestRefused NotKept(Level level)
-    {
-        var faults = new QueryFaults();
-        faults.Add("level", $"No run keeps level {level} for ever: 0.5, 1 to 99, 99.5 and the configured levels make series.");
-        return faults.ToException();
-    }
+    private static RequestRefused NotKept(Level level) =>
+        QueryFaults.Of("level", $"No run keeps level {level} for ever: 0.5, 1 to 99, 99.5 and the configured levels make series.");
 }

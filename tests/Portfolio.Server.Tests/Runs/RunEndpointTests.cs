@@ -96,6 +96,8 @@ public sealed class RunEndpointTests(ServerFixture fixture) : IClassFixture<Serv
 
     [Theory]
     [InlineData("{ nothing }", "json.malformed")]
+    [InlineData("{", "json.malformed")]
+    [InlineData("{\"iterations\":", "json.malformed")]
     [InlineData("""{"iteration":10}""", "member.unknown")]
     [InlineData("""{"seed":1,"seed":1}""", "member.duplicate")]
     [InlineData("""{"seed":"1"}""", "member.kind")]

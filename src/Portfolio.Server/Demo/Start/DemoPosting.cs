@@ -1,4 +1,5 @@
 using System.Globalization;
+using System.Runtime.CompilerServices;
 using System.Text.Json;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Documents;
@@ -46,12 +47,12 @@ internal sealed class DemoPosting(
     public Task<IReadOnlyList<StoredRun>> PointsAsync(DateOnly firstWeek, CancellationToken cancellation) => SundaysAsync(
         firstWeek, firstWeek.AddDays(7 * (DemoHistory.Length - 1)), cancellation);
 
-    /// <summary>The run that stands for each week or is on its way to; weeks in order.</summary>
-    public async Task<IReadOnlyList<StoredRun>> PostAsync(IReadOnlyList<DemoWeek> weeks, Action queued, CancellationToken cancellation)
+    /// <summary>The run that stands for each week or is on its way to, as each is posted; weeks in order.</summary>
+    public async IAsyncEnumerable<StoredRun> PostAsync(
+        IReadOnlyList<DemoWeek> weeks, Action queued, [EnumeratorCancellation] CancellationToken cancellation)
     {
         var points = (await SundaysAsync(weeks[0].AsOf, weeks[^1].AsOf, cancellation)).ToDictionary(run => run.AsOf);
         var revisions = await RevisionsAsync(cancellation);
-        var all = new List<StoredRun>(weeks.Count);
         foreach (var week in weeks)
         {
             if (!points.TryGetValue(week.AsOf, out var run))
@@ -60,11 +61,10 @@ internal sealed class DemoPosting(
                 run = await QueueAsync(week, revision, cancellation);
                 queued();
             }
-            all.Add(run);
+            yield return run;
         }
         if (await schedules.FindAsync(Office, Id, cancellation) is null)
             await schedules.PutAsync(Office, Id, Nightly, iterations: null, enabled: false, cancellation);
-        return all;
     }
 
     /// <summary>Points that are Sundays: somebody may have run days in between.</summary>
@@ -84,7 +84,7 @@ internal sealed class DemoPosting(
     private async Task<long> WriteAsync(DemoWeek week, CancellationToken cancellation)
     {
         var json = JsonSerializer.SerializeToUtf8Bytes(week.Document, DocumentContext.Strict(MaxDepth).DocumentJson);
-        var submission = DocumentSubmission.Of(json, reader, check);
+        var submission = DocumentSubmission.Of(Id, json, reader, check);
         var write = new DocumentWrite { Portfolio = Id, Note = Mark(week.Number) + week.Note, Action = "document.put" };
         var result = await documents.WriteAsync(Office, write, (head, _) => submission.ReplaceAsync(head, Whatever(head)), cancellation);
         return result.Outcome is WriteOutcome.Accepted or WriteOutcome.Unchanged

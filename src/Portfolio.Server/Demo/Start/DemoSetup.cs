@@ -17,6 +17,8 @@ internal static class DemoSetup
     {
         if (!arguments.Contains(Argument, StringComparer.Ordinal))
             return;
+        // The table is for whoever sits at the console; logs stay out of it unless they are asked for (Logging:LogLevel).
+        services.Configure<LoggerFilterOptions>(filter => filter.MinLevel = LogLevel.Warning);
         services.AddSingleton<DemoPosting>();
         services.AddHostedService(provider => new DemoStart(
             provider.GetRequiredService<DemoPosting>(),

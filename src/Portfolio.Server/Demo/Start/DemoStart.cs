@@ -50,26 +50,38 @@ internal sealed class DemoStart(
         var today = first is { } week ? DemoHistory.DayAfter(week) : DateOnly.FromDateTime(clock.GetUtcNow().UtcDateTime);
         var weeks = DemoHistory.Weeks(today);
         await console.WriteLineAsync($"Demo portfolio '{DemoPosting.Id}': posting {weeks.Count} weeks and running each.");
-        var runsOfWeeks = await posting.PostAsync(weeks, wake, cancellation);
-        foreach (var (each, run) in weeks.Zip(runsOfWeeks).Where(pair => pair.Second.State != RunState.Succeeded))
+        var runsOfWeeks = new List<StoredRun>(weeks.Count);
+        var told = 0;
+        await foreach (var run in posting.PostAsync(weeks, wake, cancellation))
         {
-            await FinishedAsync(each, run, cancellation);
-            await console.WriteLineAsync($"week {each.Number,2} of {weeks.Count}  {each.AsOf:yyyy-MM-dd}  {each.Note}");
+            runsOfWeeks.Add(run);
+            // While later weeks are still being posted, those that are done already are told.
+            while (told < runsOfWeeks.Count && await IsDoneAsync(weeks[told], runsOfWeeks[told], cancellation))
+                await TellAsync(weeks[told], runsOfWeeks[told++]);
+        }
+        for (; told < weeks.Count; told++)
+        {
+            while (!await IsDoneAsync(weeks[told], runsOfWeeks[told], cancellation))
+                await Task.Delay(BetweenLooks, clock, cancellation);
+            await TellAsync(weeks[told], runsOfWeeks[told]);
         }
         return runsOfWeeks;
     }
 
-    private async Task FinishedAsync(DemoWeek week, StoredRun queued, CancellationToken cancellation)
+    // What an earlier start has finished is not told again.
+    private Task TellAsync(DemoWeek week, StoredRun posted) => posted.State == RunState.Succeeded
+        ? Task.CompletedTask
+        : console.WriteLineAsync($"week {week.Number,2} of {DemoHistory.Length}  {week.AsOf:yyyy-MM-dd}  {week.Note}");
+
+    private async Task<bool> IsDoneAsync(DemoWeek week, StoredRun posted, CancellationToken cancellation)
     {
-        while (true)
+        var run = await runs.FindAsync(Caller.System, DemoPosting.Id, posted.Id, cancellation);
+        return run?.State switch
         {
-            var run = await runs.FindAsync(Caller.System, DemoPosting.Id, queued.Id, cancellation);
-            if (run?.State == RunState.Succeeded)
-                return;
-            if (run?.State is not (RunState.Queued or RunState.Running))
-                throw new InvalidOperationException($"the run of week {week.Number} ended as {run?.State}. {run?.Error}");
-            await Task.Delay(BetweenLooks, clock, cancellation);
-        }
+            RunState.Succeeded => true,
+            RunState.Queued or RunState.Running => false,
+            _ => throw new InvalidOperationException($"the run of week {week.Number} ended as {run?.State}. {run?.Error}"),
+        };
     }
 
     private async Task<IReadOnlyList<ResultJson>> RowsAsync(StoredRun run, CancellationToken cancellation) =>
