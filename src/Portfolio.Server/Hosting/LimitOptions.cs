@@ -10,12 +10,15 @@ public sealed class LimitOptions
 
     private const int MiB = 1024 * 1024;
 
+    /// <summary>More than any setting allows.</summary>
+    public const int LargestBody = 1024 * MiB;
+
     /// <summary>Bytes of a whole document.</summary>
-    [Range(1024, 1024 * MiB)]
+    [Range(1024, LargestBody)]
     public int DocumentBody { get; set; } = 64 * MiB;
 
     /// <summary>Bytes of any other body.</summary>
-    [Range(1024, 1024 * MiB)]
+    [Range(1024, LargestBody)]
     public int Body { get; set; } = 8 * MiB;
 
     [Range(13, 64)]

@@ -1,8 +1,9 @@
+using Microsoft.Extensions.Options;
 using Portfolio.Store;
 
 namespace Portfolio.Server.Hosting;
 
-/// <summary>Runs the server until it is told to stop; why the storage cannot be used is said in one line, not as a crash.</summary>
+/// <summary>Runs the server until it is told to stop; why it cannot start is said in one line, not as a crash.</summary>
 internal static class Starting
 {
     private const int CannotStart = 1;
@@ -11,13 +12,34 @@ internal static class Starting
     {
         try
         {
+            Prepare(app.Services);
             await app.RunAsync();
             return 0;
         }
-        catch (Exception refused) when (refused is StoreInUseException or StoreSchemaException)
+        catch (Exception refused) when (Why(refused) is { } line)
         {
-            await Console.Error.WriteLineAsync(refused.Message);
+            await Console.Error.WriteLineAsync(line);
             return CannotStart;
         }
     }
+
+    /// <summary>
+    /// Checks the settings and makes the services that start with the process, which opens the storage: what fails here the host would
+    /// log as a crash.
+    /// </summary>
+    private static void Prepare(IServiceProvider services)
+    {
+        services.GetService<IStartupValidator>()?.Validate();
+        _ = services.GetServices<IHostedService>();
+    }
+
+    private static string? Why(Exception refused) => refused switch
+    {
+        OptionsValidationException settings => string.Join(' ', settings.Failures),
+        // A value that is no number, say; the binder wraps what the converter threw.
+        InvalidOperationException { InnerException: FormatException or ArgumentException } => refused.Message,
+        // A folder that cannot be used, an address that is taken.
+        StoreSchemaException or IOException or UnauthorizedAccessException => refused.Message,
+        _ => null,
+    };
 }

@@ -1,5 +1,3 @@
-using Microsoft.AspNetCore.Server.Kestrel.Core;
-
 namespace Portfolio.Server.Hosting;
 
 /// <summary>Where the server listens and what it accepts before any handler sees it; and how it logs.</summary>
@@ -12,11 +10,11 @@ internal static class WebServerSetup
         var configuration = builder.Configuration;
         if (configuration["urls"] is null && configuration["http_ports"] is null && configuration["https_ports"] is null)
             builder.WebHost.UseUrls(DefaultUrl);
-        builder.Services.AddOptions<KestrelServerOptions>().Configure<Microsoft.Extensions.Options.IOptions<LimitOptions>>((kestrel, limits) =>
+        builder.WebHost.ConfigureKestrel(kestrel =>
         {
             kestrel.AddServerHeader = false;
             // Handlers hold bodies to their own, smaller limits; this one stops what no handler would take.
-            kestrel.Limits.MaxRequestBodySize = limits.Value.DocumentBody;
+            kestrel.Limits.MaxRequestBodySize = LimitOptions.LargestBody;
             kestrel.Limits.MaxConcurrentConnections = 10_000;
             kestrel.Limits.MaxRequestHeadersTotalSize = 16 * 1024;
         });

@@ -16,12 +16,19 @@ internal sealed class SqliteFolder : IDisposable
         this.hold = hold;
         connectionString = new SqliteConnectionStringBuilder
         {
-            DataSource = Path.Combine(directory, "portfolio.db"),
+            DataSource = Path.Combine(directory, FileName),
             ForeignKeys = true,
             Pooling = false,
             DefaultTimeout = 30,
         }.ToString();
     }
+
+    private const string FileName = "portfolio.db";
+
+    // What the systems say of a file that another process has locked: EWOULDBLOCK, ERROR_SHARING_VIOLATION.
+    private const int WouldBlock = 11;
+    private const int WouldBlockOnMac = 35;
+    private const int SharingViolation = unchecked((int)0x80070020);
 
     public static SqliteFolder Take(string directory)
     {
@@ -32,6 +39,11 @@ internal sealed class SqliteFolder : IDisposable
             var folder = new SqliteFolder(directory, hold);
             folder.CheckVersion();
             return folder;
+        }
+        catch (SqliteException unusable)
+        {
+            hold.Dispose();
+            throw new StoreDamagedException($"'{Path.Combine(directory, FileName)}' cannot be used: {unusable.Message}");
         }
         catch
         {
@@ -101,7 +113,7 @@ internal sealed class SqliteFolder : IDisposable
         {
             return new FileStream(Path.Combine(directory, "portfolio.lock"), FileMode.OpenOrCreate, FileAccess.ReadWrite, FileShare.None);
         }
-        catch (IOException taken)
+        catch (IOException taken) when (taken.HResult is WouldBlock or WouldBlockOnMac or SharingViolation)
         {
             throw new StoreInUseException(directory, taken);
         }
