@@ -28,6 +28,21 @@ public sealed class ApiDescriptionTests(ServerFixture fixture) : IClassFixture<S
     }
 
     [Fact]
+    public async Task WhatTheDescriptionSaysOfItselfIsComplete()
+    {
+        var document = await (await fixture.Server.Client(key: null).ReadAsync("/openapi.json")).JsonAsync();
+        Assert.Equal("/", Assert.Single(document.GetProperty("servers").EnumerateArray()).GetProperty("url").GetString());
+        Assert.Equal("MIT", document.GetProperty("info").GetProperty("license").GetProperty("identifier").GetString());
+        Assert.All(document.GetProperty("tags").EnumerateArray(), tag => Assert.True(tag.TryGetProperty("description", out _), tag.ToString()));
+        var dates = document.GetProperty("paths").EnumerateObject().SelectMany(path => path.Value.EnumerateObject())
+            .Where(operation => operation.Value.TryGetProperty("parameters", out _))
+            .SelectMany(operation => operation.Value.GetProperty("parameters").EnumerateArray())
+            .Where(parameter => parameter.GetProperty("name").GetString() is "asOf" or "from" or "to").ToList();
+        Assert.NotEmpty(dates);
+        Assert.All(dates, date => Assert.Equal("date", date.GetProperty("schema").GetProperty("format").GetString()));
+    }
+
+    [Fact]
     public async Task RequestsAreClosedAndAnswersOpen()
     {
         var schemas = (await (await fixture.Server.Client(key: null).ReadAsync("/openapi.json")).JsonAsync()).GetProperty("components").GetProperty("schemas");

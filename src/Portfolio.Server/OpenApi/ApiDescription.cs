@@ -28,6 +28,7 @@ internal static class ApiDescription
             description.CreateSchemaReferenceId = SchemaNames.Of;
             description.AddDocumentTransformer(DescribeApi.Apply);
             description.AddOperationTransformer(DescribeCsv.Apply);
+            description.AddOperationTransformer(DescribeDates.Apply);
             description.AddSchemaTransformer(DescribeTypes.Apply);
             description.AddDocumentTransformer(OpenAnswers.Apply);
         });

@@ -6,6 +6,16 @@ namespace Portfolio.Server.OpenApi;
 /// <summary>What the description says about the API as a whole: its name and how keys are presented.</summary>
 internal static class DescribeApi
 {
+    private static readonly Dictionary<string, string> Tags = new(StringComparer.Ordinal)
+    {
+        ["Portfolios"] = "What there is for a key to see.",
+        ["Document"] = "Settings and projects as the office states them, whole.",
+        ["Revisions"] = "Every accepted write that changed something.",
+        ["Runs"] = "Simulations of one revision, asked for or scheduled.",
+        ["Schedule"] = "When the portfolio is run by itself.",
+        ["Results"] = "Dates, costs and contingency of a run, and how they moved from run to run.",
+    };
+
     public static Task Apply(OpenApiDocument document, OpenApiDocumentTransformerContext context, CancellationToken cancellation)
     {
         document.Info = new OpenApiInfo
@@ -13,9 +23,12 @@ internal static class DescribeApi
             Title = "Portfolio",
             Version = "1",
             Description = "Portfolio-level risk aggregation: finish dates, costs and contingency of many projects at stated confidence.",
+            License = new OpenApiLicense { Name = "MIT License", Identifier = "MIT" },
         };
         // The address is the reader's; a generated one would differ from machine to machine.
-        document.Servers = [];
+        document.Servers = [new OpenApiServer { Url = "/" }];
+        foreach (var tag in document.Tags ?? new HashSet<OpenApiTag>())
+            tag.Description = Tags.GetValueOrDefault(tag.Name ?? "");
         document.Components ??= new OpenApiComponents();
         document.Components.SecuritySchemes = new Dictionary<string, IOpenApiSecurityScheme>
         {
