@@ -24,12 +24,12 @@ internal static class DocumentBenchmark
         var (plan, compileSeconds) = Timed(() => Plan.Compile(portfolio));
         var activities = portfolio.Document.Projects.Sum(p => p.Activities.Count);
         var draws = DrawsPerIteration(portfolio.Document);
-        var seconds = Median(() => Simulate(plan, iterations, threads));
+        var (seconds, cpu) = Median(() => Simulate(plan, iterations, threads));
         var peak = Process.GetCurrentProcess().PeakWorkingSet64;
-        var drawing = Median(() => Draw(draws, iterations, threads));
+        var (drawing, drawingCpu) = Median(() => Draw(draws, iterations, threads));
         var figures = new Figures(
             activities, iterations, threads, seconds, activities * (double)iterations / seconds, readSeconds, compileSeconds,
-            peak / (1024.0 * 1024), draws, drawing, seconds / drawing);
+            peak / (1024.0 * 1024), draws, drawing, seconds / drawing, cpu, cpu / drawingCpu);
         Print(figures, args.Contains("--json"));
         return 0;
     }
@@ -60,19 +60,24 @@ internal static class DocumentBenchmark
         });
     }
 
+    // On threads like those of a run, so that both get the same share of a busy machine.
     internal static void Parallel(int threads, Action<int> work)
     {
-        var started = Enumerable.Range(0, threads).Select(t => new Thread(() => work(t))).ToArray();
-        foreach (var thread in started)
-            thread.Start();
-        foreach (var thread in started)
-            thread.Join();
+        var next = -1;
+        EngineThreads.Work(threads, _ => work(Interlocked.Increment(ref next)), CancellationToken.None);
     }
 
-    internal static double Median(Action work)
+    /// <summary>Seconds on the clock and of processor time (which a busy machine disturbs less), each the median of several after a warm-up.</summary>
+    internal static (double Seconds, double Cpu) Median(Action work)
     {
         work();
-        return Enumerable.Range(0, Repeats).Select(_ => Timed(() => { work(); return 0; }).Seconds).Order().ElementAt(Repeats / 2);
+        var runs = Enumerable.Range(0, Repeats).Select(_ =>
+        {
+            var before = Process.GetCurrentProcess().TotalProcessorTime;
+            var (_, seconds) = Timed(() => { work(); return 0; });
+            return (Seconds: seconds, Cpu: (Process.GetCurrentProcess().TotalProcessorTime - before).TotalSeconds);
+        }).ToArray();
+        return (runs.Select(r => r.Seconds).Order().ElementAt(Repeats / 2), runs.Select(r => r.Cpu).Order().ElementAt(Repeats / 2));
     }
 
     private static (T Value, double Seconds) Timed<T>(Func<T> work)
@@ -104,10 +109,12 @@ internal static class DocumentBenchmark
             seconds {f.Seconds:0.000} (median of {Repeats}), {f.ActivitySamplesPerSecond / 1e6:0.0} million activity samples per second
             read and check {f.ReadSeconds:0.000} s, compile {f.CompileSeconds:0.000} s, peak memory {f.PeakMebibytes:0} MiB
             drawing alone ({f.ScoresPerIteration} scores per iteration) {f.DrawingSeconds:0.000} s: the run takes {f.TimesDrawing:0.00} times as long
+            processor time {f.CpuSeconds:0.000} s, {f.TimesDrawingCpu:0.00} times that of drawing
             """));
     }
 
     private sealed record Figures(
         int Activities, int Iterations, int Threads, double Seconds, double ActivitySamplesPerSecond, double ReadSeconds, double CompileSeconds,
-        double PeakMebibytes, int ScoresPerIteration, double DrawingSeconds, double TimesDrawing);
+        double PeakMebibytes, int ScoresPerIteration, double DrawingSeconds, double TimesDrawing,
+        double CpuSeconds, double TimesDrawingCpu);
 }

@@ -56,7 +56,8 @@ internal static class ScorePieces
             var interval = (int)place;
             place -= interval;
             ref var piece = ref Unsafe.Add(ref table, 4 * interval);
-            var value = piece + place * (Unsafe.Add(ref piece, 1) + place * (Unsafe.Add(ref piece, 2) + place * Unsafe.Add(ref piece, 3)));
+            var value = Math.FusedMultiplyAdd(Unsafe.Add(ref piece, 3), place, Unsafe.Add(ref piece, 2));
+            value = Math.FusedMultiplyAdd(Math.FusedMultiplyAdd(value, place, Unsafe.Add(ref piece, 1)), place, piece);
             values[i] = double.MinNative(double.MaxNative(value, least), greatest);
         }
     }

@@ -11,8 +11,9 @@ internal interface IWideFunction
 }
 
 /// <summary>
-/// Applies functions to spans. Only +, −, ×, ÷, √ and bit operations are used and never fused, so that the results have the same bits at
-/// every vector width and in whichever lane a number stands; where 512-bit registers are absent the runtime splits them.
+/// Applies functions to spans. Only +, −, ×, ÷, √, bit operations and the fused multiply-add of IEEE 754 are used, all of which round once
+/// and correctly, so that the results have the same bits at every vector width and in whichever lane a number stands; where 512-bit registers
+/// or the fused operation are absent the runtime splits or emulates them.
 /// </summary>
 internal static class Wide
 {
@@ -45,12 +46,12 @@ internal static class Wide
         var i = 0;
         for (; i + Lanes <= x.Length; i += Lanes)
         {
-            var sum = Vector512.LoadUnsafe(ref target, (nuint)i) + Vector512.Create(factor) * Vector512.LoadUnsafe(ref source, (nuint)i);
+            var sum = Fused(Vector512.Create(factor), Vector512.LoadUnsafe(ref source, (nuint)i), Vector512.LoadUnsafe(ref target, (nuint)i));
             sum.StoreUnsafe(ref target, (nuint)i);
         }
 
         for (; i < x.Length; i++)
-            y[i] += factor * x[i];
+            y[i] = Math.FusedMultiplyAdd(factor, x[i], y[i]);
     }
 
     private static void MapRest<TFunction>(TFunction function, ReadOnlySpan<double> x, Span<double> y)
@@ -75,18 +76,22 @@ internal static class Wide
         var i = (coefficients.Length - 1) % 4 + 1;
         var sum = Vector512.Create(c);
         if (i > 1)
-            sum = sum * x + Vector512.Create(Unsafe.Add(ref c, 1));
+            sum = Fused(sum, x, Vector512.Create(Unsafe.Add(ref c, 1)));
         if (i == 3)
-            sum = sum * x + Vector512.Create(Unsafe.Add(ref c, 2));
+            sum = Fused(sum, x, Vector512.Create(Unsafe.Add(ref c, 2)));
         if (i == 4)
-            sum = sum * x2 + (Vector512.Create(Unsafe.Add(ref c, 2)) * x + Vector512.Create(Unsafe.Add(ref c, 3)));
+            sum = Fused(sum, x2, Fused(Vector512.Create(Unsafe.Add(ref c, 2)), x, Vector512.Create(Unsafe.Add(ref c, 3))));
         for (; i < coefficients.Length; i += 4)
         {
-            var upper = Vector512.Create(Unsafe.Add(ref c, i)) * x + Vector512.Create(Unsafe.Add(ref c, i + 1));
-            var lower = Vector512.Create(Unsafe.Add(ref c, i + 2)) * x + Vector512.Create(Unsafe.Add(ref c, i + 3));
-            sum = sum * x4 + (upper * x2 + lower);
+            var upper = Fused(Vector512.Create(Unsafe.Add(ref c, i)), x, Vector512.Create(Unsafe.Add(ref c, i + 1)));
+            var lower = Fused(Vector512.Create(Unsafe.Add(ref c, i + 2)), x, Vector512.Create(Unsafe.Add(ref c, i + 3)));
+            sum = Fused(sum, x4, Fused(upper, x2, lower));
         }
 
         return sum;
     }
+
+    /// <summary>x·y + z rounded once.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector512<double> Fused(Vector512<double> x, Vector512<double> y, Vector512<double> z) => Vector512.FusedMultiplyAdd(x, y, z);
 }

@@ -5,8 +5,9 @@ namespace Portfolio.Engine.Runs;
 /// <summary>One run of a plan: chunks of iterations are taken by threads as they come free; each writes its own slots of its block.</summary>
 internal sealed class PlanRun
 {
-    private const int LargestChunk = 256;
-    private const int RowBytes = 8 << 20; // most that the schedule rows of a thread should take
+    private const int LargestChunk = 1024, SmallestChunk = 32;
+    private const int ChunksPerThread = 4;  // so that threads end together
+    private const int RowBytes = 1 << 20;   // most that the schedule rows of a thread should take: about its share of the cache
 
     private readonly Plan _plan;
     private readonly ulong _seed;
@@ -27,7 +28,7 @@ internal sealed class PlanRun
         if (first % BlockSamples.Size != 0)
             throw new ArgumentOutOfRangeException(nameof(first), "A run begins at a block.");
         (_plan, _seed, _first, _count, _options, _sink) = (plan, seed, first, count, options, sink);
-        _chunk = ChunkSize(plan.Layout.Rows);
+        _chunk = ChunkSize(plan.Layout.Rows, count, options.Threads);
         var blocks = (count + BlockSamples.Size - 1) / BlockSamples.Size;
         _blocks = new BlockSamples?[blocks];
         _left = [.. Enumerable.Range(0, blocks).Select(InBlock)];
@@ -36,11 +37,11 @@ internal sealed class PlanRun
     public void Work(CancellationToken cancellation) =>
         EngineThreads.Work(Math.Max(1, Math.Min(_options.Threads, (_count + _chunk - 1) / _chunk)), stop => WorkChunks(stop), cancellation);
 
-    // A power of two that divides a block, so that the rows stay near the cache.
-    private static int ChunkSize(int rows)
+    // A power of two that divides a block: long enough that what is made per row and chunk is made seldom, short enough for the cache.
+    private static int ChunkSize(int rows, int count, int threads)
     {
         var size = LargestChunk;
-        while (size > 32 && (long)size * rows * sizeof(int) > RowBytes)
+        while (size > SmallestChunk && ((long)size * rows * sizeof(int) > RowBytes || (long)size * threads * ChunksPerThread > count))
             size /= 2;
         return size;
     }
