@@ -41,10 +41,10 @@ internal sealed class InOrderDispatcher : Dispatcher
         _known[local] = int.MinValue;
         foreach (ref readonly var link in Pools.LinksOf(local))
             _known[local] = Math.Max(_known[local], _known[link.Predecessor]);
-        var demands = local < Pools.Demanding && !Absent(local);
+        var demands = Pools.Rank[local] >= 0 && !Absent(local);
         if (demands && !UnderWay(local, start))
             _known[local] = start = Wait(local, start);
-        (Starts[local], Finishes[local]) = (start, End(local, start));
+        (Starts[local], Finishes[local]) = (start, Pools.Calendar[local].Add(start, Work[local]));
         if (demands && Work[local] > 0)
             Hold(local, Finishes[local]);
     }
@@ -55,7 +55,7 @@ internal sealed class InOrderDispatcher : Dispatcher
         start = Math.Max(start, _known[local]);
         foreach (ref readonly var demand in Pools.DemandsOf(local))
             start = Math.Max(start, _last[demand.Pool]);
-        var calendar = Pools.Network.Calendar[Pools.Activity[local]];
+        var calendar = Pools.Calendar[local];
         while (Work[local] > 0)
         {
             start = calendar.Begin(start);

@@ -24,7 +24,7 @@ internal static class Line
             }
         }
         var sequence = new List<int>(whole.Count);
-        new PassingDispatcher(whole, pass, rows) { Sequence = sequence }.Run(0);
+        new PassingDispatcher(whole, pass, rows) { Sequence = sequence }.Run(1);
         return [.. sequence.Select(l => whole.Activity[l])];
     }
 

@@ -1,4 +1,4 @@
-using System.Numerics;
+using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Networks;
 
 namespace Portfolio.Engine.Pools;
@@ -7,20 +7,35 @@ namespace Portfolio.Engine.Pools;
 /// Rule <c>passing</c>: the clock moves through the instants at which work becomes ready, units come free or a capacity changes; at each,
 /// again and again the first in the order that is ready and fits is started (parallel schedule generation, Kolisch 1996, with a fixed
 /// order and calendars). Behind one that waits others may pass, except work of a project with a worse priority on a pool it draws on.
-/// Work that waits is a set of bits by place in the order.
+/// <para>
+/// Work that waits is tried again only where something eased: units came free, a capacity changed or work before it started. A pool without
+/// room for its smallest demand is left at once, as is one at which everything further down the order is hindered.
+/// </para>
 /// </summary>
-internal sealed class PassingDispatcher(PoolNetwork pools, ForwardPass pass, ScheduleRows rows) : Dispatcher(pools, pass, rows)
+internal sealed class PassingDispatcher : Dispatcher
 {
-    private readonly int[] _left = new int[pools.Count];
-    private readonly int[] _stack = new int[pools.Count];
-    private readonly int[] _next = new int[pools.Count]; // next successor to pass the dates on to
-    private readonly double[] _used = new double[pools.Pools.Length];
-    private readonly int[] _waitingPriority = new int[pools.Pools.Length]; // best priority that waits for the pool at this instant
-    private readonly InstantHeap _running = new(pools.Count);
-    private readonly InstantHeap _future = new(pools.Demanding);
-    private readonly ulong[] _pending = new ulong[(pools.Demanding + 63) / 64]; // to be tried at this instant
-    private readonly ulong[] _waiting = new ulong[(pools.Demanding + 63) / 64]; // tried, did not fit
-    private int _waitingCount;
+    private readonly int[] _left;  // [local] predecessors whose dates are not known yet
+    private readonly int[] _stack, _next;
+    private readonly double[] _used;
+    private readonly bool[] _eased; // [pool] waiting work may fit now
+    private readonly WaitingWork _waiting;
+    private readonly RankSet _arrived; // became ready, not tried yet
+    private readonly InstantHeap _running, _future;
+    private readonly WorkTime[] _calendars; // those of work with demands
+    private int _arrivals;
+
+    public PassingDispatcher(PoolNetwork pools, ForwardPass pass, ScheduleRows rows)
+        : base(pools, pass, rows)
+    {
+        _left = new int[pools.Count];
+        (_stack, _next) = (new int[pools.Count], new int[pools.Count]);
+        _used = new double[pools.Pools.Length];
+        _eased = new bool[pools.Pools.Length];
+        _waiting = new WaitingWork(pools);
+        _arrived = new RankSet(pools.Demanding);
+        (_running, _future) = (new InstantHeap(pools.Count), new InstantHeap(pools.Demanding));
+        _calendars = [.. Enumerable.Range(0, pools.Count).Where(l => pools.Rank[l] >= 0).Select(l => pools.Calendar[l]).Distinct()];
+    }
 
     /// <summary>When set, receives every local in the sequence in which its dates become known.</summary>
     public List<int>? Sequence { get; set; }
@@ -35,105 +50,135 @@ internal sealed class PassingDispatcher(PoolNetwork pools, ForwardPass pass, Sch
         }
         var now = int.MinValue;
         var change = 0;
-        while (_future.Count > 0 || _waitingCount > 0)
+        while (_future.Count > 0 || _waiting.Count > 0)
         {
-            now = Math.Max(now, NextInstant(ref change, now));
+            now = Math.Max(now, NextInstant(change));
             while (_running.Count > 0 && _running.Instant <= now)
                 Free(_running.Pop());
-            Serve(now);
+            for (; change < Pools.CapacityChanges.Length && Pools.CapacityChanges[change].Instant <= now; change++)
+                _eased[Pools.CapacityChanges[change].Pool] = true;
+            Serve(now, Array.TrueForAll(_calendars, calendar => calendar.Begin(now) == now));
         }
     }
 
     private void Reset()
     {
         for (var l = 0; l < Pools.Count; l++)
-            _left[l] = Pools.LinksOf(l).Length;
+            _left[l] = Pools.LinkStart[l + 1] - Pools.LinkStart[l];
         Array.Clear(_used);
+        Array.Clear(_eased);
         _running.Clear();
         _future.Clear();
-        Array.Clear(_waiting);
-        _waitingCount = 0;
+        _waiting.Clear();
     }
 
-    private int NextInstant(ref int change, int now)
+    private int NextInstant(int change)
     {
         var next = _future.Count > 0 ? _future.Instant : int.MaxValue;
-        if (_waitingCount > 0)
+        if (_waiting.Count > 0)
         {
             if (_running.Count > 0)
                 next = Math.Min(next, _running.Instant);
-            while (change < Pools.CapacityInstants.Length && Pools.CapacityInstants[change] <= now)
-                change++;
-            if (change < Pools.CapacityInstants.Length)
-                next = Math.Min(next, Pools.CapacityInstants[change]);
+            if (change < Pools.CapacityChanges.Length)
+                next = Math.Min(next, Pools.CapacityChanges[change].Instant);
         }
         return next < int.MaxValue ? next : throw new InvalidOperationException("A demand can never be met.");
     }
 
-    private void Serve(int now)
+    // Tries in the order what has arrived and what may fit now. Where some calendar rests at this instant everything is tried, for work that
+    // cannot begin before its next working instant does not wait until then and hinders nobody.
+    private void Serve(int now, bool working)
     {
-        Array.Fill(_waitingPriority, int.MaxValue);
-        _waiting.CopyTo(_pending, 0);
-        Array.Clear(_waiting);
-        _waitingCount = 0;
-        var word = 0;
+        if (!working)
+            Array.Fill(_eased, true);
+        var cursor = 0;
         while (true)
         {
             while (_future.Count > 0 && _future.Instant <= now)
             {
-                var arrived = _future.Pop();
-                _pending[arrived >> 6] |= 1UL << arrived;
-                word = Math.Min(word, arrived >> 6);
+                var rank = Pools.Rank[_future.Pop()];
+                _arrived.Add(rank);
+                _arrivals++;
+                cursor = Math.Min(cursor, rank);
             }
-            while (word < _pending.Length && _pending[word] == 0)
-                word++;
-            if (word == _pending.Length)
-                return;
-            var local = (word << 6) + BitOperations.TrailingZeroCount(_pending[word]);
-            _pending[word] &= _pending[word] - 1;
-            Try(local, now);
+            var next = NextToTry(cursor, now, working);
+            if (next == int.MaxValue)
+                break;
+            cursor = next + 1;
+            Try(Pools.ByRank[next], now, working);
         }
+        Array.Clear(_eased);
     }
 
-    private void Try(int local, int now)
+    private int NextToTry(int cursor, int now, bool working)
     {
+        var next = _arrivals > 0 ? _arrived.Next(cursor) : int.MaxValue;
+        for (var pool = 0; pool < _eased.Length; pool++)
+        {
+            if (!_eased[pool])
+                continue;
+            if (working && !Pools.HasRoom(pool, now, _used[pool]))
+                _eased[pool] = false;
+            else
+                next = Math.Min(next, _waiting.Next(pool, cursor));
+        }
+        return next;
+    }
+
+    private void Try(int local, int now, bool working)
+    {
+        var rank = Pools.Rank[local];
+        var waited = !(_arrivals > 0 && _arrived.Next(rank) == rank);
+        if (!waited)
+        {
+            _arrived.Remove(rank);
+            _arrivals--;
+        }
         if (Work[local] > 0)
         {
-            var begin = Pools.Network.Calendar[Pools.Activity[local]].Begin(now);
+            var begin = working ? now : Pools.Calendar[local].Begin(now);
+            if (begin == now && (Hindered(local, working) || !Pools.Fits(local, now, _used)))
+            {
+                if (!waited)
+                    _waiting.Add(local);
+                return;
+            }
+            if (waited)
+                Leave(local);
             if (begin > now)
             {
                 _future.Push(begin, local);
                 return;
             }
-            if (!Unhindered(local) || !Pools.Fits(local, now, _used))
-            {
-                Wait(local);
-                return;
-            }
         }
-        var finish = End(local, now);
+        var finish = Pools.Calendar[local].Add(now, Work[local]);
         if (Work[local] > 0)
             Hold(local, finish);
-        Settle(local, now, finish);
+        Know(local, now, finish);
+        Pass(local);
     }
 
-    // No work of a project with a better priority waits for one of its pools.
-    private bool Unhindered(int local)
+    // Waits no longer: those whom it hindered may pass.
+    private void Leave(int local)
     {
+        _waiting.Remove(local);
+        foreach (ref readonly var demand in Pools.DemandsOf(local))
+            _eased[demand.Pool] = true;
+    }
+
+    // Work of a project with a better priority waits for one of its pools. All that follows in the order is hindered there too.
+    private bool Hindered(int local, bool working)
+    {
+        var hindered = false;
         foreach (ref readonly var demand in Pools.DemandsOf(local))
         {
-            if (_waitingPriority[demand.Pool] < Pools.Priority[local])
-                return false;
+            if (!_waiting.Hinders(demand.Pool, local))
+                continue;
+            hindered = true;
+            if (working && !Pools.Started(local))
+                _eased[demand.Pool] = false;
         }
-        return true;
-    }
-
-    private void Wait(int local)
-    {
-        _waiting[local >> 6] |= 1UL << local;
-        _waitingCount++;
-        foreach (ref readonly var demand in Pools.DemandsOf(local))
-            _waitingPriority[demand.Pool] = Math.Min(_waitingPriority[demand.Pool], Pools.Priority[local]);
+        return hindered;
     }
 
     private void Hold(int local, int finish)
@@ -146,13 +191,10 @@ internal sealed class PassingDispatcher(PoolNetwork pools, ForwardPass pass, Sch
     private void Free(int local)
     {
         foreach (ref readonly var demand in Pools.DemandsOf(local))
+        {
             _used[demand.Pool] -= demand.Units;
-    }
-
-    private void Settle(int local, int start, int finish)
-    {
-        Know(local, start, finish);
-        Pass(local);
+            _eased[demand.Pool] = true;
+        }
     }
 
     // The dates of one are known: its successors that wait for nothing else are released, each with what follows it before the next.
@@ -182,13 +224,13 @@ internal sealed class PassingDispatcher(PoolNetwork pools, ForwardPass pass, Sch
     private bool Release(int local)
     {
         var earliest = EarliestStart(local);
-        var demands = local < Pools.Demanding && !Absent(local);
+        var demands = Pools.Rank[local] >= 0 && !Absent(local);
         if (demands && !UnderWay(local, earliest))
         {
             _future.Push(earliest, local);
             return false;
         }
-        var finish = End(local, earliest);
+        var finish = Pools.Calendar[local].Add(earliest, Work[local]);
         if (demands && finish > earliest)
             Hold(local, finish);
         Know(local, earliest, finish);

@@ -1,13 +1,16 @@
+using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Networks;
 
 namespace Portfolio.Engine.Pools;
 
 /// <summary>
-/// The part of a network that pools can move, in local indices: first the work with demands in the order in which pools serve it
-/// (contract section 4, item 7), then the work between without demands. Immutable.
+/// The part of a network that pools can move, in local indices, predecessors first. Work with demands has a rank, its place in the order in
+/// which pools serve it (contract section 4, item 7). Immutable.
 /// </summary>
 internal sealed class PoolNetwork
 {
+    private const double Rounding = 1e-9; // of sums of fractional units
+
     public required Network Network { get; init; }
 
     public required SharedPool[] Pools { get; init; }
@@ -15,13 +18,21 @@ internal sealed class PoolNetwork
     /// <summary>[local] activity.</summary>
     public required int[] Activity { get; init; }
 
-    /// <summary>Locals below this have demands, and their index is their place in the order.</summary>
-    public required int Demanding { get; init; }
+    /// <summary>[local] place in the order, or −1 without demands.</summary>
+    public required int[] Rank { get; init; }
+
+    /// <summary>[rank] local.</summary>
+    public required int[] ByRank { get; init; }
+
+    public required WorkTime[] Calendar { get; init; }
 
     /// <summary>[local] demands <c>DemandStart[l] …</c> of <see cref="Demands"/>.</summary>
     public required int[] DemandStart { get; init; }
 
     public required PoolDemand[] Demands { get; init; }
+
+    /// <summary>[pool] fewest units that any work asks for.</summary>
+    public required double[] Smallest { get; init; }
 
     /// <summary>[local] links from other locals; those from work before the pools are in the earliest start already.</summary>
     public required int[] LinkStart { get; init; }
@@ -45,10 +56,15 @@ internal sealed class PoolNetwork
     /// <summary>[local] for work under way the first working instant from the status date on; nothing holds it back when it can resume then.</summary>
     public required int[] Resumes { get; init; }
 
-    /// <summary>All instants at which some capacity changes, rising.</summary>
-    public required int[] CapacityInstants { get; init; }
+    /// <summary>Instants at which the capacity of a pool changes, rising.</summary>
+    public required (int Instant, int Pool)[] CapacityChanges { get; init; }
 
     public int Count => Activity.Length;
+
+    /// <summary>How many have demands.</summary>
+    public int Demanding => ByRank.Length;
+
+    public bool Started(int local) => Resumes[local] != int.MinValue;
 
     public ReadOnlySpan<PoolDemand> DemandsOf(int local) => Demands.AsSpan(DemandStart[local]..DemandStart[local + 1]);
 
@@ -56,17 +72,19 @@ internal sealed class PoolNetwork
 
     public ReadOnlySpan<int> SuccessorsOf(int local) => Successors.AsSpan(SuccessorStart[local]..SuccessorStart[local + 1]);
 
+    /// <summary>True when the pool's smallest demand fits beside the units in use, this instant at least.</summary>
+    public bool HasRoom(int pool, int now, double used) => used + Smallest[pool] <= Pools[pool].Lowest(now, now) + Rounding;
+
     /// <summary>True when the units fit beside those in use from t to the end of the base length.</summary>
     public bool Fits(int local, int t, double[] used)
     {
-        const double rounding = 1e-9; // sums of fractional units
         var end = int.MinValue;
         foreach (ref readonly var demand in DemandsOf(local))
         {
             var pool = Pools[demand.Pool];
             if (end == int.MinValue && pool.Changes)
-                end = Network.Calendar[Activity[local]].Add(t, BaseMinutes[local]);
-            if (used[demand.Pool] + demand.Units > (pool.Changes ? pool.Lowest(t, end) : pool.Capacity[0]) + rounding)
+                end = Calendar[local].Add(t, BaseMinutes[local]);
+            if (used[demand.Pool] + demand.Units > pool.Lowest(t, end) + Rounding)
                 return false;
         }
         return true;

@@ -10,12 +10,16 @@ internal static class PoolNetworkBuilder
     public static PoolNetwork Build(Network network, Stages stages, Settings settings, EstimateSet estimates, int[] latestFinish)
     {
         var pools = settings.Pools.Select(p => new SharedPool(p, network.Scale)).ToArray();
-        var demanding = stages.Dispatched.Where(a => network.Activities[a].Demands.Count > 0)
-            .OrderBy(a => network.UnderWay(a) ? 0 : 1)
-            .ThenBy(a => network.Projects[network.ProjectOf[a]].Priority)
-            .ThenBy(a => latestFinish[a])
-            .ThenBy(a => a).ToArray();
-        int[] activity = [.. demanding, .. stages.Dispatched.Where(a => network.Activities[a].Demands.Count == 0)];
+        var activity = stages.Dispatched;
+        int[] byRank = [.. Enumerable.Range(0, activity.Length).Where(l => network.Activities[activity[l]].Demands.Count > 0)
+            .OrderBy(l => network.UnderWay(activity[l]) ? 0 : 1)
+            .ThenBy(l => network.Projects[network.ProjectOf[activity[l]]].Priority)
+            .ThenBy(l => latestFinish[activity[l]])
+            .ThenBy(l => activity[l])];
+        var rank = new int[activity.Length];
+        Array.Fill(rank, -1);
+        for (var r = 0; r < byRank.Length; r++)
+            rank[byRank[r]] = r;
         var demands = DemandsOf(network, settings, activity, out var demandStart);
         var links = LinksOf(network, stages, activity, out var linkStart);
         var (successorStart, successors) = SuccessorsOf(linkStart, links);
@@ -24,9 +28,12 @@ internal static class PoolNetworkBuilder
             Network = network,
             Pools = pools,
             Activity = activity,
-            Demanding = demanding.Length,
+            Rank = rank,
+            ByRank = byRank,
+            Calendar = [.. activity.Select(a => network.Calendar[a])],
             DemandStart = demandStart,
             Demands = demands,
+            Smallest = [.. pools.Select((_, p) => demands.Where(d => d.Pool == p).Select(d => d.Units).DefaultIfEmpty(0).Min())],
             LinkStart = linkStart,
             Links = links,
             SuccessorStart = successorStart,
@@ -35,7 +42,7 @@ internal static class PoolNetworkBuilder
             Priority = [.. activity.Select(a => network.Projects[network.ProjectOf[a]].Priority)],
             BaseMinutes = [.. activity.Select(a => estimates.BaseMinutes[a])],
             Resumes = [.. activity.Select(a => network.UnderWay(a) ? network.Calendar[a].Begin(network.Status[a]) : int.MinValue)],
-            CapacityInstants = [.. pools.SelectMany(p => p.From.Skip(1)).Distinct().Order()],
+            CapacityChanges = [.. pools.SelectMany((p, i) => p.From.Skip(1).Select(from => (from, i))).Order()],
         };
     }
 

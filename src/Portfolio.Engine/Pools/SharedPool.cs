@@ -27,6 +27,8 @@ internal sealed class SharedPool
     /// <summary>The lowest capacity from t to just before <paramref name="end"/>.</summary>
     public double Lowest(int t, int end)
     {
+        if (!Changes)
+            return Capacity[0];
         var step = From.Length - 1;
         var lowest = double.PositiveInfinity;
         while (From[step] > t)

@@ -50,8 +50,7 @@ internal sealed class Outcomes
             else
                 Finish(activity, samples, offset);
         }
-        for (var k = 0; k < count && _dispatcher is not null; k++)
-            _dispatcher.Run(k);
+        _dispatcher?.Run(count);
         foreach (var activity in _plan.Stages.Dispatched)
             Count(activity, samples, offset);
         foreach (var activity in _plan.Stages.After)

@@ -5,7 +5,7 @@ namespace Portfolio.Engine.Runs;
 /// <summary>One run of a plan: chunks of iterations are taken by threads as they come free; each writes its own slots of its block.</summary>
 internal sealed class PlanRun
 {
-    private const int LargestChunk = 1024, SmallestChunk = 32;
+    private const int LargestChunk = 1024, SmallestChunk = 64;
     private const int ChunksPerThread = 4;  // so that threads end together
     private const int RowBytes = 1 << 20;   // most that the schedule rows of a thread should take: about its share of the cache
 
