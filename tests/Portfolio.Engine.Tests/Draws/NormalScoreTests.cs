@@ -91,7 +91,7 @@ public sealed class NormalScoreTests
             squares += score * score;
         }
 
-        Assert.Equal(8651838811940223979UL, sum);
+        Assert.Equal(3778439949082508397UL, sum);
         Assert.InRange(squares / scores.Length, 1 - 4 * Math.Sqrt(2.0 / 4096), 1 + 4 * Math.Sqrt(2.0 / 4096));
     }
 }
