@@ -8,7 +8,7 @@ public sealed class ApiDescriptionTests(ServerFixture fixture) : IClassFixture<S
     [Fact]
     public async Task TheCommittedDescriptionIsTheOneServed()
     {
-        var committed = await File.ReadAllTextAsync(Path.Combine(Root(), "openapi", "portfolio.json"), TestContext.Current.CancellationToken);
+        var committed = await File.ReadAllTextAsync(Path.Combine(Repository.Root, "openapi", "portfolio.json"), TestContext.Current.CancellationToken);
         var served = await (await fixture.Server.Client(key: null).ReadAsync("/openapi.json")).TextAsync();
         Assert.True(
             JsonNode.DeepEquals(JsonNode.Parse(committed), JsonNode.Parse(served)),
@@ -50,13 +50,5 @@ public sealed class ApiDescriptionTests(ServerFixture fixture) : IClassFixture<S
             Assert.False(schemas.GetProperty(name).GetProperty("additionalProperties").GetBoolean());
         foreach (var name in new[] { "Problem", "Fault", "Written", "Revision" })
             Assert.False(schemas.GetProperty(name).TryGetProperty("additionalProperties", out _));
-    }
-
-    private static string Root()
-    {
-        var folder = new DirectoryInfo(AppContext.BaseDirectory);
-        while (!File.Exists(Path.Combine(folder.FullName, "Portfolio.sln")))
-            folder = folder.Parent ?? throw new DirectoryNotFoundException("Portfolio.sln");
-        return folder.FullName;
     }
 }

@@ -3,11 +3,11 @@ using System.Xml.Linq;
 
 namespace Portfolio.Server.Tests;
 
-/// <summary>Arrows that must not exist: project references by what the built assemblies refer to, the rest by what the sources name.</summary>
+/// <summary>
+/// Arrows that must not exist: project references by what the built assemblies refer to, the rest by what the sources name.
+/// </summary>
 public class ArrowTests
 {
-    private static readonly string Root = Up(AppContext.BaseDirectory);
-
     [Theory]
     [InlineData("Portfolio.Model", "Portfolio.", "Dapper", "Microsoft.", "Hangfire", "MathNet")]
     [InlineData("Portfolio.Engine", "Portfolio.Store", "Portfolio.Server", "Dapper", "Microsoft.", "Hangfire", "Npgsql")]
@@ -27,7 +27,7 @@ public class ArrowTests
     [InlineData("Contracts", "Portfolio.Store.Sqlite")]
     public void AFolderOfTheServerDoesNotName(string folder, string forbidden)
     {
-        var files = Directory.GetFiles(Path.Combine(Root, "src", "Portfolio.Server", folder), "*.cs", SearchOption.AllDirectories);
+        var files = Directory.GetFiles(Path.Combine(Repository.Root, "src", "Portfolio.Server", folder), "*.cs", SearchOption.AllDirectories);
         Assert.NotEmpty(files);
         Assert.DoesNotContain(files, file => File.ReadAllText(file).Contains(forbidden, StringComparison.Ordinal));
     }
@@ -35,11 +35,8 @@ public class ArrowTests
     [Fact]
     public void TheModelHasNoPackages()
     {
-        var project = XDocument.Load(Path.Combine(Root, "src", "Portfolio.Model", "Portfolio.Model.csproj"));
+        var project = XDocument.Load(Path.Combine(Repository.Root, "src", "Portfolio.Model", "Portfolio.Model.csproj"));
         Assert.Empty(project.Descendants("PackageReference"));
         Assert.Empty(project.Descendants("ProjectReference"));
     }
-
-    private static string Up(string folder) =>
-        File.Exists(Path.Combine(folder, "Portfolio.sln")) ? folder : Up(Path.GetDirectoryName(folder) ?? throw new DirectoryNotFoundException("Portfolio.sln"));
 }

@@ -18,7 +18,7 @@ internal static class Oracle
     private static async Task<IReadOnlyList<OracleAnswer<T>>> Ask<T>(IReadOnlyList<OracleJob> jobs, CancellationToken stop)
     {
         var simulator = SharedFolder.Check("oracle.py");
-        var driver = Path.Combine(SharedFolder.Repository, "tests", "Portfolio.Server.Tests", "Outside", "oracle_driver.py");
+        var driver = Path.Combine(Repository.Root, "tests", "Portfolio.Server.Tests", "Outside", "oracle_driver.py");
         var folder = Directory.CreateTempSubdirectory("portfolio-outside-");
         try
         {

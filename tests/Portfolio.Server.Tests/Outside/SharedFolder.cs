@@ -9,11 +9,8 @@ internal static class SharedFolder
     /// <summary>True when tests that take long are wanted too.</summary>
     public static bool Long => Environment.GetEnvironmentVariable("PORTFOLIO_LONG") == "1";
 
-    /// <summary>Folder that holds the solution.</summary>
-    public static string Repository { get; } = FindRepository();
-
     private static string Root =>
-        Environment.GetEnvironmentVariable("PORTFOLIO_SHARED") ?? Path.GetFullPath(Path.Combine(Repository, "..", "shared"));
+        Environment.GetEnvironmentVariable("PORTFOLIO_SHARED") ?? Path.GetFullPath(Path.Combine(Repository.Root, "..", "shared"));
 
     /// <summary>A program among the checks; skips the test where there is none.</summary>
     public static string Check(string name) => Existing(Path.Combine(Root, "checks", name));
@@ -27,13 +24,5 @@ internal static class SharedFolder
         if (!Path.Exists(path))
             Assert.Skip($"{path} is not there; set PORTFOLIO_SHARED or PORTFOLIO_DATA to run this comparison.");
         return path;
-    }
-
-    private static string FindRepository()
-    {
-        var folder = new DirectoryInfo(AppContext.BaseDirectory);
-        while (folder is not null && !File.Exists(Path.Combine(folder.FullName, "Portfolio.sln")))
-            folder = folder.Parent;
-        return folder?.FullName ?? throw new DirectoryNotFoundException("Portfolio.sln is in no folder above the tests.");
     }
 }
