@@ -36,7 +36,7 @@ app.UseAccess();
 app.MapHealth();
 app.MapApiDescription();
 
-var api = app.MapGroup("/v1").Refuses(400, 401, 429);
+var api = app.MapGroup("/v1").Refuses(400, 401, 429, 503);
 api.MapPortfolios();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);

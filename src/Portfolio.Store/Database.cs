@@ -16,6 +16,7 @@ public sealed class Database : IAsyncDisposable
     private readonly SemaphoreSlim writing = new(1, 1);
     private readonly ConcurrentBag<SqliteConnection> idle = [];
     private SqliteConnection? writer;
+    private volatile bool unwritable;
     private int disposed;
 
     private Database(SqliteFolder folder, TimeProvider clock) => (this.folder, Clock) = (folder, clock);
@@ -52,8 +53,14 @@ public sealed class Database : IAsyncDisposable
         }
     }
 
-    /// <summary>Reads one row: throws when the storage cannot be read.</summary>
-    public Task PingAsync(CancellationToken cancellation) => MigrationLevelAsync(cancellation);
+    /// <summary>Throws when the storage cannot be read or, after a write that the storage refused, still cannot be written.</summary>
+    public async Task PingAsync(CancellationToken cancellation)
+    {
+        await MigrationLevelAsync(cancellation);
+        // Not used otherwise; setting it writes a page whatever it was.
+        if (unwritable)
+            await WriteAsync(open => open.ExecuteAsync("pragma user_version = 0"), cancellation);
+    }
 
     /// <summary>The number of the last migration applied.</summary>
     public Task<int> MigrationLevelAsync(CancellationToken cancellation) =>
@@ -111,14 +118,18 @@ public sealed class Database : IAsyncDisposable
             var result = await work(new StoreTransaction(transaction, Now(), BeforeStatement, cancellation));
             BeforeStatement?.Invoke("commit");
             transaction.Commit();
+            unwritable = false;
             return result;
         }
-        catch
+        catch (Exception failure)
         {
             // A connection that has failed is not used again: whatever state it is in ends with it.
             writer?.Dispose();
             writer = null;
-            throw;
+            if (!SqliteFolder.IsUnavailable(failure))
+                throw;
+            unwritable = true;
+            throw new StoreUnavailableException(failure);
         }
         finally
         {

@@ -7,5 +7,9 @@ public sealed class StoreInUseException(string directory, Exception? inner = nul
 /// <summary>What is stored was not written by this version of the program, or its migrations were changed afterwards.</summary>
 public sealed class StoreSchemaException(string message) : InvalidOperationException(message);
 
+/// <summary>The storage cannot be written just now: its disk is full, broken, read-only or busy. Nothing of the write was kept.</summary>
+public sealed class StoreUnavailableException(Exception inner)
+    : IOException($"The storage cannot be written: {inner.Message}", inner);
+
 /// <summary>Stored bytes are not the ones that were written.</summary>
 public sealed class StoreDamagedException(string message) : IOException(message);

@@ -95,6 +95,38 @@ public sealed class DatabaseTests
             () => store.Database.ReadAsync(open => open.ExecuteAsync("delete from outbox"), TestStore.Cancellation));
     }
 
+    [Theory]
+    [InlineData(5)]
+    [InlineData(8)]
+    [InlineData(10)]
+    [InlineData(13)]
+    [InlineData(14)]
+    public async Task A_disk_that_refuses_a_write_is_told_and_asked_again_until_it_takes_one(int code)
+    {
+        await using var store = await TestStore.OpenAsync();
+        store.Database.BeforeStatement = _ => throw new Microsoft.Data.Sqlite.SqliteException("of the test", code);
+        await store.Database.PingAsync(TestStore.Cancellation);
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => AppendAsync(store));
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => store.Database.PingAsync(TestStore.Cancellation));
+        store.Database.BeforeStatement = null;
+        await store.Database.PingAsync(TestStore.Cancellation);
+        Assert.Equal(0, await store.CountAsync("audit"));
+        await AppendAsync(store);
+        Assert.Equal(1, await store.CountAsync("audit"));
+    }
+
+    [Fact]
+    public async Task A_statement_that_breaks_a_constraint_is_no_fault_of_the_disk()
+    {
+        await using var store = await TestStore.OpenAsync();
+        store.Database.BeforeStatement = _ => throw new Microsoft.Data.Sqlite.SqliteException("of the test", 19);
+        await Assert.ThrowsAsync<Microsoft.Data.Sqlite.SqliteException>(() => AppendAsync(store));
+        await store.Database.PingAsync(TestStore.Cancellation);
+    }
+
+    private static Task AppendAsync(TestStore store) =>
+        store.Audit.AppendAsync(Portfolio.Store.Access.Caller.System, "a", "b", new { }, TestStore.Cancellation);
+
     [Fact]
     public async Task Maintenance_folds_the_log_into_the_file()
     {

@@ -18,15 +18,18 @@ internal static class HealthEndpoints
 
     private static Task Write(HttpContext context, HealthReport report)
     {
+        if (report.Status == HealthStatus.Unhealthy)
+            context.Response.Headers.RetryAfter = "1";
         context.Response.ContentType = "application/json; charset=utf-8";
         var checks = string.Join(",", report.Entries.Select(entry => $"\"{entry.Key}\":\"{Word(entry.Value.Status)}\""));
-        return context.Response.WriteAsync($$$"""{"status":"{{{Word(report.Status)}}}","checks":{ {{{checks}}} }}""", context.RequestAborted);
+        return context.Response.WriteAsync(
+            $$$"""{"status":"{{{Word(report.Status)}}}","checks":{ {{{checks}}} }}""", context.RequestAborted);
     }
 
     private static string Word(HealthStatus status) => status == HealthStatus.Unhealthy ? "failing" : "ok";
 }
 
-/// <summary>Storage can be read.</summary>
+/// <summary>Storage can be read and, as far as is known, written.</summary>
 internal sealed class StorageHealth(Database database) : IHealthCheck
 {
     public async Task<HealthCheckResult> CheckHealthAsync(HealthCheckContext context, CancellationToken cancellation)

@@ -88,6 +88,13 @@ public sealed class RunWorker(
         {
             return "lost";
         }
+        catch (StoreUnavailableException full)
+        {
+            // Nothing can be written about it either: the lease runs out, and the run goes on where it was once the disk takes writes
+            // again.
+            RunLog.Failed(log, held.Run.Id, full);
+            return "lost";
+        }
         catch (RunFailed known)
         {
             RunLog.CannotSucceed(log, held.Run.Id, known.Message);

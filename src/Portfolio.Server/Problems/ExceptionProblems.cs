@@ -2,6 +2,7 @@ using System.Text.RegularExpressions;
 using Microsoft.AspNetCore.Diagnostics;
 using Portfolio.Server.Contracts.Json;
 using Portfolio.Server.Http;
+using Portfolio.Store;
 
 namespace Portfolio.Server.Problems;
 
@@ -20,8 +21,11 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
             BadHttpRequestException unread when Unread().Match(unread.Message) is { Success: true } match =>
                 QueryFaults.Of(match.Groups["name"].Value, $"'{match.Groups["name"].Value}' cannot be read.").Problem,
             BadHttpRequestException => Problem.BadRequest("A parameter of the address or a header cannot be read."),
+            StoreUnavailableException => Unavailable(exception),
             _ => Unforeseen(exception),
         };
+        if (problem.Status == StatusCodes.Status503ServiceUnavailable)
+            context.Response.Headers.RetryAfter = "5";
         await problem.ExecuteAsync(context);
         return true;
     }
@@ -30,11 +34,21 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
     [GeneratedRegex("^Failed to bind parameter \"\\S+ (?<name>\\w+)\" from ")]
     private static partial Regex Unread();
 
+    private Problem Unavailable(Exception exception)
+    {
+        LogUnavailable(exception);
+        return new Problem(
+            503, "storage-unavailable", "The storage cannot be written", "Nothing was kept. Try again after the time in Retry-After.");
+    }
+
     private Problem Unforeseen(Exception exception)
     {
         LogUnforeseen(exception);
         return new Problem(500, "internal", "The server failed", "The failure is logged under the trace id.");
     }
+
+    [LoggerMessage(Level = LogLevel.Error, Message = "The storage cannot be written.")]
+    private partial void LogUnavailable(Exception exception);
 
     [LoggerMessage(Level = LogLevel.Error, Message = "A request failed.")]
     private partial void LogUnforeseen(Exception exception);

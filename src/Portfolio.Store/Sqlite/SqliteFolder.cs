@@ -83,6 +83,12 @@ internal sealed class SqliteFolder : IDisposable
         }
     }
 
+    /// <summary>
+    /// Whether the failure lies with the disk or with who else uses it, not with the statement (sqlite.org/rescode.html).
+    /// </summary>
+    public static bool IsUnavailable(Exception failure) => failure is SqliteException { SqliteErrorCode: var code } && code is
+        5 /* busy */ or 8 /* read-only */ or 10 /* input or output */ or 13 /* full */ or 14 /* cannot open */;
+
     private void CheckVersion()
     {
         using var connection = OpenWriter();
