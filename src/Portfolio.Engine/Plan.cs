@@ -11,7 +11,8 @@ namespace Portfolio.Engine;
 
 /// <summary>
 /// A portfolio compiled for simulation: networks in flat arrays, marginals as tables, dependence factored, the order at the pools fixed.
-/// Immutable and pure: results depend on the document, the seed and the iteration alone (contract section 4). Safe to share between threads.
+/// Immutable and pure: results depend on the document, the seed and the iteration alone (contract section 4). Safe to share between
+/// threads.
 /// </summary>
 public sealed class Plan
 {
@@ -79,12 +80,16 @@ public sealed class Plan
 
     internal PoolNetwork? Pools { get; }
 
-    /// <summary>The dispatched part in the order of rule <c>inOrder</c>, as locals of <see cref="Pools"/>; null under <c>passing</c>.</summary>
+    /// <summary>
+    /// The dispatched part in the order of rule <c>inOrder</c>, as locals of <see cref="Pools"/>; null under <c>passing</c>.
+    /// </summary>
     internal int[]? LocalLine { get; private set; }
 
     /// <summary>Compiles a document that breaks no rule.</summary>
-    /// <exception cref="ArgumentException">Correlations contradict each other or stated percentiles have no solution; see the checks of Dependence and Distributions.</exception>
-    public static Plan Compile(ValidPortfolio portfolio, CompileOptions? options = null) => new(portfolio.Document, options ?? CompileOptions.None);
+    /// <exception cref="ArgumentException">Correlations contradict each other or stated percentiles have no solution; see the checks of
+    /// Dependence and Distributions.</exception>
+    public static Plan Compile(ValidPortfolio portfolio, CompileOptions? options = null) =>
+        new(portfolio.Document, options ?? CompileOptions.None);
 
     /// <summary>
     /// Simulates iterations <paramref name="first"/> … first + count − 1 and hands each block of <see cref="BlockSamples.Size"/> to
@@ -97,7 +102,8 @@ public sealed class Plan
     /// <param name="sink">Receives complete blocks; an exception it throws ends the run and is thrown here.</param>
     /// <param name="cancellation">Looked at every few milliseconds.</param>
     /// <exception cref="OperationCanceledException">Cancelled; blocks already handed over stay valid.</exception>
-    public void Run(long seed, long first, int count, RunOptions options, Action<BlockSamples> sink, CancellationToken cancellation = default) =>
+    public void Run(
+        long seed, long first, int count, RunOptions options, Action<BlockSamples> sink, CancellationToken cancellation = default) =>
         new PlanRun(this, (ulong)seed, first, count, options, sink).Work(cancellation);
 
     private void SetLine(Settings settings, int[] latest, BaseInputs inputs, IReadOnlyList<ActivityId>? keep)

@@ -30,7 +30,8 @@ internal static class PlanWarnings
         {
             yield return new Warning(
                 NotStated,
-                "Nothing was stated about how projects move together: apart from shared drivers, pools and links they are taken as independent (rank correlation 0), which makes the spread of the portfolio too narrow if they are not.",
+                "Nothing was stated about how projects move together: apart from shared drivers, pools and links they are "
+                + "taken as independent (rank correlation 0), which makes the spread of the portfolio too narrow if they are not.",
                 []);
         }
         if (plan.Dependence.WithoutEffect.Count > 0)
@@ -45,7 +46,8 @@ internal static class PlanWarnings
             yield return new Warning(
                 Repaired,
                 "The stated ranks contradict each other and were replaced by the nearest that can exist together (from stated to used).",
-                [.. plan.Dependence.Repaired.Select(c => string.Create(CultureInfo.InvariantCulture, $"{c.First} with {c.Second}: {c.Stated:0.####} to {c.Used:0.####}"))]);
+                [.. plan.Dependence.Repaired.Select(c => string.Create(
+                    CultureInfo.InvariantCulture, $"{c.First} with {c.Second}: {c.Stated:0.####} to {c.Used:0.####}"))]);
         }
     }
 
@@ -60,12 +62,14 @@ internal static class PlanWarnings
         {
             yield return new Warning(
                 Reverse,
-                "These activities have a finish-to-finish or start-to-finish predecessor and something that follows their start or their place at a pool: when they get shorter they start later, and dates behind them may become later too.",
+                "These activities have a finish-to-finish or start-to-finish predecessor and something that follows their start or "
+                + "their place at a pool: when they get shorter they start later, and dates behind them may become later too.",
                 named);
         }
     }
 
-    private static bool Uncertain(Activity activity) => !activity.Milestone && (activity.UnderWay ? activity.Remaining : activity.Duration) is not Constant { Value: 0 };
+    private static bool Uncertain(Activity activity) =>
+        !activity.Milestone && (activity.UnderWay ? activity.Remaining : activity.Duration) is not Constant { Value: 0 };
 
     private static bool FinishBound(Network network, int activity)
     {

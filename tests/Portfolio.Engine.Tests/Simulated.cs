@@ -23,7 +23,9 @@ internal static class Simulated
         Assert.InRange(sd, expected - error, expected + error);
     }
 
-    /// <summary>A percentile, 0–100, of values in rising order: the expected value lies between the order statistics on either side.</summary>
+    /// <summary>
+    /// A percentile, 0–100, of values in rising order: the expected value lies between the order statistics on either side.
+    /// </summary>
     public static void Percentile(double level, double expected, double[] rising)
     {
         var (n, p) = (rising.Length, level / 100);

@@ -51,7 +51,8 @@ internal sealed partial class WorkTime
 
     private WorkTime(WorkTime minutes, int gapBits)
     {
-        (_origin, _workedBefore, _dayOf, _beginOf, _latest) = (minutes._origin, minutes._workedBefore, minutes._dayOf, minutes._beginOf, minutes._latest);
+        (_origin, _workedBefore, _dayOf, _beginOf, _latest) = (
+            minutes._origin, minutes._workedBefore, minutes._dayOf, minutes._beginOf, minutes._latest);
         GapBits = gapBits;
         Horizon = OfDay(_workedBefore.Length - 1);
     }

@@ -3,7 +3,8 @@ using MathNet.Numerics.LinearAlgebra;
 namespace Portfolio.Engine.Dependence;
 
 /// <summary>
-/// Speeds up a fixed-point iteration x ← g(x) by mixing its last few steps so that their residuals cancel best: Anderson 1965, in the form of Walker and Ni,
+/// Speeds up a fixed-point iteration x ← g(x) by mixing its last few steps so that their residuals cancel best: Anderson 1965, in the form
+/// of Walker and Ni,
 /// SIAM J. Numer. Anal. 49(4), 2011; for the nearest correlation matrix Higham and Strabić, Numerical Algorithms 72, 2016.
 /// </summary>
 internal sealed class AndersonMixing(int depth)

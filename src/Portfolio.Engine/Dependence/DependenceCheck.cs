@@ -10,7 +10,8 @@ public static class DependenceCheck
     private const int PairsNamed = 10;
 
     /// <summary>
-    /// One fault for every connected group of nodes whose correlations contradict each other, none where <c>repair</c> is <c>nearest</c> and can
+    /// One fault for every connected group of nodes whose correlations contradict each other, none where <c>repair</c> is <c>nearest</c>
+    /// and can
     /// help. Pairs that name unknown nodes are passed over; ranks must already be known to lie within their ranges.
     /// </summary>
     /// <param name="settings">What was sent.</param>
@@ -38,11 +39,13 @@ public static class DependenceCheck
     private static Fault Fault(string path, string message) => new(path, "settings", FaultCodes.DependenceNotPositive, message);
 
     private static string Loaded(Nodes nodes, Residual group) =>
-        $"The ranks of {string.Join(", ", group.Impossible.Distinct().Select(node => nodes.Keys[node]))} with the portfolio and its programmes leave no room for the other stated ranks.";
+        $"The ranks of {string.Join(", ", group.Impossible.Distinct().Select(node => nodes.Keys[node]))} with the portfolio and its "
+        + "programmes leave no room for the other stated ranks.";
 
     private static string Contradicting(Nodes nodes, Residual group, double value, double[] vector) => string.Create(
         CultureInfo.InvariantCulture,
-        $"The stated ranks contradict each other: what the common factors leave has the eigenvalue {value:0.######}. Concerned: {Concerned(nodes, group, vector)}.");
+        $"The stated ranks contradict each other: what the common factors leave has the eigenvalue "
+        + $"{value:0.######}. Concerned: {Concerned(nodes, group, vector)}.");
 
     /// <summary>The pairs that pull the eigenvalue down, the strongest first: vᵢ·vⱼ·cᵢⱼ is their share of vᵀCv.</summary>
     private static string Concerned(Nodes nodes, Residual group, double[] vector)

@@ -23,11 +23,14 @@ internal sealed class DependenceModel
     /// <summary>Every pair of nodes whose rank correlation the repair changed; empty without repair.</summary>
     public IReadOnlyList<RankChange> Repaired { get; private init; } = [];
 
-    /// <summary>Ids of the projects that dependence is stated for but cannot reach, because their own correlation is 0; document order.</summary>
+    /// <summary>
+    /// Ids of the projects that dependence is stated for but cannot reach, because their own correlation is 0; document order.
+    /// </summary>
     public IReadOnlyList<string> WithoutEffect { get; private init; } = [];
 
     /// <summary>The model of a valid document.</summary>
-    /// <exception cref="InvalidOperationException">The correlations contradict each other; <see cref="DependenceCheck"/> says how.</exception>
+    /// <exception cref="InvalidOperationException">The correlations contradict each other; <see cref="DependenceCheck"/> says
+    /// how.</exception>
     public static DependenceModel Build(Settings settings, IReadOnlyList<Project> projects)
     {
         var nodes = Nodes.Of(settings, projects);
@@ -53,7 +56,8 @@ internal sealed class DependenceModel
     }
 
     /// <summary>
-    /// Scores of <paramref name="count"/> iterations: row k of <paramref name="factors"/> (at k·count) is the factor of the k-th project of the document,
+    /// Scores of <paramref name="count"/> iterations: row k of <paramref name="factors"/> (at k·count) is the factor of the k-th project of
+    /// the document,
     /// row k of <paramref name="scores"/> the score of its k-th driver.
     /// </summary>
     public void Scores(ulong seed, long firstIteration, int count, Span<double> factors, Span<double> scores)
@@ -104,7 +108,9 @@ internal sealed class DependenceModel
     {
         var tied = new HashSet<string>(StringComparer.Ordinal);
         foreach (var residual in residuals)
-            tied.UnionWith(residual.Members.Where(node => residual.Members.Length > 1 || nodes.Implied(node, node) > 0).Select(node => nodes.Keys[node]));
+            tied.UnionWith(residual.Members
+                .Where(node => residual.Members.Length > 1 || nodes.Implied(node, node) > 0)
+                .Select(node => nodes.Keys[node]));
         return [.. projects.Where(p => p.Correlation is null or 0 && tied.Contains(DrawKey.Project(p.Id))).Select(p => p.Id)];
     }
 }

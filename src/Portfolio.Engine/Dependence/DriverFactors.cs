@@ -6,7 +6,8 @@ using Portfolio.Model.Documents;
 namespace Portfolio.Engine.Dependence;
 
 /// <summary>
-/// What a driver multiplies durations and costs by; contract section 4, item 2. With score z it happens when Φ(z) &gt; 1 − p, that is Φ(−z) &lt; p;
+/// What a driver multiplies durations and costs by; contract section 4, item 2. With score z it happens when Φ(z) &gt; 1 − p, that is Φ(−z)
+/// &lt; p;
 /// its factors are then the marginals at (Φ(z) − 1 + p)/p = 1 − Φ(−z)/p, otherwise 1.
 /// </summary>
 internal sealed class DriverFactors
@@ -43,7 +44,9 @@ internal sealed class DriverFactors
         ArrayPool<double>.Shared.Return(rented);
     }
 
-    /// <summary>The normal score of 1 − Φ(−z)/p, from the upper tail so that it keeps its digits; 0 where the driver does not happen.</summary>
+    /// <summary>
+    /// The normal score of 1 − Φ(−z)/p, from the upper tail so that it keeps its digits; 0 where the driver does not happen.
+    /// </summary>
     private void ScoreWithin(ReadOnlySpan<double> upper, Span<double> within)
     {
         for (var i = 0; i < upper.Length; i++)

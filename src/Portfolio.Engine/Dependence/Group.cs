@@ -2,7 +2,9 @@ using Portfolio.Engine.Draws;
 
 namespace Portfolio.Engine.Dependence;
 
-/// <summary>A connected group of nodes ready to draw: keys, output rows, loadings on the common factors and the scaled Cholesky rows.</summary>
+/// <summary>
+/// A connected group of nodes ready to draw: keys, output rows, loadings on the common factors and the scaled Cholesky rows.
+/// </summary>
 internal sealed class Group
 {
     public required ulong[] Keys { get; init; }
@@ -27,7 +29,8 @@ internal sealed class Group
     }
 
     /// <summary>
-    /// Scores of member <paramref name="i"/> from the common factors' and the members' own draws, each source a row as long as <paramref name="target"/>.
+    /// Scores of member <paramref name="i"/> from the common factors' and the members' own draws, each source a row as long as
+    /// <paramref name="target"/>.
     /// </summary>
     public void Write(int i, ReadOnlySpan<double> common, ReadOnlySpan<double> own, Span<double> target)
     {

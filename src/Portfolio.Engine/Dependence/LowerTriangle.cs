@@ -4,7 +4,8 @@ namespace Portfolio.Engine.Dependence;
 internal static class LowerTriangle
 {
     /// <summary>
-    /// Rows of L with L·Lᵀ = <paramref name="matrix"/>; row i has i + 1 numbers. A pivot at or below <paramref name="smallest"/> leaves its column
+    /// Rows of L with L·Lᵀ = <paramref name="matrix"/>; row i has i + 1 numbers. A pivot at or below <paramref name="smallest"/> leaves its
+    /// column
     /// empty: that node is determined by those before it.
     /// </summary>
     /// <param name="leastPivot">The smallest pivot met; well above 0 the matrix is positive definite.</param>

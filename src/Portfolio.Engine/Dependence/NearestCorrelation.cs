@@ -4,7 +4,8 @@ namespace Portfolio.Engine.Dependence;
 
 /// <summary>
 /// The correlation matrix nearest to a symmetric matrix in the Frobenius norm, by alternating projections with Dykstra's correction:
-/// Higham, "Computing the nearest correlation matrix", IMA Journal of Numerical Analysis 22(3), 2002, 329–343, algorithm 3.3. Its steps are mixed
+/// Higham, "Computing the nearest correlation matrix", IMA Journal of Numerical Analysis 22(3), 2002, 329–343, algorithm 3.3. Its steps are
+/// mixed
 /// (<see cref="AndersonMixing"/>), which needs a fraction of them.
 /// </summary>
 internal static class NearestCorrelation

@@ -4,7 +4,8 @@ using Portfolio.Model.Documents;
 namespace Portfolio.Engine.Dependence;
 
 /// <summary>
-/// Everything that dependence can tie, by its key: drivers, then projects, each by id (<see cref="Keys"/>), and the common factors: the portfolio,
+/// Everything that dependence can tie, by its key: drivers, then projects, each by id (<see cref="Keys"/>), and the common factors: the
+/// portfolio,
 /// then the programmes by id (<see cref="Factors"/>). <see cref="Loadings"/>[node][factor] is what the node carries of each factor.
 /// Pairs that name something unknown are passed over: the rules of the model report them.
 /// </summary>
@@ -35,7 +36,8 @@ internal sealed class Nodes
         string[] factors =
         [
             DrawKey.Portfolio,
-            .. projects.Where(p => p.Programme is not null).Select(p => DrawKey.Programme(p.Programme!)).Distinct().Order(StringComparer.Ordinal),
+            .. projects.Where(p => p.Programme is not null).Select(p => DrawKey.Programme(p.Programme!))
+                .Distinct().Order(StringComparer.Ordinal),
         ];
         var (node, factor) = (Index(keys), Index(factors));
         var loadings = Array.ConvertAll(keys, _ => new double[factors.Length]);
@@ -56,7 +58,8 @@ internal sealed class Nodes
     }
 
     private static void LoadProjects(
-        Model.Documents.Dependence dependence, IReadOnlyList<Project> projects, Dictionary<string, int> node, Dictionary<string, int> factor, double[][] loadings)
+        Model.Documents.Dependence dependence, IReadOnlyList<Project> projects, Dictionary<string, int> node,
+        Dictionary<string, int> factor, double[][] loadings)
     {
         var between = RankCorrelation.ToNormal(dependence.BetweenProjects);
         var within = RankCorrelation.ToNormal(dependence.WithinProgramme ?? dependence.BetweenProjects);

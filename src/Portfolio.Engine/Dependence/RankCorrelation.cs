@@ -1,6 +1,8 @@
 namespace Portfolio.Engine.Dependence;
 
-/// <summary>Rank (Spearman) correlation and the correlation of normal scores that gives it: r = 2·sin(πρ/6) (Pearson 1907; Kruskal, JASA 53, 1958).</summary>
+/// <summary>
+/// Rank (Spearman) correlation and the correlation of normal scores that gives it: r = 2·sin(πρ/6) (Pearson 1907; Kruskal, JASA 53, 1958).
+/// </summary>
 internal static class RankCorrelation
 {
     public static double ToNormal(double rank) => Math.Abs(rank) >= 1 ? Math.Sign(rank) : 2 * Sine(Math.PI / 6 * rank);

@@ -1,7 +1,8 @@
 namespace Portfolio.Engine.Dependence;
 
 /// <summary>
-/// What the common factors leave of one connected group of nodes: the standard deviation of each node's own part and the correlations between
+/// What the common factors leave of one connected group of nodes: the standard deviation of each node's own part and the correlations
+/// between
 /// these parts (unit diagonal; [i, j] by place in <see cref="Members"/>). Groups do not touch each other, so each is checked, repaired and
 /// factored alone, and what happens in one changes nothing in another.
 /// </summary>
@@ -17,7 +18,9 @@ internal sealed class Residual
 
     public required double[,] Correlations { get; init; }
 
-    /// <summary>Nodes whose loadings alone exceed 1, or that have no part of their own left for a stated pair: no matrix can be found.</summary>
+    /// <summary>
+    /// Nodes whose loadings alone exceed 1, or that have no part of their own left for a stated pair: no matrix can be found.
+    /// </summary>
     public required IReadOnlyList<int> Impossible { get; init; }
 
     /// <summary>All groups, a node without pairs being a group of one; in the order of their first members.</summary>

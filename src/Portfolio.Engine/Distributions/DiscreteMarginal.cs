@@ -54,7 +54,9 @@ internal sealed class DiscreteMarginal : Marginal
             values[i] = this.values[FirstAtLeast(thresholds, scores[i])];
     }
 
-    /// <summary>Halves the range without branches on the data; the last of the sorted numbers is never below <paramref name="x"/>.</summary>
+    /// <summary>
+    /// Halves the range without branches on the data; the last of the sorted numbers is never below <paramref name="x"/>.
+    /// </summary>
     private static int FirstAtLeast(double[] sorted, double x)
     {
         var (first, length) = (0, sorted.Length);

@@ -50,7 +50,8 @@ internal sealed class PercentilesMarginal : Marginal
         get
         {
             var mean = Mean;
-            return Sum((width, from, to) => width * ((from - mean) * (from - mean) + (from - mean) * (to - mean) + (to - mean) * (to - mean)) / 3);
+            return Sum((width, from, to) =>
+                width * ((from - mean) * (from - mean) + (from - mean) * (to - mean) + (to - mean) * (to - mean)) / 3);
         }
     }
 

@@ -5,7 +5,8 @@ using Portfolio.Model.Distributions;
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
-/// PERT: beta between two limits with α = 1 + w·t, β = 1 + w·(1 − t), t the mode's place between them. <see cref="Quantile(double)"/> is exact;
+/// PERT: beta between two limits with α = 1 + w·t, β = 1 + w·(1 − t), t the mode's place between them. <see cref="Quantile(double)"/> is
+/// exact;
 /// draws are read from a table over the score whose error is below 10⁻⁶ of the range between the 0.1 % and the 99.9 % quantile there and
 /// 10⁻⁴ beyond (tested), and stay within the limits.
 /// </summary>

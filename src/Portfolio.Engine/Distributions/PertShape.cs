@@ -3,8 +3,10 @@ using Portfolio.Engine.Draws;
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
-/// The shape of a PERT on [0, 1]: its weight and its mode's place t. What it gives depends on these two alone, whatever else the document holds.
-/// Shapes of a common weight come from that weight's <see cref="PertFamily"/> and keep no table; the rest keep their quantiles at the knots (1 KB).
+/// The shape of a PERT on [0, 1]: its weight and its mode's place t. What it gives depends on these two alone, whatever else the document
+/// holds.
+/// Shapes of a common weight come from that weight's <see cref="PertFamily"/> and keep no table; the rest keep their quantiles at the knots
+/// (1 KB).
 /// </summary>
 internal readonly struct PertShape
 {

@@ -3,7 +3,8 @@ using Portfolio.Engine.Draws;
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
-/// The beta distribution function I_x(α, β), α, β ≥ 1, and its inverse, from +, −, ×, ÷ and our own logarithm, so that tables built on it are the same
+/// The beta distribution function I_x(α, β), α, β ≥ 1, and its inverse, from +, −, ×, ÷ and our own logarithm, so that tables built on it
+/// are the same
 /// on every processor. Continued fraction: NIST Digital Library of Mathematical Functions, 8.17.22.
 /// </summary>
 internal readonly struct RegularisedBeta(double alpha, double beta)
@@ -20,7 +21,8 @@ internal readonly struct RegularisedBeta(double alpha, double beta)
         lower <= upper ? LowerQuantile(alpha, beta, Elementary.Log(lower)) : 1 - LowerQuantile(beta, alpha, Elementary.Log(upper));
 
     /// <summary>
-    /// Newton's method for ln I as a function of s = ln x. The density of s is log-concave for β ≥ 1, hence ln I is concave in s and the steps rise to
+    /// Newton's method for ln I as a function of s = ln x. The density of s is log-concave for β ≥ 1, hence ln I is concave in s and the
+    /// steps rise to
     /// the root from the left without overshooting; they start where the bound I ≤ x^α/(α·B) meets the target.
     /// </summary>
     private double LowerQuantile(double a, double b, double target)
@@ -85,7 +87,8 @@ internal readonly struct RegularisedBeta(double alpha, double beta)
         for (; x < 10; x++)
             product *= x;
         var r = 1 / (x * x);
-        var series = (1.0 / 12 - r * (1.0 / 360 - r * (1.0 / 1260 - r * (1.0 / 1680 - r * (1.0 / 1188 - r * (691.0 / 360360 - r / 156)))))) / x;
+        var series = (
+            1.0 / 12 - r * (1.0 / 360 - r * (1.0 / 1260 - r * (1.0 / 1680 - r * (1.0 / 1188 - r * (691.0 / 360360 - r / 156)))))) / x;
         return (x - 0.5) * Elementary.Log(x) - x + 0.91893853320467274178 + series - Elementary.Log(product);
     }
 }

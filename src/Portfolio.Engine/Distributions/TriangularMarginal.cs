@@ -59,7 +59,8 @@ internal sealed class TriangularMarginal : Marginal
         {
             var left = Vector512.LessThanOrEqual(x, Vector512.Create(modeScore));
             var root = Vector512.Sqrt(new NormalCdf().At(Vector512.ConditionalSelect(left, x, -x)));
-            return Vector512.ConditionalSelect(left, Vector512.Create(low) + root * Vector512.Create(rise), Vector512.Create(high) - root * Vector512.Create(fall));
+            return Vector512.ConditionalSelect(
+                left, Vector512.Create(low) + root * Vector512.Create(rise), Vector512.Create(high) - root * Vector512.Create(fall));
         }
     }
 }

@@ -33,7 +33,9 @@ internal sealed class TruncatedNormalMarginal : Marginal
 
     public override double Mean => mean + sd * MeanScore;
 
-    /// <summary>sd²·(1 + (α·φ(α) − β·φ(β))/Z − ((φ(α) − φ(β))/Z)²), α and β the bounds in standard deviations, Z the probability held.</summary>
+    /// <summary>
+    /// sd²·(1 + (α·φ(α) − β·φ(β))/Z − ((φ(α) − φ(β))/Z)²), α and β the bounds in standard deviations, Z the probability held.
+    /// </summary>
     public override double Variance
     {
         get
@@ -59,7 +61,8 @@ internal sealed class TruncatedNormalMarginal : Marginal
     private Truncated AtProbability() => new(mean, sd, min, max, below, held, mirrored);
 
     /// <summary>The value at a probability of the truncated distribution.</summary>
-    private readonly struct Truncated(double mean, double sd, double min, double max, double below, double held, bool mirrored) : IWideFunction
+    private readonly struct Truncated(
+        double mean, double sd, double min, double max, double below, double held, bool mirrored) : IWideFunction
     {
         [MethodImpl(MethodImplOptions.AggressiveInlining)]
         public Vector512<double> At(Vector512<double> x) => Mirrored(mirrored ? Vector512.Create(1.0) - x : x);
@@ -69,7 +72,8 @@ internal sealed class TruncatedNormalMarginal : Marginal
         public Vector512<double> Mirrored(Vector512<double> p)
         {
             var u = Vector512.Create(below) + p * Vector512.Create(held);
-            u = Vector512.MinNative(Vector512.MaxNative(u, Vector512.Create(double.Epsilon * (1L << 52))), Vector512.Create(Uniforms.Greatest));
+            u = Vector512.MinNative(
+                Vector512.MaxNative(u, Vector512.Create(double.Epsilon * (1L << 52))), Vector512.Create(Uniforms.Greatest));
             var value = Vector512.Create(mean) + Vector512.Create(mirrored ? -sd : sd) * new InverseNormal().At(u);
             return Vector512.MinNative(Vector512.MaxNative(value, Vector512.Create(min)), Vector512.Create(max));
         }

@@ -34,7 +34,8 @@ internal static class Philox
     /// may be anything in the result.
     /// </summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    public static void Block(ref Vector512<ulong> c0, ref Vector512<ulong> c1, ref Vector512<ulong> c2, ref Vector512<ulong> c3, uint k0, uint k1)
+    public static void Block(
+        ref Vector512<ulong> c0, ref Vector512<ulong> c1, ref Vector512<ulong> c2, ref Vector512<ulong> c3, uint k0, uint k1)
     {
         var multiplierA = Vector512.Create((ulong)MultiplierA);
         var multiplierB = Vector512.Create((ulong)MultiplierB);

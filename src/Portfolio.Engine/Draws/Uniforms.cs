@@ -20,7 +20,9 @@ internal static class Uniforms
     /// <summary>Iterations served by one step of the wide loop.</summary>
     private const int Stride = 16;
 
-    /// <summary>Fills <paramref name="u"/> with the draws of the iterations from <paramref name="firstIteration"/> (≥ 0, below 2³³) on.</summary>
+    /// <summary>
+    /// Fills <paramref name="u"/> with the draws of the iterations from <paramref name="firstIteration"/> (≥ 0, below 2³³) on.
+    /// </summary>
     public static void Fill(ulong seed, ulong keyHash, long firstIteration, Span<double> u)
     {
         var done = 0;

@@ -3,7 +3,10 @@ using Portfolio.Engine.Networks;
 
 namespace Portfolio.Engine.Inputs;
 
-/// <summary>One iteration at the base values: no drivers, no events, the likeliest branches, the cost of responses taken (contract section 4, item 9).</summary>
+/// <summary>
+/// One iteration at the base values: no drivers, no events, the likeliest branches, the cost of responses taken (contract section 4, item
+/// 9).
+/// </summary>
 internal sealed class BaseInputs(Network network, EstimateSet estimates, EventSet events, ForkSet forks) : ChunkInputs
 {
     public override int Count => 1;

@@ -6,7 +6,8 @@ namespace Portfolio.Engine.Inputs;
 
 /// <summary>
 /// Draws the inputs of a chunk. <see cref="Begin"/> works what activities share: factors, drivers, events and branches; durations and
-/// costs are then drawn row by row. Each draw is a function of seed, key and iteration alone. Layout: rows of as many entries as the chunk has iterations.
+/// costs are then drawn row by row. Each draw is a function of seed, key and iteration alone. Layout: rows of as many entries as the chunk
+/// has iterations.
 /// </summary>
 internal sealed class DrawnInputs : ChunkInputs
 {
@@ -29,7 +30,8 @@ internal sealed class DrawnInputs : ChunkInputs
     private int _count;
 
     public DrawnInputs(
-        Network network, EstimateSet estimates, EventSet events, ForkSet forks, DependenceModel dependence, DriverFactors[] drivers, int capacity)
+        Network network, EstimateSet estimates, EventSet events, ForkSet forks, DependenceModel dependence, DriverFactors[] drivers,
+        int capacity)
     {
         (_network, _estimates, _events, _forks, _dependence, _drivers) = (network, estimates, events, forks, dependence, drivers);
         _factors = new double[network.Projects.Count * capacity];

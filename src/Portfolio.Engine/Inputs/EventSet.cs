@@ -53,7 +53,8 @@ internal sealed class EventSet
             var probability = taken?.Probability ?? stated.Probability;
             if (probability <= 0 || held?.Invoke(key) == true)
                 return;
-            var impacts = (taken?.Impacts ?? stated.Impacts).Select((x, k) => Impact(ownProject, project, x, $"{key}/impact/{k}")).OfType<CompiledImpact>();
+            var impacts = (taken?.Impacts ?? stated.Impacts)
+                .Select((x, k) => Impact(ownProject, project, x, $"{key}/impact/{k}")).OfType<CompiledImpact>();
             _events.Add(new CompiledEvent(DrawKey.Hash(key), probability, [.. impacts]));
         }
 
@@ -87,5 +88,7 @@ internal sealed class EventSet
 /// <summary>An event: it happens when its draw is below the probability.</summary>
 internal sealed record CompiledEvent(ulong Key, double Probability, CompiledImpact[] Impacts);
 
-/// <summary>An impact; its severity's key, the activity it acts on or −1, the project that pays, delay in working days, cost in money.</summary>
+/// <summary>
+/// An impact; its severity's key, the activity it acts on or −1, the project that pays, delay in working days, cost in money.
+/// </summary>
 internal sealed record CompiledImpact(ulong Key, int Activity, int Project, Marginal? Delay, Marginal? Cost);

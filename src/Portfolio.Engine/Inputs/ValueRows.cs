@@ -57,7 +57,8 @@ internal static class ValueRows
         var k = 0;
         for (; k <= scores.Length - Lanes; k += Lanes)
         {
-            var mixed = Vector512.Create(loading) * Vector512.LoadUnsafe(ref f, (nuint)k) + Vector512.Create(own) * Vector512.LoadUnsafe(ref s, (nuint)k);
+            var mixed = Vector512.Create(loading) * Vector512.LoadUnsafe(ref f, (nuint)k)
+                + Vector512.Create(own) * Vector512.LoadUnsafe(ref s, (nuint)k);
             mixed.StoreUnsafe(ref s, (nuint)k);
         }
         for (; k < scores.Length; k++)

@@ -31,7 +31,8 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
     }
 
     /// <summary>
-    /// Earliest starts by the status date, <c>earliestStart</c> and the links; with <paramref name="beforePools"/> by the links from work that
+    /// Earliest starts by the status date, <c>earliestStart</c> and the links; with <paramref name="beforePools"/> by the links from work
+    /// that
     /// no pool can move. Not yet moved to a working instant.
     /// </summary>
     public void EarliestStarts(int activity, Span<int> starts, Stages? beforePools)

@@ -33,7 +33,8 @@ internal static class InstantRows
         if (calendar.Working)
         {
             for (; k <= to.Length - Vector<int>.Count; k += Vector<int>.Count)
-                At(calendar, Vector.Max((new Vector<int>(from[k..]) >> calendar.GapBits) + new Vector<int>(lag), Vector<int>.Zero)).CopyTo(to[k..]);
+                At(calendar, Vector.Max((new Vector<int>(from[k..]) >> calendar.GapBits) + new Vector<int>(lag), Vector<int>.Zero))
+                    .CopyTo(to[k..]);
         }
         for (; k < to.Length; k++)
             to[k] = calendar.Shift(from[k], lag);

@@ -51,7 +51,9 @@ internal sealed class Network
 
     public required int[] Branch { get; init; }
 
-    /// <summary>Successors in compressed rows: those of activity a are <c>Successors[SuccessorStart[a] …]</c>, one entry per link.</summary>
+    /// <summary>
+    /// Successors in compressed rows: those of activity a are <c>Successors[SuccessorStart[a] …]</c>, one entry per link.
+    /// </summary>
     public required int[] SuccessorStart { get; init; }
 
     public required int[] Successors { get; init; }

@@ -44,7 +44,8 @@ internal static class NetworkBuilder
             Calendar = [.. activities.Select((x, a) => CalendarOf(x.Calendar ?? projects[projectOf[a]].Calendar))],
             ProjectCalendar = [.. projects.Select(p => CalendarOf(p.Calendar))],
             Status = [.. projectOf.Select(p => scale.BeginningOf(projects[p].StatusDate))],
-            EarliestStart = [.. activities.Select(x => x is { EarliestStart: { } d, Started: false } ? scale.BeginningOf(d) : Network.None)],
+            EarliestStart =
+                [.. activities.Select(x => x is { EarliestStart: { } d, Started: false } ? scale.BeginningOf(d) : Network.None)],
             ActualStart = [.. activities.Select(a => ActualStart(a, scale))],
             ActualFinish = [.. activities.Select(x => x.ActualFinish is { } d ? scale.EndOf(d) : Network.None)],
             LinkStart = linkStart,
@@ -67,7 +68,8 @@ internal static class NetworkBuilder
     };
 
     private static NetworkLink[] Links(
-        IReadOnlyList<Project> projects, Activity[] activities, int[] projectOf, Dictionary<(string, string), int> index, out int[] linkStart)
+        IReadOnlyList<Project> projects, Activity[] activities, int[] projectOf,
+        Dictionary<(string, string), int> index, out int[] linkStart)
     {
         linkStart = new int[activities.Length + 1];
         var links = new List<NetworkLink>(activities.Length * 2);
@@ -93,7 +95,8 @@ internal static class NetworkBuilder
     private static Dictionary<string, WorkTime> Calendars(PortfolioDocument document)
     {
         var first = document.Projects.Select(p => p.StatusDate)
-            .Concat(document.Projects.SelectMany(p => p.Activities).SelectMany(a => new[] { a.ActualStart, a.ActualFinish }).OfType<DateOnly>())
+            .Concat(document.Projects.SelectMany(p => p.Activities)
+                .SelectMany(a => new[] { a.ActualStart, a.ActualFinish }).OfType<DateOnly>())
             .DefaultIfEmpty(new DateOnly(1970, 1, 1)).Min();
         return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay)
             .ToDictionary(c => c.Id, c => new WorkTime(c, first.AddDays(-DaysBefore)), StringComparer.Ordinal);

@@ -8,7 +8,8 @@ internal static class Topology
     /// not linked do not disturb each other's order.
     /// </summary>
     /// <exception cref="ArgumentException">The links form a cycle; rules refuse such documents.</exception>
-    public static int[] Order(int[] linkStart, int[] successorStart, int[] successors) => Order(linkStart, successorStart, successors, null);
+    public static int[] Order(int[] linkStart, int[] successorStart, int[] successors) =>
+        Order(linkStart, successorStart, successors, null);
 
     /// <summary>As above, among those that are free the lowest rank first, then the lowest index.</summary>
     public static int[] Order(Network network, int[] rank) => Order(network.LinkStart, network.SuccessorStart, network.Successors, rank);

@@ -3,7 +3,9 @@ using Portfolio.Engine.Networks;
 
 namespace Portfolio.Engine.Pools;
 
-/// <summary>The order of rule <c>inOrder</c>: the sequence in which <c>passing</c> starts the base values (contract section 4, item 7).</summary>
+/// <summary>
+/// The order of rule <c>inOrder</c>: the sequence in which <c>passing</c> starts the base values (contract section 4, item 7).
+/// </summary>
 internal static class Line
 {
     /// <summary>All unfinished activities, by index, given the pool network of <see cref="Stages.Whole"/>.</summary>

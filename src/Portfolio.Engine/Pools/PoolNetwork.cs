@@ -53,7 +53,9 @@ internal sealed class PoolNetwork
     /// <summary>[local] base length, minutes.</summary>
     public required int[] BaseMinutes { get; init; }
 
-    /// <summary>[local] for work under way the first working instant from the status date on; nothing holds it back when it can resume then.</summary>
+    /// <summary>
+    /// [local] for work under way the first working instant from the status date on; nothing holds it back when it can resume then.
+    /// </summary>
     public required int[] Resumes { get; init; }
 
     /// <summary>Instants at which the capacity of a pool changes, rising.</summary>

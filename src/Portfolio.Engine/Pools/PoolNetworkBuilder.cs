@@ -81,7 +81,8 @@ internal static class PoolNetworkBuilder
     private static (int[] Start, int[] Successors) SuccessorsOf(int[] linkStart, NetworkLink[] links)
     {
         var n = linkStart.Length - 1;
-        var byPredecessor = Enumerable.Range(0, n).SelectMany(l => links[linkStart[l]..linkStart[l + 1]].Select(x => (x.Predecessor, Local: l)))
+        var byPredecessor = Enumerable.Range(0, n)
+            .SelectMany(l => links[linkStart[l]..linkStart[l + 1]].Select(x => (x.Predecessor, Local: l)))
             .OrderBy(x => x.Predecessor).ToArray();
         var start = new int[n + 1];
         foreach (var (predecessor, _) in byPredecessor)

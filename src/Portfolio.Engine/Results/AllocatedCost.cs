@@ -1,6 +1,9 @@
 namespace Portfolio.Engine.Results;
 
-/// <summary>A project's share of the portfolio's contingency at one level, minor units; the error is half its 95 % interval, null below 20 iterations.</summary>
+/// <summary>
+/// A project's share of the portfolio's contingency at one level, minor units; the error is half its 95 % interval, null below 20
+/// iterations.
+/// </summary>
 public readonly record struct Share(Level Level, long Allocated, long? Error);
 
 /// <summary>

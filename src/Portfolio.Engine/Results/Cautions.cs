@@ -17,15 +17,19 @@ public static class Cautions
     public static IReadOnlyList<Warning> Always { get; } =
     [
         new(CoversWhatWasEntered, "The figures cover only what was entered: work, costs and risks that nobody stated are not in them.", []),
-        new(SamplingIsNotInput, "The sampling bounds say how exactly the stated inputs were worked through, not how good those inputs are.", []),
+        new(SamplingIsNotInput,
+            "The sampling bounds say how exactly the stated inputs were worked through, not how good those inputs are.", []),
     ];
 
-    /// <summary>The cautions of a contingency: those of every result, and one when the projects' own levels make less than the total.</summary>
+    /// <summary>
+    /// The cautions of a contingency: those of every result, and one when the projects' own levels make less than the total.
+    /// </summary>
     public static IReadOnlyList<Warning> Of(Contingency contingency) => contingency.Diversification >= 0 ? Always :
     [
         .. Always,
         new(LevelsUnderAdd,
-            $"At level {contingency.Level} the projects' own contingencies add up to less than the portfolio needs, as they do when risks are rare: funding each project at its own level is not enough.",
+            $"At level {contingency.Level} the projects' own contingencies add up to less than the portfolio needs, "
+            + "as they do when risks are rare: funding each project at its own level is not enough.",
             []),
     ];
 }

@@ -74,7 +74,9 @@ internal ref struct CompactReader(ReadOnlySpan<byte> bytes)
     public Level Level(int before)
     {
         var millionths = (ulong)before + Math.Min(Unsigned(), int.MaxValue);
-        return millionths is > 0 and < 100_000_000 ? Results.Level.OfMillionths((int)millionths) : throw new FormatException("An impossible level.");
+        return millionths is > 0 and < 100_000_000
+            ? Results.Level.OfMillionths((int)millionths)
+            : throw new FormatException("An impossible level.");
     }
 
     private ReadOnlySpan<byte> Take(int count)

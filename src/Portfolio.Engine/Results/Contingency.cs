@@ -13,8 +13,10 @@ public sealed record ProjectCost(string Project, Grid Cost, AllocatedCost Alloca
 public sealed record Allocation(string Project, long Base, long Allocated, long? Error, long Standalone, double? Share);
 
 /// <summary>
-/// The money to hold above the base so that the portfolio keeps within it at a level, and whose it is. Whole minor units, so that everything
-/// adds up: the allocations make the total, and <see cref="Diversification"/> is what holding it together saves (negative when levels under-add).
+/// The money to hold above the base so that the portfolio keeps within it at a level, and whose it is. Whole minor units, so that
+/// everything
+/// adds up: the allocations make the total, and <see cref="Diversification"/> is what holding it together saves (negative when levels
+/// under-add).
 /// </summary>
 public sealed record Contingency(Level Level, long Base, long CostAtLevel, IReadOnlyList<Allocation> Allocations)
 {

@@ -2,7 +2,8 @@ namespace Portfolio.Engine.Results;
 
 /// <summary>
 /// A contingency at one level as bytes, little-endian with variable-length numbers: version, level, cost at the level, count, then of each
-/// project its id (UTF-8 with its length), base, allocation, error plus one (0 for none) and standalone. Everything else follows from these.
+/// project its id (UTF-8 with its length), base, allocation, error plus one (0 for none) and standalone. Everything else follows from
+/// these.
 /// </summary>
 public static class ContingencyBytes
 {
@@ -37,6 +38,8 @@ public static class ContingencyBytes
         var lines = new List<ContingencyLine>();
         for (var left = reader.Unsigned(); left > 0; left--)
             lines.Add(new(reader.Text(), reader.Signed(), reader.Signed(), reader.Optional(), reader.Signed()));
-        return reader.AtEnd ? Contingency.Of(level, costAtLevel, lines) : throw new FormatException("A contingency with something behind it.");
+        return reader.AtEnd
+            ? Contingency.Of(level, costAtLevel, lines)
+            : throw new FormatException("A contingency with something behind it.");
     }
 }

@@ -54,7 +54,8 @@ public sealed class CostAllocation
     private long[] Errors(ReadOnlySpan<double> costs, ReadOnlySpan<double> overall)
     {
         var bySection = new double[sections.Length][];
-        for (var s = 0; s < sections.Length; s++) sections[s].At(costs[SectionError.Of(s, iterations)], bySection[s] = new double[levels.Count]);
+        for (var s = 0; s < sections.Length; s++)
+            sections[s].At(costs[SectionError.Of(s, iterations)], bySection[s] = new double[levels.Count]);
         var result = new long[levels.Count];
         Span<double> section = stackalloc double[SectionError.Sections];
         for (var level = 0; level < result.Length; level++)

@@ -34,7 +34,8 @@ public sealed record CostSummary
         BaseProbability = grid.Probability(grid.Base)!.Value,
         Mean = MinorUnits.ToMoney((long)grid.Mean, digits),
         Sd = MinorUnits.ToMoney((long)Math.Round(grid.Sd, MidpointRounding.AwayFromZero), digits),
-        Percentiles = [.. levels.Select(level => At(grid, level, digits) ?? throw new ArgumentException($"The grid does not hold level {level}."))],
+        Percentiles =
+            [.. levels.Select(level => At(grid, level, digits) ?? throw new ArgumentException($"The grid does not hold level {level}."))],
         Commitment = grid.Commitment is { } commitment ? MinorUnits.ToMoney(commitment.Value, digits) : null,
         CommitmentProbability = grid.Probability(grid.Commitment),
     };

@@ -25,7 +25,8 @@ public static class DistributionTable
     /// <param name="weekEnds">Last day of a week.</param>
     /// <param name="most">More bins than this are not made.</param>
     /// <returns>Bins by date; null when there would be more than <paramref name="most"/>.</returns>
-    public static IReadOnlyList<Bin<DateOnly>>? OfFinish(ReadOnlySpan<int> finishes, DateRule dates, DateBin bin, DayOfWeek weekEnds, int most)
+    public static IReadOnlyList<Bin<DateOnly>>? OfFinish(
+        ReadOnlySpan<int> finishes, DateRule dates, DateBin bin, DayOfWeek weekEnds, int most)
     {
         using var sorted = SortedSamples.Of(finishes);
         var bins = new List<Bin<DateOnly>>();

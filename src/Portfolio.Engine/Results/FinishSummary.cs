@@ -3,7 +3,10 @@ namespace Portfolio.Engine.Results;
 /// <summary>The date at a level with its 95 % sampling bounds.</summary>
 public readonly record struct DatePercentile(Level Level, DateOnly Value, DateOnly? SamplingLow, DateOnly? SamplingHigh);
 
-/// <summary>When a scope is done, in dates. Probabilities are over the iterations in which it happens; without one, all but those of the base and the commitment's date are null or empty.</summary>
+/// <summary>
+/// When a scope is done, in dates. Probabilities are over the iterations in which it happens; without one, all but those of the base and
+/// the commitment's date are null or empty.
+/// </summary>
 public sealed record FinishSummary
 {
     public DateOnly? Base { get; init; }
@@ -38,7 +41,9 @@ public sealed record FinishSummary
             BaseProbability = grid.Probability(grid.Base),
             Mean = happens ? grid.Dates.Date(grid.Mean) : null,
             SdDays = happens ? grid.Sd / Instants.MinutesPerDay : null,
-            Percentiles = happens ? [.. levels.Select(level => At(grid, level) ?? throw new ArgumentException($"The grid does not hold level {level}."))] : [],
+            Percentiles = happens
+                ? [.. levels.Select(level => At(grid, level) ?? throw new ArgumentException($"The grid does not hold level {level}."))]
+                : [],
             Commitment = DateOf(grid.Commitment),
             CommitmentProbability = grid.Probability(grid.Commitment),
             Happens = grid.Happens,

@@ -59,7 +59,8 @@ public static class GridBytes
         var commitment = flags.HasFlag(Flags.Commitment) ? ReadReference(ref reader) : (Reference?)null;
         return new Grid(ReadPercentiles(ref reader))
         {
-            Metric = metric, Dates = dates, Iterations = iterations, Happening = happening, Mean = mean, Sd = sd, Base = basis, Commitment = commitment,
+            Metric = metric, Dates = dates, Iterations = iterations, Happening = happening, Mean = mean, Sd = sd, Base = basis,
+            Commitment = commitment,
         };
     }
 

@@ -27,7 +27,9 @@ public readonly record struct Level : IComparable<Level>
     /// <summary>The level of a percentage.</summary>
     /// <exception cref="ArgumentOutOfRangeException">Not above 0 and below 100, or with more than six decimals.</exception>
     public static Level Of(decimal percent) =>
-        TryOf(percent, out var level) ? level : throw new ArgumentOutOfRangeException(nameof(percent), percent, "A level lies above 0 and below 100 and has at most six decimals.");
+        TryOf(percent, out var level) ? level
+        : throw new ArgumentOutOfRangeException(
+            nameof(percent), percent, "A level lies above 0 and below 100 and has at most six decimals.");
 
     /// <summary>The level of a whole percentage, 1…99.</summary>
     public static Level Of(int percent) => Of((decimal)percent);

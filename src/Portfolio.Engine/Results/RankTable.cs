@@ -18,5 +18,6 @@ public sealed class RankTable(IReadOnlyList<Level> levels)
 
     /// <summary>The ranks of every level among n values, n at least 1.</summary>
     public IReadOnlyList<LevelRanks> For(int n) =>
-        known.GetOrAdd(n, static (n, levels) => [.. levels.Select(level => new LevelRanks(level, level.Rank(n), SamplingRanks.Of(level, n)))], Levels);
+        known.GetOrAdd(
+            n, static (n, levels) => [.. levels.Select(level => new LevelRanks(level, level.Rank(n), SamplingRanks.Of(level, n)))], Levels);
 }

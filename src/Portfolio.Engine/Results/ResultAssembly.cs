@@ -2,8 +2,11 @@ using Portfolio.Model.Documents;
 
 namespace Portfolio.Engine.Results;
 
-/// <summary>Makes the rows of one run: first every project by itself, adding it to its programme and the portfolio on the way; then the shares.</summary>
-internal sealed class ResultAssembly(PortfolioDocument document, SampleSource samples, IReadOnlyList<Level> levels, CancellationToken cancellation)
+/// <summary>
+/// Makes the rows of one run: first every project by itself, adding it to its programme and the portfolio on the way; then the shares.
+/// </summary>
+internal sealed class ResultAssembly(
+    PortfolioDocument document, SampleSource samples, IReadOnlyList<Level> levels, CancellationToken cancellation)
 {
     private readonly RankTable ranks = new(levels);
     private readonly int digits = Money.MinorDigits(document.Settings.Currency);
@@ -43,7 +46,8 @@ internal sealed class ResultAssembly(PortfolioDocument document, SampleSource sa
         cancellation.ThrowIfCancellationRequested();
         var (project, milestone) = (document.Projects[p], document.Projects[p].Activities[a]);
         var own = samples.Milestone(p, a);
-        var finish = Grids.OfFinish(own.Finishes.Span, ranks, DateRule.OfMilestone(project, milestone), own.BaseFinish, milestone.Commitment);
+        var finish = Grids.OfFinish(
+            own.Finishes.Span, ranks, DateRule.OfMilestone(project, milestone), own.BaseFinish, milestone.Commitment);
         return new(Scope.OfMilestone(project.Id, milestone.Id), finish, null, null);
     }
 
@@ -70,7 +74,9 @@ internal sealed class ResultAssembly(PortfolioDocument document, SampleSource sa
     private static long? Minor(decimal? amount, int digits) => amount is { } known ? MinorUnits.OfMoney(known, digits) : null;
 
     private static JointConfidence? Joint(ReadOnlySpan<int> finishes, ReadOnlySpan<double> costs, Commitments? promised, int digits) =>
-        promised is { Finish: { } finish, Budget: { } budget } ? JointConfidence.Of(finishes, costs, finish, MinorUnits.OfMoney(budget, digits)) : null;
+        promised is { Finish: { } finish, Budget: { } budget }
+            ? JointConfidence.Of(finishes, costs, finish, MinorUnits.OfMoney(budget, digits))
+            : null;
 
     /// <summary>Several projects taken together, with their base plans: the latest finish and the sum of costs.</summary>
     private sealed class Group(int iterations)

@@ -6,7 +6,8 @@ namespace Portfolio.Engine.Results;
 
 /// <summary>
 /// SHA-256 over all result rows: two runs agree when it does. Rows are taken in ordinal order of the written scope, whatever order they
-/// come in; of each the scope in UTF-8, the bytes of the finish grid and of the cost grid, and the joint row (day, minor units, count), each
+/// come in; of each the scope in UTF-8, the bytes of the finish grid and of the cost grid, and the joint row (day, minor units, count),
+/// each
 /// field with its length in front as a little-endian 32-bit number, 0 for one that is missing.
 /// </summary>
 public static class ResultDigest

@@ -19,7 +19,8 @@ public sealed record MilestoneSamples(ReadOnlyMemory<int> Finishes, int BaseFini
 public sealed record SampleSource(int Iterations, Func<int, ProjectSamples> Project, Func<int, int, MilestoneSamples> Milestone);
 
 /// <summary>All result rows of a run and what is kept of it for ever. Immutable.</summary>
-/// <param name="Rows">The portfolio, its programmes in the order in which the document first names them, then every project with its milestones behind it.</param>
+/// <param name="Rows">The portfolio, its programmes in the order in which the document first names them, then every project with its
+/// milestones behind it.</param>
 /// <param name="Projects">Cost and share of the contingency of each project with activities, in document order.</param>
 /// <param name="Digest">SHA-256 over the rows, hexadecimal.</param>
 public sealed record RunResults(IReadOnlyList<ScopeResult> Rows, IReadOnlyList<ProjectCost> Projects, string Digest)
@@ -29,6 +30,7 @@ public sealed record RunResults(IReadOnlyList<ScopeResult> Rows, IReadOnlyList<P
     /// <param name="samples">Where the iterations are read.</param>
     /// <param name="levels">Rising levels to keep: <see cref="Level.KeptAnd"/>.</param>
     /// <param name="cancellation">Asked between any two series.</param>
-    public static RunResults Of(PortfolioDocument document, SampleSource samples, IReadOnlyList<Level> levels, CancellationToken cancellation) =>
+    public static RunResults Of(
+        PortfolioDocument document, SampleSource samples, IReadOnlyList<Level> levels, CancellationToken cancellation) =>
         new ResultAssembly(document, samples, levels, cancellation).Assemble();
 }

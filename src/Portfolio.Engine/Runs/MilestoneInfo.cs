@@ -9,7 +9,8 @@ namespace Portfolio.Engine.Runs;
 /// <param name="InBranch">True when it stands in a chance branch, so that it may not happen.</param>
 public sealed record MilestoneInfo(int Project, Activity Activity, bool InBranch)
 {
-    internal static int[] Activities(Network network) => [.. Enumerable.Range(0, network.Count).Where(a => network.Activities[a].Milestone)];
+    internal static int[] Activities(Network network) =>
+        [.. Enumerable.Range(0, network.Count).Where(a => network.Activities[a].Milestone)];
 
     internal static IReadOnlyList<MilestoneInfo> List(Network network) =>
         [.. Activities(network).Select(a => new MilestoneInfo(network.ProjectOf[a], network.Activities[a], network.Fork[a] >= 0))];

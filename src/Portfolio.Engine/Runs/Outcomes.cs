@@ -31,7 +31,9 @@ internal sealed class Outcomes
         foreach (var (activity, place) in MilestoneInfo.Activities(_network).Select((a, m) => (a, m)))
             _milestone[activity] = place;
         if (plan.Pools is { } pools)
-            _dispatcher = plan.LocalLine is { } line ? new InOrderDispatcher(pools, _pass, _rows, line) : new PassingDispatcher(pools, _pass, _rows);
+            _dispatcher = plan.LocalLine is { } line
+                ? new InOrderDispatcher(pools, _pass, _rows, line)
+                : new PassingDispatcher(pools, _pass, _rows);
     }
 
     /// <summary>What the chunk last worked left; of every activity only with a full layout.</summary>
@@ -83,7 +85,8 @@ internal sealed class Outcomes
         if (_network.Fork[activity] < 0)
             _projects.Cover(_network.ProjectOf[activity], _rows.Start(activity, count), finish);
         else
-            _projects.CoverWhere(_network.ProjectOf[activity], _rows.Start(activity, count), finish, _inputs.Picks(_network.Fork[activity]), _network.Branch[activity]);
+            _projects.CoverWhere(_network.ProjectOf[activity], _rows.Start(activity, count), finish,
+                _inputs.Picks(_network.Fork[activity]), _network.Branch[activity]);
         if (_milestone[activity] >= 0)
             Reach(activity, finish, samples.MilestoneFinish[_milestone[activity]].AsSpan(offset, count));
     }

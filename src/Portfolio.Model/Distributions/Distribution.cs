@@ -16,13 +16,20 @@ public sealed record Constant(double Value) : Distribution;
 /// <summary>Every value between <paramref name="Low"/> and <paramref name="High"/> equally likely.</summary>
 public sealed record Uniform(double Low, double High) : Distribution;
 
-/// <summary>Triangular; <paramref name="LowPercentile"/> and <paramref name="HighPercentile"/> say what the ends mean (0 and 100: outer limits).</summary>
+/// <summary>
+/// Triangular; <paramref name="LowPercentile"/> and <paramref name="HighPercentile"/> say what the ends mean (0 and 100: outer limits).
+/// </summary>
 public sealed record Triangular(double Low, double Mode, double High, double LowPercentile = 0, double HighPercentile = 100) : Distribution;
 
-/// <summary>Beta between two ends with α = 1 + w(mode−low)/(high−low), β = 1 + w(high−mode)/(high−low), w = <paramref name="Weight"/>.</summary>
-public sealed record Pert(double Low, double Mode, double High, double Weight = 4, double LowPercentile = 0, double HighPercentile = 100) : Distribution;
+/// <summary>
+/// Beta between two ends with α = 1 + w(mode−low)/(high−low), β = 1 + w(high−mode)/(high−low), w = <paramref name="Weight"/>.
+/// </summary>
+public sealed record Pert(
+    double Low, double Mode, double High, double Weight = 4, double LowPercentile = 0, double HighPercentile = 100) : Distribution;
 
-/// <summary>Normal, truncated to [<paramref name="Min"/>, <paramref name="Max"/>] where given; the mean and sd are those before truncation.</summary>
+/// <summary>
+/// Normal, truncated to [<paramref name="Min"/>, <paramref name="Max"/>] where given; the mean and sd are those before truncation.
+/// </summary>
 public sealed record Normal(double Mean, double Sd, double? Min = null, double? Max = null) : Distribution;
 
 /// <summary>Lognormal by the mean and standard deviation of the quantity itself (not of its logarithm).</summary>
@@ -43,7 +50,10 @@ public sealed record Percentiles(IReadOnlyList<PercentilePoint> Points) : Distri
 /// <summary>The value not exceeded with <paramref name="P"/> percent probability.</summary>
 public readonly record struct PercentilePoint(double P, double Value);
 
-/// <summary>Stands where a distribution was sent that could not be read. Its faults are already known, so rules pass over it; no valid document holds one.</summary>
+/// <summary>
+/// Stands where a distribution was sent that could not be read. Its faults are already known, so rules pass over it; no valid document
+/// holds one.
+/// </summary>
 public sealed record Unreadable : Distribution
 {
     public static readonly Unreadable Instance = new();

@@ -22,7 +22,9 @@ public sealed record Dependence
     public bool Stated { get; init; }
 }
 
-/// <summary>Rank correlation, −1…1, of two nodes: <c>driver/{id}</c>, <c>project/{id}</c>, <c>portfolio</c> or <c>programme/{id}</c>.</summary>
+/// <summary>
+/// Rank correlation, −1…1, of two nodes: <c>driver/{id}</c>, <c>project/{id}</c>, <c>portfolio</c> or <c>programme/{id}</c>.
+/// </summary>
 public readonly record struct RankPair(string First, string Second, double Rank);
 
 /// <summary>What to do with correlations that contradict each other.</summary>

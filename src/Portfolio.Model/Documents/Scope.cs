@@ -9,7 +9,9 @@ public enum ScopeKind
     Milestone,
 }
 
-/// <summary>What a result is about, with the ids that name it. Written <c>portfolio</c>, <c>programme/p</c>, <c>project/p</c>, <c>milestone/p/a</c>.</summary>
+/// <summary>
+/// What a result is about, with the ids that name it. Written <c>portfolio</c>, <c>programme/p</c>, <c>project/p</c>, <c>milestone/p/a</c>.
+/// </summary>
 public sealed record Scope(ScopeKind Kind, string? Programme = null, string? Project = null, string? Activity = null)
 {
     public static readonly Scope Portfolio = new(ScopeKind.Portfolio);

@@ -1,6 +1,8 @@
 namespace Portfolio.Model.Documents;
 
-/// <summary>Which days are worked: the weekdays, less <see cref="NonWorkingDates"/>, plus <see cref="ExtraWorkingDates"/> (these win).</summary>
+/// <summary>
+/// Which days are worked: the weekdays, less <see cref="NonWorkingDates"/>, plus <see cref="ExtraWorkingDates"/> (these win).
+/// </summary>
 public sealed record WorkCalendar(
     string Id, IReadOnlyList<DayOfWeek> WorkingWeekdays, IReadOnlyList<DateOnly> NonWorkingDates, IReadOnlyList<DateOnly> ExtraWorkingDates)
 {

@@ -21,7 +21,8 @@ internal sealed record EventOwner(Place At, ModelLimits Limits, int MinorDigits,
 
     public Fault? Payer(Response response, Place at) => (Project, response.Project) switch
     {
-        (null, null) => at.Fault(RuleCodes.ResponsePayer, "A response to an event of the portfolio must name the project that pays for it."),
+        (null, null) => at.Fault(
+            RuleCodes.ResponsePayer, "A response to an event of the portfolio must name the project that pays for it."),
         ({ } own, not null) => at.Under("project").Fault(
             RuleCodes.ResponsePayer, "The response names a payer; responses in a project are always paid by it, "
             + $"here {own.Project.Id}."),

@@ -8,7 +8,8 @@ namespace Portfolio.Server.Contracts;
 
 /// <summary>Generated writers and readers of everything on the wire but the portfolio document.</summary>
 [JsonSourceGenerationOptions(
-    JsonSerializerDefaults.Strict, PropertyNamingPolicy = JsonKnownNamingPolicy.CamelCase, DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
+    JsonSerializerDefaults.Strict, PropertyNamingPolicy = JsonKnownNamingPolicy.CamelCase,
+    DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
 [JsonSerializable(typeof(ProblemJson))]
 [JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
 [JsonSerializable(typeof(PageJson<RevisionJson>))]

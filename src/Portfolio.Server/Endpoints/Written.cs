@@ -21,7 +21,8 @@ internal static class Written
     private static IResult Done(HttpContext http, string portfolio, WriteResult result, string? tag)
     {
         http.Response.Headers[HeaderNames.ETag] = tag;
-        var written = new WrittenJson { Portfolio = portfolio, Revision = result.Revision, Changed = result.Outcome == WriteOutcome.Accepted };
+        var written =
+            new WrittenJson { Portfolio = portfolio, Revision = result.Revision, Changed = result.Outcome == WriteOutcome.Accepted };
         return result.Created ? TypedResults.Created(http.Request.Path, written) : TypedResults.Ok(written);
     }
 }

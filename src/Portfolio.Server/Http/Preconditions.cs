@@ -23,7 +23,9 @@ internal sealed class Preconditions(HttpRequest request)
     {
         if (match.Count > 0 && (current is null || !Names(match, current, strongly: true)))
             return Problem.PreconditionFailed();
-        return noneMatch.Count > 0 && current is not null && Names(noneMatch, current, strongly: false) ? Problem.PreconditionFailed() : null;
+        return noneMatch.Count > 0 && current is not null && Names(noneMatch, current, strongly: false)
+            ? Problem.PreconditionFailed()
+            : null;
     }
 
     /// <summary>For a read: true when the client has it already (304).</summary>

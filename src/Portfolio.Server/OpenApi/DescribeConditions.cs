@@ -31,5 +31,6 @@ internal static class DescribeConditions
         });
 
     private static OpenApiHeader EntityTag() =>
-        new() { Description = "Strong entity tag of what is answered or written.", Schema = new OpenApiSchema { Type = JsonSchemaType.String } };
+        new() { Description = "Strong entity tag of what is answered or written.",
+            Schema = new OpenApiSchema { Type = JsonSchemaType.String } };
 }

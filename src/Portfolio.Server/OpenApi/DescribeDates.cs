@@ -3,7 +3,9 @@ using Microsoft.OpenApi;
 
 namespace Portfolio.Server.OpenApi;
 
-/// <summary>Dates in the query are read as text, so that a wrong one is named among other faults; the description says what they are.</summary>
+/// <summary>
+/// Dates in the query are read as text, so that a wrong one is named among other faults; the description says what they are.
+/// </summary>
 internal static class DescribeDates
 {
     private static readonly string[] Dates = ["asOf", "from", "to"];

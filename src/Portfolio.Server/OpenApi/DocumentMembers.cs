@@ -25,7 +25,8 @@ internal static class DocumentMembers
 
     public static readonly IReadOnlySet<string> Dates = new HashSet<string>(StringComparer.Ordinal)
     {
-        "statusDate", "finish", "commitment", "earliestStart", "actualStart", "actualFinish", "from", "nonWorkingDates", "extraWorkingDates",
+        "statusDate", "finish", "commitment", "earliestStart", "actualStart", "actualFinish", "from", "nonWorkingDates",
+        "extraWorkingDates",
     };
 
     public static readonly IReadOnlyDictionary<string, IReadOnlyList<string>> Words = new Dictionary<string, IReadOnlyList<string>>

@@ -31,7 +31,8 @@ internal static class OpenAnswers
         }
         if (schema is not OpenApiSchema whole)
             return;
-        IEnumerable<IOpenApiSchema?> inside = [.. whole.Properties?.Values ?? [], .. whole.OneOf ?? [], whole.Items, whole.AdditionalProperties];
+        IEnumerable<IOpenApiSchema?> inside =
+            [.. whole.Properties?.Values ?? [], .. whole.OneOf ?? [], whole.Items, whole.AdditionalProperties];
         foreach (var part in inside)
             Close(part, schemas, closed);
     }

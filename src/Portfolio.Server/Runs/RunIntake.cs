@@ -86,7 +86,8 @@ internal sealed class RunIntake(
         RunRequestOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
         RunRequestOutcome.DateHeld => Problem.Conflict(
             "date-closed", "The date is closed",
-            $"{run.AsOf:yyyy-MM-dd} has ended, and run {result.Run?.Id} stands or will stand for it; 'replaces' puts another in its place."),
+            $"{run.AsOf:yyyy-MM-dd} has ended, and run {result.Run?.Id} stands or will stand for it; "
+            + "'replaces' puts another in its place."),
         RunRequestOutcome.ReplacesNotThePoint => Problem.Conflict(
             "not-the-point", "The run does not stand for its date",
             result.Run is { } point

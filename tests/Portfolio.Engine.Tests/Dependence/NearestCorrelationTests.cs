@@ -7,7 +7,8 @@ public sealed class NearestCorrelationTests
 {
     private const double Close = 1e-8;
 
-    // Higham, IMA J. Numer. Anal. 22(3), 2002: tridiag(−1, 2, −1); the four-decimal answer is also printed with NAG g02aa, twelve digits from R 4.2.2, Matrix 1.5.3 nearPD.
+    // Higham, IMA J. Numer. Anal. 22(3), 2002: tridiag(−1, 2, −1); the four-decimal answer is also printed with NAG g02aa, twelve digits
+    // from R 4.2.2, Matrix 1.5.3 nearPD.
     [Fact]
     public void Higham_four_by_four()
     {
@@ -31,7 +32,8 @@ public sealed class NearestCorrelationTests
         Assert.Equal(-0.0277586941, found.Value.Value, 1e-9);
     }
 
-    // By hand: eigenvalues −.8, 1.9, 1.9; shrinking by t = .8/1.8 gives ±.5, here also the nearest (Higham, Strabić and Šego, SIAM Review 58(2), 2016).
+    // By hand: eigenvalues −.8, 1.9, 1.9; shrinking by t = .8/1.8 gives ±.5, here also the nearest (Higham, Strabić and Šego, SIAM Review
+    // 58(2), 2016).
     [Fact]
     public void Three_that_cannot_be()
     {

@@ -4,7 +4,10 @@ using Xunit;
 
 namespace Portfolio.Engine.Tests.Distributions;
 
-/// <summary>Quantiles, means and deviations against other libraries: SciPy 1.10.1, mpmath 1.2.1 and R 4.2.2 (which agree to 12 digits) unless a test names another source.</summary>
+/// <summary>
+/// Quantiles, means and deviations against other libraries: SciPy 1.10.1, mpmath 1.2.1 and R 4.2.2 (which agree to 12 digits) unless a test
+/// names another source.
+/// </summary>
 public sealed class QuantileTests
 {
     private const double Closed = 1e-12, Iterated = 1e-10;

@@ -5,7 +5,8 @@ namespace Portfolio.Engine.Tests.Draws;
 
 public sealed class PhiloxTests
 {
-    // First three rows: Random123, commit 9545ff6, tests/kat_vectors, lines 24–29 (philox4x32, 10 rounds). The rest: an independent implementation in Python.
+    // First three rows: Random123, commit 9545ff6, tests/kat_vectors, lines 24–29 (philox4x32, 10 rounds). The rest: an independent
+    // implementation in Python.
     [Theory]
     [InlineData(0u, 0u, 0u, 0u, 0u, 0u, 0x6627e8d5u, 0xe169c58du, 0xbc57ac4cu, 0x9b00dbd8u)]
     [InlineData(~0u, ~0u, ~0u, ~0u, ~0u, ~0u, 0x408f276du, 0x41c83b0eu, 0xa20bc7c6u, 0x6d5451fdu)]

@@ -4,7 +4,9 @@ using static Portfolio.Engine.Tests.TestPlan;
 
 namespace Portfolio.Engine.Tests.Networks;
 
-/// <summary>Small random networks of one project for properties that hold whatever the network; the same seed makes the same network.</summary>
+/// <summary>
+/// Small random networks of one project for properties that hold whatever the network; the same seed makes the same network.
+/// </summary>
 internal sealed class RandomNetwork
 {
     private static readonly Pool[] NoPools = [];

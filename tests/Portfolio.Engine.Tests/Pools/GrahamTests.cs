@@ -7,9 +7,11 @@ using static Portfolio.Engine.Tests.TestPlan;
 namespace Portfolio.Engine.Tests.Pools;
 
 /// <summary>
-/// R. L. Graham, Bounds on multiprocessing timing anomalies, SIAM J. Applied Mathematics 17(2), 1969, 416–429: nine tasks on three machines,
+/// R. L. Graham, Bounds on multiprocessing timing anomalies, SIAM J. Applied Mathematics 17(2), 1969, 416–429: nine tasks on three
+/// machines,
 /// T1 before T9, T4 before T5 … T8. Under a rule that lets others pass, more machines, shorter tasks, fewer arcs or another list make the
-/// whole later; when an order is kept nothing does (activity-based policy; F. Stork, Stochastic resource-constrained project scheduling, 2001).
+/// whole later; when an order is kept nothing does (activity-based policy; F. Stork, Stochastic resource-constrained project scheduling,
+/// 2001).
 /// </summary>
 public sealed class GrahamTests
 {

@@ -35,7 +35,9 @@ public sealed class KeptOrderTests
         }
     }
 
-    /// <summary>The anomaly that the kept order excludes does occur under <c>passing</c>; otherwise these networks would show nothing.</summary>
+    /// <summary>
+    /// The anomaly that the kept order excludes does occur under <c>passing</c>; otherwise these networks would show nothing.
+    /// </summary>
     [Fact]
     public void UnderPassingShorterWorkDoesMakeSomethingLater()
     {

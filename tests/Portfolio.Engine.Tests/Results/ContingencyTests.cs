@@ -13,7 +13,8 @@ public sealed class ContingencyTests
     private static readonly RankTable Table = new([Level.Of(0.5), Level.Of(50), P80, Level.Of(99.5)]);
 
     /// <summary>
-    /// Three joint normals, means 100, 200, 150, sds 20, 50, 30, correlations .3, .1, .2. Total variance 5120; P80 510.22151326644; Euler shares
+    /// Three joint normals, means 100, 200, 150, sds 20, 50, 30, correlations .3, .1, .2. Total variance 5120; P80 510.22151326644; Euler
+    /// shares
     /// Cov(X, T)/Var(T) = .1484375, .60546875, .24609375 (Tasche 1999; values by SciPy). Local fits are unbiased here: E[X | T] is a line.
     /// </summary>
     [Theory]
@@ -27,12 +28,14 @@ public sealed class ContingencyTests
         var sd = Math.Sqrt(5120);
         var se = 1.42876573863094 * sd / Math.Sqrt(n); // √(p(1 − p)/n)/f of a normal at .8
         Assert.Equal(510.22151326644, result.CostAtLevel / Scale, 4 * se);
-        Assert.Equal(534.162123357291 - bases.Sum(), result.SumOfStandalone / Scale, 4 * 1.42876573863094 * 100 / Math.Sqrt(n)); // sds sum to 100
+        // sds sum to 100
+        Assert.Equal(534.162123357291 - bases.Sum(), result.SumOfStandalone / Scale, 4 * 1.42876573863094 * 100 / Math.Sqrt(n));
         Assert.Equal(23.940610090851, result.Diversification / Scale, 4 * 1.42876573863094 * 100 / Math.Sqrt(n));
         for (var i = 0; i < 3; i++)
         {
             var allocation = result.Allocations[i];
-            Assert.InRange(allocation.Error!.Value / Scale, 0.02, 0.5); // the shares' errors lie between .05 and .3: a 95 % interval of 2.093 se
+            // the shares' errors lie between .05 and .3: a 95 % interval of 2.093 se
+            Assert.InRange(allocation.Error!.Value / Scale, 0.02, 0.5);
             Assert.Equal(shares[i], allocation.Allocated / Scale, 4 * allocation.Error.Value / Scale / 2.093);
         }
         Assert.Equal(result.Total, result.Allocations.Sum(allocation => allocation.Allocated));
@@ -116,7 +119,8 @@ public sealed class ContingencyTests
     public void ATotalWithoutSpreadIsSharedByTheMeans()
     {
         double[][] projects = [[1, 3, 1, 3], [3, 1, 3, 1]];
-        Assert.Equal([3, 1], At(Level.Of(50), projects, [0, 0]).Allocations.Select(allocation => allocation.Allocated)); // n/10 < 1: the one iteration at rank 2, ties in their order
+        // n/10 < 1: the one iteration at rank 2, ties in their order
+        Assert.Equal([3, 1], At(Level.Of(50), projects, [0, 0]).Allocations.Select(allocation => allocation.Allocated));
         var wide = projects.Select(costs => Enumerable.Repeat(costs, 10).SelectMany(x => x).ToArray()).ToArray();
         Assert.Equal(4, At(Level.Of(50), wide, [0, 0]).Allocations.Sum(allocation => allocation.Allocated));
         Assert.Null(At(Level.Of(50), projects, [2, 2]).Allocations[0].Share);

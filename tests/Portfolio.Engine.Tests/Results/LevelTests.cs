@@ -17,7 +17,8 @@ public sealed class LevelTests
     [InlineData(99.999999, 1_000_000, 1_000_000)]
     public void RankIsExact(double percent, int n, int rank) => Assert.Equal(rank, Level.Of(percent).Rank(n));
 
-    // Hyndman and Fan, "Sample quantiles in statistical packages", The American Statistician 50(4), 1996, definition 1; R, quantile(type = 1).
+    // Hyndman and Fan, "Sample quantiles in statistical packages", The American Statistician 50(4), 1996, definition 1; R, quantile(type =
+    // 1).
     [Theory]
     [InlineData(10, 3)]
     [InlineData(25, 7)]

@@ -4,7 +4,9 @@ using Xunit;
 
 namespace Portfolio.Engine.Tests.Results;
 
-/// <summary>Three projects over the ten scenarios whose totals are worked out by hand in <see cref="GridTests"/>, and one without activities.</summary>
+/// <summary>
+/// Three projects over the ten scenarios whose totals are worked out by hand in <see cref="GridTests"/>, and one without activities.
+/// </summary>
 public sealed class RunResultsTests
 {
     private const int Day = Instants.MinutesPerDay;
@@ -41,7 +43,8 @@ public sealed class RunResultsTests
         // finish of a scenario: the greatest of its three costs, in days: 10, 9, 8, 9, 12, 3, 8, 5, 9, 10
         Assert.Equal(9 * Day, portfolio.Finish.At(Level.Of(50))!.Value.Value);
         Assert.Equal(5 * Day, portfolio.Finish.At(Level.Of(20))!.Value.Value);
-        Assert.Equal(0.9, FinishSummary.Of(portfolio.Finish, [Level.Of(50)]).CommitmentProbability); // 12 days end on day 11, promised is day 10
+        // 12 days end on day 11, promised is day 10
+        Assert.Equal(0.9, FinishSummary.Of(portfolio.Finish, [Level.Of(50)]).CommitmentProbability);
     }
 
     [Fact] // seven scenarios cost no more than 20, one of them takes 12 days

@@ -14,7 +14,9 @@ internal static class Agreement
 {
     private const double Width = 4; // standard errors
 
-    /// <summary>Every figure further apart than four standard errors of the difference; finishes, which move in whole days, and one day.</summary>
+    /// <summary>
+    /// Every figure further apart than four standard errors of the difference; finishes, which move in whole days, and one day.
+    /// </summary>
     public static string Differences(Plan plan, Samples samples, OracleAnswer<OracleFigures> outside)
     {
         var found = new StringBuilder();
@@ -29,7 +31,9 @@ internal static class Agreement
         return found.ToString();
     }
 
-    /// <summary>Finish and cost of projects, programmes and the portfolio; finishes of milestones in the iterations in which they happen.</summary>
+    /// <summary>
+    /// Finish and cost of projects, programmes and the portfolio; finishes of milestones in the iterations in which they happen.
+    /// </summary>
     private static IEnumerable<(string Scope, IEnumerable<int> Finish, IEnumerable<double> Cost)> Series(Plan plan, Samples samples)
     {
         var projects = plan.Document.Projects;

@@ -6,7 +6,9 @@ using Portfolio.Model.Documents;
 
 namespace Portfolio.Server.Tests.Outside;
 
-/// <summary>Base values against a simulator that shares no code: to the day and the cent, on documents that use every rule at once.</summary>
+/// <summary>
+/// Base values against a simulator that shares no code: to the day and the cent, on documents that use every rule at once.
+/// </summary>
 public sealed class BaseValueTests
 {
     // In few documents one of these decides a date; found among thousands by leaving the rule out on one side.

@@ -97,7 +97,9 @@ public sealed class RepeatabilityTests
         }
     }
 
-    /// <summary>Costs are then added in another sequence, so that a sum just at half a minor unit may be rounded to the other side.</summary>
+    /// <summary>
+    /// Costs are then added in another sequence, so that a sum just at half a minor unit may be rounded to the other side.
+    /// </summary>
     [Fact]
     public void PermutingActivitiesChangesNoDraw()
     {

@@ -10,7 +10,9 @@ public sealed class SimulationTests
 {
     private const int Iterations = 20_000;
 
-    /// <summary>The simulator outside takes milliseconds for an iteration with pools; such documents are small unless tests may take long.</summary>
+    /// <summary>
+    /// The simulator outside takes milliseconds for an iteration with pools; such documents are small unless tests may take long.
+    /// </summary>
     [Theory]
     [InlineData(4, 50, 0, null, 20_000, false)]
     [InlineData(2, 20, 2, "passing", 2_000, false)]

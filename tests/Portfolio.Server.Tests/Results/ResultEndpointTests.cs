@@ -161,7 +161,8 @@ public sealed class ResultEndpointTests(FinishedRunFixture fixture) : IClassFixt
         Assert.Equal("text/csv", response.Content.Headers.ContentType!.MediaType);
         var lines = (await response.TextAsync()).Split("\r\n");
         Assert.StartsWith("scope,run,asOf,revision,happens,level,finish,", lines[0], StringComparison.Ordinal);
-        Assert.Equal(1 + 8 * 3 + 1, lines.Length); // header, eight scopes at three levels each whatever the limit, and the end of the last line
+        // header, eight scopes at three levels each whatever the limit, and the end of the last line
+        Assert.Equal(1 + 8 * 3 + 1, lines.Length);
         Assert.StartsWith($"portfolio,{fixture.Run},2027-01-03,1,,50,", lines[1], StringComparison.Ordinal);
         var accepting = new HttpRequestMessage(HttpMethod.Get, Results);
         accepting.Headers.Accept.Add(new MediaTypeWithQualityHeaderValue("application/json", 0.5));

@@ -4,7 +4,9 @@ using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Results;
 
-/// <summary>Five points: Saturday and Sunday of one week (weeks end on Sunday), the two days after, and a first day of the next month.</summary>
+/// <summary>
+/// Five points: Saturday and Sunday of one week (weeks end on Sunday), the two days after, and a first day of the next month.
+/// </summary>
 public sealed class SeriesFixture : IAsyncLifetime
 {
     internal static readonly DateOnly[] Dates = [new(2026, 11, 28), new(2026, 11, 29), new(2026, 11, 30), new(2026, 12, 1), new(2027, 1, 3)];

@@ -3,7 +3,9 @@ using Portfolio.Server.Schedules;
 
 namespace Portfolio.Server.Tests.Schedules;
 
-/// <summary>Three years in zones with clock changes of every kind, one of them a leap year, with sweeps that come late, twice, or not for days.</summary>
+/// <summary>
+/// Three years in zones with clock changes of every kind, one of them a leap year, with sweeps that come late, twice, or not for days.
+/// </summary>
 public sealed class DuePropertyTests
 {
     private static readonly DateTimeOffset Start = new(2026, 6, 30, 23, 59, 0, TimeSpan.Zero);

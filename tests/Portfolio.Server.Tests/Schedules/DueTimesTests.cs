@@ -5,7 +5,8 @@ namespace Portfolio.Server.Tests.Schedules;
 
 public sealed class DueTimesTests
 {
-    // Clock changes by the IANA time zone database: Berlin 2027-03-28 02:00 to 03:00 and 2027-10-31 03:00 to 02:00; Lord Howe by half an hour; Cairo and
+    // Clock changes by the IANA time zone database: Berlin 2027-03-28 02:00 to 03:00 and 2027-10-31 03:00 to 02:00; Lord Howe by half an
+    // hour; Cairo and
     // Havana skip midnight; Apia left out 2011-12-30.
     [Theory]
     [InlineData("30 2 * * *", "UTC", "2027-03-28", "2027-03-28T02:30:00Z")]

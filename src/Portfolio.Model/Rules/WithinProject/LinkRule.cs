@@ -30,11 +30,13 @@ internal static class LinkRule
         if (project is null && activity == id) return At(placed, i, k).Fault(RuleCodes.LinkSelf, $"{placed.Name(i)} is linked to itself.");
         if (project is null && !placed.Has(activity))
             return At(placed, i, k).Fault(
-                RuleCodes.ActivityUnknown, $"{placed.Name(i)} waits for {TextRule.Shown(activity)}, which is no activity of {placed.Project.Id}.");
+                RuleCodes.ActivityUnknown,
+                $"{placed.Name(i)} waits for {TextRule.Shown(activity)}, which is no activity of {placed.Project.Id}.");
         return seen.Add(project is null ? link with { Activity = activity } : link)
             ? null
             : At(placed, i, k).Fault(
-                RuleCodes.LinkRepeated, $"{placed.Name(i)} has the same link to {TextRule.Shown(link.Activity)} twice, with the same type and lag.");
+                RuleCodes.LinkRepeated,
+                $"{placed.Name(i)} has the same link to {TextRule.Shown(link.Activity)} twice, with the same type and lag.");
     }
 
     private static Fault Lag(Link link, PlacedProject placed, int i, int k) =>

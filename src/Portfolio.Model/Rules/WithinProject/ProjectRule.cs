@@ -36,7 +36,8 @@ internal static class ProjectRule
         if (overhead.PerDay < 0)
             yield return at.Under("perDay").Fault(RuleCodes.MoneyNegative,
                 $"The overhead is {overhead.PerDay} a day; it must be 0 or more.");
-        else if (ValueRule.Within(overhead.PerDay, 0, Bounds.Money, "overhead", RuleCodes.MoneyRange, () => at.Under("perDay")) is { } range)
+        else if (ValueRule.Within(
+            overhead.PerDay, 0, Bounds.Money, "overhead", RuleCodes.MoneyRange, () => at.Under("perDay")) is { } range)
             yield return range;
         if (ValueRule.Money(overhead.Actual, placed.Context.MinorDigits, () => at.Under("actual"), negativeAllowed: true) is { } actual)
             yield return actual;

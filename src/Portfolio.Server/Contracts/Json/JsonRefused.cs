@@ -58,7 +58,8 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
         }
         var (line, column) = Position(json, stop);
         return new JsonRefused(
-            new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed, $"The text is not valid JSON at line {line}, column {column}."),
+            new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed,
+                $"The text is not valid JSON at line {line}, column {column}."),
             line, column);
     }
 
