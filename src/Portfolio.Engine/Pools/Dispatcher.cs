@@ -13,26 +13,20 @@ internal abstract class Dispatcher
 
     private readonly ForwardPass _pass;
     private readonly ScheduleRows _rows;
-    private readonly bool[] _branched; // [local] stands in a chance branch
     private readonly int[] _work, _starts, _finishes; // [iteration][local]
 
     protected Dispatcher(PoolNetwork pools, ForwardPass pass, ScheduleRows rows)
     {
         (Pools, _pass, _rows) = (pools, pass, rows);
-        _branched = [.. pools.Activity.Select(a => pools.Network.Fork[a] >= 0)];
-        (Work, Starts, Finishes) = (new int[pools.Count], new int[pools.Count], new int[pools.Count]);
+        State = new LocalState[pools.Count];
         var turned = pools.Count * rows.Capacity;
         (_work, _starts, _finishes) = (new int[turned], new int[turned], new int[turned]);
     }
 
     protected PoolNetwork Pools { get; }
 
-    /// <summary>[local] minutes of work in this iteration.</summary>
-    protected int[] Work { get; }
-
-    protected int[] Starts { get; }
-
-    protected int[] Finishes { get; }
+    /// <summary>[local] what is known in the iteration at work; starts are earliest starts until the dates are known.</summary>
+    protected LocalState[] State { get; }
 
     /// <summary>Iteration of the chunk at work.</summary>
     protected int Iteration { get; private set; }
@@ -46,11 +40,11 @@ internal abstract class Dispatcher
         for (Iteration = 0; Iteration < count; Iteration++)
         {
             var at = Iteration * Pools.Count;
-            _work.AsSpan(at, Pools.Count).CopyTo(Work);
-            _starts.AsSpan(at, Pools.Count).CopyTo(Starts);
+            for (var l = 0; l < State.Length; l++)
+                State[l] = new LocalState { Work = _work[at + l], Start = _starts[at + l], Left = Pools.Facts[l + 1].FirstLink - Pools.Facts[l].FirstLink };
             Dispatch();
-            Starts.CopyTo(_starts.AsSpan(at));
-            Finishes.CopyTo(_finishes.AsSpan(at));
+            for (var l = 0; l < State.Length; l++)
+                (_starts[at + l], _finishes[at + l]) = (State[l].Start, State[l].Finish);
         }
         for (var l = 0; l < Pools.Count; l += Tile)
             TurnBack(l, count);
@@ -58,28 +52,28 @@ internal abstract class Dispatcher
 
     protected abstract void Dispatch();
 
-    protected bool Absent(int local) => _branched[local] && _pass.Absent(Pools.Activity[local], Iteration);
+    protected bool Absent(int local) => Pools.Facts[local].Branched && _pass.Absent(Pools.Activity[local], Iteration);
 
     /// <summary>Started, and nothing holds the remaining work back.</summary>
-    protected bool UnderWay(int local, int earliest) => earliest <= Pools.Resumes[local];
+    protected bool UnderWay(int local, int earliest) => earliest <= Pools.Facts[local].Resumes;
 
     /// <summary>The earliest start by all links; those from work that pools move are added to what the rows hold.</summary>
     protected int EarliestStart(int local)
     {
-        var earliest = Starts[local];
-        var calendar = Pools.Calendar[local];
+        var (earliest, work) = (State[local].Start, State[local].Work);
+        var calendar = Pools.Calendar(local);
         foreach (ref readonly var link in Pools.LinksOf(local))
         {
-            var bound = link.FromFinish ? Finishes[link.Predecessor] : ActualOrStart(link.Predecessor);
+            var bound = link.FromFinish ? State[link.Predecessor].Finish : ActualOrStart(link.Predecessor);
             if (link.Lag != 0 && !Absent(local) && !Absent(link.Predecessor))
                 bound = calendar.Shift(bound, link.Lag);
-            earliest = Math.Max(earliest, link.ToStart ? bound : calendar.Back(bound, Work[local]));
+            earliest = Math.Max(earliest, link.ToStart ? bound : calendar.Back(bound, work));
         }
-        return Work[local] > 0 ? calendar.Begin(earliest) : earliest;
+        return work > 0 ? calendar.Begin(earliest) : earliest;
     }
 
     // Links from the start of work under way count from when it really started.
-    private int ActualOrStart(int local) => Pools.Started(local) ? Pools.Network.ActualStart[Pools.Activity[local]] : Starts[local];
+    private int ActualOrStart(int local) => Pools.Started(local) ? Pools.Network.ActualStart[Pools.Activity[local]] : State[local].Start;
 
     private void Turn(int first, int count)
     {
@@ -104,4 +98,10 @@ internal abstract class Dispatcher
                 starts.Fill(Pools.Network.ActualStart[Pools.Activity[l]]);
         }
     }
+}
+
+/// <summary>An activity in one iteration: minutes of work, start and finish, and how many predecessors' dates are not known yet.</summary>
+internal struct LocalState
+{
+    public int Work, Start, Finish, Left;
 }

@@ -41,12 +41,12 @@ internal sealed class InOrderDispatcher : Dispatcher
         _known[local] = int.MinValue;
         foreach (ref readonly var link in Pools.LinksOf(local))
             _known[local] = Math.Max(_known[local], _known[link.Predecessor]);
-        var demands = Pools.Rank[local] >= 0 && !Absent(local);
+        var demands = Pools.Facts[local].Rank >= 0 && !Absent(local);
         if (demands && !UnderWay(local, start))
             _known[local] = start = Wait(local, start);
-        (Starts[local], Finishes[local]) = (start, Pools.Calendar[local].Add(start, Work[local]));
-        if (demands && Work[local] > 0)
-            Hold(local, Finishes[local]);
+        (State[local].Start, State[local].Finish) = (start, Pools.Calendar(local).Add(start, State[local].Work));
+        if (demands && State[local].Work > 0)
+            Hold(local, State[local].Finish);
     }
 
     // The earliest instant from which the units are free.
@@ -55,8 +55,8 @@ internal sealed class InOrderDispatcher : Dispatcher
         start = Math.Max(start, _known[local]);
         foreach (ref readonly var demand in Pools.DemandsOf(local))
             start = Math.Max(start, _last[demand.Pool]);
-        var calendar = Pools.Calendar[local];
-        while (Work[local] > 0)
+        var calendar = Pools.Calendar(local);
+        while (State[local].Work > 0)
         {
             start = calendar.Begin(start);
             Free(local, start);
@@ -94,7 +94,7 @@ internal sealed class InOrderDispatcher : Dispatcher
 
     private void Hold(int local, int finish)
     {
-        for (var d = Pools.DemandStart[local]; d < Pools.DemandStart[local + 1]; d++)
+        for (var d = Pools.Facts[local].FirstDemand; d < Pools.Facts[local + 1].FirstDemand; d++)
         {
             _used[Pools.Demands[d].Pool] += Pools.Demands[d].Units;
             _held[Pools.Demands[d].Pool].Push(finish, d);

@@ -14,8 +14,7 @@ namespace Portfolio.Engine.Pools;
 /// </summary>
 internal sealed class PassingDispatcher : Dispatcher
 {
-    private readonly int[] _left;  // [local] predecessors whose dates are not known yet
-    private readonly int[] _stack, _next;
+    private readonly int[] _stack, _next; // by depth: a local whose dates are known, and the next successor to pass them on to
     private readonly double[] _used;
     private readonly bool[] _eased; // [pool] waiting work may fit now
     private readonly WaitingWork _waiting;
@@ -27,14 +26,13 @@ internal sealed class PassingDispatcher : Dispatcher
     public PassingDispatcher(PoolNetwork pools, ForwardPass pass, ScheduleRows rows)
         : base(pools, pass, rows)
     {
-        _left = new int[pools.Count];
         (_stack, _next) = (new int[pools.Count], new int[pools.Count]);
         _used = new double[pools.Pools.Length];
         _eased = new bool[pools.Pools.Length];
         _waiting = new WaitingWork(pools);
         _arrived = new RankSet(pools.Demanding);
         (_running, _future) = (new InstantHeap(pools.Count), new InstantHeap(pools.Demanding));
-        _calendars = [.. Enumerable.Range(0, pools.Count).Where(l => pools.Rank[l] >= 0).Select(l => pools.Calendar[l]).Distinct()];
+        _calendars = [.. pools.ByRank.Select(pools.Calendar).Distinct()];
     }
 
     /// <summary>When set, receives every local in the sequence in which its dates become known.</summary>
@@ -57,14 +55,12 @@ internal sealed class PassingDispatcher : Dispatcher
                 Free(_running.Pop());
             for (; change < Pools.CapacityChanges.Length && Pools.CapacityChanges[change].Instant <= now; change++)
                 _eased[Pools.CapacityChanges[change].Pool] = true;
-            Serve(now, Array.TrueForAll(_calendars, calendar => calendar.Begin(now) == now));
+            Serve(now, Working(now));
         }
     }
 
     private void Reset()
     {
-        for (var l = 0; l < Pools.Count; l++)
-            _left[l] = Pools.LinkStart[l + 1] - Pools.LinkStart[l];
         Array.Clear(_used);
         Array.Clear(_eased);
         _running.Clear();
@@ -85,6 +81,17 @@ internal sealed class PassingDispatcher : Dispatcher
         return next < int.MaxValue ? next : throw new InvalidOperationException("A demand can never be met.");
     }
 
+    // True when no calendar rests at this instant.
+    private bool Working(int now)
+    {
+        foreach (var calendar in _calendars)
+        {
+            if (calendar.Begin(now) != now)
+                return false;
+        }
+        return true;
+    }
+
     // Tries in the order what has arrived and what may fit now. Where some calendar rests at this instant everything is tried, for work that
     // cannot begin before its next working instant does not wait until then and hinders nobody.
     private void Serve(int now, bool working)
@@ -96,7 +103,7 @@ internal sealed class PassingDispatcher : Dispatcher
         {
             while (_future.Count > 0 && _future.Instant <= now)
             {
-                var rank = Pools.Rank[_future.Pop()];
+                var rank = Pools.Facts[_future.Pop()].Rank;
                 _arrived.Add(rank);
                 _arrivals++;
                 cursor = Math.Min(cursor, rank);
@@ -127,16 +134,16 @@ internal sealed class PassingDispatcher : Dispatcher
 
     private void Try(int local, int now, bool working)
     {
-        var rank = Pools.Rank[local];
+        var rank = Pools.Facts[local].Rank;
         var waited = !(_arrivals > 0 && _arrived.Next(rank) == rank);
         if (!waited)
         {
             _arrived.Remove(rank);
             _arrivals--;
         }
-        if (Work[local] > 0)
+        if (State[local].Work > 0)
         {
-            var begin = working ? now : Pools.Calendar[local].Begin(now);
+            var begin = working ? now : Pools.Calendar(local).Begin(now);
             if (begin == now && (Hindered(local, working) || !Pools.Fits(local, now, _used)))
             {
                 if (!waited)
@@ -151,8 +158,8 @@ internal sealed class PassingDispatcher : Dispatcher
                 return;
             }
         }
-        var finish = Pools.Calendar[local].Add(now, Work[local]);
-        if (Work[local] > 0)
+        var finish = Pools.Calendar(local).Add(now, State[local].Work);
+        if (State[local].Work > 0)
             Hold(local, finish);
         Know(local, now, finish);
         Pass(local);
@@ -201,21 +208,19 @@ internal sealed class PassingDispatcher : Dispatcher
     private void Pass(int known)
     {
         var depth = 0;
-        _stack[depth] = known;
-        _next[known] = Pools.SuccessorStart[known];
+        (_stack[0], _next[0]) = (known, Pools.Facts[known].FirstSuccessor);
         while (depth >= 0)
         {
-            var local = _stack[depth];
-            if (_next[local] == Pools.SuccessorStart[local + 1])
+            if (_next[depth] == Pools.Facts[_stack[depth] + 1].FirstSuccessor)
             {
                 depth--;
                 continue;
             }
-            var successor = Pools.Successors[_next[local]++];
-            if (--_left[successor] == 0 && Release(successor))
+            var successor = Pools.Successors[_next[depth]++];
+            if (--State[successor].Left == 0 && Release(successor))
             {
-                _stack[++depth] = successor;
-                _next[successor] = Pools.SuccessorStart[successor];
+                depth++;
+                (_stack[depth], _next[depth]) = (successor, Pools.Facts[successor].FirstSuccessor);
             }
         }
     }
@@ -224,13 +229,13 @@ internal sealed class PassingDispatcher : Dispatcher
     private bool Release(int local)
     {
         var earliest = EarliestStart(local);
-        var demands = Pools.Rank[local] >= 0 && !Absent(local);
+        var demands = Pools.Facts[local].Rank >= 0 && !Absent(local);
         if (demands && !UnderWay(local, earliest))
         {
             _future.Push(earliest, local);
             return false;
         }
-        var finish = Pools.Calendar[local].Add(earliest, Work[local]);
+        var finish = Pools.Calendar(local).Add(earliest, State[local].Work);
         if (demands && finish > earliest)
             Hold(local, finish);
         Know(local, earliest, finish);
@@ -239,7 +244,7 @@ internal sealed class PassingDispatcher : Dispatcher
 
     private void Know(int local, int start, int finish)
     {
-        (Starts[local], Finishes[local]) = (start, finish);
+        (State[local].Start, State[local].Finish) = (start, finish);
         Sequence?.Add(local);
     }
 }

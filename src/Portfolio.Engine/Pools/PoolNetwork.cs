@@ -18,45 +18,28 @@ internal sealed class PoolNetwork
     /// <summary>[local] activity.</summary>
     public required int[] Activity { get; init; }
 
-    /// <summary>[local] place in the order, or −1 without demands.</summary>
-    public required int[] Rank { get; init; }
+    /// <summary>[local] what the dispatchers look up of an activity, together so that it comes in one line of the cache; one entry more.</summary>
+    public required LocalFacts[] Facts { get; init; }
 
     /// <summary>[rank] local.</summary>
     public required int[] ByRank { get; init; }
 
-    public required WorkTime[] Calendar { get; init; }
-
-    /// <summary>[local] demands <c>DemandStart[l] …</c> of <see cref="Demands"/>.</summary>
-    public required int[] DemandStart { get; init; }
+    /// <summary>The calendars of the locals, each once.</summary>
+    public required WorkTime[] Calendars { get; init; }
 
     public required PoolDemand[] Demands { get; init; }
 
     /// <summary>[pool] fewest units that any work asks for.</summary>
     public required double[] Smallest { get; init; }
 
-    /// <summary>[local] links from other locals; those from work before the pools are in the earliest start already.</summary>
-    public required int[] LinkStart { get; init; }
-
+    /// <summary>Links from other locals; those from work before the pools are in the earliest start already.</summary>
     public required NetworkLink[] Links { get; init; }
-
-    public required int[] SuccessorStart { get; init; }
 
     /// <summary>Local successors, one entry per link.</summary>
     public required int[] Successors { get; init; }
 
     /// <summary>Locals without links from other locals, in document order.</summary>
     public required int[] Roots { get; init; }
-
-    /// <summary>[local] the project's priority; 1 is served first.</summary>
-    public required int[] Priority { get; init; }
-
-    /// <summary>[local] base length, minutes.</summary>
-    public required int[] BaseMinutes { get; init; }
-
-    /// <summary>
-    /// [local] for work under way the first working instant from the status date on; nothing holds it back when it can resume then.
-    /// </summary>
-    public required int[] Resumes { get; init; }
 
     /// <summary>Instants at which the capacity of a pool changes, rising.</summary>
     public required (int Instant, int Pool)[] CapacityChanges { get; init; }
@@ -66,13 +49,13 @@ internal sealed class PoolNetwork
     /// <summary>How many have demands.</summary>
     public int Demanding => ByRank.Length;
 
-    public bool Started(int local) => Resumes[local] != int.MinValue;
+    public WorkTime Calendar(int local) => Calendars[Facts[local].Calendar];
 
-    public ReadOnlySpan<PoolDemand> DemandsOf(int local) => Demands.AsSpan(DemandStart[local]..DemandStart[local + 1]);
+    public bool Started(int local) => Facts[local].Resumes != int.MinValue;
 
-    public ReadOnlySpan<NetworkLink> LinksOf(int local) => Links.AsSpan(LinkStart[local]..LinkStart[local + 1]);
+    public ReadOnlySpan<PoolDemand> DemandsOf(int local) => Demands.AsSpan(Facts[local].FirstDemand..Facts[local + 1].FirstDemand);
 
-    public ReadOnlySpan<int> SuccessorsOf(int local) => Successors.AsSpan(SuccessorStart[local]..SuccessorStart[local + 1]);
+    public ReadOnlySpan<NetworkLink> LinksOf(int local) => Links.AsSpan(Facts[local].FirstLink..Facts[local + 1].FirstLink);
 
     /// <summary>True when the pool's smallest demand fits beside the units in use, this instant at least.</summary>
     public bool HasRoom(int pool, int now, double used) => used + Smallest[pool] <= Pools[pool].Lowest(now, now) + Rounding;
@@ -85,13 +68,21 @@ internal sealed class PoolNetwork
         {
             var pool = Pools[demand.Pool];
             if (end == int.MinValue && pool.Changes)
-                end = Calendar[local].Add(t, BaseMinutes[local]);
+                end = Calendar(local).Add(t, Facts[local].BaseMinutes);
             if (used[demand.Pool] + demand.Units > pool.Lowest(t, end) + Rounding)
                 return false;
         }
         return true;
     }
 }
+
+/// <summary>
+/// An activity that pools can move: its first link, successor and demand (the next entry's are where its own end), its calendar, its place in
+/// the order or −1 without demands, the project's priority (1 is served first), its base length in minutes, whether it stands in a chance
+/// branch, and for work under way the first working instant from the status date on (nothing holds it back when it can resume then).
+/// </summary>
+internal readonly record struct LocalFacts(
+    int FirstLink, int FirstSuccessor, int FirstDemand, int Calendar, int Rank, int Priority, int BaseMinutes, int Resumes, bool Branched);
 
 /// <summary>Units of a pool, by its index.</summary>
 internal readonly record struct PoolDemand(int Pool, double Units);

@@ -1,3 +1,4 @@
+using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Inputs;
 using Portfolio.Engine.Networks;
 using Portfolio.Model.Documents;
@@ -23,25 +24,24 @@ internal static class PoolNetworkBuilder
         var demands = DemandsOf(network, settings, activity, out var demandStart);
         var links = LinksOf(network, stages, activity, out var linkStart);
         var (successorStart, successors) = SuccessorsOf(linkStart, links);
+        WorkTime[] calendars = [.. activity.Select(a => network.Calendar[a]).Distinct()];
+        LocalFacts Facts(int l, int a) => new(
+            linkStart[l], successorStart[l], demandStart[l], Array.IndexOf(calendars, network.Calendar[a]), rank[l],
+            network.Projects[network.ProjectOf[a]].Priority, estimates.BaseMinutes[a],
+            network.UnderWay(a) ? network.Calendar[a].Begin(network.Status[a]) : int.MinValue, network.Fork[a] >= 0);
         return new PoolNetwork
         {
             Network = network,
             Pools = pools,
             Activity = activity,
-            Rank = rank,
             ByRank = byRank,
-            Calendar = [.. activity.Select(a => network.Calendar[a])],
-            DemandStart = demandStart,
+            Facts = [.. activity.Select((a, l) => Facts(l, a)), new(links.Length, successors.Length, demands.Length, 0, -1, 0, 0, int.MinValue, false)],
+            Calendars = calendars,
             Demands = demands,
             Smallest = [.. pools.Select((_, p) => demands.Where(d => d.Pool == p).Select(d => d.Units).DefaultIfEmpty(0).Min())],
-            LinkStart = linkStart,
             Links = links,
-            SuccessorStart = successorStart,
             Successors = successors,
             Roots = [.. Enumerable.Range(0, activity.Length).Where(l => linkStart[l] == linkStart[l + 1]).OrderBy(l => activity[l])],
-            Priority = [.. activity.Select(a => network.Projects[network.ProjectOf[a]].Priority)],
-            BaseMinutes = [.. activity.Select(a => estimates.BaseMinutes[a])],
-            Resumes = [.. activity.Select(a => network.UnderWay(a) ? network.Calendar[a].Begin(network.Status[a]) : int.MinValue)],
             CapacityChanges = [.. pools.SelectMany((p, i) => p.From.Skip(1).Select(from => (from, i))).Order()],
         };
     }

@@ -17,8 +17,9 @@ internal sealed class WaitingWork
     {
         _pools = pools;
         _byPool = [.. pools.Pools.Select(_ => new RankSet(pools.Demanding))];
-        _priorities = [.. pools.Priority.Distinct().Order()];
-        _class = [.. pools.Priority.Select(p => Array.BinarySearch(_priorities, p))];
+        var priorities = pools.Facts.Take(pools.Count).Select(f => f.Priority);
+        _priorities = [.. priorities.Distinct().Order()];
+        _class = [.. priorities.Select(p => Array.BinarySearch(_priorities, p))];
         _all = [.. pools.Pools.Select(_ => new int[_priorities.Length])];
         _started = [.. pools.Pools.Select(_ => new int[_priorities.Length])];
         _best = new int[pools.Pools.Length];
@@ -45,7 +46,7 @@ internal sealed class WaitingWork
         var priority = _class[local];
         foreach (ref readonly var demand in _pools.DemandsOf(local))
         {
-            _byPool[demand.Pool].Add(_pools.Rank[local]);
+            _byPool[demand.Pool].Add(_pools.Facts[local].Rank);
             _all[demand.Pool][priority]++;
             if (_pools.Started(local))
                 _started[demand.Pool][priority]++;
@@ -60,7 +61,7 @@ internal sealed class WaitingWork
         foreach (ref readonly var demand in _pools.DemandsOf(local))
         {
             var all = _all[demand.Pool];
-            _byPool[demand.Pool].Remove(_pools.Rank[local]);
+            _byPool[demand.Pool].Remove(_pools.Facts[local].Rank);
             if (_pools.Started(local))
                 _started[demand.Pool][priority]--;
             if (--all[priority] > 0 || _best[demand.Pool] != priority)
