@@ -92,13 +92,16 @@ internal static class NetworkBuilder
         return slash < 0 ? (ownProject, reference) : (reference[..slash], reference[(slash + 1)..]);
     }
 
+    // The calendars in use. Minutes mean the same on each of them, so any can be the scale of a network with several.
     private static Dictionary<string, WorkTime> Calendars(PortfolioDocument document)
     {
         var first = document.Projects.Select(p => p.StatusDate)
             .Concat(document.Projects.SelectMany(p => p.Activities)
                 .SelectMany(a => new[] { a.ActualStart, a.ActualFinish }).OfType<DateOnly>())
             .DefaultIfEmpty(new DateOnly(1970, 1, 1)).Min();
-        return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay)
+        var used = document.Projects.SelectMany(p => p.Activities.Select(a => a.Calendar ?? p.Calendar).Append(p.Calendar))
+            .Select(id => id ?? document.Settings.DefaultCalendar).Append(document.Settings.DefaultCalendar).ToHashSet(StringComparer.Ordinal);
+        return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay).Where(c => used.Contains(c.Id))
             .ToDictionary(c => c.Id, c => new WorkTime(c, first.AddDays(-DaysBefore)), StringComparer.Ordinal);
     }
 
@@ -108,7 +111,7 @@ internal static class NetworkBuilder
         var used = document.Projects.Where(p => p.Activities.Count > 0)
             .SelectMany(p => p.Activities.Select(a => a.Calendar ?? p.Calendar).Append(p.Calendar))
             .Select(id => id ?? document.Settings.DefaultCalendar).Distinct(StringComparer.Ordinal).ToArray();
-        return used is [var only] && calendars[only].InWorkingTime() is { } working ? working : calendars[WorkCalendar.EveryDayId];
+        return used is [var only] && calendars[only].InWorkingTime() is { } working ? working : calendars.Values.First();
     }
 
     private static bool[] StartMatters(NetworkLink[] links, bool[] matters)
