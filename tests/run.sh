@@ -5,10 +5,14 @@ set -euo pipefail
 cd "$(dirname "$0")/.."
 export DOTNET_CLI_TELEMETRY_OPTOUT=1 TESTINGPLATFORM_TELEMETRY_OPTOUT=1 DOTNET_NOLOGO=1 LC_ALL=C
 
-# The independent simulator that results are compared with is a NumPy program; without it those tests skip and say so.
-if ! /usr/bin/python3 -c 'import numpy, scipy' 2>/dev/null && [ "$(id -u)" = 0 ] && command -v apt-get >/dev/null; then
-  apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq python3-numpy python3-scipy >/dev/null ||
-    echo "python3-numpy and python3-scipy could not be installed: comparisons with the independent simulator will skip"
+# The independent simulator that results are compared with is a NumPy program (without it those tests skip and say so); local dates need
+# the time zone data.
+missing=()
+/usr/bin/python3 -c 'import numpy, scipy' 2>/dev/null || missing+=(python3-numpy python3-scipy)
+[ -e /usr/share/zoneinfo/Europe/Berlin ] || missing+=(tzdata)
+if [ ${#missing[@]} -gt 0 ] && [ "$(id -u)" = 0 ] && command -v apt-get >/dev/null; then
+  apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq "${missing[@]}" >/dev/null ||
+    echo "could not install ${missing[*]}"
 fi
 
 dotnet restore Portfolio.sln --locked-mode
