@@ -35,6 +35,19 @@ public sealed class ReadmeTests : IDisposable
             JsonDocument.Parse(refusal).RootElement.Faults());
     }
 
+    [Fact]
+    public async Task TheDataFolderIsMadeWhereTheCommandIsTyped()
+    {
+        var project = Path.Combine(Repository.Root, "src", "Portfolio.Server", "Portfolio.Server.csproj");
+        using var build = Process.Start(
+            new ProcessStartInfo("dotnet", ["msbuild", project, "-getProperty:RunWorkingDirectory"])
+            {
+                RedirectStandardOutput = true,
+                WorkingDirectory = folder.FullName,
+            })!;
+        Assert.Equal(folder.FullName, (await build.StandardOutput.ReadToEndAsync(Cancellation)).Trim());
+    }
+
     private static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
     /// <summary>The indented blocks of the section, without their indentation; an empty line is said after each command's answer.</summary>
