@@ -5,22 +5,21 @@ namespace Portfolio.Engine.Pools;
 /// <summary>
 /// Schedules the part of a network that pools can move, one iteration at a time. Reads work and earliest starts (by links from work
 /// before the pools) from the rows and leaves starts and finishes there. Belongs to one thread; allocates nothing per iteration.
-/// Layout: rows run along iterations, the dispatcher along activities, so both are turned once per chunk, tile by tile.
+/// Layout: rows run along iterations, the dispatcher along activities, so a few iterations at a time are turned, tile by tile.
 /// </summary>
 internal abstract class Dispatcher
 {
-    private const int Tile = 16;
+    private const int Tile = 16, Turned = 32;
 
     private readonly ForwardPass _pass;
     private readonly ScheduleRows _rows;
-    private readonly int[] _work, _starts, _finishes; // [iteration][local]
+    private readonly int[] _work, _starts; // [iteration][local]; the finish takes the place of the work
 
     protected Dispatcher(PoolNetwork pools, ForwardPass pass, ScheduleRows rows)
     {
         (Pools, _pass, _rows) = (pools, pass, rows);
         State = new LocalState[pools.Count];
-        var turned = pools.Count * rows.Capacity;
-        (_work, _starts, _finishes) = (new int[turned], new int[turned], new int[turned]);
+        (_work, _starts) = (new int[pools.Count * Turned], new int[pools.Count * Turned]);
     }
 
     protected PoolNetwork Pools { get; }
@@ -35,19 +34,25 @@ internal abstract class Dispatcher
     /// <exception cref="InvalidOperationException">A demand can never be met; rules refuse such documents.</exception>
     public void Run(int count)
     {
-        for (var l = 0; l < Pools.Count; l += Tile)
-            Turn(l, count);
-        for (Iteration = 0; Iteration < count; Iteration++)
+        for (var from = 0; from < count; from += Turned)
         {
-            var at = Iteration * Pools.Count;
-            for (var l = 0; l < State.Length; l++)
-                State[l] = new LocalState { Work = _work[at + l], Start = _starts[at + l], Left = Pools.Facts[l + 1].FirstLink - Pools.Facts[l].FirstLink };
-            Dispatch();
-            for (var l = 0; l < State.Length; l++)
-                (_starts[at + l], _finishes[at + l]) = (State[l].Start, State[l].Finish);
+            var to = Math.Min(from + Turned, count);
+            for (var l = 0; l < Pools.Count; l += Tile)
+                Turn(l, from, to);
+            for (Iteration = from; Iteration < to; Iteration++)
+                RunOne((Iteration - from) * Pools.Count);
+            for (var l = 0; l < Pools.Count; l += Tile)
+                TurnBack(l, from, to);
         }
-        for (var l = 0; l < Pools.Count; l += Tile)
-            TurnBack(l, count);
+    }
+
+    private void RunOne(int at)
+    {
+        for (var l = 0; l < State.Length; l++)
+            State[l] = new LocalState { Work = _work[at + l], Start = _starts[at + l], Left = Pools.LinksOf(l).Length };
+        Dispatch();
+        for (var l = 0; l < State.Length; l++)
+            (_starts[at + l], _work[at + l]) = (State[l].Start, State[l].Finish);
     }
 
     protected abstract void Dispatch();
@@ -75,25 +80,25 @@ internal abstract class Dispatcher
     // Links from the start of work under way count from when it really started.
     private int ActualOrStart(int local) => Pools.Started(local) ? Pools.Network.ActualStart[Pools.Activity[local]] : State[local].Start;
 
-    private void Turn(int first, int count)
+    private void Turn(int first, int from, int to)
     {
         for (var l = first; l < Math.Min(first + Tile, Pools.Count); l++)
         {
-            var work = _rows.Work(Pools.Activity[l], count);
-            var starts = _rows.Start(Pools.Activity[l], count);
-            for (var k = 0; k < count; k++)
+            var work = _rows.Work(Pools.Activity[l], to)[from..];
+            var starts = _rows.Start(Pools.Activity[l], to)[from..];
+            for (var k = 0; k < work.Length; k++)
                 (_work[k * Pools.Count + l], _starts[k * Pools.Count + l]) = (work[k], starts[k]);
         }
     }
 
-    private void TurnBack(int first, int count)
+    private void TurnBack(int first, int from, int to)
     {
         for (var l = first; l < Math.Min(first + Tile, Pools.Count); l++)
         {
-            var starts = _rows.Start(Pools.Activity[l], count);
-            var finishes = _rows.Finish(Pools.Activity[l], count);
-            for (var k = 0; k < count; k++)
-                (starts[k], finishes[k]) = (_starts[k * Pools.Count + l], _finishes[k * Pools.Count + l]);
+            var starts = _rows.Start(Pools.Activity[l], to)[from..];
+            var finishes = _rows.Finish(Pools.Activity[l], to)[from..];
+            for (var k = 0; k < starts.Length; k++)
+                (starts[k], finishes[k]) = (_starts[k * Pools.Count + l], _work[k * Pools.Count + l]);
             if (Pools.Started(l))
                 starts.Fill(Pools.Network.ActualStart[Pools.Activity[l]]);
         }

@@ -78,11 +78,10 @@ internal sealed class PoolNetwork
 
 /// <summary>
 /// An activity that pools can move: its first link, successor and demand (the next entry's are where its own end), its calendar, its place in
-/// the order or −1 without demands, the project's priority (1 is served first), its base length in minutes, whether it stands in a chance
-/// branch, and for work under way the first working instant from the status date on (nothing holds it back when it can resume then).
+/// the order or −1 without demands, its base length in minutes, whether it stands in a chance branch, and for work under way the first working instant from the status date on (nothing holds it back when it can resume then).
 /// </summary>
 internal readonly record struct LocalFacts(
-    int FirstLink, int FirstSuccessor, int FirstDemand, int Calendar, int Rank, int Priority, int BaseMinutes, int Resumes, bool Branched);
+    int FirstLink, int FirstSuccessor, int FirstDemand, int Calendar, int Rank, int BaseMinutes, int Resumes, bool Branched);
 
 /// <summary>Units of a pool, by its index.</summary>
 internal readonly record struct PoolDemand(int Pool, double Units);

@@ -27,7 +27,7 @@ internal static class PoolNetworkBuilder
         WorkTime[] calendars = [.. activity.Select(a => network.Calendar[a]).Distinct()];
         LocalFacts Facts(int l, int a) => new(
             linkStart[l], successorStart[l], demandStart[l], Array.IndexOf(calendars, network.Calendar[a]), rank[l],
-            network.Projects[network.ProjectOf[a]].Priority, estimates.BaseMinutes[a],
+            estimates.BaseMinutes[a],
             network.UnderWay(a) ? network.Calendar[a].Begin(network.Status[a]) : int.MinValue, network.Fork[a] >= 0);
         return new PoolNetwork
         {
@@ -35,7 +35,7 @@ internal static class PoolNetworkBuilder
             Pools = pools,
             Activity = activity,
             ByRank = byRank,
-            Facts = [.. activity.Select((a, l) => Facts(l, a)), new(links.Length, successors.Length, demands.Length, 0, -1, 0, 0, int.MinValue, false)],
+            Facts = [.. activity.Select((a, l) => Facts(l, a)), new(links.Length, successors.Length, demands.Length, 0, -1, 0, int.MinValue, false)],
             Calendars = calendars,
             Demands = demands,
             Smallest = [.. pools.Select((_, p) => demands.Where(d => d.Pool == p).Select(d => d.Units).DefaultIfEmpty(0).Min())],

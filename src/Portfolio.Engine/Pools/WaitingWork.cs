@@ -17,7 +17,7 @@ internal sealed class WaitingWork
     {
         _pools = pools;
         _byPool = [.. pools.Pools.Select(_ => new RankSet(pools.Demanding))];
-        var priorities = pools.Facts.Take(pools.Count).Select(f => f.Priority);
+        var priorities = pools.Activity.Select(a => pools.Network.Projects[pools.Network.ProjectOf[a]].Priority).ToArray();
         _priorities = [.. priorities.Distinct().Order()];
         _class = [.. priorities.Select(p => Array.BinarySearch(_priorities, p))];
         _all = [.. pools.Pools.Select(_ => new int[_priorities.Length])];

@@ -6,8 +6,8 @@ namespace Portfolio.Engine.Runs;
 internal sealed class PlanRun
 {
     private const int LargestChunk = 1024, SmallestChunk = 64;
-    private const int ChunksPerThread = 4;  // so that threads end together
-    private const int RowBytes = 1 << 20;   // most that the schedule rows of a thread should take: about its share of the cache
+    private const int ChunksPerThread = 2;    // at least, so that threads end together
+    private const int RowBytes = 160 << 20;   // most that the schedule rows of a thread take; only with pools do they come near
 
     private readonly Plan _plan;
     private readonly ulong _seed;
@@ -37,7 +37,7 @@ internal sealed class PlanRun
     public void Work(CancellationToken cancellation) =>
         EngineThreads.Work(Math.Max(1, Math.Min(_options.Threads, (_count + _chunk - 1) / _chunk)), stop => WorkChunks(stop), cancellation);
 
-    // A power of two that divides a block: long enough that what is made per row and chunk is made seldom, short enough for the cache.
+    // A power of two that divides a block: long enough that what is made once per row and chunk, such as a table, is made seldom.
     private static int ChunkSize(int rows, int count, int threads)
     {
         var size = LargestChunk;
