@@ -37,7 +37,7 @@ internal static class DocumentBenchmark
     internal static ValidPortfolio Read(byte[] json)
     {
         var document = DocumentReader.OfStored.ReadDocument(json);
-        var parts = (document.Projects ?? []).Select(p => (ReadOnlyMemory<byte>)DocumentReader.Bytes(p));
+        var parts = (document.Projects ?? []).Select(p => (ReadOnlyMemory<byte>)DocumentReader.Bytes(p)).ToArray();
         var model = DocumentReader.FromParts(DocumentReader.Bytes(document.Settings!), parts);
         return ValidPortfolio.Check(model, out var faults) ?? throw new InvalidDataException(faults[0].Message);
     }

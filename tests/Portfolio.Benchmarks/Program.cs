@@ -1,8 +1,12 @@
 using Portfolio.Benchmarks;
 
+#pragma warning disable RS0030 // A program of its own: here the system's clock comes in.
+var clock = TimeProvider.System;
+#pragma warning restore RS0030
 return args switch
 {
     ["document", ..] => DocumentBenchmark.Run(args[1..]),
+    ["reading", ..] => await ReadingBenchmark.RunAsync(args[1..], clock),
     _ => Usage(),
 };
 

@@ -19,7 +19,12 @@ public static class MarginalCheck
     };
 
     /// <summary>The least value that a draw can take, −∞ for a normal without lower bound; ends stated as percentiles reach below their low.</summary>
-    public static double Lowest(Distribution stated) => Marginal.Of(stated).Lowest;
+    public static double Lowest(Distribution stated) => stated switch
+    {
+        Triangular d when d.Low != d.High => OuterLimits.Of(d).Low,
+        Pert d when d.Low != d.High => OuterLimits.Of(d).Low,
+        _ => Marginal.Of(stated).Lowest,
+    };
 
     private const string NoLimits = "No outer limits give the stated percentiles with this mode.";
 

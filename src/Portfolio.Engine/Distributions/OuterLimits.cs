@@ -11,29 +11,33 @@ internal static class OuterLimits
 {
     private const int MaximumSteps = 200;
 
-    public static (double Low, double High) Of(Triangular stated) =>
-        Of(stated.Low, stated.Mode, stated.High, stated.LowPercentile, stated.HighPercentile, UnitTriangular);
+    public static (double Low, double High) Of(Triangular stated)
+    {
+        var (from, to) = (stated.LowPercentile / 100, stated.HighPercentile / 100);
+        return IsOuter(stated.LowPercentile, stated.HighPercentile)
+            ? (stated.Low, stated.High)
+            : Of(stated.Low, stated.Mode, stated.High, (from, t => UnitTriangular(t, from)), (to, t => UnitTriangular(t, to)));
+    }
 
-    public static (double Low, double High) Of(Pert stated) =>
-        Of(stated.Low, stated.Mode, stated.High, stated.LowPercentile, stated.HighPercentile, (t, p) => UnitPert(stated.Weight, t, p));
+    public static (double Low, double High) Of(Pert stated) => IsOuter(stated.LowPercentile, stated.HighPercentile)
+        ? (stated.Low, stated.High)
+        : Of(stated.Low, stated.Mode, stated.High,
+            (stated.LowPercentile / 100, PertCurve.Of(stated.Weight, stated.LowPercentile)),
+            (stated.HighPercentile / 100, PertCurve.Of(stated.Weight, stated.HighPercentile)));
+
+    private static bool IsOuter(double lowPercentile, double highPercentile) => lowPercentile == 0 && highPercentile == 100;
 
     private static (double Low, double High) Of(
-        double low, double mode, double high, double lowPercentile, double highPercentile, Func<double, double, double> quantile)
+        double low, double mode, double high, (double P, Func<double, double> At) from, (double P, Func<double, double> At) to)
     {
-        if (lowPercentile == 0 && highPercentile == 100)
-            return (low, high);
-        var (from, to) = (lowPercentile / 100, highPercentile / 100);
         var place = (mode - low) / (high - low);
-        var t = Root(t => (t - quantile(t, from)) * (1 - place) - (quantile(t, to) - t) * place);
-        var width = place <= 0.5 ? (high - mode) / (quantile(t, to) - t) : (mode - low) / (t - quantile(t, from));
-        return (lowPercentile == 0 ? low : mode - t * width, highPercentile == 100 ? high : mode + (1 - t) * width);
+        var t = Root(t => (t - from.At(t)) * (1 - place) - (to.At(t) - t) * place);
+        var width = place <= 0.5 ? (high - mode) / (to.At(t) - t) : (mode - low) / (t - from.At(t));
+        return (from.P == 0 ? low : mode - t * width, to.P == 1 ? high : mode + (1 - t) * width);
     }
 
     private static double UnitTriangular(double mode, double p) =>
         p < mode ? Math.Sqrt(p * mode) : 1 - Math.Sqrt((1 - p) * (1 - mode));
-
-    private static double UnitPert(double weight, double mode, double p) =>
-        p <= 0 ? 0 : p >= 1 ? 1 : new RegularisedBeta(1 + weight * mode, 1 + weight * (1 - mode)).Quantile(p, 1 - p);
 
     /// <summary>Root in [0, 1] of a function that is ≤ 0 at 0 and ≥ 0 at 1: false position with the Illinois weights, halving when that is slow.</summary>
     private static double Root(Func<double, double> f)

@@ -1,3 +1,4 @@
+using System.Collections.ObjectModel;
 using Portfolio.Model.Distributions;
 
 namespace Portfolio.Model.Documents;
@@ -31,7 +32,7 @@ public sealed record Activity
 
     public DateOnly? EarliestStart { get; init; }
 
-    public IReadOnlyDictionary<string, string> Tags { get; init; } = new Dictionary<string, string>();
+    public IReadOnlyDictionary<string, string> Tags { get; init; } = ReadOnlyDictionary<string, string>.Empty;
 
     public DateOnly? ActualStart { get; init; }
 

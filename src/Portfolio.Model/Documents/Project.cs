@@ -1,3 +1,5 @@
+using System.Collections.ObjectModel;
+
 namespace Portfolio.Model.Documents;
 
 /// <summary>One capital project: its estimates, progress and risks.</summary>
@@ -9,7 +11,7 @@ public sealed record Project
 
     public string? Programme { get; init; }
 
-    public IReadOnlyDictionary<string, string> Tags { get; init; } = new Dictionary<string, string>();
+    public IReadOnlyDictionary<string, string> Tags { get; init; } = ReadOnlyDictionary<string, string>.Empty;
 
     /// <summary>1 is served first by shared pools.</summary>
     public int Priority { get; init; } = 100;

@@ -23,9 +23,15 @@ public sealed class ValidPortfolio
     {
         var (settings, projects) = document;
         var context = PortfolioContext.Of(settings, limits);
-        var outlines = projects.Select((p, i) => new PlacedOutline(ProjectOutline.Of(p), $"/projects/{i}")).ToList();
-        List<Fault> found = [.. SettingsRules.Check(settings, "/settings", limits)];
-        foreach (var (project, (outline, path)) in projects.Zip(outlines)) found.AddRange(ProjectRules.Check(project, outline, context, path));
+        var outlines = new PlacedOutline[projects.Count];
+        var within = new List<Fault>[projects.Count];
+        // Rules within a project look at no other: the projects are checked on whatever processors are free.
+        Parallel.For(0, projects.Count, i =>
+        {
+            outlines[i] = new PlacedOutline(ProjectOutline.Of(projects[i]), $"/projects/{i}");
+            within[i] = [.. ProjectRules.Check(projects[i], outlines[i].Outline, context, outlines[i].Path)];
+        });
+        List<Fault> found = [.. SettingsRules.Check(settings, "/settings", limits), .. within.SelectMany(faults => faults)];
         found.AddRange(PortfolioRules.Check(settings, "/settings", outlines, limits, "/projects"));
         faults = found;
         return found.Count == 0 ? new ValidPortfolio(document) : null;

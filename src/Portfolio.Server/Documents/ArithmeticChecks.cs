@@ -3,6 +3,7 @@ using Portfolio.Engine.Distributions;
 using Portfolio.Model.Distributions;
 using Portfolio.Model.Documents;
 using Portfolio.Model.Faults;
+using Portfolio.Server.Contracts.Json;
 
 namespace Portfolio.Server.Documents;
 
@@ -16,16 +17,24 @@ internal static class ArithmeticChecks
     /// <param name="known">Faults found so far: what is at fault already is not worked out.</param>
     public static IEnumerable<Fault> Of(PortfolioDocument document, IReadOnlyList<Fault> known)
     {
-        var faults = new List<Fault>();
         var spoilt = Spoilt(known);
-        StatedDistributions.Visit(document, stated =>
+        var faults = new List<Fault>();
+        StatedDistributions.InSettings(document.Settings, stated => Judge(stated, spoilt, faults));
+        faults.AddRange(SideBySide.Each(document.Projects, (project, index) =>
         {
-            if (NeedsArithmetic(stated.Distribution) && !spoilt.Contains(stated.Path) && Flaw(stated) is { } fault)
-                faults.Add(fault);
-        });
+            var own = new List<Fault>();
+            StatedDistributions.InProject(project, $"/projects/{index}", stated => Judge(stated, spoilt, own));
+            return own;
+        }).SelectMany(own => own));
         if (CanJudgeDependence(document, known))
             faults.AddRange(DependenceCheck.Check(document.Settings, document.Projects, Dependence));
         return faults;
+    }
+
+    private static void Judge(StatedDistribution stated, HashSet<string> spoilt, List<Fault> faults)
+    {
+        if (NeedsArithmetic(stated.Distribution) && (spoilt.Count == 0 || !spoilt.Contains(stated.Path)) && Flaw(stated) is { } fault)
+            faults.Add(fault);
     }
 
     /// <summary>Places at fault and their owners: a distribution is spoilt by a fault in one of its members.</summary>
@@ -53,11 +62,11 @@ internal static class ArithmeticChecks
     private static Fault? Flaw(StatedDistribution stated)
     {
         if (MarginalCheck.Fault(stated.Distribution) is { } sentence)
-            return new Fault(stated.Path, stated.Subject, FaultCodes.DistributionEnds, sentence);
+            return new Fault(stated.Path, stated.Place.Subject, FaultCodes.DistributionEnds, sentence);
         // Ends stated as percentiles reach further out than they say. A normal's draws below 0 count as 0.
         return stated is { MayBeNegative: false, Distribution: Triangular or Pert }
             && MarginalCheck.Lowest(stated.Distribution) is < 0 and var lowest
-            ? new Fault(stated.Path, stated.Subject, RuleCodes.DistributionNegative, FormattableString.Invariant(
+            ? new Fault(stated.Path, stated.Place.Subject, RuleCodes.DistributionNegative, FormattableString.Invariant(
                 $"With these percentiles the distribution reaches down to {lowest:0.###}; here it may not be negative."))
             : null;
     }

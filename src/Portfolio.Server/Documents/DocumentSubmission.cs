@@ -25,21 +25,21 @@ internal sealed class DocumentSubmission
         parts =
         [
             new ProposedPart(PartNames.Settings, DocumentReader.Bytes(document.Settings)),
-            .. document.Projects!.Select(project => new ProposedPart(project.Id!, DocumentReader.Bytes(project))),
+            .. SideBySide.Each(document.Projects!, (project, _) => new ProposedPart(project.Id!, DocumentReader.Bytes(project))),
         ];
-        Tag = EntityTags.OfDocument(parts.Select(part => new PartHead(part.Project, ContentHash.Of(part.Bytes)))).ToString();
+        Tag = EntityTags.OfDocument(parts.Select(part => new PartHead(part.Project, part.Hash))).ToString();
     }
 
     /// <summary>Entity tag of the document once it is stored.</summary>
     public string? Tag { get; }
 
     /// <param name="portfolio">The id in the address, judged with the rest.</param>
-    public static DocumentSubmission Of(string portfolio, ReadOnlySpan<byte> json, DocumentReader reader, DocumentCheck check)
+    public static DocumentSubmission Of(string portfolio, ReadOnlyMemory<byte> json, DocumentReader reader, DocumentCheck check)
     {
         try
         {
             var document = reader.ReadDocument(json);
-            check.Check(document, json, out var faults);
+            check.Check(document, json.Span, out var faults);
             faults = [.. PortfolioRules.CheckId(portfolio), .. faults];
             return faults.Count > 0 ? new DocumentSubmission(Problem.Refused(faults)) : new DocumentSubmission(document);
         }

@@ -24,7 +24,7 @@ internal static class JsonBody
             throw new RequestRefused(
                 new Problem(415, "unsupported-media-type", "The body's media type is not taken here", "Send application/json."));
         }
-        return Read(body.Bytes, type);
+        return Read(body.Bytes.Span, type);
     }
 
     private static T Read<T>(ReadOnlySpan<byte> json, JsonTypeInfo<T> type)

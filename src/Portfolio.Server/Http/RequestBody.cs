@@ -15,7 +15,7 @@ internal sealed class RequestBody : IDisposable
     {
     }
 
-    public ReadOnlySpan<byte> Bytes => buffer.AsSpan(0, length);
+    public ReadOnlyMemory<byte> Bytes => buffer.AsMemory(0, length);
 
     /// <exception cref="RequestRefused">The body is larger than <paramref name="limit"/> bytes (413) or encoded (415).</exception>
     public static async Task<RequestBody> ReadAsync(HttpRequest request, int limit)

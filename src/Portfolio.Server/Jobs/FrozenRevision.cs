@@ -22,7 +22,7 @@ internal sealed record FrozenRevision(Plan Plan, IReadOnlyList<string> PartHashe
     private static Plan Compile(StoredDocument stored)
     {
         var document = DocumentReader.FromParts(
-            stored.Parts[0].Bytes, stored.Parts.Skip(1).Select(part => (ReadOnlyMemory<byte>)part.Bytes));
+            stored.Parts[0].Bytes, [.. stored.Parts.Skip(1).Select(part => (ReadOnlyMemory<byte>)part.Bytes)]);
         if (document.Projects.All(project => project.Activities.Count == 0))
             throw new RunFailed("No project has any activity, so there is nothing whose finish could be forecast.");
         // Checked when it was written; but rules grow, and an old revision may break one of today's.

@@ -110,11 +110,12 @@ public sealed partial class DocumentStore
         var recordedAt = Math.Max(open.Now, head?.RecordedAt ?? 0);
         await open.ExecuteAsync(
             InsertRevisionSql, new { write.Portfolio, Number = number, RecordedAt = recordedAt, Actor = caller.KeyId, write.Note });
+        await PartContents.KeepAsync(
+            open, from part in plan where part.Bytes is not null && part.After != part.Before select (part.After!, part.Bytes));
         foreach (var part in plan)
         {
-            if (part.Bytes is not null && part.After != part.Before)
-                await PartContents.KeepAsync(open, part.After!, part.Bytes);
-            await open.ExecuteAsync(SupersedeSql, new { write.Portfolio, part.Project, Number = number });
+            if (head is not null)
+                await open.ExecuteAsync(SupersedeSql, new { write.Portfolio, part.Project, Number = number });
             await open.ExecuteAsync(InsertPartSql, new { write.Portfolio, Number = number, part.Project, part.Position, part.After });
         }
     }

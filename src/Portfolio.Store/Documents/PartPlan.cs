@@ -21,10 +21,10 @@ internal static class PartPlan
         {
             var old = before.GetValueOrDefault(project);
             last = project == PartNames.Settings ? 0 : Math.Max(old is not null && old.Position > last ? old.Position : last + 1, 1);
-            var bytes = sent.GetValueOrDefault(project)?.Bytes;
-            var hash = bytes is null ? old!.Hash : ContentHash.Of(bytes);
+            var part = sent.GetValueOrDefault(project);
+            var hash = part?.Hash ?? old!.Hash;
             if (old is null || old.Hash != hash || old.Position != last)
-                rows.Add(new PlannedPart(project, last, old?.Hash, hash, bytes));
+                rows.Add(new PlannedPart(project, last, old?.Hash, hash, part?.Bytes));
         }
         rows.AddRange(head.Where(row => removed.Contains(row.Project))
             .Select(row => new PlannedPart(row.Project, row.Position, row.Hash, null, null)));

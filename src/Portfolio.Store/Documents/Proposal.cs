@@ -11,7 +11,10 @@ public abstract record Proposal
 /// <summary>A part as it shall be.</summary>
 /// <param name="Project">The project's id, or <see cref="PartNames.Settings"/>.</param>
 /// <param name="Bytes">Its canonical bytes. Equal to what is stored: no change.</param>
-public sealed record ProposedPart(string Project, byte[] Bytes);
+public sealed record ProposedPart(string Project, byte[] Bytes)
+{
+    public string Hash { get; } = ContentHash.Of(Bytes);
+}
 
 /// <summary>What shall change. Nothing in it that differs from the head: no revision is made.</summary>
 /// <param name="Parts">New and changed parts; new ones go last, in this order, unless <see cref="Order"/> says otherwise.</param>

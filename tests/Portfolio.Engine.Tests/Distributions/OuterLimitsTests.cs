@@ -70,6 +70,26 @@ public sealed class OuterLimitsTests
         }
     }
 
+    // The exact quantile is tested against SciPy above; the curves that stand for it must not be told apart from it.
+    [Theory]
+    [InlineData(0.5)]
+    [InlineData(4)]
+    [InlineData(11.5)]
+    [InlineData(20)]
+    public void Curves_follow_the_exact_quantile(double weight)
+    {
+        foreach (var percentile in new[] { 0.5, 1, 5, 10, 20, 37.5, 50, 80, 90, 99, 99.5 })
+        {
+            var curve = PertCurve.Of(weight, percentile);
+            for (var k = 0; k <= 200; k++)
+            {
+                var place = k / 200.0;
+                var exact = new RegularisedBeta(1 + weight * place, 1 + weight * (1 - place)).Quantile(percentile / 100, 1 - percentile / 100);
+                Assert.InRange(curve(place), exact - 1e-12, exact + 1e-12);
+            }
+        }
+    }
+
     [Fact]
     public void Bounds_that_hold_no_probability_are_named()
     {

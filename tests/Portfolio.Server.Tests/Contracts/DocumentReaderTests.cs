@@ -101,7 +101,7 @@ public sealed class DocumentReaderTests
     [Fact]
     public void MalformedJsonTellsLineAndColumn()
     {
-        var refused = Assert.Throws<JsonRefused>(() => Reader.ReadDocument("{\n \"settings\": {\n  \"name\": \"ü\" \"currency\"\n}}"u8));
+        var refused = Assert.Throws<JsonRefused>(() => Reader.ReadDocument("{\n \"settings\": {\n  \"name\": \"ü\" \"currency\"\n}}"u8.ToArray()));
         Assert.Equal((3, 15), (refused.Line, refused.Column));
     }
 }

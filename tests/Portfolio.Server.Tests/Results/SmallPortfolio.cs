@@ -46,7 +46,7 @@ internal static class SmallPortfolio
 
     public static Plan Plan(string settings = Settings, params string[] projects)
     {
-        var parts = (projects.Length > 0 ? projects : Projects).Select(project => (ReadOnlyMemory<byte>)Encoding.UTF8.GetBytes(project));
+        var parts = (projects.Length > 0 ? projects : Projects).Select(project => (ReadOnlyMemory<byte>)Encoding.UTF8.GetBytes(project)).ToArray();
         var document = DocumentReader.FromParts(Encoding.UTF8.GetBytes(settings), parts);
         var valid = ValidPortfolio.Check(document, out var faults);
         Assert.Empty(faults);

@@ -9,17 +9,16 @@ namespace Portfolio.Model.Rules.OfDistributions;
 /// </summary>
 internal static class DistributionRule
 {
-    private static readonly Flaw[] None = [];
+    private static readonly Flaw[] None = Flaw.None;
 
     /// <summary>All flaws; none of a sound distribution, of a missing one and of an unreadable one.</summary>
     public static IReadOnlyList<Flaw> Flaws(Distribution? distribution, Quantity quantity, ModelLimits limits)
     {
         if (distribution is null or Unreadable) return None;
-        if (NotFinite(distribution) is { Count: > 0 } notFinite) return notFinite;
-        List<Flaw> flaws = [];
-        flaws.AddRange(OfShape(distribution, limits));
-        flaws.AddRange(OfExtent(distribution, quantity));
-        return flaws.Count == 0 ? None : flaws;
+        if (NotFinite(distribution) is { } notFinite) return notFinite;
+        var (shape, extent) = (OfShape(distribution, limits), OfExtent(distribution, quantity));
+        // A large document has hundreds of thousands of sound ones, and they cost nothing.
+        return shape == None && extent == None ? None : [.. shape, .. extent];
     }
 
     private static IEnumerable<Flaw> OfShape(Distribution distribution, ModelLimits limits) => distribution switch
@@ -38,6 +37,11 @@ internal static class DistributionRule
     private static IEnumerable<Flaw> OfExtent(Distribution distribution, Quantity quantity)
     {
         var (low, high) = Extent(distribution);
+        return (low < 0 && !quantity.NegativeAllowed) || Math.Max(high, -low) > quantity.Bound ? TooFar(low, high, distribution, quantity) : None;
+    }
+
+    private static IEnumerable<Flaw> TooFar(double low, double high, Distribution distribution, Quantity quantity)
+    {
         if (low < 0 && !quantity.NegativeAllowed)
             yield return new("", RuleCodes.DistributionNegative, distribution is Normal
                 ? $"This {quantity.Name} lies around {low}; a {quantity.Name} cannot be negative."
@@ -65,7 +69,7 @@ internal static class DistributionRule
         _ => (0, 0),
     };
 
-    private static List<Flaw> NotFinite(Distribution distribution)
+    private static List<Flaw>? NotFinite(Distribution distribution)
     {
         List<Flaw>? flaws = null;
         switch (distribution)
@@ -81,7 +85,7 @@ internal static class DistributionRule
             case Percentiles p: LookAtPairs(p.Points.Select(o => (o.Value, o.P)), "points", "p"); break;
         }
 
-        return flaws ?? [];
+        return flaws;
 
         void Look(double value, string member)
         {

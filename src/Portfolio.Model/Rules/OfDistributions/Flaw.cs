@@ -6,5 +6,7 @@ namespace Portfolio.Model.Rules.OfDistributions;
 /// the whole.</summary>
 internal readonly record struct Flaw(string Member, string Code, string Message)
 {
+    public static readonly Flaw[] None = [];
+
     public Fault At(Place place) => (Member.Length == 0 ? place : place.Under(Member)).Fault(Code, Message);
 }

@@ -14,7 +14,7 @@ internal static class ProgressRule
             var activity = activities[i];
             if (activity.EarliestStart is not null && Range(placed, i, activity.EarliestStart, "earliestStart") is { } range)
                 yield return range;
-            if (!activity.Milestone)
+            if (!activity.Milestone && activity is not { Started: false, Duration: not null, Remaining: null })
                 foreach (var fault in Estimates(activity, placed, i))
                     yield return fault;
             if (!activity.Started) continue;

@@ -9,14 +9,15 @@ internal static class ReferenceRule
     {
         var project = placed.Project;
         if (Calendar(project.Calendar, placed, () => placed.Here) is { } own) yield return own;
-        foreach (var fault in Drivers(project.Drivers, placed, () => placed.Here)) yield return fault;
+        var seen = new HashSet<string>(StringComparer.Ordinal);
+        foreach (var fault in Drivers(project.Drivers, seen, placed, () => placed.Here)) yield return fault;
         for (var i = 0; i < project.Activities.Count; i++)
         {
             var (activity, index) = (project.Activities[i], i);
             if (activity.Calendar is not null && Calendar(activity.Calendar, placed, () => placed.Activity(index)) is { } calendar)
                 yield return calendar;
             if (activity.Drivers.Count == 0) continue;
-            foreach (var fault in Drivers(activity.Drivers, placed, () => placed.Activity(index))) yield return fault;
+            foreach (var fault in Drivers(activity.Drivers, seen, placed, () => placed.Activity(index))) yield return fault;
         }
     }
 
@@ -25,9 +26,9 @@ internal static class ReferenceRule
             ? null
             : at().Under("calendar").Fault(RuleCodes.CalendarUnknown, $"There is no calendar {TextRule.Shown(id)}.");
 
-    private static IEnumerable<Fault> Drivers(IReadOnlyList<string> drivers, PlacedProject placed, Func<Place> at)
+    private static IEnumerable<Fault> Drivers(IReadOnlyList<string> drivers, HashSet<string> seen, PlacedProject placed, Func<Place> at)
     {
-        var seen = new HashSet<string>(StringComparer.Ordinal);
+        seen.Clear();
         for (var k = 0; k < drivers.Count; k++)
         {
             if (drivers[k] is not { } id) continue;

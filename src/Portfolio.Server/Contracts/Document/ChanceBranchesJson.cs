@@ -18,7 +18,7 @@ public sealed record ChanceBranchesJson
         var place = new Place(path, $"{project}/branches/{Id ?? path[(path.LastIndexOf('/') + 1)..]}");
         return new ChanceBranches(
             reading.Required(place, "id", Id), Name,
-            reading.List(place, "branches", Branches, (branch, at) => branch.ToModel(reading, place with { Path = at })));
+            reading.List(place, "branches", Branches, (branch, at) => branch.ToModel(reading, at)));
     }
 }
 

@@ -48,7 +48,7 @@ public sealed record DependenceJson
         {
             BetweenProjects = reading.Number(place, "betweenProjects", BetweenProjects) ?? 0,
             WithinProgramme = reading.Number(place, "withinProgramme", WithinProgramme),
-            Pairs = reading.List(place, "pairs", Pairs, (pair, at) => pair.ToModel(reading, place with { Path = at })),
+            Pairs = reading.List(place, "pairs", Pairs, (pair, at) => pair.ToModel(reading, at)),
             Repair = reading.Word(place, "repair", Repair, Words.Repairs) ?? MatrixRepair.Refuse,
             Stated = true,
         };

@@ -37,7 +37,7 @@ internal ref struct DistributionDraft
         var bit = BitOf(name);
         if (name == "type")
         {
-            type = misfits.Text(ref reader, name);
+            type = DistributionForm.Word(ref reader) ?? misfits.Text(ref reader, name);
             typeMisread = type is null && reader.TokenType != JsonTokenType.Null;
         }
         else if (bit >= 0)

@@ -1,3 +1,6 @@
+using System.Text;
+using System.Text.Json;
+
 namespace Portfolio.Server.Contracts.Document;
 
 /// <summary>Numbers that a distribution may carry, in the order in which they are written.</summary>
@@ -44,11 +47,27 @@ internal sealed record DistributionForm(string Type, Numbers Needs, Numbers May 
 
     public static string Words { get; } = string.Join(", ", All.Select(form => form.Type).Distinct());
 
+    private static readonly (byte[] Utf8, string Text)[] KnownWords =
+        [.. All.Select(form => form.Type).Distinct().Select(word => (Encoding.UTF8.GetBytes(word), word))];
+
+    /// <summary>The known type at the reader, without allocating it; null when it is none.</summary>
+    public static string? Word(ref Utf8JsonReader reader)
+    {
+        if (reader.TokenType != JsonTokenType.String)
+            return null;
+        foreach (var (utf8, text) in KnownWords)
+            if (reader.ValueTextEquals(utf8))
+                return text;
+        return null;
+    }
+
     /// <summary>JSON names of <see cref="Numbers"/>, by position of the bit.</summary>
     public static readonly IReadOnlyList<string> Names =
         ["value", "low", "mode", "high", "lowPercentile", "highPercentile", "weight", "mean", "sd", "min", "max"];
 
-    public static IEnumerable<string> NamesOf(Numbers numbers) => Names.Where((_, bit) => ((int)numbers & (1 << bit)) != 0);
+    // Almost always none: asked of every distribution for what is missing and what is too much.
+    public static IEnumerable<string> NamesOf(Numbers numbers) =>
+        numbers == Numbers.None ? [] : Names.Where((_, bit) => ((int)numbers & (1 << bit)) != 0);
 
     /// <summary>The form of this type that fits what was sent best; null when there is no such type.</summary>
     public static DistributionForm? Find(string type, Numbers sent)

@@ -18,6 +18,17 @@ public sealed record DocumentJson
         if (Projects is null)
             reading.Missing(whole, "projects");
         var settings = (Settings ?? SettingsJson.Absent).ToModel(Settings is null ? new Reading() : reading, "/settings");
-        return new PortfolioDocument(settings, reading.List(whole, "projects", Projects, (project, path) => project.ToModel(reading, path)));
+        return new PortfolioDocument(settings, ProjectsToModel(reading));
+    }
+
+    private Project[] ProjectsToModel(Reading reading)
+    {
+        var read = SideBySide.Each(Projects ?? [], (project, index) =>
+        {
+            var (own, path) = (new Reading(), $"/projects/{index}");
+            return (Project: (project ?? throw JsonRefused.Null(path)).ToModel(own, path), own.Faults);
+        });
+        reading.Faults.AddRange(read.SelectMany(each => each.Faults));
+        return Array.ConvertAll(read, each => each.Project);
     }
 }

@@ -16,7 +16,16 @@ public sealed class DocumentReader(int maxDepth)
 
     private readonly DocumentContext context = DocumentContext.Strict(maxDepth);
 
-    public DocumentJson ReadDocument(ReadOnlySpan<byte> json) => Read(json, context.DocumentJson);
+    // Settings stand one level below the document, projects two.
+    private readonly DocumentContext belowDocument = DocumentContext.Strict(maxDepth - 1);
+    private readonly DocumentContext inList = DocumentContext.Strict(maxDepth - 2);
+
+    /// <summary>Projects are read beside each other. What is not a document at once is read again as a whole, to say what is wrong.</summary>
+    public DocumentJson ReadDocument(ReadOnlyMemory<byte> json)
+    {
+        json = WithoutMark(json.Span) is var plain && plain.Length < json.Length ? json[^plain.Length..] : json;
+        return ReadSlices(json) ?? Read(json.Span, context.DocumentJson);
+    }
 
     public SettingsJson ReadSettings(ReadOnlySpan<byte> json) => Read(json, context.SettingsJson);
 
@@ -29,19 +38,33 @@ public sealed class DocumentReader(int maxDepth)
     public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, OfStored.context.ProjectJson);
 
     /// <summary>A document from its stored parts, which were checked when they were written.</summary>
-    public static PortfolioDocument FromParts(ReadOnlySpan<byte> settings, IEnumerable<ReadOnlyMemory<byte>> projects)
+    public static PortfolioDocument FromParts(ReadOnlySpan<byte> settings, IReadOnlyList<ReadOnlyMemory<byte>> projects) => new(
+        OfStored.ReadSettings(settings).ToModel(new Reading(), "/settings"),
+        SideBySide.Each(projects, (project, index) => OfStored.ReadProject(project.Span).ToModel(new Reading(), $"/projects/{index}")));
+
+    private DocumentJson? ReadSlices(ReadOnlyMemory<byte> json)
     {
-        var reading = new Reading();
-        return new PortfolioDocument(
-            OfStored.ReadSettings(settings).ToModel(reading, "/settings"),
-            [.. projects.Select((project, index) => OfStored.ReadProject(project.Span).ToModel(reading, $"/projects/{index}"))]);
+        try
+        {
+            if (DocumentSlices.Of(json, maxDepth) is not { } slices)
+                return null;
+            var settings = slices.Settings is { } sent ? JsonSerializer.Deserialize(sent.Span, belowDocument.SettingsJson) : null;
+            var projects = SideBySide.Each(slices.Projects, (project, _) => JsonSerializer.Deserialize(project.Span, inList.ProjectJson)!);
+            return new DocumentJson { Settings = settings, Projects = projects };
+        }
+        catch (Exception refused) when (refused is JsonException or InvalidOperationException)
+        {
+            return null;
+        }
     }
+
+    // A byte order mark is tolerated (RFC 8259, section 8.1).
+    private static ReadOnlySpan<byte> WithoutMark(ReadOnlySpan<byte> json) => json.StartsWith("\uFEFF"u8) ? json[3..] : json;
 
     private T Read<T>(ReadOnlySpan<byte> json, JsonTypeInfo<T> type)
         where T : class
     {
-        // A byte order mark is tolerated (RFC 8259, section 8.1).
-        json = json.StartsWith("\uFEFF"u8) ? json[3..] : json;
+        json = WithoutMark(json);
         try
         {
             return JsonSerializer.Deserialize(json, type) ?? throw JsonRefused.Null("");

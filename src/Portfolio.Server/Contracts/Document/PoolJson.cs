@@ -20,7 +20,7 @@ public sealed record PoolJson
         var place = new Place(path, Id is null ? "settings" : $"pool/{Id}");
         return new Pool(
             reading.Required(place, "id", Id), Name, reading.RequiredNumber(place, "capacity", Capacity),
-            reading.List(place, "capacityChanges", CapacityChanges, (change, at) => change.ToModel(reading, place with { Path = at })));
+            reading.List(place, "capacityChanges", CapacityChanges, (change, at) => change.ToModel(reading, at)));
     }
 }
 

@@ -60,13 +60,13 @@ public sealed record ProjectJson
             Priority = (int)(reading.Whole(place, "priority", Priority) ?? 100),
             StatusDate = reading.RequiredDate(place, "statusDate", StatusDate),
             Calendar = Calendar,
-            Commitments = Commitments?.ToModel(reading, place with { Path = place.Member("commitments") }),
+            Commitments = Commitments?.ToModel(reading, place.Under("commitments")),
             Correlation = reading.Number(place, "correlation", Correlation),
             Drivers = reading.Texts(place, "drivers", Drivers),
-            Overhead = Overhead?.ToModel(reading, place with { Path = place.Member("overhead") }),
-            Activities = reading.List(place, "activities", Activities, (activity, at) => activity.ToModel(reading, at, project)),
-            RiskEvents = reading.List(place, "riskEvents", RiskEvents, (risk, at) => risk.ToModel(reading, at, project)),
-            ChanceBranches = reading.List(place, "chanceBranches", ChanceBranches, (fork, at) => fork.ToModel(reading, at, project)),
+            Overhead = Overhead?.ToModel(reading, place.Under("overhead")),
+            Activities = reading.List(place, "activities", Activities, (activity, at) => activity.ToModel(reading, at.Path, project)),
+            RiskEvents = reading.List(place, "riskEvents", RiskEvents, (risk, at) => risk.ToModel(reading, at.Path, project)),
+            ChanceBranches = reading.List(place, "chanceBranches", ChanceBranches, (fork, at) => fork.ToModel(reading, at.Path, project)),
         };
     }
 }

@@ -29,8 +29,8 @@ public sealed record RiskEventJson
             Id = reading.Required(place, "id", Id),
             Name = Name,
             Probability = reading.RequiredNumber(place, "probability", Probability),
-            Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at })),
-            Responses = reading.List(place, "responses", Responses, (response, at) => response.ToModel(reading, place with { Path = at })),
+            Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, at)),
+            Responses = reading.List(place, "responses", Responses, (response, at) => response.ToModel(reading, at)),
         };
     }
 }
@@ -81,7 +81,7 @@ public sealed record ResponseJson
         Name = Name,
         Cost = reading.Money(place, "cost", Cost) ?? 0,
         Probability = reading.Number(place, "probability", Probability) ?? 0,
-        Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, place with { Path = at })),
+        Impacts = reading.List(place, "impacts", Impacts, (impact, at) => impact.ToModel(reading, at)),
         Taken = Taken ?? false,
         Project = Project,
     };

@@ -73,16 +73,16 @@ public sealed record SettingsJson
             Confidence = Confidence is null ? [50, 80, 90] : reading.Numbers(place, "confidence", Confidence),
             Seed = reading.Whole(place, "seed", Seed, -1, 1L << 53) ?? 1,
             Iterations = (int)(reading.Whole(place, "iterations", Iterations) ?? 10_000),
-            Commitments = Commitments?.ToModel(reading, new Place(place.Member("commitments"), place.Subject)),
+            Commitments = Commitments?.ToModel(reading, place.Under("commitments")),
             ProgrammeCommitments = Commitments?.ProgrammesToModel(reading, $"{path}/commitments/programmes")
                 ?? new Dictionary<string, Commitments>(),
-            Calendars = reading.List(place, "calendars", Calendars, (calendar, at) => calendar.ToModel(reading, at)),
+            Calendars = reading.List(place, "calendars", Calendars, (calendar, at) => calendar.ToModel(reading, at.Path)),
             DefaultCalendar = DefaultCalendar ?? WorkCalendar.EveryDayId,
-            Pools = reading.List(place, "pools", Pools, (pool, at) => pool.ToModel(reading, at)),
+            Pools = reading.List(place, "pools", Pools, (pool, at) => pool.ToModel(reading, at.Path)),
             PoolRule = reading.Word(place, "poolRule", PoolRule, Words.PoolRules) ?? Model.Documents.PoolRule.Passing,
-            Drivers = reading.List(place, "drivers", Drivers, (driver, at) => driver.ToModel(reading, at)),
+            Drivers = reading.List(place, "drivers", Drivers, (driver, at) => driver.ToModel(reading, at.Path)),
             Dependence = Dependence?.ToModel(reading, $"{path}/dependence") ?? new Dependence(),
-            RiskEvents = reading.List(place, "riskEvents", RiskEvents, (risk, at) => risk.ToModel(reading, at, project: null)),
+            RiskEvents = reading.List(place, "riskEvents", RiskEvents, (risk, at) => risk.ToModel(reading, at.Path, project: null)),
         };
     }
 

@@ -5,17 +5,17 @@ namespace Portfolio.Server.Contracts.Json;
 /// <summary>Lists and objects used as maps. A null in one is a value of the wrong kind and refuses the request.</summary>
 public static class ReadingLists
 {
-    /// <summary>Reads each item with its pointer; an absent list is empty.</summary>
+    /// <summary>Reads each item with its place; an absent list is empty.</summary>
     public static IReadOnlyList<TModel> List<TItem, TModel>(
-        this Reading reading, Place owner, string member, IReadOnlyList<TItem>? items, Func<TItem, string, TModel> read)
+        this Reading reading, Place owner, string member, IReadOnlyList<TItem>? items, Func<TItem, Place, TModel> read)
     {
         if (items is null or { Count: 0 })
             return [];
-        var list = new TModel[items.Count];
+        var (list, path) = (new TModel[items.Count], owner.Path);
         for (var i = 0; i < list.Length; i++)
         {
-            var path = $"{owner.Path}/{member}/{i}";
-            list[i] = read(items[i] ?? throw JsonRefused.Null(path), path);
+            var at = Place.OfEntry(path, member, i, owner.Subject);
+            list[i] = read(items[i] ?? throw JsonRefused.Null(at.Path), at);
         }
         return list;
     }
@@ -32,7 +32,7 @@ public static class ReadingLists
     public static IReadOnlyList<DateOnly> Dates(this Reading reading, Place owner, string member, IReadOnlyList<string>? items)
     {
         var list = new Place($"{owner.Path}/{member}", owner.Subject);
-        return reading.List(owner, member, items, (text, path) => reading.Date(list, path[(list.Path.Length + 1)..], text)!.Value);
+        return reading.List(owner, member, items, (text, at) => reading.Date(list, at.Path[(list.Path.Length + 1)..], text)!.Value);
     }
 
     /// <summary>Words that are unknown are left out of the list.</summary>
