@@ -47,13 +47,5 @@ internal sealed class PertCurve
 
     private static bool IsUsual(double x, double greatest) => x * PerUnit >= 1 && x <= greatest && x * PerUnit == Math.Floor(x * PerUnit);
 
-    private double At(double place)
-    {
-        Span<double> shares = stackalloc double[points.Count];
-        points.WriteShares(place, shares);
-        var quantile = 0.0;
-        for (var j = 0; j < shares.Length; j++)
-            quantile += shares[j] * quantiles[j];
-        return quantile;
-    }
+    private double At(double place) => points.At(place, quantiles);
 }

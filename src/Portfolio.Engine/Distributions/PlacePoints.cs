@@ -41,6 +41,23 @@ internal sealed class PlacePoints
             share /= sum;
     }
 
+    /// <summary>The value at a place of what has <paramref name="values"/> at the points.</summary>
+    public double At(double place, ReadOnlySpan<double> values)
+    {
+        var (sum, weighted) = (0.0, 0.0);
+        for (var j = 0; j < places.Length; j++)
+        {
+            var distance = place - places[j];
+            if (distance == 0)
+                return values[j];
+            var share = weights[j] / distance;
+            sum += share;
+            weighted += share * values[j];
+        }
+
+        return weighted / sum;
+    }
+
     // Rounded to 2⁻³⁰ so that no processor's cosine shows.
     private static double[] Places(int degree)
     {

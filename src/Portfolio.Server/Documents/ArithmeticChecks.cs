@@ -61,11 +61,11 @@ internal static class ArithmeticChecks
 
     private static Fault? Flaw(StatedDistribution stated)
     {
-        if (MarginalCheck.Fault(stated.Distribution) is { } sentence)
+        if (MarginalCheck.Fault(stated.Distribution, out var lowest) is { } sentence)
             return new Fault(stated.Path, stated.Place.Subject, FaultCodes.DistributionEnds, sentence);
         // Ends stated as percentiles reach further out than they say. A normal's draws below 0 count as 0.
         return stated is { MayBeNegative: false, Distribution: Triangular or Pert }
-            && MarginalCheck.Lowest(stated.Distribution) is < 0 and var lowest
+            && lowest < 0
             ? new Fault(stated.Path, stated.Place.Subject, RuleCodes.DistributionNegative, FormattableString.Invariant(
                 $"With these percentiles the distribution reaches down to {lowest:0.###}; here it may not be negative."))
             : null;
