@@ -7,6 +7,8 @@ return args switch
 {
     ["document", ..] => DocumentBenchmark.Run(args[1..]),
     ["reading", ..] => await ReadingBenchmark.RunAsync(args[1..], clock),
+    ["kernels"] => KernelBenchmark.Run(),
+    ["growth"] => GrowthBenchmark.Run(),
     _ => Usage(),
 };
 
@@ -14,6 +16,9 @@ static int Usage()
 {
     Console.Error.WriteLine("""
         usage: document FILE [--iterations N] [--threads T] [--json]   simulate a document in process; medians of 3 after a warm-up
+               reading FILE [--json]     read, check, compile, store and load a document: the first time in a process, and later
+               kernels                   nanoseconds of the engine's inner loops, and how drawing scales to two threads
+               growth                    factors of a run's time when projects, activities or iterations double
         """);
     return 2;
 }
