@@ -10,7 +10,7 @@ internal static class KernelBenchmark
 {
     private const int Chunk = 256, Key = 0x5EED;
 
-    private static readonly (string Name, Distribution Stated)[] Marginals =
+    internal static readonly (string Name, Distribution Stated)[] Marginals =
     [
         ("uniform", new Uniform(2, 9)),
         ("triangular", new Triangular(2, 5, 14)),
