@@ -10,7 +10,9 @@ using Portfolio.Server.Contracts.Document;
 
 namespace Portfolio.Benchmarks;
 
-/// <summary>Reads, checks, compiles and simulates one document in process, beside the time of drawing the same number of scores and nothing else.</summary>
+/// <summary>
+/// Reads, checks, compiles and simulates one document in process, beside the time of drawing the same number of scores and nothing else.
+/// </summary>
 internal static class DocumentBenchmark
 {
     private const int Repeats = 3;
@@ -67,7 +69,9 @@ internal static class DocumentBenchmark
         EngineThreads.Work(threads, _ => work(Interlocked.Increment(ref next)), CancellationToken.None);
     }
 
-    /// <summary>Seconds on the clock and of processor time (which a busy machine disturbs less), each the median of several after a warm-up.</summary>
+    /// <summary>
+    /// Seconds on the clock and of processor time (which a busy machine disturbs less), each the median of several after a warm-up.
+    /// </summary>
     internal static (double Seconds, double Cpu) Median(Action work)
     {
         work();

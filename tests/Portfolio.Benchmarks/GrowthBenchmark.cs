@@ -26,5 +26,6 @@ internal static class GrowthBenchmark
     }
 
     private static void Line(string what, int from, double one, double two) => Console.WriteLine(string.Create(
-        CultureInfo.InvariantCulture, $"{what,-10} {from,5} → {2 * from,5}: {one:0.000} → {two:0.000} s of processor time, {two / one:0.00} times"));
+        CultureInfo.InvariantCulture,
+        $"{what,-10} {from,5} → {2 * from,5}: {one:0.000} → {two:0.000} s of processor time, {two / one:0.00} times"));
 }

@@ -6,8 +6,8 @@ using Portfolio.Model.Rules;
 namespace Portfolio.Benchmarks;
 
 /// <summary>
-/// An invented portfolio of any size, the same for the same size: layered networks of three lanes, PERT and triangular work, costs, a five-day
-/// calendar, drivers, an event in each project; with pools every third activity draws on one.
+/// An invented portfolio of any size, the same for the same size: layered networks of three lanes, PERT and triangular work, costs, a
+/// five-day calendar, drivers, an event in each project; with pools every third activity draws on one.
 /// </summary>
 internal sealed class InventedPortfolio
 {
@@ -26,12 +26,13 @@ internal sealed class InventedPortfolio
         {
             Name = "Invented",
             Currency = "EUR",
-            Calendars =
-            [
-                new("week", [DayOfWeek.Monday, DayOfWeek.Tuesday, DayOfWeek.Wednesday, DayOfWeek.Thursday, DayOfWeek.Friday], [new(2027, 1, 1)], []),
-            ],
+            Calendars = [new("week", [.. Enumerable.Range(1, 5).Select(day => (DayOfWeek)day)], [new(2027, 1, 1)], [])],
             DefaultCalendar = "week",
-            Drivers = [.. Enumerable.Range(0, Drivers).Select(d => new Driver($"d{d}", null, d % 2 == 0 ? 1 : 0.4, new Triangular(0.9, 1, 1.4), null))],
+            Drivers =
+            [
+                .. Enumerable.Range(0, Drivers)
+                    .Select(d => new Driver($"d{d}", null, d % 2 == 0 ? 1 : 0.4, new Triangular(0.9, 1, 1.4), null)),
+            ],
             Dependence = new Dependence { BetweenProjects = 0.1, Stated = true },
             Pools = [.. Enumerable.Range(0, pools).Select(p => new Pool($"pool{p}", null, Math.Max(2, projects / 2), []))],
         };
@@ -50,7 +51,12 @@ internal sealed class InventedPortfolio
         Activities = [.. Enumerable.Range(0, activities).Select(Activity)],
         RiskEvents =
         [
-            new RiskEvent { Id = "flood", Probability = 0.2, Impacts = [new Impact("A0", null, new Triangular(5, 15, 60), new Triangular(20_000, 60_000, 200_000))] },
+            new RiskEvent
+            {
+                Id = "flood",
+                Probability = 0.2,
+                Impacts = [new Impact("A0", null, new Triangular(5, 15, 60), new Triangular(20_000, 60_000, 200_000))],
+            },
         ],
     };
 

@@ -19,7 +19,7 @@ static int Usage()
     Console.Error.WriteLine("""
         usage: document FILE [--iterations N] [--threads T] [--json]   simulate a document in process; medians of 3 after a warm-up
                reading FILE [--json]     read, check, compile, store and load a document: the first time in a process, and later
-               kernels [--bench]         nanoseconds of the engine's inner loops, and how drawing scales to two threads; --bench: by BenchmarkDotNet
+               kernels [--bench]         nanoseconds of the engine's inner loops, and how drawing scales; --bench: by BenchmarkDotNet
                growth                    factors of a run's time when projects, activities or iterations double
         """);
     return 2;

@@ -41,7 +41,8 @@ internal static class ReadingBenchmark
         var check = new DocumentCheck(ModelLimits.Default);
         // Contents are kept once by hash: a name of its own makes every round store everything anew.
         var document = Timed(spent, "read", () => DocumentReader.OfStored.ReadDocument(json));
-        var valid = Timed(spent, "check", () => check.Check(document, json, out var faults) ?? throw new InvalidDataException(faults[0].Message));
+        var valid = Timed(spent, "check", () =>
+            check.Check(document, json, out var faults) ?? throw new InvalidDataException(faults[0].Message));
         var projects = document.Projects!.Select(p => p with { Name = $"{p.Name} {round}" }).ToArray();
         var parts = Timed(spent, "parts", () => (ProposedPart[])
         [
@@ -91,21 +92,25 @@ internal static class ReadingBenchmark
         Console.WriteLine(string.Create(CultureInfo.InvariantCulture, $"peak memory {peak:0} MiB"));
     }
 
-    private static void Line(string stage, Spent first, Spent later) => Console.WriteLine(string.Create(
-        CultureInfo.InvariantCulture, $"{stage,-10}       {first.Seconds,7:0.000} {first.Cpu,7:0.000} {first.Pause,7:0.000}          {later.Seconds,7:0.000} {later.Cpu,7:0.000} {later.Pause,7:0.000}"));
+    private static void Line(string stage, Spent first, Spent later) => Console.WriteLine($"{stage,-10}       {first}          {later}");
 
-    private static Spent Sum(IEnumerable<Spent> all) => all.Aggregate((a, b) => new Spent(a.Seconds + b.Seconds, a.Cpu + b.Cpu, a.Pause + b.Pause));
+    private static Spent Sum(IEnumerable<Spent> all) =>
+        all.Aggregate((a, b) => new Spent(a.Seconds + b.Seconds, a.Cpu + b.Cpu, a.Pause + b.Pause));
 
     private static Spent Median(IEnumerable<Spent> all)
     {
         var list = all.ToArray();
-        return new Spent(list.Select(s => s.Seconds).Order().ElementAt(list.Length / 2), list.Select(s => s.Cpu).Order().ElementAt(list.Length / 2),
-            list.Select(s => s.Pause).Order().ElementAt(list.Length / 2));
+        return new Spent(Middle(spent => spent.Seconds), Middle(spent => spent.Cpu), Middle(spent => spent.Pause));
+
+        double Middle(Func<Spent, double> of) => list.Select(of).Order().ElementAt(list.Length / 2);
     }
 
     /// <summary>Seconds on the clock and of all threads of the process; on a shared machine the second says more. And how long the
     /// collector stopped them all.</summary>
-    private sealed record Spent(double Seconds, double Cpu, double Pause);
+    private sealed record Spent(double Seconds, double Cpu, double Pause)
+    {
+        public override string ToString() => string.Create(CultureInfo.InvariantCulture, $"{Seconds,7:0.000} {Cpu,7:0.000} {Pause,7:0.000}");
+    }
 
     private sealed class Watch
     {

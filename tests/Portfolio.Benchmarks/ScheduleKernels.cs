@@ -18,7 +18,7 @@ internal static class ScheduleKernels
         var pass = new ForwardPass(plan.Network, rows, inputs);
         var steps = (long)plan.Network.Count * Chunk;
         line("duration of an activity: drawn, driver, minutes", Timing.Nanoseconds(steps, () => Draw(plan.Network.Order, inputs, rows)));
-        line("forward-pass step: one activity, one iteration", Timing.Nanoseconds(steps, () => Array.ForEach(plan.Network.Order, pass.Place)));
+        line("forward-pass step", Timing.Nanoseconds(steps, () => Array.ForEach(plan.Network.Order, pass.Place)));
         line("dispatch event: start or end of one activity", DispatchEvent());
     }
 

@@ -4,8 +4,8 @@ using Portfolio.Engine.Runs;
 namespace Portfolio.Benchmarks;
 
 /// <summary>
-/// How long a piece of work takes: medians of seven after a warm-up, in processor time, which says more than the clock on a machine that is not
-/// alone. Each of the seven lasts long enough for the clock's grain.
+/// How long a piece of work takes: medians of seven after a warm-up, in processor time, which says more than the clock on a machine that is
+/// not alone. Each of the seven lasts long enough for the clock's grain.
 /// </summary>
 internal static class Timing
 {
@@ -23,8 +23,8 @@ internal static class Timing
     }
 
     /// <summary>
-    /// How many times as much the machine works in the same time on two threads as on one, by the clock: 2 when it gives both a processor of
-    /// their own.
+    /// How many times as much the machine works in the same time on two threads as on one, by the clock: 2 when it gives both a processor
+    /// of their own.
     /// </summary>
     public static double Scaling(Action work)
     {

@@ -7,8 +7,8 @@ public static class MarginalCheck
 {
     /// <summary>Why the statement has no marginal, as a sentence; null when it has one.</summary>
     /// <param name="lowest">
-    /// The least value that a draw can take, −∞ for a normal without lower bound; ends stated as percentiles reach below their low. Means nothing
-    /// beside a fault.
+    /// The least value that a draw can take, −∞ for a normal without lower bound; ends stated as percentiles reach below their low. Means
+    /// nothing beside a fault.
     /// </param>
     public static string? Fault(Distribution stated, out double lowest)
     {

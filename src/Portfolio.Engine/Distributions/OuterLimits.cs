@@ -39,7 +39,9 @@ internal static class OuterLimits
     private static double UnitTriangular(double mode, double p) =>
         p < mode ? Math.Sqrt(p * mode) : 1 - Math.Sqrt((1 - p) * (1 - mode));
 
-    /// <summary>Root in [0, 1] of a function that is ≤ 0 at 0 and ≥ 0 at 1: false position with the Illinois weights, halving when that is slow.</summary>
+    /// <summary>
+    /// Root in [0, 1] of a function that is ≤ 0 at 0 and ≥ 0 at 1: false position with the Illinois weights, halving when that is slow.
+    /// </summary>
     private static double Root(Func<double, double> f)
     {
         var (a, b, fa, fb) = (0.0, 1.0, f(0), f(1));

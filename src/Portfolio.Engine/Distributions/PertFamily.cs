@@ -3,7 +3,8 @@ using Portfolio.Engine.Draws;
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
-/// All PERT shapes of one weight. Their quantiles at a fixed score are analytic in the mode's place t, so a polynomial through the exact quantiles at
+/// All PERT shapes of one weight. Their quantiles at a fixed score are analytic in the mode's place t, so a polynomial through the exact
+/// quantiles at
 /// <see cref="PlacePoints"/> gives them all: a shape's table is a weighted sum of a few rows, so cheap that nobody need keep it.
 /// Weights 0.5, 1, … 20 have a family, made when first asked for; at most 40 exist, of some 40 KB.
 /// </summary>

@@ -1,8 +1,8 @@
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
-/// Points of the mode's place t through which what is analytic in t is interpolated for all PERT shapes of one weight: barycentric interpolation
-/// (Berrut and Trefethen, SIAM Review 46(3), 2004) at Chebyshev points on [0, 1], symmetrical about ½.
+/// Points of the mode's place t through which what is analytic in t is interpolated for all PERT shapes of one weight: barycentric
+/// interpolation (Berrut and Trefethen, SIAM Review 46(3), 2004) at Chebyshev points on [0, 1], symmetrical about ½.
 /// </summary>
 internal sealed class PlacePoints
 {
@@ -16,7 +16,8 @@ internal sealed class PlacePoints
     {
         var x = 1 + 2 / weight;
         places = Places(6 + (int)Math.Ceiling(Math.Log(1 / error) / Math.Log(x + Math.Sqrt(x * x - 1))));
-        weights = Array.ConvertAll(places, here => 1 / places.Where(other => other != here).Aggregate(1.0, (product, other) => product * (here - other)));
+        weights = Array.ConvertAll(
+            places, here => 1 / places.Where(other => other != here).Aggregate(1.0, (product, other) => product * (here - other)));
     }
 
     public int Count => places.Length;

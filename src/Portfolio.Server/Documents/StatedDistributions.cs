@@ -3,7 +3,9 @@ using Portfolio.Model.Documents;
 
 namespace Portfolio.Server.Documents;
 
-/// <summary>One of a list that states distributions, and what it is called in faults. Texts are put together only when they are asked for.</summary>
+/// <summary>
+/// One of a list that states distributions, and what it is called in faults. Texts are put together only when they are asked for.
+/// </summary>
 /// <param name="Owner">Pointer of the list's owner.</param>
 /// <param name="Family">What stands before the id in its name: <c>weir-lock/</c>.</param>
 internal readonly record struct StatedPlace(string Owner, string List, int Index, string Family, string Id)

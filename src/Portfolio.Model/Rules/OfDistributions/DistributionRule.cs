@@ -37,7 +37,8 @@ internal static class DistributionRule
     private static IEnumerable<Flaw> OfExtent(Distribution distribution, Quantity quantity)
     {
         var (low, high) = Extent(distribution);
-        return (low < 0 && !quantity.NegativeAllowed) || Math.Max(high, -low) > quantity.Bound ? TooFar(low, high, distribution, quantity) : None;
+        var sound = (low >= 0 || quantity.NegativeAllowed) && Math.Max(high, -low) <= quantity.Bound;
+        return sound ? None : TooFar(low, high, distribution, quantity);
     }
 
     private static IEnumerable<Flaw> TooFar(double low, double high, Distribution distribution, Quantity quantity)

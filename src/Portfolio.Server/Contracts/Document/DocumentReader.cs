@@ -20,7 +20,9 @@ public sealed class DocumentReader(int maxDepth)
     private readonly DocumentContext belowDocument = DocumentContext.Strict(maxDepth - 1);
     private readonly DocumentContext inList = DocumentContext.Strict(maxDepth - 2);
 
-    /// <summary>Projects are read beside each other. What is not a document at once is read again as a whole, to say what is wrong.</summary>
+    /// <summary>
+    /// Projects are read beside each other. What is not a document at once is read again as a whole, to say what is wrong.
+    /// </summary>
     public DocumentJson ReadDocument(ReadOnlyMemory<byte> json)
     {
         json = WithoutMark(json.Span) is var plain && plain.Length < json.Length ? json[^plain.Length..] : json;
