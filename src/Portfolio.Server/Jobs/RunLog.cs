@@ -18,6 +18,9 @@ internal static partial class RunLog
     [LoggerMessage(2004, LogLevel.Warning, "Run {Run} cannot succeed: {Reason}")]
     public static partial void CannotSucceed(ILogger log, string run, string reason);
 
+    [LoggerMessage(2005, LogLevel.Error, "Looking for runs failed; the next look tries again.")]
+    public static partial void LookedInVain(ILogger log, Exception failure);
+
     [LoggerMessage(2010, LogLevel.Information, "The schedule of {Portfolio} made run {Run} for {Date}.")]
     public static partial void Due(ILogger log, string portfolio, string run, DateOnly date);
 

@@ -24,6 +24,7 @@ internal static class WakeUps
             (provider, hangfire) => hangfire.UseLogProvider(new WakeUpLogs(provider.GetRequiredService<ILoggerFactory>())));
         // Leases of the process before are ended first.
         services.AddHostedService<JobStart>();
+        services.AddHostedService<SecondLook>();
         services.AddHangfireServer(server =>
         {
             // One more than may work: the sweep comes through while they do.
@@ -110,10 +111,17 @@ internal sealed class WakeUpLogs(ILoggerFactory logs) : ILogProvider
         {
             // Both count the same six levels from trace upwards.
             var asked = (Microsoft.Extensions.Logging.LogLevel)(int)level;
-            if (message is null || !log.IsEnabled(asked))
+            try
+            {
+                if (message is not null && log.IsEnabled(asked))
+                    WakeUpLog.Said(log, asked, message(), exception);
                 return log.IsEnabled(asked);
-            WakeUpLog.Said(log, asked, message(), exception);
-            return true;
+            }
+            catch (Exception)
+            {
+                // A log that cannot be written, such as that of a host that has ended, must not keep another host's jobs from starting.
+                return false;
+            }
         }
     }
 }
