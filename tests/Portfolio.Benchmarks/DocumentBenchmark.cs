@@ -29,9 +29,12 @@ internal static class DocumentBenchmark
         var (seconds, cpu) = Median(() => Simulate(plan, iterations, threads));
         var peak = Process.GetCurrentProcess().PeakWorkingSet64;
         var (drawing, drawingCpu) = Median(() => Draw(draws, iterations, threads));
+        var (single, _) = threads == 1 ? (seconds, cpu) : Median(() => Simulate(plan, iterations, 1));
+        var (singleDrawing, _) = threads == 1 ? (drawing, drawingCpu) : Median(() => Draw(draws, iterations, 1));
         var figures = new Figures(
             activities, iterations, threads, seconds, activities * (double)iterations / seconds, readSeconds, compileSeconds,
-            peak / (1024.0 * 1024), draws, drawing, seconds / drawing, cpu, cpu / drawingCpu);
+            peak / (1024.0 * 1024), draws, drawing, seconds / drawing, cpu, cpu / drawingCpu,
+            single / seconds, singleDrawing / drawing);
         Print(figures, args.Contains("--json"));
         return 0;
     }
@@ -114,11 +117,12 @@ internal static class DocumentBenchmark
             read and check {f.ReadSeconds:0.000} s, compile {f.CompileSeconds:0.000} s, peak memory {f.PeakMebibytes:0} MiB
             drawing alone ({f.ScoresPerIteration} scores per iteration) {f.DrawingSeconds:0.000} s: the run takes {f.TimesDrawing:0.00} times as long
             processor time {f.CpuSeconds:0.000} s, {f.TimesDrawingCpu:0.00} times that of drawing
+            one thread {f.Scaling * f.Seconds:0.000} s: {f.Threads} scale {f.Scaling:0.00} times, drawing alone {f.DrawingScaling:0.00} times
             """));
     }
 
     private sealed record Figures(
         int Activities, int Iterations, int Threads, double Seconds, double ActivitySamplesPerSecond, double ReadSeconds, double CompileSeconds,
         double PeakMebibytes, int ScoresPerIteration, double DrawingSeconds, double TimesDrawing,
-        double CpuSeconds, double TimesDrawingCpu);
+        double CpuSeconds, double TimesDrawingCpu, double Scaling, double DrawingScaling);
 }
