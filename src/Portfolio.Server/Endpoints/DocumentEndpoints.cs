@@ -19,7 +19,7 @@ internal static class DocumentEndpoints
     {
         var document = portfolio.MapGroup("/document").WithTags("Document");
         document.MapGet("", Get).WithName("getDocument").Needs(Right.Read)
-            .Produces<DocumentJson>().ReadsConditionally().Refuses(422);
+            .Produces<SeenDocumentJson>().ReadsConditionally().Refuses(422);
         document.MapPut("", Put).WithName("putDocument").Needs(Right.Manage)
             .Accepts<DocumentJson>("application/json")
             .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)

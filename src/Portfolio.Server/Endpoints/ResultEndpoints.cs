@@ -5,6 +5,7 @@ using Portfolio.Server.Contracts.Csv;
 using Portfolio.Server.Contracts.Results;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Results;
 using Portfolio.Store.Access;
@@ -26,7 +27,7 @@ internal static class ResultEndpoints
 
     /// <summary>Tells the API's description that a route answers in JSON and in CSV, and 304 to a client that has it already.</summary>
     internal static void Represents<T>(this RouteHandlerBuilder route) =>
-        route.Produces<T>(StatusCodes.Status200OK, "application/json", CsvTable.MediaType).Produces(StatusCodes.Status304NotModified);
+        route.Produces<T>(StatusCodes.Status200OK, "application/json", CsvTable.MediaType).ReadsConditionally();
 
     /// <summary>All results: portfolio, programmes, projects, milestones. As CSV one line for each scope and level, and no pages.</summary>
     /// <param name="levels">Confidence levels, parted by commas; left out: the configured ones.</param>

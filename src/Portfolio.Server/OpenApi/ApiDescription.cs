@@ -29,6 +29,8 @@ internal static class ApiDescription
             description.AddDocumentTransformer(DescribeApi.Apply);
             description.AddOperationTransformer(DescribeCsv.Apply);
             description.AddOperationTransformer(DescribeDates.Apply);
+            description.AddOperationTransformer(DescribeHeaders.Apply);
+            description.AddOperationTransformer(DescribeRights.Apply);
             description.AddSchemaTransformer(DescribeTypes.Apply);
             description.AddDocumentTransformer(OpenAnswers.Apply);
         });

@@ -26,11 +26,7 @@ internal static class DescribeConditions
             });
             foreach (var (_, response) in (operation.Responses ?? []).Where(pair => pair.Key is "200" or "201" or "304"))
                 if (response is OpenApiResponse answer)
-                    (answer.Headers ??= new Dictionary<string, IOpenApiHeader>()).TryAdd("ETag", EntityTag());
+                    DescribeHeaders.Add(answer, "ETag", "Strong entity tag of what is answered or written.");
             return Task.CompletedTask;
         });
-
-    private static OpenApiHeader EntityTag() =>
-        new() { Description = "Strong entity tag of what is answered or written.",
-            Schema = new OpenApiSchema { Type = JsonSchemaType.String } };
 }

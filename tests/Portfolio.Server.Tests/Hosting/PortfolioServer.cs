@@ -4,6 +4,7 @@ using Microsoft.AspNetCore.Mvc.Testing;
 using Microsoft.AspNetCore.TestHost;
 using Microsoft.Extensions.DependencyInjection;
 using Microsoft.Extensions.Time.Testing;
+using Portfolio.Server.Tests.Contract;
 using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Hosting;
@@ -43,10 +44,10 @@ public sealed class PortfolioServer : IAsyncDisposable
 
     private bool OwnsDirectory { get; }
 
-    /// <summary>A client that presents a key; null: none.</summary>
+    /// <summary>A client that presents a key; null: none. Every answer is held against the API's description.</summary>
     public HttpClient Client(string? key = AdminKey)
     {
-        var client = factory.CreateClient();
+        var client = factory.CreateDefaultClient(new ContractCheck());
         if (key is not null)
             client.DefaultRequestHeaders.Authorization = new AuthenticationHeaderValue("Bearer", key);
         return client;

@@ -2,6 +2,7 @@ using System.Diagnostics;
 using System.Net;
 using System.Net.Http.Headers;
 using System.Net.Sockets;
+using Portfolio.Server.Tests.Contract;
 using Portfolio.Server.Tests.Hosting;
 
 namespace Portfolio.Server.Tests.Jobs;
@@ -35,7 +36,7 @@ internal sealed class ServerProcess : IDisposable
         // What is not read would fill the pipe and stop the server.
         process.OutputDataReceived += (_, _) => { };
         process.BeginOutputReadLine();
-        var client = new HttpClient { BaseAddress = new Uri(address) };
+        var client = new HttpClient(new ContractCheck { InnerHandler = new SocketsHttpHandler() }) { BaseAddress = new Uri(address) };
         client.DefaultRequestHeaders.Authorization = new AuthenticationHeaderValue("Bearer", PortfolioServer.AdminKey);
         while (!await IsReadyAsync(client))
         {

@@ -1,3 +1,4 @@
+using System.Diagnostics;
 using System.Text.Json;
 using Portfolio.Server.Tests.Hosting;
 
@@ -7,6 +8,9 @@ namespace Portfolio.Server.Tests.Runs;
 internal static class RunCalls
 {
     private static readonly TimeSpan Look = TimeSpan.FromMilliseconds(50);
+
+    // Far more than any run of the tests takes on a busy machine: what waits longer waits for something that does not come.
+    private static readonly TimeSpan Longest = TimeSpan.FromMinutes(4);
 
     private static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
@@ -28,9 +32,10 @@ internal static class RunCalls
         return await response.JsonAsync();
     }
 
-    /// <summary>Waits until the run is in one of these states; the whole suite's timeout is the only limit.</summary>
+    /// <summary>Waits until the run is in one of these states.</summary>
     public static async Task<JsonElement> UntilAsync(this HttpClient client, string portfolio, string run, params string[] states)
     {
+        var waited = Stopwatch.StartNew();
         while (true)
         {
             var found = await client.ReadRunAsync(portfolio, run);
@@ -38,6 +43,7 @@ internal static class RunCalls
             if (states.Contains(state))
                 return found;
             Assert.True(state is "queued" or "running", found.ToString());
+            Assert.True(waited.Elapsed < Longest, $"After {waited.Elapsed} the run is not yet {string.Join(" or ", states)}: {found}");
             await Task.Delay(Look, Cancellation);
         }
     }

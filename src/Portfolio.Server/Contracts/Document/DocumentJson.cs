@@ -32,3 +32,11 @@ public sealed record DocumentJson
         return Array.ConvertAll(read, each => each.Project);
     }
 }
+
+/// <summary>A portfolio as a key sees it: one that is limited to projects sees these alone, and no settings.</summary>
+public sealed record SeenDocumentJson
+{
+    public SettingsJson? Settings { get; init; }
+
+    public required IReadOnlyList<ProjectJson> Projects { get; init; }
+}

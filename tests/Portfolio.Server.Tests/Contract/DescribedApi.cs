@@ -1,0 +1,77 @@
+using System.Text.Json;
+using System.Text.Json.Nodes;
+using Json.Schema;
+
+namespace Portfolio.Server.Tests.Contract;
+
+/// <summary>What the API's description promises, made ready for checking answers: operations by address, schemas compiled once.</summary>
+internal sealed class DescribedApi
+{
+    private const string Id = "https://portfolio.invalid/api";
+
+    private readonly BuildOptions building = new() { SchemaRegistry = new SchemaRegistry() };
+
+    public DescribedApi(string description)
+    {
+        Document = JsonNode.Parse(description)!.AsObject();
+        var schemas = Document["components"]?["schemas"]?.DeepClone() ?? new JsonObject();
+        Compile(new JsonObject { ["$id"] = Id, ["$defs"] = schemas });
+        Problem = Compile(new JsonObject { ["$ref"] = $"{Id}#/$defs/Problem" });
+        Operations = [.. Document["paths"]!.AsObject().SelectMany(path => OperationsOf(path.Key, path.Value!.AsObject()))];
+    }
+
+    public JsonObject Document { get; }
+
+    public IReadOnlyList<DescribedOperation> Operations { get; }
+
+    public JsonSchema Problem { get; }
+
+    /// <summary>The operations at an address, whatever their method; of several templates the one with the most literal segments.</summary>
+    public IReadOnlyList<DescribedOperation> At(string path) =>
+        Operations.Where(operation => operation.Fits(path)).GroupBy(operation => operation.Template)
+            .MinBy(template => template.First().Parameters)?.ToList() ?? [];
+
+    private IEnumerable<DescribedOperation> OperationsOf(string template, JsonObject path) =>
+        path.Where(member => member.Key is "get" or "put" or "post" or "patch" or "delete")
+            .Select(member => new DescribedOperation(template, member.Key.ToUpperInvariant(), member.Value!.AsObject(), ResponsesOf(member.Value)));
+
+    private Dictionary<int, DescribedResponse> ResponsesOf(JsonNode operation) => operation["responses"]!.AsObject().ToDictionary(
+        response => int.Parse(response.Key, System.Globalization.CultureInfo.InvariantCulture),
+        response => new DescribedResponse(
+            [.. (response.Value!["headers"]?.AsObject() ?? []).Where(header => (bool?)header.Value!["required"] == true).Select(header => header.Key)],
+            (response.Value["content"]?.AsObject() ?? []).ToDictionary(
+                content => content.Key, content => content.Value!["schema"] is { } schema ? Compile(schema.DeepClone().AsObject()) : null)));
+
+    private JsonSchema Compile(JsonObject schema)
+    {
+        schema["$schema"] = "https://json-schema.org/draft/2020-12/schema";
+        var text = schema.ToJsonString().Replace("\"#/components/schemas/", $"\"{Id}#/$defs/", StringComparison.Ordinal);
+        return JsonSchema.Build(JsonDocument.Parse(text).RootElement, building);
+    }
+}
+
+/// <param name="Template">As in <c>/v1/portfolios/{portfolio}</c>.</param>
+/// <param name="Description">The operation as it is described.</param>
+internal sealed record DescribedOperation(
+    string Template, string Method, JsonObject Description, IReadOnlyDictionary<int, DescribedResponse> Responses)
+{
+    private readonly string[] segments = Template.Split('/');
+
+    public string Name => Description["operationId"]?.GetValue<string>() ?? $"{Method} {Template}";
+
+    /// <summary>How many segments are parameters.</summary>
+    public int Parameters => segments.Count(IsParameter);
+
+    public bool Fits(string path)
+    {
+        var asked = path.TrimEnd('/').Split('/');
+        return asked.Length == segments.Length
+            && segments.Zip(asked).All(pair => IsParameter(pair.First) ? pair.Second.Length > 0 : pair.First == pair.Second);
+    }
+
+    private static bool IsParameter(string segment) => segment.StartsWith('{');
+}
+
+/// <param name="Headers">Those that every such answer carries.</param>
+/// <param name="Content">Schemas by media type; null for a type without one.</param>
+internal sealed record DescribedResponse(IReadOnlyList<string> Headers, IReadOnlyDictionary<string, JsonSchema?> Content);
