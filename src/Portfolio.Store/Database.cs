@@ -1,25 +1,15 @@
-using System.Collections.Concurrent;
-using Microsoft.Data.Sqlite;
-using Portfolio.Store.Sqlite;
-
 namespace Portfolio.Store;
 
 /// <summary>
-/// The embedded database in one folder. One process owns the folder; inside it one writer works at a time and readers are never blocked.
-/// Thread safe; create once, dispose last.
+/// Where everything is kept: the embedded database of one process, or PostgreSQL under several. The rest of the store speaks SQL that both
+/// understand. One writer works at a time, so that numbers that continue a sequence can be formed by looking at the last one; readers are
+/// never blocked. Thread safe; create once, dispose last.
 /// </summary>
-public sealed class Database : IAsyncDisposable
+public abstract class Database : IAsyncDisposable
 {
-    private const int IdleReaders = 8;
-
-    private readonly SqliteFolder folder;
-    private readonly SemaphoreSlim writing = new(1, 1);
-    private readonly ConcurrentBag<SqliteConnection> idle = [];
-    private SqliteConnection? writer;
     private volatile bool unwritable;
-    private int disposed;
 
-    private Database(SqliteFolder folder, TimeProvider clock) => (this.folder, Clock) = (folder, clock);
+    private protected Database(TimeProvider clock) => Clock = clock;
 
     internal TimeProvider Clock { get; }
 
@@ -27,128 +17,44 @@ public sealed class Database : IAsyncDisposable
     internal Action<string>? BeforeStatement { get; set; }
 
     /// <summary>
-    /// Opens <c>portfolio.db</c> in the folder (made when missing), taking the folder for this process, and brings it to the newest
-    /// migration.
+    /// Whether other processes work on it beside this one: a lease that has not run out may then be held by one that is alive.
     /// </summary>
-    /// <exception cref="StoreInUseException">Another process has the folder.</exception>
-    /// <exception cref="StoreSchemaException">The stored steps are not this program's: a newer one wrote here, or one changed.</exception>
-    public static Task<Database> OpenAsync(string directory, TimeProvider clock, CancellationToken cancellation) =>
-        OpenAsync(directory, clock, SqliteMigrations.All, cancellation);
+    public abstract bool IsShared { get; }
 
-    internal static async Task<Database> OpenAsync(
-        string directory, TimeProvider clock, IReadOnlyList<Migration> migrations, CancellationToken cancellation)
-    {
-        cancellation.ThrowIfCancellationRequested();
-        var database = new Database(SqliteFolder.Take(directory), clock);
-        try
-        {
-            database.writer = database.folder.OpenWriter();
-            SqliteMigrations.Apply(database.writer, migrations, clock.GetUtcNow().ToMicroseconds());
-            return database;
-        }
-        catch
-        {
-            await database.DisposeAsync();
-            throw;
-        }
-    }
+    // Changes nothing and has to be written all the same.
+    private const string TouchSql = "update schema_migration set applied_at = applied_at where number = 1";
 
     /// <summary>Throws when the storage cannot be read or, after a write that the storage refused, still cannot be written.</summary>
     public async Task PingAsync(CancellationToken cancellation)
     {
         await MigrationLevelAsync(cancellation);
-        // Not used otherwise; setting it writes a page whatever it was.
         if (unwritable)
-            await WriteAsync(open => open.ExecuteAsync("pragma user_version = 0"), cancellation);
+            await WriteAsync(open => open.ExecuteAsync(TouchSql), cancellation);
     }
 
     /// <summary>The number of the last migration applied.</summary>
     public Task<int> MigrationLevelAsync(CancellationToken cancellation) =>
         ReadAsync(open => open.FirstAsync<int>("select max(number) from schema_migration"), cancellation);
 
-    /// <summary>A chore for quiet hours: folds the write-ahead log into the file and refreshes the planner's statistics.</summary>
-    public async Task MaintainAsync(CancellationToken cancellation)
-    {
-        await writing.WaitAsync(cancellation);
-        try
-        {
-            SqliteFolder.Run(writer ??= folder.OpenWriter(), "pragma optimize; pragma wal_checkpoint(truncate);");
-        }
-        finally
-        {
-            writing.Release();
-        }
-    }
+    /// <summary>A chore for quiet hours.</summary>
+    public abstract Task MaintainAsync(CancellationToken cancellation);
 
     /// <summary>Reads within one snapshot: every statement of <paramref name="work"/> sees the same commits.</summary>
-    internal async Task<T> ReadAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
-    {
-        cancellation.ThrowIfCancellationRequested();
-        if (!idle.TryTake(out var connection))
-            connection = folder.OpenReader();
-        try
-        {
-            T result;
-            using (var transaction = connection.BeginTransaction(deferred: true))
-                result = await work(new StoreTransaction(transaction, Now(), null, cancellation));
-            if (idle.Count < IdleReaders)
-                idle.Add(connection);
-            else
-                connection.Dispose();
-            return result;
-        }
-        catch
-        {
-            connection.Dispose();
-            throw;
-        }
-    }
+    internal abstract Task<T> ReadAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation);
 
     /// <summary>
     /// Writes in one transaction that holds the write lock from its beginning; it is committed when <paramref name="work"/> returns and
     /// rolled back when it throws. Not to be nested: the inner one would wait for the outer one for ever.
     /// </summary>
-    internal async Task<T> WriteAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
-    {
-        await writing.WaitAsync(cancellation);
-        try
-        {
-            writer ??= folder.OpenWriter();
-            using var transaction = writer.BeginTransaction();
-            var result = await work(new StoreTransaction(transaction, Now(), BeforeStatement, cancellation));
-            BeforeStatement?.Invoke("commit");
-            transaction.Commit();
-            unwritable = false;
-            return result;
-        }
-        catch (Exception failure)
-        {
-            // A connection that has failed is not used again: whatever state it is in ends with it.
-            writer?.Dispose();
-            writer = null;
-            if (!SqliteFolder.IsUnavailable(failure))
-                throw;
-            unwritable = true;
-            throw new StoreUnavailableException(failure);
-        }
-        finally
-        {
-            writing.Release();
-        }
-    }
+    /// <exception cref="StoreUnavailableException">The storage cannot be written just now.</exception>
+    internal abstract Task<T> WriteAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation);
 
-    /// <summary>Waits for the writer at work, then gives the folder back. A second time does nothing.</summary>
-    public async ValueTask DisposeAsync()
-    {
-        if (Interlocked.Exchange(ref disposed, 1) == 1)
-            return;
-        await writing.WaitAsync();
-        foreach (var connection in idle)
-            connection.Dispose();
-        writer?.Dispose();
-        folder.Dispose();
-        writing.Dispose();
-    }
+    /// <summary>Waits for the writer at work, then gives the storage back. A second time does nothing.</summary>
+    public abstract ValueTask DisposeAsync();
 
-    private long Now() => Clock.GetUtcNow().ToMicroseconds();
+    /// <summary>Remembers how the last write went.</summary>
+    private protected void Written(bool refused) => unwritable = refused;
+
+    private protected StoreTransaction Opened(System.Data.Common.DbTransaction transaction, bool writes, CancellationToken cancellation) =>
+        new(transaction, Clock.GetUtcNow().ToMicroseconds(), writes ? BeforeStatement : null, cancellation);
 }

@@ -7,9 +7,12 @@ public sealed class StoreInUseException(string directory, Exception? inner = nul
 /// <summary>What is stored was not written by this version of the program, or its migrations were changed afterwards.</summary>
 public sealed class StoreSchemaException(string message) : InvalidOperationException(message);
 
-/// <summary>The storage cannot be written just now: its disk is full, broken, read-only or busy. Nothing of the write was kept.</summary>
+/// <summary>
+/// The storage cannot be used just now: its disk is full, broken, read-only or busy, its server away. Nothing of a write was kept, unless
+/// the way to the server broke in the moment of the commit: then nobody knows, and whoever asks again finds out.
+/// </summary>
 public sealed class StoreUnavailableException(Exception inner)
-    : IOException($"The storage cannot be written: {inner.Message}", inner);
+    : IOException($"The storage cannot be used: {inner.Message}", inner);
 
 /// <summary>Stored bytes are not the ones that were written.</summary>
 public sealed class StoreDamagedException(string message) : IOException(message);

@@ -6,8 +6,12 @@ using Portfolio.Store.Tests.Testing;
 namespace Portfolio.Store.Tests;
 
 /// <summary>Storage that fails before any one statement of a write leaves the database exactly as it was.</summary>
-public sealed class AtomicityTests
+public abstract class AtomicityTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : AtomicityTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : AtomicityTests(StoreKind.Postgres);
+
     private static readonly Dictionary<string, Func<TestStore, RunLease, Task>> Writes = new()
     {
         ["first document"] = (store, _) => store.WriteAsync("harbour", ("", "s"), ("lock", "a")),
@@ -70,38 +74,73 @@ public sealed class AtomicityTests
         store.Database.BeforeStatement = null;
         Assert.True(failures > 3, $"only {failures} steps");
         Assert.NotEqual(before, await store.DumpAsync());
-        Assert.Equal("ok", await store.RawAsync<string>("pragma integrity_check"));
         Assert.Null((await store.Audit.VerifyAsync(TestStore.Cancellation)).FirstBroken);
     }
 
-    /// <summary>The files as they lie on the disk before each statement are what a process that is killed there leaves behind.</summary>
+    /// <summary>What a process that is killed before each statement leaves behind.</summary>
     [Theory]
     [MemberData(nameof(Names))]
     public async Task A_process_killed_before_any_statement_leaves_nothing_half_written(string name)
     {
         var (store, held) = await BeginAsync();
         await using var _ = store;
+        await (kind == StoreKind.Sqlite ? CopyBeforeEachAsync(name, store, held) : CutBeforeEachAsync(name, store, held));
+    }
+
+    /// <summary>The files as they lie on the disk then.</summary>
+    private static async Task CopyBeforeEachAsync(string name, TestStore store, RunLease held)
+    {
         var before = await store.DumpAsync();
+        var folder = ((SqlitePlace)store.Place).Folder;
         var copies = new List<string>();
-        store.Database.BeforeStatement = _ => copies.Add(Copy(store.Folder, copies.Count));
+        store.Database.BeforeStatement = _ => copies.Add(Copy(folder, copies.Count));
         await Writes[name](store, held);
         store.Database.BeforeStatement = null;
-        copies.Add(Copy(store.Folder, copies.Count));
+        copies.Add(Copy(folder, copies.Count));
         var after = await store.DumpAsync();
 
         Assert.True(copies.Count > 3, $"only {copies.Count} steps");
         foreach (var copy in copies)
         {
-            await using (await Database.OpenAsync(copy, store.Clock, TestStore.Cancellation))
+            var place = new SqlitePlace(copy);
+            await using (await place.OpenAsync(store.Clock))
             {
             }
-            Assert.Equal(copy == copies[^1] ? after : before, await TableDump.DumpAsync(copy));
+            Assert.Equal(copy == copies[^1] ? after : before, await TableDump.DumpAsync(place));
         }
     }
 
-    private static async Task<(TestStore Store, RunLease Held)> BeginAsync()
+    /// <summary>A server sees the connection end.</summary>
+    private static async Task CutBeforeEachAsync(string name, TestStore store, RunLease held)
     {
-        var store = await TestStore.OpenAsync();
+        var before = await store.DumpAsync();
+        var cuts = 0;
+        for (var succeeded = false; !succeeded; cuts++)
+        {
+            var left = cuts;
+            store.Database.BeforeStatement = _ =>
+            {
+                if (left-- == 0)
+                    store.RawAsync<long>(PostgresPlace.CutSql).GetAwaiter().GetResult();
+            };
+            try
+            {
+                await Writes[name](store, held);
+                succeeded = true;
+            }
+            catch (StoreUnavailableException)
+            {
+                Assert.Equal(before, await store.DumpAsync());
+            }
+        }
+        store.Database.BeforeStatement = null;
+        Assert.True(cuts > 3, $"only {cuts} steps");
+        Assert.NotEqual(before, await store.DumpAsync());
+    }
+
+    private async Task<(TestStore Store, RunLease Held)> BeginAsync()
+    {
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         var held = (await store.ClaimAsync())!;

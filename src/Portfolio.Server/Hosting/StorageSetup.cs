@@ -8,6 +8,7 @@ using Portfolio.Store.Results;
 using Portfolio.Store.Runs;
 using Portfolio.Store.Samples;
 using Portfolio.Store.Schedules;
+using Portfolio.Store.Sqlite;
 
 namespace Portfolio.Server.Hosting;
 
@@ -36,7 +37,7 @@ internal static class StorageSetup
 
     // At the start nothing else runs on this thread, so waiting here blocks nobody.
     private static Database Open(IServiceProvider services) =>
-        Database.OpenAsync(
+        SqliteDatabase.OpenAsync(
             services.GetRequiredService<IOptions<StorageOptions>>().Value.Directory,
             services.GetRequiredService<TimeProvider>(),
             CancellationToken.None).GetAwaiter().GetResult();

@@ -3,14 +3,18 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Access;
 
-public sealed class KeyStoreTests
+public abstract class KeyStoreTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : KeyStoreTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : KeyStoreTests(StoreKind.Postgres);
+
     private const string First = "a-first-key-of-more-than-thirty-two-characters";
 
     [Fact]
     public async Task The_first_administrator_is_made_once()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         Assert.False(await store.Keys.HasAdministratorAsync(TestStore.Cancellation));
         Assert.True(await store.Keys.BootstrapAsync(First, TestStore.Cancellation));
         Assert.False(await store.Keys.BootstrapAsync("another-key-of-more-than-thirty-two-characters", TestStore.Cancellation));
@@ -23,7 +27,7 @@ public sealed class KeyStoreTests
     [Fact]
     public async Task A_short_first_key_is_refused()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await Assert.ThrowsAsync<ArgumentException>(() => store.Keys.BootstrapAsync(First[..31], TestStore.Cancellation));
         Assert.False(await store.Keys.HasAdministratorAsync(TestStore.Cancellation));
     }
@@ -31,7 +35,7 @@ public sealed class KeyStoreTests
     [Fact]
     public async Task Grants_come_back_as_they_were_given()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         Grant[] grants = [new(Right.Read, "*"), new(Right.Submit, "works", ["lock", "quay"]), new(Right.Finance, "works")];
         var made = (await store.Keys.CreateAsync(Caller.System, "contractor", grants, null, TestStore.Cancellation))!;
         var found = (await store.Keys.FindAsync(Caller.System, made.Key.Id, TestStore.Cancellation))!;
@@ -45,7 +49,7 @@ public sealed class KeyStoreTests
     [Fact]
     public async Task Unknown_expired_and_revoked_keys_are_nobody()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         Assert.Null(await store.Keys.AuthenticateAsync("pfk_nobody", TestStore.Cancellation));
         Assert.Null(await store.Keys.AuthenticateAsync("system", TestStore.Cancellation));
         var soon = store.Clock.GetUtcNow().AddHours(1);
@@ -63,7 +67,7 @@ public sealed class KeyStoreTests
     [Fact]
     public async Task Only_administrators_of_everything_manage_keys_and_others_see_themselves()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         var local = await store.CallerAsync(new Grant(Right.Admin, "works"));
         Assert.Null(await store.Keys.CreateAsync(local, "x", [], null, TestStore.Cancellation));
         Assert.Empty(await store.Keys.ListAsync(local, TestStore.Cancellation));
@@ -76,7 +80,7 @@ public sealed class KeyStoreTests
     [Fact]
     public async Task The_key_of_the_servers_own_jobs_is_nobodys_to_see_or_revoke()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         Assert.Null(await store.Keys.FindAsync(Caller.System, Caller.System.KeyId, TestStore.Cancellation));
         Assert.False(await store.Keys.RevokeAsync(Caller.System, Caller.System.KeyId, TestStore.Cancellation));
     }

@@ -7,11 +7,15 @@ using Portfolio.Store.Tests.Testing;
 namespace Portfolio.Store.Tests.Access;
 
 /// <summary>What keys without, or with too narrow, grants find: nothing.</summary>
-public sealed class StrangerTests
+public abstract class StrangerTests(StoreKind kind)
 {
-    private static async Task<(TestStore Store, string Run)> WithRunAsync()
+    public sealed class OnSqlite() : StrangerTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : StrangerTests(StoreKind.Postgres);
+
+    private async Task<(TestStore Store, string Run)> WithRunAsync()
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
         var run = await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         var held = (await store.ClaimAsync())!;
@@ -149,7 +153,7 @@ public sealed class StrangerTests
     [InlineData(Right.Admin, "works", WriteOutcome.NotFound)]
     public async Task Only_administrators_make_portfolios(Right right, string portfolio, WriteOutcome expected)
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         var caller = await store.CallerAsync(new Grant(right, portfolio));
         var result = await store.Documents.WriteAsync(
             caller,

@@ -5,14 +5,18 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Documents;
 
-public sealed class DocumentReadTests
+public abstract class DocumentReadTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : DocumentReadTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : DocumentReadTests(StoreKind.Postgres);
+
     private static string Texts(StoredDocument? document) =>
         string.Join(" ", document!.Parts.Select(part => $"{part.Project}={Encoding.UTF8.GetString(part.Bytes)}"));
 
-    private static async Task<TestStore> WithThreeRevisionsAsync()
+    private async Task<TestStore> WithThreeRevisionsAsync()
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s1"), ("lock", "a1"), ("quay", "b1"));
         store.Clock.Advance(TimeSpan.FromHours(1));
         await store.WriteAsync("works", ("quay", "b2"), ("weir", "c2"));

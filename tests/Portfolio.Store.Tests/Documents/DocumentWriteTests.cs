@@ -5,14 +5,18 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Documents;
 
-public sealed class DocumentWriteTests
+public abstract class DocumentWriteTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : DocumentWriteTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : DocumentWriteTests(StoreKind.Postgres);
+
     private static readonly DocumentWrite Write = new() { Portfolio = "works", Action = "document.put" };
 
     [Fact]
     public async Task The_first_write_makes_the_portfolio_and_tells_audit_and_listeners()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         var seen = "nothing";
         var result = await store.Documents.WriteAsync(
             Caller.System,
@@ -35,7 +39,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task A_write_that_changes_nothing_makes_no_revision()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         var (audit, outbox) = (await store.CountAsync("audit"), await store.CountAsync("outbox"));
         var result = await store.WriteAsync("works", ("lock", "a"));
@@ -46,7 +50,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task The_decision_reads_the_head_inside_the_transaction()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         var seen = new List<string>();
         await store.Documents.WriteAsync(
@@ -67,7 +71,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task A_refusal_keeps_nothing_but_its_audit_entry()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         var reason = new object();
         var result = await store.Documents.WriteAsync(
@@ -82,7 +86,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task When_the_decision_throws_nothing_is_kept_and_the_next_write_works()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         await Assert.ThrowsAsync<TimeZoneNotFoundException>(
             () => store.Documents.WriteAsync(
@@ -94,7 +98,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task Rows_that_join_stand_or_fall_with_the_write()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         WriteResult? joined = null;
         var write = Write with
         {
@@ -119,7 +123,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task Writes_at_the_same_time_follow_one_another_and_lose_nothing()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "0"));
         await Task.WhenAll(Enumerable.Range(0, 20).Select(_ => Task.Run(() => store.Documents.WriteAsync(
             Caller.System,
@@ -134,7 +138,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task A_clock_set_back_does_not_make_a_revision_look_older()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "1"));
         await store.RawAsync<long>("update revision set recorded_at = recorded_at + 3600000000");
         await store.WriteAsync("works", ("", "2"));
@@ -145,7 +149,7 @@ public sealed class DocumentWriteTests
     [Fact]
     public async Task An_archived_portfolio_takes_no_writes_but_reads()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         await store.RawAsync<long>("update portfolio set archived_at = 1");
         Assert.Equal(WriteOutcome.Archived, (await store.WriteAsync("works", ("", "t"))).Outcome);
@@ -156,15 +160,15 @@ public sealed class DocumentWriteTests
     public async Task A_night_of_posts_costs_megabytes()
     {
         // 200 projects of 55 KB of JSON that compresses to about a quarter; each posted once, changed in one place.
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         var projects = Enumerable.Range(0, 200).Select(number => ($"p{number}", ProjectText(number))).ToArray();
         await store.WriteAsync("works", [("", "{}"), .. projects]);
         await store.Database.MaintainAsync(TestStore.Cancellation);
-        var before = new FileInfo(Path.Combine(store.Folder, "portfolio.db")).Length;
+        var before = await store.Place.SizeAsync();
         foreach (var (project, text) in projects)
             await store.WriteAsync("works", (project, text.Replace("\"A0\"", "\"B0\"", StringComparison.Ordinal)));
         await store.Database.MaintainAsync(TestStore.Cancellation);
-        var grown = new FileInfo(Path.Combine(store.Folder, "portfolio.db")).Length - before;
+        var grown = await store.Place.SizeAsync() - before;
         TestContext.Current.TestOutputHelper?.WriteLine($"document {before:N0} bytes, 200 posts {grown:N0} bytes");
         Assert.Equal(201, await store.CountAsync("revision"));
         Assert.InRange(grown, 1, 6_000_000);

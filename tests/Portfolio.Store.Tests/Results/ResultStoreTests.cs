@@ -5,11 +5,15 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Results;
 
-public sealed class ResultStoreTests
+public abstract class ResultStoreTests(StoreKind kind)
 {
-    private static async Task<TestStore> WithPointsAsync(int days)
+    public sealed class OnSqlite() : ResultStoreTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : ResultStoreTests(StoreKind.Postgres);
+
+    private async Task<TestStore> WithPointsAsync(int days)
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         for (var day = days - 1; day >= 0; day--)
         {
@@ -68,7 +72,7 @@ public sealed class ResultStoreTests
     [Fact]
     public async Task A_scope_that_cannot_be_read_back_is_refused_with_the_whole_ending()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         var held = (await store.ClaimAsync())!;

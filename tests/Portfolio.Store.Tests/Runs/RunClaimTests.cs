@@ -4,11 +4,15 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Runs;
 
-public sealed class RunClaimTests
+public abstract class RunClaimTests(StoreKind kind)
 {
-    private static async Task<TestStore> WithRunsAsync(params string[] portfolios)
+    public sealed class OnSqlite() : RunClaimTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : RunClaimTests(StoreKind.Postgres);
+
+    private async Task<TestStore> WithRunsAsync(params string[] portfolios)
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         foreach (var portfolio in portfolios.Distinct())
             await store.WriteAsync(portfolio, ("", "s"));
         foreach (var portfolio in portfolios)

@@ -1,4 +1,4 @@
-using Microsoft.Data.Sqlite;
+using System.Data.Common;
 using Portfolio.Store.Access;
 using Portfolio.Store.Runs;
 using Portfolio.Store.Tests.Testing;
@@ -6,11 +6,15 @@ using Portfolio.Store.Tests.Testing;
 namespace Portfolio.Store.Tests.Runs;
 
 /// <summary>The table itself refuses states that cannot be, whatever code writes to it.</summary>
-public sealed class RunStateTests
+public abstract class RunStateTests(StoreKind kind)
 {
-    private static async Task<TestStore> WithRunAsync(bool claimed)
+    public sealed class OnSqlite() : RunStateTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : RunStateTests(StoreKind.Postgres);
+
+    private async Task<TestStore> WithRunAsync(bool claimed)
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         if (claimed)
@@ -33,7 +37,7 @@ public sealed class RunStateTests
     [InlineData("kind = 'nightly'")]
     [InlineData("due_date = '2026-12-01'")]
     [InlineData("recorded = 2")]
-    [InlineData("overlay = x'00'")]
+    [InlineData("overlay = @Bytes")]
     [InlineData("recorded = 0, replaces = id")]
     [InlineData("iterations = 0")]
     [InlineData("seed = -1")]
@@ -43,7 +47,9 @@ public sealed class RunStateTests
     public async Task A_queued_run_cannot_become(string change)
     {
         await using var store = await WithRunAsync(claimed: false);
-        await Assert.ThrowsAsync<SqliteException>(() => store.RawAsync<long>($"update run set {change}"));
+        var refused = await Assert.ThrowsAnyAsync<DbException>(
+            () => store.RawAsync<long>($"update run set {change}", new { Bytes = new byte[] { 0 } }));
+        Assert.True(store.Place.IsConstraint(refused), refused.Message);
     }
 
     [Theory]
@@ -59,13 +65,15 @@ public sealed class RunStateTests
     public async Task A_running_run_cannot_become(string change)
     {
         await using var store = await WithRunAsync(claimed: true);
-        await Assert.ThrowsAsync<SqliteException>(() => store.RawAsync<long>($"update run set {change}"));
+        var refused = await Assert.ThrowsAnyAsync<DbException>(
+            () => store.RawAsync<long>($"update run set {change}", new { Bytes = new byte[] { 0 } }));
+        Assert.True(store.Place.IsConstraint(refused), refused.Message);
     }
 
     [Fact]
     public async Task A_run_tells_its_whole_life()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
         var asked = RunScenes.Asked(RunScenes.Today) with { Seed = (1L << 53) - 1, TraceParent = "00-1-1-01" };
         var queued = await store.QueueAsync(asked);

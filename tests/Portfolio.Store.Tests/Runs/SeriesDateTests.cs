@@ -5,14 +5,18 @@ using Portfolio.Store.Tests.Testing;
 namespace Portfolio.Store.Tests.Runs;
 
 /// <summary>Contract section 5, "One run stands for a date".</summary>
-public sealed class SeriesDateTests
+public abstract class SeriesDateTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : SeriesDateTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : SeriesDateTests(StoreKind.Postgres);
+
     private static readonly DateOnly Today = RunScenes.Today;
     private static readonly DateOnly LastWeek = RunScenes.Today.AddDays(-7);
 
-    private static async Task<TestStore> OpenAsync()
+    private async Task<TestStore> OpenAsync()
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         return store;
     }

@@ -5,11 +5,15 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Samples;
 
-public sealed class SampleStoreTests
+public abstract class SampleStoreTests(StoreKind kind)
 {
-    private static async Task<(TestStore Store, RunLease Held)> RunningAsync()
+    public sealed class OnSqlite() : SampleStoreTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : SampleStoreTests(StoreKind.Postgres);
+
+    private async Task<(TestStore Store, RunLease Held)> RunningAsync()
     {
-        var store = await TestStore.OpenAsync();
+        var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         return (store, (await store.ClaimAsync())!);
@@ -45,7 +49,10 @@ public sealed class SampleStoreTests
     }
 
     [Theory]
-    [InlineData("update sample set bytes = zeroblob(length(bytes)) where series = 'finish/lock'")]
+    [InlineData("""
+        update sample set bytes = (select c.bytes from sample c where c.series = 'cost/lock' and c.block = sample.block)
+        where series = 'finish/lock'
+        """)]
     [InlineData("update sample set checksum = checksum + 1")]
     [InlineData("update sample set block = block + 10")]
     public async Task Damage_is_noticed_and_named(string damage)
@@ -54,7 +61,7 @@ public sealed class SampleStoreTests
         await using var _ = store;
         await store.Samples.WriteBlockAsync(held, 4, 3, RunScenes.Block(4), TestStore.Cancellation);
         await store.Samples.WriteBlockAsync(held, 5, 3, RunScenes.Block(5), TestStore.Cancellation);
-        await store.RawAsync<long>($"pragma foreign_keys = off; {damage}");
+        await store.RawAsync<long>($"{store.Place.WithoutReferencesSql}; {damage}");
         var noticed = await Assert.ThrowsAsync<StoreDamagedException>(() => MinutesAsync(store, held));
         Assert.Contains("finish/lock", noticed.Message, StringComparison.Ordinal);
         Assert.Contains(held.Run.Id, noticed.Message, StringComparison.Ordinal);
@@ -77,7 +84,7 @@ public sealed class SampleStoreTests
         var (store, held) = await RunningAsync();
         await using var _ = store;
         await store.Database.MaintainAsync(TestStore.Cancellation);
-        var before = new FileInfo(Path.Combine(store.Folder, "portfolio.db")).Length;
+        var before = await store.Place.SizeAsync();
         var seed = new CsCheck.PCG(1);
         foreach (var (block, count) in new[] { (0, 4096), (1, 4096), (2, 1808) })
         {
@@ -93,7 +100,7 @@ public sealed class SampleStoreTests
             await store.Samples.WriteBlockAsync(held, block, count, series, TestStore.Cancellation);
         }
         await store.Database.MaintainAsync(TestStore.Cancellation);
-        var grown = new FileInfo(Path.Combine(store.Folder, "portfolio.db")).Length - before;
+        var grown = await store.Place.SizeAsync() - before;
         TestContext.Current.TestOutputHelper?.WriteLine($"{grown:N0} bytes, {8.0 * grown / (240 * 10_000):F2} bits a value");
         Assert.InRange(grown, 1_000_000, 7_000_000);
         Assert.Equal(10_000, (await MinutesAsync(store, held, "milestone/p19/M9"))!.Length);

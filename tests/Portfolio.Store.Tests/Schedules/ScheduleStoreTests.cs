@@ -4,8 +4,12 @@ using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Schedules;
 
-public sealed class ScheduleStoreTests
+public abstract class ScheduleStoreTests(StoreKind kind)
 {
+    public sealed class OnSqlite() : ScheduleStoreTests(StoreKind.Sqlite);
+
+    public sealed class OnPostgres() : ScheduleStoreTests(StoreKind.Postgres);
+
     private static Task<SchedulePutOutcome> PutAsync(
         TestStore store, string portfolio, string cron, bool enabled, int? iterations = null) =>
         store.Schedules.PutAsync(Caller.System, portfolio, cron, iterations, enabled, TestStore.Cancellation);
@@ -13,7 +17,7 @@ public sealed class ScheduleStoreTests
     [Fact]
     public async Task A_schedule_is_kept_changed_and_told_to_the_audit_trail()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"));
         Assert.Null(await store.Schedules.FindAsync(Caller.System, "works", TestStore.Cancellation));
         Assert.Equal(SchedulePutOutcome.Stored, await PutAsync(store, "works", "0 2 * * *", enabled: true));
@@ -32,7 +36,7 @@ public sealed class ScheduleStoreTests
     [Fact]
     public async Task Enabled_ones_are_listed_unless_archived()
     {
-        await using var store = await TestStore.OpenAsync();
+        await using var store = await TestStore.OpenAsync(kind);
         foreach (var portfolio in new[] { "works", "harbour", "basin" })
         {
             await store.WriteAsync(portfolio, ("", "s"));

@@ -1,26 +1,25 @@
+using System.Data.Common;
 using System.Globalization;
 using System.Text;
-using Microsoft.Data.Sqlite;
 
 namespace Portfolio.Store.Tests.Testing;
 
 /// <summary>Every row of every table as text: two equal dumps are two equal databases.</summary>
 internal static class TableDump
 {
-    public static Task<string> DumpAsync(this TestStore store) => DumpAsync(store.Folder);
+    public static Task<string> DumpAsync(this TestStore store) => DumpAsync(store.Place);
 
-    public static async Task<string> DumpAsync(string folder)
+    public static async Task<string> DumpAsync(TestPlace place)
     {
-        await using var connection = new SqliteConnection($"Data Source={Path.Combine(folder, "portfolio.db")};Pooling=False");
+        await using var connection = place.Connect();
         await connection.OpenAsync(TestStore.Cancellation);
         var dump = new StringBuilder();
-        foreach (var table in await ReadAsync(
-            connection, "select name from sqlite_schema where type = 'table' and name not like 'sqlite_stat%' order by name"))
-            dump.AppendLine(table).AppendJoin('\n', await ReadAsync(connection, $"select * from {table.Trim('|')}")).AppendLine();
+        foreach (var table in await ReadAsync(connection, place.TablesSql))
+            dump.AppendLine(table).AppendJoin('\n', await ReadAsync(connection, place.RowsSql(table.Trim('|')))).AppendLine();
         return dump.ToString();
     }
 
-    private static async Task<List<string>> ReadAsync(SqliteConnection connection, string sql)
+    private static async Task<List<string>> ReadAsync(DbConnection connection, string sql)
     {
         await using var command = connection.CreateCommand();
         command.CommandText = sql;

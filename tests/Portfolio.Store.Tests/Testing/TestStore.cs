@@ -1,6 +1,5 @@
 using System.Text;
 using Dapper;
-using Microsoft.Data.Sqlite;
 using Microsoft.Extensions.Time.Testing;
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
@@ -13,14 +12,14 @@ using Portfolio.Store.Schedules;
 
 namespace Portfolio.Store.Tests.Testing;
 
-/// <summary>A real database in a folder of its own, with a clock that stands until a test moves it.</summary>
+/// <summary>A real database of its own, with a clock that stands until a test moves it.</summary>
 public sealed class TestStore : IAsyncDisposable
 {
     public static readonly DateTimeOffset Start = new(2026, 12, 1, 8, 0, 0, TimeSpan.Zero);
 
-    private TestStore(string folder) => Folder = folder;
+    private TestStore(TestPlace place) => Place = place;
 
-    public string Folder { get; }
+    internal TestPlace Place { get; }
     public FakeTimeProvider Clock { get; } = new(Start);
     public Database Database { get; private set; } = null!;
     public KeyStore Keys => new(Database);
@@ -37,9 +36,9 @@ public sealed class TestStore : IAsyncDisposable
 
     public static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
-    public static async Task<TestStore> OpenAsync()
+    public static async Task<TestStore> OpenAsync(StoreKind kind)
     {
-        var store = new TestStore(Directory.CreateTempSubdirectory("portfolio-store-").FullName);
+        var store = new TestStore(await TestPlace.MakeAsync(kind));
         await store.ReopenAsync();
         return store;
     }
@@ -48,7 +47,7 @@ public sealed class TestStore : IAsyncDisposable
     {
         if (Database is not null)
             await Database.DisposeAsync();
-        Database = await Database.OpenAsync(Folder, Clock, Cancellation);
+        Database = await Place.OpenAsync(Clock);
     }
 
     public async Task<Caller> CallerAsync(params Grant[] grants)
@@ -68,11 +67,10 @@ public sealed class TestStore : IAsyncDisposable
     public static Change Parts(params (string Project, string Text)[] parts) =>
         new([.. parts.Select(part => new ProposedPart(part.Project, Encoding.UTF8.GetBytes(part.Text)))]);
 
-    /// <summary>Statements on the file itself, past everything that the store guards.</summary>
+    /// <summary>Statements on the database itself, past everything that the store guards.</summary>
     public async Task<T?> RawAsync<T>(string sql, object? parameters = null)
     {
-        await using var connection = new SqliteConnection(
-            $"Data Source={Path.Combine(Folder, "portfolio.db")};Foreign Keys=True;Pooling=False");
+        await using var connection = Place.Connect();
         return await connection.ExecuteScalarAsync<T>(sql, parameters);
     }
 
@@ -81,6 +79,6 @@ public sealed class TestStore : IAsyncDisposable
     public async ValueTask DisposeAsync()
     {
         await Database.DisposeAsync();
-        Directory.Delete(Folder, recursive: true);
+        await Place.DisposeAsync();
     }
 }

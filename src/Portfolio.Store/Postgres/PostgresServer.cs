@@ -1,0 +1,87 @@
+using Npgsql;
+
+namespace Portfolio.Store.Postgres;
+
+/// <summary>The connections to one database of a PostgreSQL server, with their settings.</summary>
+internal sealed class PostgresServer : IAsyncDisposable
+{
+    private const int OldestServed = 15;
+
+    // Of the locks that programs agree on (pg_advisory_lock): any numbers that nobody else uses in the same database.
+    private const long MigrationLock = 0x706F7274_6D696772;
+    private const long WriterLock = 0x706F7274_77726974;
+
+    // Whoever stops in the middle of a transaction, or is cut off, loses it after this time: others wait for the writer.
+    private const string Settings = "-c idle_in_transaction_session_timeout=60s -c tcp_keepalives_idle=20 -c tcp_keepalives_interval=5 "
+        + "-c tcp_keepalives_count=4";
+
+    private readonly NpgsqlDataSource readers;
+    private readonly NpgsqlDataSource writers;
+
+    /// <exception cref="ArgumentException">Not a connection string.</exception>
+    public PostgresServer(string connectionString)
+    {
+        readers = Source(connectionString, "-c default_transaction_read_only=on", 20);
+        // One writes at a time; the second migrates.
+        writers = Source(connectionString, "-c default_transaction_read_only=off", 2);
+    }
+
+    public ValueTask<NpgsqlConnection> OpenReaderAsync(CancellationToken cancellation) => readers.OpenConnectionAsync(cancellation);
+
+    public ValueTask<NpgsqlConnection> OpenWriterAsync(CancellationToken cancellation) => writers.OpenConnectionAsync(cancellation);
+
+    /// <summary>Waits for the writer at work, whichever process it is in; the lock goes with the transaction, however that ends.</summary>
+    public static Task TakeWriterLockAsync(NpgsqlConnection connection, CancellationToken cancellation) =>
+        RunAsync(connection, $"select pg_advisory_xact_lock({WriterLock})", cancellation);
+
+    /// <summary>Works on a connection while no other process migrates the same database.</summary>
+    public async Task AloneAsync(Func<NpgsqlConnection, Task> work, CancellationToken cancellation)
+    {
+        await using var connection = await OpenWriterAsync(cancellation);
+        await using (var waiting = new NpgsqlCommand($"select pg_advisory_lock({MigrationLock})", connection) { CommandTimeout = 300 })
+            await waiting.ExecuteNonQueryAsync(cancellation);
+        try
+        {
+            await work(connection);
+        }
+        finally
+        {
+            // The lock of a connection that broke is gone already.
+            if (connection.FullState == System.Data.ConnectionState.Open)
+                await RunAsync(connection, $"select pg_advisory_unlock({MigrationLock})", CancellationToken.None);
+        }
+    }
+
+    /// <exception cref="StoreSchemaException">Too old, or its text is not Unicode.</exception>
+    public static async Task CheckAsync(NpgsqlConnection connection, CancellationToken cancellation)
+    {
+        if (connection.PostgreSqlVersion.Major < OldestServed)
+            throw new StoreSchemaException($"PostgreSQL {connection.PostgreSqlVersion} is too old; {OldestServed} or newer is needed.");
+        await using var command = new NpgsqlCommand("show server_encoding", connection);
+        if (await command.ExecuteScalarAsync(cancellation) is not "UTF8" and var encoding)
+            throw new StoreSchemaException($"The PostgreSQL database keeps its text as {encoding}; it must be made with encoding UTF8.");
+    }
+
+    internal static async Task RunAsync(NpgsqlConnection connection, string sql, CancellationToken cancellation)
+    {
+        await using var command = new NpgsqlCommand(sql, connection);
+        await command.ExecuteNonQueryAsync(cancellation);
+    }
+
+    public async ValueTask DisposeAsync()
+    {
+        await readers.DisposeAsync();
+        await writers.DisposeAsync();
+    }
+
+    private static NpgsqlDataSource Source(string connectionString, string more, int connections)
+    {
+        var builder = new NpgsqlConnectionStringBuilder(connectionString);
+        builder.ApplicationName ??= "portfolio";
+        builder.Options = $"{builder.Options} {Settings} {more}".Trim();
+        if (!builder.ShouldSerialize("Timeout"))
+            builder.Timeout = 5;
+        builder.MaxPoolSize = builder.ShouldSerialize("Maximum Pool Size") ? Math.Max(builder.MaxPoolSize, 2) : connections;
+        return NpgsqlDataSource.Create(builder);
+    }
+}

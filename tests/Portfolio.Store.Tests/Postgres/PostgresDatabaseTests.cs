@@ -1,0 +1,130 @@
+using Microsoft.Extensions.Time.Testing;
+using Npgsql;
+using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
+using Portfolio.Store.Postgres;
+using Portfolio.Store.Runs;
+using Portfolio.Store.Sqlite;
+using Portfolio.Store.Tests.Testing;
+
+namespace Portfolio.Store.Tests.Postgres;
+
+public sealed class PostgresDatabaseTests
+{
+    [Fact]
+    public void Both_databases_have_the_same_steps() => Assert.Equal(
+        SqliteMigrations.All.Select(step => (step.Number, step.Name)), PostgresMigrations.All.Select(step => (step.Number, step.Name)));
+
+    [Fact]
+    public async Task An_older_database_is_brought_forward_and_keeps_what_it_has()
+    {
+        await using var place = await PostgresPlace.MakeAsync(PostgresTemplate.Empty);
+        var clock = new FakeTimeProvider(TestStore.Start);
+        await using (var old = await PostgresDatabase.OpenAsync(
+            place.ConnectionString, clock, [.. PostgresMigrations.All.Take(2)], TestStore.Cancellation))
+        {
+            Assert.Equal(2, await old.MigrationLevelAsync(TestStore.Cancellation));
+            await old.WriteAsync(
+                open => open.ExecuteAsync("insert into portfolio (id, created_at) values ('works', 1)"), TestStore.Cancellation);
+        }
+        await using var now = await place.OpenAsync(clock);
+        Assert.Equal(PostgresMigrations.All.Count, await now.MigrationLevelAsync(TestStore.Cancellation));
+        Assert.Equal(1, await now.ReadAsync(open => open.FirstAsync<long>("select count(*) from portfolio"), TestStore.Cancellation));
+    }
+
+    [Fact]
+    public async Task Processes_that_start_together_on_an_empty_database_migrate_it_once()
+    {
+        await using var place = await PostgresPlace.MakeAsync(PostgresTemplate.Empty);
+        var opened = await Task.WhenAll(
+            Enumerable.Range(0, 6).Select(_ => Task.Run(() => place.OpenAsync(new FakeTimeProvider(TestStore.Start)))));
+        foreach (var database in opened)
+        {
+            Assert.Equal(PostgresMigrations.All.Count, await database.MigrationLevelAsync(TestStore.Cancellation));
+            await database.DisposeAsync();
+        }
+    }
+
+    [Fact]
+    public async Task Writers_of_two_processes_take_turns_so_that_numbers_follow_each_other()
+    {
+        await using var store = await TestStore.OpenAsync(StoreKind.Postgres);
+        await using var other = await store.Place.OpenAsync(store.Clock);
+        await Task.WhenAll(Enumerable.Range(0, 40).Select(
+            number => Task.Run(() => AppendAsync(number % 2 == 0 ? store.Database : other))));
+        Assert.Equal(40, await store.RawAsync<long>("select max(sequence) from audit"));
+        Assert.Null((await store.Audit.VerifyAsync(TestStore.Cancellation)).FirstBroken);
+    }
+
+    [Fact]
+    public async Task Of_claims_by_two_processes_at_once_one_wins()
+    {
+        await using var store = await TestStore.OpenAsync(StoreKind.Postgres);
+        await using var other = await store.Place.OpenAsync(store.Clock);
+        await store.WriteAsync("works", ("", "s"));
+        await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
+        var claims = await Task.WhenAll(Enumerable.Range(0, 12).Select(number => Task.Run(
+            () => new RunClaims(number % 2 == 0 ? store.Database : other).ClaimAsync(
+                Caller.System, $"process {number % 2}", RunScenes.Engine, RunScenes.Lease, TestStore.Cancellation))));
+        Assert.Single(claims, claim => claim is not null);
+    }
+
+    [Theory]
+    [InlineData("08006")]
+    [InlineData("25006")]
+    [InlineData("53100")]
+    [InlineData("53300")]
+    [InlineData("57P01")]
+    [InlineData("58030")]
+    public async Task A_server_that_refuses_a_write_is_told_and_asked_again_until_it_takes_one(string state)
+    {
+        await using var store = await TestStore.OpenAsync(StoreKind.Postgres);
+        store.Database.BeforeStatement = _ => throw new PostgresException("of the test", "ERROR", "ERROR", state);
+        await store.Database.PingAsync(TestStore.Cancellation);
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => AppendAsync(store.Database));
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => store.Database.PingAsync(TestStore.Cancellation));
+        store.Database.BeforeStatement = null;
+        await store.Database.PingAsync(TestStore.Cancellation);
+        Assert.Equal(0, await store.CountAsync("audit"));
+        await AppendAsync(store.Database);
+        Assert.Equal(1, await store.CountAsync("audit"));
+    }
+
+    [Fact]
+    public async Task Connections_that_are_cut_are_told_and_made_again()
+    {
+        await using var store = await TestStore.OpenAsync(StoreKind.Postgres);
+        await AppendAsync(store.Database);
+        await PostgresPlace.OnServerAsync($"alter database {DatabaseOf(store)} allow_connections false");
+        await PostgresPlace.OnServerAsync(
+            $"select pg_terminate_backend(pid, 5000) from pg_stat_activity where datname = '{DatabaseOf(store)}'");
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => store.Database.PingAsync(TestStore.Cancellation));
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => AppendAsync(store.Database));
+        await PostgresPlace.OnServerAsync($"alter database {DatabaseOf(store)} allow_connections true");
+        await store.Database.PingAsync(TestStore.Cancellation);
+        await AppendAsync(store.Database);
+        Assert.Equal(2, await store.CountAsync("audit"));
+    }
+
+    [Fact]
+    public async Task A_server_that_is_not_there_is_told_in_a_sentence()
+    {
+        var told = await Assert.ThrowsAsync<StoreUnavailableException>(() => PostgresDatabase.OpenAsync(
+            "Host=127.0.0.1;Port=1;Username=u;Password=secret;Database=d", new FakeTimeProvider(), TestStore.Cancellation));
+        Assert.Contains("127.0.0.1:1", told.Message, StringComparison.Ordinal);
+        Assert.DoesNotContain("secret", told.Message, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public async Task Text_that_is_not_unicode_is_refused()
+    {
+        await using var place = await PostgresPlace.MakeAsync($"{PostgresTemplate.Empty} encoding 'SQL_ASCII' locale 'C'");
+        var refused = await Assert.ThrowsAsync<StoreSchemaException>(() => place.OpenAsync(new FakeTimeProvider()));
+        Assert.Contains("UTF8", refused.Message, StringComparison.Ordinal);
+    }
+
+    private static string DatabaseOf(TestStore store) => store.Place.Connect().Database;
+
+    private static Task AppendAsync(Database database) =>
+        new AuditStore(database).AppendAsync(Caller.System, "a", "b", new { }, TestStore.Cancellation);
+}
