@@ -41,6 +41,7 @@ api.MapPortfolios();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
 portfolio.MapDocument();
+portfolio.MapProjects();
 portfolio.MapRevisions();
 portfolio.MapRuns();
 portfolio.MapSchedule();

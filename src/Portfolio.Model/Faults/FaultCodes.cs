@@ -27,6 +27,14 @@ public static class FaultCodes
     public const string DistributionEnds = "distribution.ends";
     public const string DependenceNotPositive = "dependence.not-positive";
 
+    // An id that is not the one in the address, and what a patch cannot say.
+    public const string IdAddress = "id.address";
+    public const string MergeMixed = "merge.mixed";
+    public const string MergeList = "merge.list";
+
+    // A member that the key's right does not reach (403).
+    public const string RightMissing = "right.missing";
+
     // A parameter of the query that cannot be read or is out of range; the subject is its name.
     public const string ParameterInvalid = "parameter.invalid";
 

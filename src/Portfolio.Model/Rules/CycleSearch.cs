@@ -16,7 +16,7 @@ internal static class CycleSearch
     public static List<List<int>> Find(int nodes, IReadOnlyList<Arc> arcs, Func<Arc, bool>? through = null)
     {
         List<List<int>> cycles = [];
-        var left = Peel(nodes, arcs);
+        var left = Left(nodes, arcs);
         if (left.Count == 0) return cycles;
         var network = new ArcIndex(nodes, arcs, left);
         var done = new bool[nodes];
@@ -41,7 +41,7 @@ internal static class CycleSearch
     }
 
     /// <summary>Arcs that remain when nodes without predecessors, then without successors, are taken away again and again.</summary>
-    private static List<int> Peel(int nodes, IReadOnlyList<Arc> arcs)
+    public static List<int> Left(int nodes, IReadOnlyList<Arc> arcs)
     {
         List<int> left = [.. Enumerable.Range(0, arcs.Count)];
         left = PeelOnce(nodes, arcs, left, a => a.Predecessor, a => a.Successor);

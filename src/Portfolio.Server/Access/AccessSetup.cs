@@ -41,6 +41,11 @@ internal static class AccessSetup
         where TBuilder : IEndpointConventionBuilder =>
         routes.RequireAuthorization(policy => policy.RequireAuthenticatedUser().AddRequirements(new RightRequirement(right)));
 
+    /// <summary>The routes need one of these rights.</summary>
+    public static TBuilder NeedsAny<TBuilder>(this TBuilder routes, params Right[] rights)
+        where TBuilder : IEndpointConventionBuilder =>
+        routes.RequireAuthorization(policy => policy.RequireAuthenticatedUser().AddRequirements(new RightRequirement(rights)));
+
     // Strangers share one bucket, so that guessing keys is slowed down as well.
     private static RateLimitPartition<string> OfKey(HttpContext context) =>
         RateLimitPartition.GetTokenBucketLimiter(

@@ -4,9 +4,9 @@ using Portfolio.Store.Access;
 namespace Portfolio.Server.Access;
 
 /// <summary>
-/// The right that a route needs on the portfolio in its address, or on some project of it: the store decides about single projects.
+/// The rights of which a route needs one on the portfolio in its address, or on some project of it: the store decides about single projects.
 /// </summary>
-internal sealed record RightRequirement(Right Right) : IAuthorizationRequirement;
+internal sealed record RightRequirement(params Right[] Rights) : IAuthorizationRequirement;
 
 /// <summary>
 /// Tells three cases apart: the right is held; the portfolio is known but the right missing (403); nothing is granted on it (404).
@@ -20,7 +20,7 @@ internal sealed class RightHandler : AuthorizationHandler<RightRequirement>
         if (context.User.Identity is not CallerIdentity { Caller: var caller } || context.Resource is not HttpContext http)
             return Task.CompletedTask;
         var portfolio = http.GetRouteValue("portfolio") as string ?? Grant.Everywhere;
-        if (caller.HoldsSomewhere(requirement.Right, portfolio))
+        if (requirement.Rights.Any(right => caller.HoldsSomewhere(right, portfolio)))
             context.Succeed(requirement);
         else if (portfolio != Grant.Everywhere && !caller.Knows(portfolio))
             context.Fail(new AuthorizationFailureReason(this, Stranger));

@@ -18,27 +18,37 @@ internal static class ArithmeticChecks
     public static IEnumerable<Fault> Of(PortfolioDocument document, IReadOnlyList<Fault> known)
     {
         var spoilt = Spoilt(known);
+        var ofProjects = SideBySide.Each(document.Projects, (project, index) => OfProject(project, $"/projects/{index}", spoilt));
+        return
+        [
+            .. OfSettings(document.Settings, spoilt),
+            .. ofProjects.SelectMany(own => own),
+            .. OfDependence(document.Settings, document.Projects, known),
+        ];
+    }
+
+    /// <summary>Stated distributions of the settings.</summary>
+    public static IReadOnlyList<Fault> OfSettings(Settings settings, IReadOnlySet<string> spoilt)
+    {
         var faults = new List<Fault>();
-        StatedDistributions.InSettings(document.Settings, stated => Judge(stated, spoilt, faults));
-        faults.AddRange(SideBySide.Each(document.Projects, (project, index) =>
-        {
-            var own = new List<Fault>();
-            StatedDistributions.InProject(project, $"/projects/{index}", stated => Judge(stated, spoilt, own));
-            return own;
-        }).SelectMany(own => own));
-        if (CanJudgeDependence(document, known))
-            faults.AddRange(DependenceCheck.Check(document.Settings, document.Projects, Dependence));
+        StatedDistributions.InSettings(settings, stated => Judge(stated, spoilt, faults));
         return faults;
     }
 
-    private static void Judge(StatedDistribution stated, HashSet<string> spoilt, List<Fault> faults)
+    /// <summary>Stated distributions of one project.</summary>
+    public static IReadOnlyList<Fault> OfProject(Project project, string path, IReadOnlySet<string> spoilt)
     {
-        if (NeedsArithmetic(stated.Distribution) && (spoilt.Count == 0 || !spoilt.Contains(stated.Path)) && Flaw(stated) is { } fault)
-            faults.Add(fault);
+        var faults = new List<Fault>();
+        StatedDistributions.InProject(project, path, stated => Judge(stated, spoilt, faults));
+        return faults;
     }
 
+    /// <param name="projects">Only ids and programmes are read.</param>
+    public static IReadOnlyList<Fault> OfDependence(Settings settings, IReadOnlyList<Project> projects, IReadOnlyList<Fault> known) =>
+        CanJudgeDependence(settings, projects, known) ? DependenceCheck.Check(settings, projects, Dependence) : [];
+
     /// <summary>Places at fault and their owners: a distribution is spoilt by a fault in one of its members.</summary>
-    private static HashSet<string> Spoilt(IReadOnlyList<Fault> known)
+    public static IReadOnlySet<string> Spoilt(IReadOnlyList<Fault> known)
     {
         var spoilt = new HashSet<string>(StringComparer.Ordinal);
         foreach (var fault in known)
@@ -48,6 +58,12 @@ internal static class ArithmeticChecks
                 spoilt.Add(fault.Path[..owner]);
         }
         return spoilt;
+    }
+
+    private static void Judge(StatedDistribution stated, IReadOnlySet<string> spoilt, List<Fault> faults)
+    {
+        if (NeedsArithmetic(stated.Distribution) && (spoilt.Count == 0 || !spoilt.Contains(stated.Path)) && Flaw(stated) is { } fault)
+            faults.Add(fault);
     }
 
     private static bool NeedsArithmetic(Distribution stated) => stated switch
@@ -72,9 +88,9 @@ internal static class ArithmeticChecks
     }
 
     /// <summary>Nodes must have names of their own, and what was stated about them must be in order.</summary>
-    private static bool CanJudgeDependence(PortfolioDocument document, IReadOnlyList<Fault> known) =>
-        Distinct(document.Settings.Drivers.Select(driver => driver.Id))
-        && Distinct(document.Projects.Select(project => project.Id))
+    private static bool CanJudgeDependence(Settings settings, IReadOnlyList<Project> projects, IReadOnlyList<Fault> known) =>
+        Distinct(settings.Drivers.Select(driver => driver.Id))
+        && Distinct(projects.Select(project => project.Id))
         && !known.Any(fault => fault.Path.StartsWith(Dependence, StringComparison.Ordinal));
 
     private static bool Distinct(IEnumerable<string?> ids)

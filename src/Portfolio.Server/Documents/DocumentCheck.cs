@@ -25,14 +25,21 @@ internal sealed class DocumentCheck(ModelLimits limits)
         return faults.Count == 0 ? valid : null;
     }
 
-    private static List<Fault> Together(PortfolioDocument model, bool withoutSettings, List<Fault> shape, IReadOnlyList<Fault> rules)
+    /// <summary>
+    /// A rule that speaks of a member which could not be read repeats what is already said: the faults of both without such.
+    /// </summary>
+    public static List<Fault> WithoutRepetition(IReadOnlyList<Fault> shape, IEnumerable<Fault> rules)
     {
-        // A rule that speaks of a member which could not be read repeats what is already said; so do rules of settings that were not sent.
         var unread = shape.Where(fault => fault.Code != FaultCodes.MemberMissing)
             .Select(fault => fault.Path).ToHashSet(StringComparer.Ordinal);
-        var meant = rules.Where(fault => !unread.Contains(fault.Path)
-            && !(withoutSettings && fault.Path.StartsWith("/settings", StringComparison.Ordinal)));
-        List<Fault> found = [.. shape, .. meant];
+        return [.. shape, .. rules.Where(fault => !unread.Contains(fault.Path))];
+    }
+
+    private static List<Fault> Together(PortfolioDocument model, bool withoutSettings, List<Fault> shape, IReadOnlyList<Fault> rules)
+    {
+        // Rules of settings that were not sent say nothing that is not said already.
+        var found = WithoutRepetition(
+            shape, rules.Where(fault => !(withoutSettings && fault.Path.StartsWith("/settings", StringComparison.Ordinal))));
         found.AddRange(ArithmeticChecks.Of(model, found));
         return found;
     }

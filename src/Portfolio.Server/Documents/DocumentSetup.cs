@@ -10,6 +10,10 @@ internal static class DocumentSetup
     {
         services.AddSingleton(provider => new DocumentReader(provider.GetRequiredService<IOptions<LimitOptions>>().Value.JsonDepth));
         services.AddSingleton(provider => new DocumentCheck(provider.GetRequiredService<IOptions<LimitOptions>>().Value.OfModel()));
+        services.AddSingleton(provider => new KnownParts(provider.GetRequiredService<IOptions<LimitOptions>>().Value.OfModel()));
+        services.AddSingleton(provider => new DraftCheck(
+            provider.GetRequiredService<IOptions<LimitOptions>>().Value.OfModel(), provider.GetRequiredService<KnownParts>()));
+        services.AddSingleton<PartWriting>();
         services.AddSingleton<RevisionOfDate>();
     }
 }

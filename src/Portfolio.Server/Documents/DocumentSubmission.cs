@@ -1,4 +1,4 @@
-using Portfolio.Model.Faults;
+using Portfolio.Model.Documents;
 using Portfolio.Model.Rules;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
@@ -19,13 +19,14 @@ internal sealed class DocumentSubmission
 
     private DocumentSubmission(Problem problem) => this.problem = problem;
 
-    private DocumentSubmission(DocumentJson document)
+    private DocumentSubmission(DocumentJson document, ValidPortfolio valid)
     {
         currency = document.Settings!.Currency;
         parts =
         [
             new ProposedPart(PartNames.Settings, DocumentReader.Bytes(document.Settings)),
-            .. SideBySide.Each(document.Projects!, (project, _) => new ProposedPart(project.Id!, DocumentReader.Bytes(project))),
+            .. SideBySide.Each(document.Projects!, (project, i) =>
+                new ProposedPart(project.Id!, DocumentReader.Bytes(project), OutlineOf(valid.Document.Projects[i]))),
         ];
         Tag = EntityTags.OfDocument(parts.Select(part => new PartHead(part.Project, part.Hash))).ToString();
     }
@@ -39,15 +40,19 @@ internal sealed class DocumentSubmission
         try
         {
             var document = reader.ReadDocument(json);
-            check.Check(document, json.Span, out var faults);
+            var valid = check.Check(document, json.Span, out var faults);
             faults = [.. PortfolioRules.CheckId(portfolio), .. faults];
-            return faults.Count > 0 ? new DocumentSubmission(Problem.Refused(faults)) : new DocumentSubmission(document);
+            return valid is null || faults.Count > 0
+                ? new DocumentSubmission(Problem.Refused(faults))
+                : new DocumentSubmission(document, valid);
         }
         catch (JsonRefused refused)
         {
             return new DocumentSubmission(Problem.Malformed(refused));
         }
     }
+
+    private static byte[] OutlineOf(Project project) => OutlineBytes.Write(ProjectOutline.Of(project));
 
     /// <summary>Looks at what is there now and proposes to replace it whole.</summary>
     public async Task<Proposal> ReplaceAsync(Head? head, Preconditions conditions)
@@ -57,14 +62,9 @@ internal sealed class DocumentSubmission
         return refused is null ? Change.Everything(head, parts) : new Refusal(refused, refused.Slug);
     }
 
-    private async Task<Problem?> FixedCurrencyAsync(Head? head)
-    {
-        if (head is null || await head.ReadAsync(PartNames.Settings) is not { } settings)
-            return null;
-        var before = DocumentReader.OfStored.ReadSettings(settings).Currency;
-        if (before == currency || !await head.HasRunsAsync())
-            return null;
-        var why = $"The currency stays {before}: runs were made in it.";
-        return Problem.Refused([new Fault("/settings/currency", "settings", FaultCodes.CurrencyFixed, why)]);
-    }
+    private async Task<Problem?> FixedCurrencyAsync(Head? head) =>
+        head is not null
+        && await FixedCurrency.CheckAsync(head, await head.ReadAsync(PartNames.Settings), currency, "/settings/currency") is { } fault
+            ? Problem.Refused([fault])
+            : null;
 }

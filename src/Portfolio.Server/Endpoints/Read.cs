@@ -21,4 +21,13 @@ internal static class Read
         http.Response.Headers.ContentLocation = $"{http.Request.Path}?revision={document.Revision.Number}";
         return new DocumentBody(document);
     }
+
+    /// <summary>A part by its stored bytes; 304 when the client has it already.</summary>
+    public static IResult Part(HttpContext http, string hash, byte[] bytes)
+    {
+        var tag = EntityTags.OfPart(hash);
+        return new Preconditions(http.Request).HasAlready(tag)
+            ? NotModified(http, tag)
+            : TypedResults.Bytes(bytes, "application/json; charset=utf-8", entityTag: tag);
+    }
 }

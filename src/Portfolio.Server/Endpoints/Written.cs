@@ -9,20 +9,22 @@ namespace Portfolio.Server.Endpoints;
 internal static class Written
 {
     /// <param name="tag">Entity tag of the part as it now stands.</param>
-    public static IResult Answer(HttpContext http, string portfolio, WriteResult result, string? tag) => result.Outcome switch
+    /// <param name="creates">True when the thing at the address is new; a new portfolio is in any case.</param>
+    public static IResult Answer(
+        HttpContext http, string portfolio, WriteResult result, string? tag, bool creates = false) => result.Outcome switch
     {
-        WriteOutcome.Accepted or WriteOutcome.Unchanged => Done(http, portfolio, result, tag),
+        WriteOutcome.Accepted or WriteOutcome.Unchanged => Done(http, portfolio, result, tag, creates || result.Created),
         WriteOutcome.Refused => (Problem)result.Refusal!,
         WriteOutcome.Forbidden => Problem.Forbidden(),
         WriteOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer written."),
         _ => Problem.NotFound(),
     };
 
-    private static IResult Done(HttpContext http, string portfolio, WriteResult result, string? tag)
+    private static IResult Done(HttpContext http, string portfolio, WriteResult result, string? tag, bool created)
     {
         http.Response.Headers[HeaderNames.ETag] = tag;
         var written =
             new WrittenJson { Portfolio = portfolio, Revision = result.Revision, Changed = result.Outcome == WriteOutcome.Accepted };
-        return result.Created ? TypedResults.Created(http.Request.Path, written) : TypedResults.Ok(written);
+        return created ? TypedResults.Created(http.Request.Path, written) : TypedResults.Ok(written);
     }
 }

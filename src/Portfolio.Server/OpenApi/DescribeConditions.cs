@@ -14,7 +14,16 @@ internal static class DescribeConditions
         route.With("If-Match", "Entity tag of what is replaced, or *; needed when something is there (428).")
             .With("If-None-Match", "* to create only (412 when something is there).");
 
-    private static RouteHandlerBuilder With(this RouteHandlerBuilder route, string header, string description) =>
+    /// <summary>A write of one part that may also come without conditions.</summary>
+    public static RouteHandlerBuilder ChangesConditionally(this RouteHandlerBuilder route) =>
+        route.With("If-Match", "Entity tag of what is changed, or *; may be left out.")
+            .With("If-None-Match", "* to create only (412 when something is there).");
+
+    /// <summary>A removal, which must say of what.</summary>
+    public static RouteHandlerBuilder RemovesConditionally(this RouteHandlerBuilder route) =>
+        route.With("If-Match", "Entity tag of what is removed, or *; needed (428).", tagged: false);
+
+    private static RouteHandlerBuilder With(this RouteHandlerBuilder route, string header, string description, bool tagged = true) =>
         route.AddOpenApiOperationTransformer((operation, _, _) =>
         {
             (operation.Parameters ??= []).Add(new OpenApiParameter
@@ -24,7 +33,7 @@ internal static class DescribeConditions
                 Description = description,
                 Schema = new OpenApiSchema { Type = JsonSchemaType.String },
             });
-            foreach (var (_, response) in (operation.Responses ?? []).Where(pair => pair.Key is "200" or "201" or "304"))
+            foreach (var (_, response) in (operation.Responses ?? []).Where(pair => tagged && pair.Key is "200" or "201" or "304"))
                 if (response is OpenApiResponse answer)
                     DescribeHeaders.Add(answer, "ETag", "Strong entity tag of what is answered or written.");
             return Task.CompletedTask;

@@ -58,6 +58,13 @@ internal sealed class Problem(int status, string slug, string title, string? det
     public static Problem Forbidden() => new(403, "forbidden", "The key lacks the right",
         "The key has a grant on this portfolio, but not the right for this.");
 
+    /// <summary>With the members that the key's right does not reach.</summary>
+    public static Problem Forbidden(IReadOnlyList<Fault> members) => new(403, "forbidden", "The key lacks the right",
+        members.Count == 1 ? members[0].Message : $"{members.Count} members need the right 'manage'; 'errors' names them.")
+    {
+        Faults = [.. members.Select(FaultJson.From)],
+    };
+
     public static Problem NotFound(string? detail = null) => new(404, "not-found", "There is no such thing here", detail);
 
     public static Problem Conflict(string slug, string title, string? detail = null) => new(409, slug, title, detail);

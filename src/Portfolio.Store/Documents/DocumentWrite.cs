@@ -13,6 +13,14 @@ public sealed record DocumentWrite
     /// </summary>
     public Right Right { get; init; } = Right.Manage;
 
+    /// <summary>
+    /// The parts that the write speaks of: without the right on each of them nothing is decided, so that no answer tells of their content.
+    /// </summary>
+    public IReadOnlyList<string> Parts { get; init; } = [];
+
+    /// <summary>False for a write that never makes a portfolio: where there is none it finds nothing.</summary>
+    public bool MayCreate { get; init; } = true;
+
     /// <summary>Kept with the revision.</summary>
     public string? Note { get; init; }
 

@@ -12,18 +12,47 @@ public sealed partial class DocumentStore
     /// yet) and proposes, then revision, parts, audit entry and outbox row are written. When <paramref name="decide"/> throws, nothing is
     /// kept. It must not write to the store itself.
     /// </summary>
-    public async Task<WriteResult> WriteAsync(
+    public Task<WriteResult> WriteAsync(
+        Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation) =>
+        WriteAsync(caller, write, decide, ahead: null, cancellation);
+
+    /// <summary>
+    /// The same, decided ahead of the transaction, for which other writers need not wait; decided again inside only when another write
+    /// came between. <paramref name="decide"/> must be safe to call twice.
+    /// </summary>
+    public async Task<WriteResult> WriteDecidedAheadAsync(
         Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation)
+    {
+        var ahead = await database.ReadAsync(
+            async open =>
+            {
+                if (await TurnedAsync(open, caller, write) is (_, not null))
+                    return null;
+                var head = await Head.FindAsync(open, write.Portfolio);
+                var proposal = await decide(head, cancellation);
+                return head?.LookedBeyond == true ? null : new Ahead(head?.Revision ?? 0, proposal);
+            },
+            cancellation);
+        return await WriteAsync(caller, write, decide, ahead, cancellation);
+    }
+
+    private sealed record Ahead(long Revision, Proposal Proposal);
+
+    private async Task<WriteResult> WriteAsync(
+        Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, Ahead? ahead,
+        CancellationToken cancellation)
     {
         var summary = "";
         var result = await database.WriteAsync(
             async open =>
             {
-                var standing = await Standing.ReadAsync(open, caller, await RightNeededAsync(open, write), write.Portfolio);
-                if (Turned(standing) is { } turned)
-                    return new WriteResult(turned);
-                var head = standing.Exists ? await Head.ReadAsync(open, write.Portfolio) : null;
-                var proposal = await decide(head, cancellation);
+                var (standing, turned) = await TurnedAsync(open, caller, write);
+                if (turned is { } outcome)
+                    return new WriteResult(outcome);
+                var head = await Head.FindAsync(open, write.Portfolio);
+                var proposal = ahead is not null && ahead.Revision == (head?.Revision ?? 0)
+                    ? ahead.Proposal
+                    : await decide(head, cancellation);
                 if (proposal is Refusal refusal)
                 {
                     summary = refusal.Summary;
@@ -42,9 +71,20 @@ public sealed partial class DocumentStore
     private static async Task<Right> RightNeededAsync(StoreTransaction open, DocumentWrite write) =>
         await open.FirstAsync<long>(ExistsSql, new { write.Portfolio }) > 0 ? write.Right : Right.Admin;
 
-    private static WriteOutcome? Turned(Standing standing) => standing switch
+    /// <summary>Where the caller stands, and why it is turned away before anything is decided; null: it is not.</summary>
+    private static async Task<(Standing Standing, WriteOutcome? Turned)> TurnedAsync(StoreTransaction open, Caller caller, DocumentWrite write)
+    {
+        var standing = await Standing.ReadAsync(open, caller, await RightNeededAsync(open, write), write.Portfolio);
+        var turned = Turned(standing, write);
+        return turned is null && !standing.Whole && !await ReachesAsync(open, caller, write, write.Parts)
+            ? (standing, WriteOutcome.Forbidden)
+            : (standing, turned);
+    }
+
+    private static WriteOutcome? Turned(Standing standing, DocumentWrite write) => standing switch
     {
         { Known: false } => WriteOutcome.NotFound,
+        { Exists: false } when !write.MayCreate => WriteOutcome.NotFound,
         { Exists: true, Some: false } or { Exists: false, Whole: false } => WriteOutcome.Forbidden,
         { Archived: true } => WriteOutcome.Archived,
         _ => null,
@@ -53,7 +93,7 @@ public sealed partial class DocumentStore
     private static async Task<WriteResult> AcceptAsync(
         StoreTransaction open, Caller caller, DocumentWrite write, Standing standing, Head? head, IReadOnlyList<PlannedPart> plan)
     {
-        if (!standing.Whole && !await ReachesAsync(open, caller, write, plan))
+        if (!standing.Whole && !await ReachesAsync(open, caller, write, plan.Select(part => part.Project)))
             return new WriteResult(WriteOutcome.Forbidden);
         var result = new WriteResult(WriteOutcome.Unchanged) { Revision = head?.Revision ?? 0 };
         if (plan.Count > 0)
@@ -74,12 +114,12 @@ public sealed partial class DocumentStore
 
     private static string ReachesSql(Right right) => $"select case when {Granted.Part(right, "@Portfolio", "@Project")} then 1 else 0 end";
 
-    /// <summary>Whether grants limited to projects cover every part that the plan touches.</summary>
-    private static async Task<bool> ReachesAsync(StoreTransaction open, Caller caller, DocumentWrite write, IReadOnlyList<PlannedPart> plan)
+    /// <summary>Whether grants limited to projects cover every one of these parts.</summary>
+    private static async Task<bool> ReachesAsync(StoreTransaction open, Caller caller, DocumentWrite write, IEnumerable<string> parts)
     {
-        foreach (var part in plan)
+        foreach (var project in parts)
         {
-            var asked = new { Caller = caller.KeyId, open.Now, write.Portfolio, part.Project };
+            var asked = new { Caller = caller.KeyId, open.Now, write.Portfolio, Project = project };
             if (await open.FirstAsync<long>(ReachesSql(write.Right), asked) == 0)
                 return false;
         }
@@ -110,8 +150,8 @@ public sealed partial class DocumentStore
         var recordedAt = Math.Max(open.Now, head?.RecordedAt ?? 0);
         await open.ExecuteAsync(
             InsertRevisionSql, new { write.Portfolio, Number = number, RecordedAt = recordedAt, Actor = caller.KeyId, write.Note });
-        await PartContents.KeepAsync(
-            open, from part in plan where part.Bytes is not null && part.After != part.Before select (part.After!, part.Bytes));
+        await PartContents.KeepAsync(open, from part in plan where part.After != part.Before select part.Proposed into sent
+            where sent is not null select sent);
         foreach (var part in plan)
         {
             if (head is not null)

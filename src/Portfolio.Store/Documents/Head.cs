@@ -1,7 +1,8 @@
 namespace Portfolio.Store.Documents;
 
 /// <summary>
-/// The newest revision, seen from inside the transaction that may replace it. Valid only until the decision has been returned.
+/// The newest revision, seen from inside a transaction: the one that may replace it, or one before it that only looks. Valid only until the
+/// decision has been returned.
 /// </summary>
 public sealed class Head
 {
@@ -25,6 +26,9 @@ public sealed class Head
 
     internal long RecordedAt { get; }
 
+    /// <summary>True once something was asked that may change without a new revision.</summary>
+    internal bool LookedBeyond { get; private set; }
+
     private const string NewestSql = "select number, recorded_at from revision where portfolio = @Portfolio order by number desc limit 1";
 
     private const string PartsSql = """
@@ -33,10 +37,11 @@ public sealed class Head
         order by position
         """;
 
-    internal static async Task<Head> ReadAsync(StoreTransaction open, string portfolio)
+    /// <summary>Null when there is no such portfolio.</summary>
+    internal static async Task<Head?> FindAsync(StoreTransaction open, string portfolio)
     {
-        var newest = await open.FirstAsync<RevisionRow>(NewestSql, new { Portfolio = portfolio })
-            ?? throw new StoreDamagedException($"The portfolio '{portfolio}' has no revision.");
+        if (await open.FirstAsync<RevisionRow>(NewestSql, new { Portfolio = portfolio }) is not { } newest)
+            return null;
         return new Head(open, portfolio, newest, await open.ListAsync<PartRow>(PartsSql, new { Portfolio = portfolio, newest.Number }));
     }
 
@@ -53,10 +58,18 @@ public sealed class Head
         return parts;
     }
 
+    /// <summary>Outlines that were kept with contents, by content hash; contents without one are left out.</summary>
+    public Task<IReadOnlyDictionary<string, byte[]>> ReadOutlinesAsync(IReadOnlyCollection<string> hashes) =>
+        PartContents.ReadOutlinesAsync(open, hashes);
+
     private const string HasRunsSql = "select count(*) from (select 1 from run where portfolio = @Portfolio limit 1) found";
 
     /// <summary>True once a run was asked for: from then on the currency is fixed.</summary>
-    public async Task<bool> HasRunsAsync() => await open.FirstAsync<long>(HasRunsSql, new { Portfolio = portfolio }) > 0;
+    public async Task<bool> HasRunsAsync()
+    {
+        LookedBeyond = true;
+        return await open.FirstAsync<long>(HasRunsSql, new { Portfolio = portfolio }) > 0;
+    }
 }
 
 internal sealed record PartRow

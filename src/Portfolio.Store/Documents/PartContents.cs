@@ -16,19 +16,43 @@ internal static class PartContents
 
     private const string KnownSql = "select count(*) from part_content where hash = @Hash";
 
+    private const string InsertOutlineSql =
+        "insert into part_outline (hash, bytes) values (@Hash, @Outline) on conflict (hash) do nothing";
+
     /// <summary>Keeps those that are not there yet; they are compressed beside each other, for the write lock is held meanwhile.</summary>
-    public static async Task KeepAsync(StoreTransaction open, IEnumerable<(string Hash, byte[] Bytes)> contents)
+    public static async Task KeepAsync(StoreTransaction open, IEnumerable<ProposedPart> parts)
     {
-        var unknown = new List<(string Hash, byte[] Bytes)>();
-        foreach (var content in contents)
+        var unknown = new List<ProposedPart>();
+        foreach (var part in parts)
         {
-            if (await open.FirstAsync<long>(KnownSql, new { content.Hash }) == 0)
-                unknown.Add(content);
+            if (await open.FirstAsync<long>(KnownSql, new { part.Hash }) == 0)
+                unknown.Add(part);
         }
         var compressed = new byte[unknown.Count][];
         Parallel.For(0, compressed.Length, i => compressed[i] = Compress(unknown[i].Bytes));
         for (var i = 0; i < compressed.Length; i++)
+        {
             await open.ExecuteAsync(InsertSql, new { unknown[i].Hash, Bytes = compressed[i], Size = unknown[i].Bytes.Length });
+            if (unknown[i].Outline is not null)
+                await open.ExecuteAsync(InsertOutlineSql, new { unknown[i].Hash, unknown[i].Outline });
+        }
+    }
+
+    private const string OutlinesSql = "select hash, bytes from part_outline where hash in @Some";
+
+    // SQLite allows 32,766 parameters in a statement, PostgreSQL 65,535.
+    private const int OutlinesAtOnce = 1_000;
+
+    /// <summary>Outlines by content hash, of those that have one.</summary>
+    public static async Task<IReadOnlyDictionary<string, byte[]>> ReadOutlinesAsync(StoreTransaction open, IReadOnlyCollection<string> hashes)
+    {
+        var found = new Dictionary<string, byte[]>(hashes.Count, StringComparer.Ordinal);
+        foreach (var some in hashes.Chunk(OutlinesAtOnce))
+        {
+            foreach (var row in await open.ListAsync<ContentRow>(OutlinesSql, new { Some = some }))
+                found[row.Hash] = row.Bytes;
+        }
+        return found;
     }
 
     private const string ReadSql = "select hash, bytes, size from part_content where hash = @Hash";

@@ -1,7 +1,7 @@
 namespace Portfolio.Store.Documents;
 
 /// <summary>A row of a revision: one part that it changes, moves or (without hash) removes.</summary>
-internal sealed record PlannedPart(string Project, long Position, string? Before, string? After, byte[]? Bytes);
+internal sealed record PlannedPart(string Project, long Position, string? Before, string? After, ProposedPart? Proposed);
 
 /// <summary>From a head and a proposed change to the rows of the next revision: only what differs.</summary>
 internal static class PartPlan
@@ -24,7 +24,7 @@ internal static class PartPlan
             var part = sent.GetValueOrDefault(project);
             var hash = part?.Hash ?? old!.Hash;
             if (old is null || old.Hash != hash || old.Position != last)
-                rows.Add(new PlannedPart(project, last, old?.Hash, hash, part?.Bytes));
+                rows.Add(new PlannedPart(project, last, old?.Hash, hash, part));
         }
         rows.AddRange(head.Where(row => removed.Contains(row.Project))
             .Select(row => new PlannedPart(row.Project, row.Position, row.Hash, null, null)));

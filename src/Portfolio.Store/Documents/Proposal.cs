@@ -11,7 +11,8 @@ public abstract record Proposal
 /// <summary>A part as it shall be.</summary>
 /// <param name="Project">The project's id, or <see cref="PartNames.Settings"/>.</param>
 /// <param name="Bytes">Its canonical bytes. Equal to what is stored: no change.</param>
-public sealed record ProposedPart(string Project, byte[] Bytes)
+/// <param name="Outline">Kept beside the content for <see cref="Head.ReadOutlinesAsync"/>; null: none.</param>
+public sealed record ProposedPart(string Project, byte[] Bytes, byte[]? Outline = null)
 {
     public string Hash { get; } = ContentHash.Of(Bytes);
 }

@@ -10,9 +10,20 @@ internal static class ForeignCycleRule
 {
     public static IEnumerable<Fault> Check(OutlineIndex whole)
     {
-        if (!whole.Projects.Any(p => p.Outline.ReachesOut)) return [];
-        var network = new PortfolioNetwork(whole);
+        if (Circling(whole) is not { Count: > 0 } some) return [];
+        var network = new PortfolioNetwork(whole, some);
         return CycleSearch.Find(network.Nodes, network.Arcs, network.ReachesOut).Select(cycle => Report(cycle, whole, network));
+    }
+
+    /// <summary>Projects that reach each other in a circle, and perhaps some between such: only their activities can.</summary>
+    private static HashSet<int> Circling(OutlineIndex whole)
+    {
+        List<Arc> arcs = [];
+        for (var p = 0; p < whole.Projects.Count; p++)
+            foreach (var link in whole.Projects[p].Outline.ForeignLinks)
+                if (whole.Find(link.Project!) is >= 0 and var q)
+                    arcs.Add(new(q, p));
+        return [.. CycleSearch.Left(whole.Projects.Count, arcs).SelectMany(arc => new[] { arcs[arc].Predecessor, arcs[arc].Successor })];
     }
 
     private static Fault Report(List<int> cycle, OutlineIndex whole, PortfolioNetwork network)
@@ -25,19 +36,21 @@ internal static class ForeignCycleRule
     }
 }
 
-/// <summary>All activities of a portfolio numbered through, with the links that name something.</summary>
+/// <summary>All activities of some projects numbered through, with the links between them that name something.</summary>
 internal sealed class PortfolioNetwork
 {
     private readonly OutlineIndex whole;
+    private readonly HashSet<int> some;
     private readonly int[] starts;
     private readonly List<(int Project, OutlineLink Link)> links = [];
 
-    public PortfolioNetwork(OutlineIndex whole)
+    public PortfolioNetwork(OutlineIndex whole, HashSet<int> some)
     {
-        this.whole = whole;
+        (this.whole, this.some) = (whole, some);
         starts = new int[whole.Projects.Count + 1];
-        for (var p = 0; p < whole.Projects.Count; p++) starts[p + 1] = starts[p] + whole.Projects[p].Outline.ActivityIds.Count;
         for (var p = 0; p < whole.Projects.Count; p++)
+            starts[p + 1] = starts[p] + (some.Contains(p) ? whole.Projects[p].Outline.ActivityIds.Count : 0);
+        foreach (var p in some.Order())
             foreach (var link in whole.Projects[p].Outline.Links)
                 Add(p, link);
     }
@@ -60,7 +73,7 @@ internal sealed class PortfolioNetwork
     private void Add(int p, OutlineLink link)
     {
         var q = link.Project is null ? p : whole.Find(link.Project);
-        if (q < 0) return;
+        if (!some.Contains(q)) return;
         var predecessor = link.Project is null ? link.Predecessor : whole.Projects[q].Outline.Find(link.Activity!);
         if (predecessor < 0) return;
         Arcs.Add(new(starts[q] + predecessor, starts[p] + link.Successor));
@@ -71,7 +84,7 @@ internal sealed class PortfolioNetwork
     {
         var found = Array.BinarySearch(starts, node);
         if (found < 0) return ~found - 1;
-        // Projects without activities begin where the next one does; the last of them holds the node.
+        // Projects that are left out or have no activities begin where the next one does; the last of them holds the node.
         while (found + 1 < starts.Length - 1 && starts[found + 1] == node) found++;
         return found;
     }

@@ -10,10 +10,9 @@ internal static class ForeignLinkRule
         for (var p = 0; p < whole.Projects.Count; p++)
         {
             var outline = whole.Projects[p].Outline;
-            if (!outline.ReachesOut) continue;
-            foreach (var link in outline.Links)
+            foreach (var link in outline.ForeignLinks)
             {
-                if (link.Project is null || whole.Missing(link.Project, link.Activity!) is not var (code, reason)) continue;
+                if (whole.Missing(link.Project!, link.Activity!) is not var (code, reason)) continue;
                 yield return whole.ActivityAt(p, link.Successor).Under("predecessors", link.Entry).Fault(
                     code,
                     $"{outline.ActivityIds[link.Successor]} waits for {TextRule.Shown($"{link.Project}/{link.Activity}")}, but {reason}.");

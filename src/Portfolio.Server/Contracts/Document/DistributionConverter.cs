@@ -24,6 +24,12 @@ internal sealed class DistributionConverter : JsonConverter<DistributionJson>
 
     public override void Write(Utf8JsonWriter writer, DistributionJson distribution, JsonSerializerOptions options)
     {
+        if (distribution.Misfits.Count > 0)
+        {
+            // Never stored; written only to see that it differs from what is.
+            writer.WriteNullValue();
+            return;
+        }
         if (distribution.Type is null)
         {
             writer.WriteNumberValue(distribution[Numbers.Value]!.Value);

@@ -9,6 +9,7 @@ namespace Portfolio.Server.Contracts.Document;
 [JsonSerializable(typeof(SettingsJson))]
 [JsonSerializable(typeof(ProjectJson))]
 [JsonSerializable(typeof(ActivityJson))]
+[JsonSerializable(typeof(JsonElement))]
 internal sealed partial class DocumentContext : JsonSerializerContext
 {
     /// <param name="maxDepth">Deepest nesting that is read.</param>

@@ -14,6 +14,11 @@ public sealed class DocumentReader(int maxDepth)
     /// <summary>For what is stored: it was read with the limits of its day.</summary>
     public static readonly DocumentReader OfStored = new(64);
 
+    /// <summary>What each type of part is made of.</summary>
+    public static readonly JsonTypeInfo SettingsType = OfStored.context.SettingsJson;
+    public static readonly JsonTypeInfo ProjectType = OfStored.context.ProjectJson;
+    public static readonly JsonTypeInfo ActivityType = OfStored.context.ActivityJson;
+
     private readonly DocumentContext context = DocumentContext.Strict(maxDepth);
 
     // Settings stand one level below the document, projects two.
@@ -33,11 +38,30 @@ public sealed class DocumentReader(int maxDepth)
 
     public ProjectJson ReadProject(ReadOnlySpan<byte> json) => Read(json, context.ProjectJson);
 
+    public ActivityJson ReadActivity(ReadOnlySpan<byte> json) => Read(json, context.ActivityJson);
+
+    /// <summary>Any JSON value, as long as no object in it names a member twice.</summary>
+    public JsonElement ReadAny(ReadOnlySpan<byte> json)
+    {
+        json = WithoutMark(json);
+        try
+        {
+            return JsonSerializer.Deserialize(json, context.JsonElement);
+        }
+        catch (JsonException refused)
+        {
+            throw JsonRefused.From(json, refused, context.JsonElement, maxDepth);
+        }
+    }
+
     /// <summary>The bytes in which settings are stored and digested: members in contract order, absent ones left out.</summary>
     public static byte[] Bytes(SettingsJson settings) => JsonSerializer.SerializeToUtf8Bytes(settings, OfStored.context.SettingsJson);
 
     /// <summary>The bytes in which a project is stored and digested.</summary>
     public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, OfStored.context.ProjectJson);
+
+    /// <summary>The bytes in which an activity is digested and served on its own: those that stand for it in its project.</summary>
+    public static byte[] Bytes(ActivityJson activity) => JsonSerializer.SerializeToUtf8Bytes(activity, OfStored.context.ActivityJson);
 
     /// <summary>A document from its stored parts, which were checked when they were written.</summary>
     public static PortfolioDocument FromParts(ReadOnlySpan<byte> settings, IReadOnlyList<ReadOnlyMemory<byte>> projects) => new(

@@ -1,0 +1,61 @@
+using Portfolio.Server.Contracts.Document;
+using Portfolio.Server.Contracts.Json;
+using Portfolio.Server.Problems;
+using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
+
+namespace Portfolio.Server.Documents;
+
+/// <summary>How a write of parts ended.</summary>
+/// <param name="Creates">True when the thing at the address is new.</param>
+/// <param name="Tag">Entity tag of the thing at the address as it now stands; null when there is none.</param>
+internal sealed record PartsWritten(WriteResult Result, bool Creates = false, string? Tag = null);
+
+/// <summary>
+/// The one way of writing parts of a document: a draft is drawn up from what stands there, checked with what it touches, and stored if
+/// sound. Most of it happens before the transaction that writes; only when another write came between is it done again inside.
+/// </summary>
+internal sealed class PartWriting(DocumentStore documents, DraftCheck check, KnownParts known)
+{
+    /// <param name="draw">Draws up the write on the document as it stands; perhaps twice, so it must change nothing itself.</param>
+    public async Task<PartsWritten> WriteAsync(
+        Caller caller, DocumentWrite write, Func<DocumentState, Task<Draft>> draw, CancellationToken cancellation)
+    {
+        var last = new PartsWritten(new WriteResult(WriteOutcome.NotFound));
+        var result = await documents.WriteDecidedAheadAsync(
+            caller, write with { MayCreate = false },
+            async (head, _) =>
+            {
+                var (proposal, draft) = await DecideAsync(new DocumentState(head!, known), draw);
+                last = last with { Creates = draft?.Creates == true, Tag = proposal is Change change ? TagOf(draft!, change) : null };
+                return proposal;
+            },
+            cancellation);
+        return last with { Result = result };
+    }
+
+    private async Task<(Proposal Proposal, Draft? Draft)> DecideAsync(DocumentState state, Func<DocumentState, Task<Draft>> draw)
+    {
+        try
+        {
+            var draft = await draw(state);
+            if (draft.Refusal is { } refusal)
+                return (Refuse(refusal), null);
+            var (change, faults) = await check.CheckAsync(draft, state);
+            return change is null ? (Refuse(Problem.Refused(faults)), null) : (change, draft);
+        }
+        catch (JsonRefused refused)
+        {
+            return (Refuse(Problem.Malformed(refused)), null);
+        }
+    }
+
+    private static Refusal Refuse(Problem problem) => new(problem, problem.Slug);
+
+    private static string? TagOf(Draft draft, Change change) =>
+        draft.Activity is { } activity ? TagOf(ContentHash.Of(DocumentReader.Bytes(activity)))
+        : change.Parts is [var part] ? TagOf(part.Hash)
+        : null;
+
+    private static string TagOf(string hash) => Http.EntityTags.OfPart(hash).ToString();
+}

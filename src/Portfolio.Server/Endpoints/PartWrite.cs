@@ -1,0 +1,54 @@
+using System.Security.Claims;
+using Microsoft.AspNetCore.Mvc;
+using Microsoft.Extensions.Options;
+using Portfolio.Server.Access;
+using Portfolio.Server.Contracts.Document;
+using Portfolio.Server.Documents;
+using Portfolio.Server.Hosting;
+using Portfolio.Server.Http;
+using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
+
+namespace Portfolio.Server.Endpoints;
+
+/// <summary>What a write of one part brings along.</summary>
+/// <param name="Portfolio">The portfolio's id.</param>
+/// <param name="Note">Kept with the revision.</param>
+internal sealed record PartWrite(
+    [FromRoute(Name = "portfolio")] string Portfolio,
+    [FromQuery(Name = "note")] string? Note,
+    ClaimsPrincipal User,
+    HttpContext Http,
+    PartWriting Writing,
+    DocumentReader Reader,
+    IOptions<LimitOptions> Limits,
+    CancellationToken Cancellation)
+{
+    public Preconditions Conditions { get; } = new(Http.Request);
+
+    /// <summary>False for who may only submit to this part.</summary>
+    public bool Manages(string part) => User.Caller().Holds(Right.Manage, Portfolio, part);
+
+    public Task<RequestBody> BodyAsync() => RequestBody.ReadAsync(Http.Request, Limits.Value.Body);
+
+    /// <summary>Writes and answers.</summary>
+    /// <param name="part">The settings or the project in the address.</param>
+    /// <param name="right">What the caller needs on it.</param>
+    public async Task<IResult> ToAsync(string part, string action, Right right, Func<DocumentState, Task<Draft>> draw)
+    {
+        var write = new DocumentWrite
+        {
+            Portfolio = Portfolio,
+            Parts = [part],
+            Right = right,
+            Note = Notes.Checked(Note),
+            Action = action,
+            Object = Http.Request.Path.Value!["/v1/".Length..],
+        };
+        var (result, creates, tag) = await Writing.WriteAsync(User.Caller(), write, draw, Cancellation);
+        return Written.Answer(Http, Portfolio, result, tag, creates);
+    }
+
+    /// <summary>The right that the caller uses here: to manage if it has it, otherwise to submit.</summary>
+    public Right Used(string part) => Manages(part) ? Right.Manage : Right.Submit;
+}

@@ -1,0 +1,46 @@
+using Portfolio.Server.Access;
+using Portfolio.Server.Contracts.Document;
+using Portfolio.Server.Contracts.Portfolios;
+using Portfolio.Server.Documents.Parts;
+using Portfolio.Server.OpenApi;
+using Portfolio.Server.Problems;
+using Portfolio.Store.Access;
+
+namespace Portfolio.Server.Endpoints;
+
+internal static class ProjectEndpoints
+{
+    public static void MapProjects(this IEndpointRouteBuilder portfolio)
+    {
+        var projects = portfolio.MapGroup("/projects").WithTags("Parts");
+        projects.MapGet("/{project}", Get).WithName("getProject").NeedsAny(Right.Read, Right.Submit)
+            .Produces<ProjectJson>().ReadsConditionally().Refuses(422);
+        projects.MapPut("/{project}", Put).WithName("putProject").Needs(Right.Submit)
+            .Accepts<ProjectJson>("application/json")
+            .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)
+            .ChangesConditionally().Refuses(409, 412, 413, 415, 422);
+        projects.MapDelete("/{project}", Delete).WithName("deleteProject").Needs(Right.Manage)
+            .Produces<WrittenJson>().RemovesConditionally().Refuses(409, 412, 422, 428);
+    }
+
+    /// <summary>A project as it was sent, defaults not filled in.</summary>
+    internal static async Task<IResult> Get(string project, [AsParameters] PartRead read)
+    {
+        var part = await read.FindAsync(project);
+        return Read.Part(read.Http, part.Hash, part.Bytes);
+    }
+
+    /// <summary>Creates the project as the last one, or replaces it at its place.</summary>
+    /// <remarks>With the right to submit only the status date and what overhead has cost so far may differ from what is there.</remarks>
+    internal static async Task<IResult> Put(string project, [AsParameters] PartWrite write)
+    {
+        using var body = await write.BodyAsync();
+        var whole = new WholeBody<ProjectJson>(body.Bytes, write.Reader, PartTypes.Project, project, project);
+        var edit = new ProjectEdit(project, whole, write.Conditions, write.Manages(project));
+        return await write.ToAsync(project, "project.put", write.Used(project), edit.DrawAsync);
+    }
+
+    /// <summary>Takes the project out of the document; refused while others are linked to it.</summary>
+    internal static Task<IResult> Delete(string project, [AsParameters] PartWrite write) =>
+        write.ToAsync(project, "project.delete", Right.Manage, new ProjectRemoval(project, write.Conditions).DrawAsync);
+}
