@@ -24,7 +24,8 @@ internal static class DescribeRights
         return Task.CompletedTask;
 
         bool Suffices(Right right) =>
-            needed.TrueForAll(each => new Caller("", "", [new Grant(right, Grant.Everywhere)]).HoldsSomewhere(each.Right, Grant.Everywhere));
+            needed.TrueForAll(each => each.Rights.Any(needs =>
+                new Caller("", "", [new Grant(right, Grant.Everywhere)]).HoldsSomewhere(needs, Grant.Everywhere)));
     }
 
     private static JsonNode Word(Right right) => right.ToString().ToLowerInvariant();
