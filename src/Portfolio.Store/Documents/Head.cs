@@ -58,9 +58,29 @@ public sealed class Head
         return parts;
     }
 
-    /// <summary>Outlines that were kept with contents, by content hash; contents without one are left out.</summary>
-    public Task<IReadOnlyDictionary<string, byte[]>> ReadOutlinesAsync(IReadOnlyCollection<string> hashes) =>
-        PartContents.ReadOutlinesAsync(open, hashes);
+    // Up to so many are looked up one by one; more are read together with all others of the head.
+    private const int OutlinesOneByOne = 8;
+
+    private const string OutlinesSql = """
+        select o.hash, o.bytes from revision_part v join part_outline o on o.hash = v.hash
+        where v.portfolio = @Portfolio and v.superseded > @Revision and v.revision <= @Revision
+        """;
+
+    /// <summary>Outlines that were kept with contents of this head, by content hash; contents without one are left out.</summary>
+    public async Task<IReadOnlyDictionary<string, byte[]>> ReadOutlinesAsync(IReadOnlyCollection<string> hashes)
+    {
+        var found = new Dictionary<string, byte[]>(StringComparer.Ordinal);
+        if (hashes.Count > OutlinesOneByOne)
+        {
+            foreach (var row in await open.ListAsync<ContentRow>(OutlinesSql, new { Portfolio = portfolio, Revision }))
+                found[row.Hash] = row.Bytes;
+            return found;
+        }
+        foreach (var hash in hashes)
+            if (await PartContents.ReadOutlineAsync(open, hash) is { } outline)
+                found[hash] = outline;
+        return found;
+    }
 
     private const string HasRunsSql = "select count(*) from (select 1 from run where portfolio = @Portfolio limit 1) found";
 

@@ -38,22 +38,10 @@ internal static class PartContents
         }
     }
 
-    private const string OutlinesSql = "select hash, bytes from part_outline where hash in @Some";
+    private const string OutlineSql = "select bytes from part_outline where hash = @Hash";
 
-    // SQLite allows 32,766 parameters in a statement, PostgreSQL 65,535.
-    private const int OutlinesAtOnce = 1_000;
-
-    /// <summary>Outlines by content hash, of those that have one.</summary>
-    public static async Task<IReadOnlyDictionary<string, byte[]>> ReadOutlinesAsync(StoreTransaction open, IReadOnlyCollection<string> hashes)
-    {
-        var found = new Dictionary<string, byte[]>(hashes.Count, StringComparer.Ordinal);
-        foreach (var some in hashes.Chunk(OutlinesAtOnce))
-        {
-            foreach (var row in await open.ListAsync<ContentRow>(OutlinesSql, new { Some = some }))
-                found[row.Hash] = row.Bytes;
-        }
-        return found;
-    }
+    /// <summary>Null when none was kept with the content.</summary>
+    public static Task<byte[]?> ReadOutlineAsync(StoreTransaction open, string hash) => open.FirstAsync<byte[]>(OutlineSql, new { Hash = hash });
 
     private const string ReadSql = "select hash, bytes, size from part_content where hash = @Hash";
 
