@@ -59,6 +59,16 @@ internal sealed record DescribedOperation(
 
     public string Name => Description["operationId"]?.GetValue<string>() ?? $"{Method} {Template}";
 
+    /// <summary>The rights of which any one opens it; null when any key does.</summary>
+    public IReadOnlyList<string>? Rights => Description["x-rights"]?.AsArray().Select(right => right!.GetValue<string>()).ToList();
+
+    /// <summary>The media type in which a body is sent, JSON where it may be; null when it takes none.</summary>
+    public string? BodyType => Content?.Select(type => type.Key).OrderBy(type => type.EndsWith("json", StringComparison.Ordinal) ? 0 : 1).First();
+
+    public JsonNode? BodySchema => BodyType is { } type ? Content![type]!["schema"] : null;
+
+    private JsonObject? Content => Description["requestBody"]?["content"]?.AsObject();
+
     /// <summary>How many segments are parameters.</summary>
     public int Parameters => segments.Count(IsParameter);
 

@@ -29,7 +29,7 @@ public sealed record CostJson
 }
 
 /// <summary>The amount at a confidence level (percent), with its 95 % sampling interval; a bound that does not exist is absent.</summary>
-public sealed record MoneyPercentileJson(decimal P, decimal Value, decimal? SamplingLow, decimal? SamplingHigh)
+public sealed record MoneyPercentileJson(decimal P, decimal Value, decimal? SamplingLow = null, decimal? SamplingHigh = null)
 {
     internal static MoneyPercentileJson From(MoneyPercentile at) => new(at.Level.Percent, at.Value, at.SamplingLow, at.SamplingHigh);
 }

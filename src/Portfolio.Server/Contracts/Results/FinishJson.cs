@@ -30,10 +30,10 @@ public sealed record FinishJson
 }
 
 /// <summary>The date of a confidence level (percent), with its 95 % sampling interval; a bound that does not exist is absent.</summary>
-public sealed record DatePercentileJson(decimal P, DateOnly Value, DateOnly? SamplingLow, DateOnly? SamplingHigh)
+public sealed record DatePercentileJson(decimal P, DateOnly Value, DateOnly? SamplingLow = null, DateOnly? SamplingHigh = null)
 {
     internal static DatePercentileJson From(DatePercentile at) => new(at.Level.Percent, at.Value, at.SamplingLow, at.SamplingHigh);
 }
 
 /// <summary>The promised date and the probability, 0–1, of being done by it.</summary>
-public sealed record DateCommitmentJson(DateOnly Date, double? Probability);
+public sealed record DateCommitmentJson(DateOnly Date, double? Probability = null);
