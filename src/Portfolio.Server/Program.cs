@@ -41,7 +41,9 @@ api.MapPortfolios();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
 portfolio.MapDocument();
+portfolio.MapSettings();
 portfolio.MapProjects();
+portfolio.MapActivities();
 portfolio.MapRevisions();
 portfolio.MapRuns();
 portfolio.MapSchedule();

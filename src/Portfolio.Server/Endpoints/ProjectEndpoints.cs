@@ -12,14 +12,16 @@ internal static class ProjectEndpoints
 {
     public static void MapProjects(this IEndpointRouteBuilder portfolio)
     {
-        var projects = portfolio.MapGroup("/projects").WithTags("Parts");
-        projects.MapGet("/{project}", Get).WithName("getProject").NeedsAny(Right.Read, Right.Submit)
+        var project = portfolio.MapGroup("/projects/{project}").WithTags("Parts");
+        project.MapGet("", Get).WithName("getProject").NeedsAny(Right.Read, Right.Submit)
             .Produces<ProjectJson>().ReadsConditionally().Refuses(422);
-        projects.MapPut("/{project}", Put).WithName("putProject").Needs(Right.Submit)
+        project.MapPut("", Put).WithName("putProject").Needs(Right.Submit)
             .Accepts<ProjectJson>("application/json")
             .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)
             .ChangesConditionally().Refuses(409, 412, 413, 415, 422);
-        projects.MapDelete("/{project}", Delete).WithName("deleteProject").Needs(Right.Manage)
+        project.MapPatch("", Patch).WithName("patchProject").Needs(Right.Submit)
+            .AcceptsPatch().Produces<WrittenJson>().ChangesConditionally().Refuses(409, 412, 413, 415, 422);
+        project.MapDelete("", Delete).WithName("deleteProject").Needs(Right.Manage)
             .Produces<WrittenJson>().RemovesConditionally().Refuses(409, 412, 422, 428);
     }
 
@@ -32,15 +34,20 @@ internal static class ProjectEndpoints
 
     /// <summary>Creates the project as the last one, or replaces it at its place.</summary>
     /// <remarks>With the right to submit only the status date and what overhead has cost so far may differ from what is there.</remarks>
-    internal static async Task<IResult> Put(string project, [AsParameters] PartWrite write)
-    {
-        using var body = await write.BodyAsync();
-        var whole = new WholeBody<ProjectJson>(body.Bytes, write.Reader, PartTypes.Project, project, project);
-        var edit = new ProjectEdit(project, whole, write.Conditions, write.Manages(project));
-        return await write.ToAsync(project, "project.put", write.Used(project), edit.DrawAsync);
-    }
+    internal static Task<IResult> Put(string project, [AsParameters] PartWrite write) => Change(project, write, "project.put");
+
+    /// <summary>Changes members of the project. Activities and events are changed at their own addresses, by updates, or whole.</summary>
+    /// <remarks>With the right to submit only the status date and what overhead has cost so far may be changed.</remarks>
+    internal static Task<IResult> Patch(string project, [AsParameters] PartWrite write) => Change(project, write, "project.patch");
 
     /// <summary>Takes the project out of the document; refused while others are linked to it.</summary>
     internal static Task<IResult> Delete(string project, [AsParameters] PartWrite write) =>
         write.ToAsync(project, "project.delete", Right.Manage, new ProjectRemoval(project, write.Conditions).DrawAsync);
+
+    private static async Task<IResult> Change(string project, PartWrite write, string action)
+    {
+        using var body = await write.BodyAsync();
+        var edit = new ProjectEdit(project, write.Project(body, project), write.Conditions, write.Manages(project));
+        return await write.ToAsync(project, action, write.Used(project), edit.DrawAsync);
+    }
 }

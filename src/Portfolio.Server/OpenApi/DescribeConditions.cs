@@ -14,6 +14,10 @@ internal static class DescribeConditions
         route.With("If-Match", "Entity tag of what is replaced, or *; needed when something is there (428).")
             .With("If-None-Match", "* to create only (412 when something is there).");
 
+    /// <summary>A write of what is always there, which must say what it replaces.</summary>
+    public static RouteHandlerBuilder ReplacesConditionally(this RouteHandlerBuilder route) =>
+        route.With("If-Match", "Entity tag of what is replaced, or *; needed (428).");
+
     /// <summary>A write of one part that may also come without conditions.</summary>
     public static RouteHandlerBuilder ChangesConditionally(this RouteHandlerBuilder route) =>
         route.With("If-Match", "Entity tag of what is changed, or *; may be left out.")

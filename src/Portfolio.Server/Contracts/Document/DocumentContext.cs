@@ -1,5 +1,6 @@
 using System.Text.Encodings.Web;
 using System.Text.Json;
+using System.Text.Json.Nodes;
 using System.Text.Json.Serialization;
 
 namespace Portfolio.Server.Contracts.Document;
@@ -10,6 +11,7 @@ namespace Portfolio.Server.Contracts.Document;
 [JsonSerializable(typeof(ProjectJson))]
 [JsonSerializable(typeof(ActivityJson))]
 [JsonSerializable(typeof(JsonElement))]
+[JsonSerializable(typeof(JsonNode))]
 internal sealed partial class DocumentContext : JsonSerializerContext
 {
     /// <param name="maxDepth">Deepest nesting that is read.</param>
