@@ -13,6 +13,8 @@ namespace Portfolio.Server.Contracts;
 [JsonSerializable(typeof(ProblemJson))]
 [JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
 [JsonSerializable(typeof(PageJson<RevisionJson>))]
+[JsonSerializable(typeof(PageJson<ProjectEntryJson>))]
+[JsonSerializable(typeof(PageJson<ChangeJson>))]
 [JsonSerializable(typeof(WrittenJson))]
 [JsonSerializable(typeof(RunRequestJson))]
 [JsonSerializable(typeof(RunJson))]

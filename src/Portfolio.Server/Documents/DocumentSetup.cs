@@ -14,6 +14,8 @@ internal static class DocumentSetup
         services.AddSingleton(provider => new DraftCheck(
             provider.GetRequiredService<IOptions<LimitOptions>>().Value.OfModel(), provider.GetRequiredService<KnownParts>()));
         services.AddSingleton<PartWriting>();
+        services.AddSingleton<ProjectList>();
+        services.AddSingleton<RevisionChanges>();
         services.AddSingleton<RevisionOfDate>();
     }
 }

@@ -1,10 +1,16 @@
+using System.ComponentModel.DataAnnotations;
+using System.Globalization;
 using Portfolio.Server.Access;
+using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Portfolios;
+using Portfolio.Server.Documents;
 using Portfolio.Server.Documents.Parts;
+using Portfolio.Server.Http;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Endpoints;
 
@@ -12,6 +18,8 @@ internal static class ProjectEndpoints
 {
     public static void MapProjects(this IEndpointRouteBuilder portfolio)
     {
+        portfolio.MapGet("/projects", List).WithName("listProjects").WithTags("Parts").NeedsAny(Right.Read, Right.Submit)
+            .Produces<PageJson<ProjectEntryJson>>().ReadsConditionally().Refuses(422);
         var project = portfolio.MapGroup("/projects/{project}").WithTags("Parts");
         project.MapGet("", Get).WithName("getProject").NeedsAny(Right.Read, Right.Submit)
             .Produces<ProjectJson>().ReadsConditionally().Refuses(422);
@@ -23,6 +31,24 @@ internal static class ProjectEndpoints
             .AcceptsPatch().Produces<WrittenJson>().ChangesConditionally().Refuses(409, 412, 413, 415, 422);
         project.MapDelete("", Delete).WithName("deleteProject").Needs(Right.Manage)
             .Produces<WrittenJson>().RemovesConditionally().Refuses(409, 412, 422, 428);
+    }
+
+    /// <summary>The projects in document order, as far as the key may read or submit to them.</summary>
+    /// <param name="cursor">Where the page before ended.</param>
+    /// <param name="limit">Items in a page.</param>
+    internal static async Task<IResult> List(
+        [AsParameters] PartRead read, ProjectList projects, string? cursor = null, [Range(1, Paging.Most)] int limit = Paging.Usual)
+    {
+        var (after, more) = (Paging.Number(cursor) ?? 0, Paging.WithOneMore(limit));
+        var found = await projects.ReadAsync(read.Caller, read.Portfolio, await read.NumberAsync(), after, more, read.Cancellation);
+        if (found is null)
+            return Problem.NotFound("There is no such revision.");
+        var tag = EntityTags.OfDocument(found.Select(project => new PartHead(project.Entry.Id, project.Entry.Etag)));
+        if (new Preconditions(read.Http.Request).HasAlready(tag))
+            return Read.NotModified(read.Http, tag);
+        read.Http.Response.GetTypedHeaders().ETag = tag;
+        return TypedResults.Ok(Paging.Page(
+            read.Http.Response, found, limit, project => project.Entry, project => project.Position.ToString(CultureInfo.InvariantCulture)));
     }
 
     /// <summary>A project as it was sent, defaults not filled in.</summary>

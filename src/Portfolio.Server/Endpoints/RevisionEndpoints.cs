@@ -5,7 +5,9 @@ using Microsoft.AspNetCore.Http.HttpResults;
 using Portfolio.Server.Access;
 using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Portfolios;
+using Portfolio.Server.Documents;
 using Portfolio.Server.Http;
+using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
@@ -19,6 +21,8 @@ internal static class RevisionEndpoints
         var revisions = portfolio.MapGroup("/revisions").WithTags("Revisions").Needs(Right.Read);
         revisions.MapGet("", List).WithName("listRevisions").Refuses(422);
         revisions.MapGet("/{number:long}", Get).WithName("getRevision").Produces<RevisionJson>();
+        revisions.MapGet("/{number:long}/changes", Changes).WithName("listChanges")
+            .Produces<PageJson<ChangeJson>>().ReadsConditionally().Refuses(422);
     }
 
     /// <summary>Accepted writes, newest first.</summary>
@@ -40,4 +44,23 @@ internal static class RevisionEndpoints
         await documents.FindRevisionAsync(user.Caller(), portfolio, number, cancellation) is { } revision
             ? TypedResults.Ok(RevisionJson.From(revision))
             : Problem.NotFound();
+
+    /// <summary>What a revision changed, place by place: settings, then projects in document order. Only parts that the key may read.</summary>
+    /// <param name="cursor">Where the page before ended.</param>
+    /// <param name="limit">Items in a page.</param>
+    internal static async Task<IResult> Changes(
+        string portfolio, long number, ClaimsPrincipal user, RevisionChanges changes, HttpContext http, CancellationToken cancellation,
+        string? cursor = null, [Range(1, Paging.Most)] int limit = Paging.Usual)
+    {
+        var (skip, take) = (Paging.Count(cursor), Paging.WithOneMore(limit));
+        if (await changes.PartsAsync(user.Caller(), portfolio, number, cancellation) is not { } parts)
+            return Problem.NotFound();
+        var tag = EntityTags.OfText($"{number}\n{skip}\n{take}\n{string.Join('\n', parts)}");
+        if (new Preconditions(http.Request).HasAlready(tag))
+            return Read.NotModified(http, tag);
+        var found = await changes.ReadAsync(user.Caller(), portfolio, number, parts, skip, take, cancellation);
+        http.Response.GetTypedHeaders().ETag = tag;
+        var next = (skip + limit).ToString(CultureInfo.InvariantCulture);
+        return TypedResults.Ok(Paging.Page(http.Response, found, limit, ChangeJson.From, _ => next));
+    }
 }

@@ -11,6 +11,10 @@ internal static class EntityTags
     /// <summary>Of one part: its content hash.</summary>
     public static EntityTagHeaderValue OfPart(string hash) => new($"\"{hash}\"");
 
+    /// <summary>Of an answer that these words determine.</summary>
+    public static EntityTagHeaderValue OfText(string text) =>
+        OfPart(Convert.ToHexStringLower(SHA256.HashData(Encoding.UTF8.GetBytes(text))));
+
     /// <summary>Of a document: a digest over the ids and hashes of its parts in order.</summary>
     public static EntityTagHeaderValue OfDocument(IEnumerable<PartHead> parts)
     {

@@ -19,6 +19,12 @@ internal static class Paging
         : long.TryParse(cursor, System.Globalization.CultureInfo.InvariantCulture, out var number) ? number
         : throw QueryFaults.Of("cursor", "'cursor' is not one that this list gave.");
 
+    /// <summary>A cursor that is a count from 0; 0 for the first page.</summary>
+    public static int Count(string? cursor) =>
+        Number(cursor) is not { } number ? 0
+        : number is >= 0 and <= int.MaxValue / 2 ? (int)number
+        : throw QueryFaults.Of("cursor", "'cursor' is not one that this list gave.");
+
     /// <summary>The page, with its link to the next.</summary>
     /// <param name="found">Up to one more than <paramref name="limit"/>.</param>
     /// <param name="cursorOf">Cursor after an item.</param>

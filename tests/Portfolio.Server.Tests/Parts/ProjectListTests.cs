@@ -1,0 +1,66 @@
+using System.Net;
+using Portfolio.Server.Tests.Hosting;
+using Portfolio.Store.Access;
+
+namespace Portfolio.Server.Tests.Parts;
+
+public sealed class ProjectListTests(ServerFixture fixture) : IClassFixture<ServerFixture>
+{
+    private readonly HttpClient client = fixture.Server.Client();
+
+    [Fact]
+    public async Task ProjectsAreListedInDocumentOrderInPages()
+    {
+        var at = await client.PortfolioAsync("list") + "/projects";
+        await client.PutJsonAsync(at + "/basin", """{"statusDate":"2027-01-04"}""");
+        var first = await client.ReadAsync(at + "?limit=2");
+        var page = await first.JsonAsync();
+        var weir = page.GetProperty("items")[0];
+        Assert.Equal(
+            ("weir", "Weir", "river", 2, (await client.ReadAsync(at + "/weir")).Tag()),
+            (weir.GetProperty("id").GetString(), weir.GetProperty("name").GetString(), weir.GetProperty("programme").GetString(), weir.GetProperty("activities").GetInt32(), weir.GetProperty("etag").GetString()));
+        Assert.Equal("quay", page.GetProperty("items")[1].GetProperty("id").GetString());
+        Assert.Equal(HttpStatusCode.NotModified, (await client.ReadAsync(at + "?limit=2", first.Tag())).StatusCode);
+
+        var next = await (await client.ReadAsync(first.Headers.GetValues("Link").Single().Split('<', '>')[1])).JsonAsync();
+        Assert.Equal("""{"items":[{"id":"basin","activities":0,""", next.ToString()[..39]);
+        Assert.False(next.TryGetProperty("next", out _));
+        Assert.Equal(["weir", "quay"], await IdsAsync(client, at + "?revision=1"));
+        await (await client.ReadAsync(at + "?revision=9")).ProblemAsync(404, "not-found");
+        await (await client.ReadAsync(at + "?limit=0")).ProblemAsync(422, "refused");
+    }
+
+    [Fact]
+    public async Task AKeyLimitedToProjectsSeesThose()
+    {
+        var at = await client.PortfolioAsync("list-some") + "/projects";
+        Assert.Equal(["quay"], await IdsAsync(await fixture.Server.ClientAsync(new Grant(Right.Read, "list-some", ["quay"])), at));
+        Assert.Equal(["weir"], await IdsAsync(await fixture.Server.ClientAsync(new Grant(Right.Submit, "list-some", ["weir"])), at));
+        await (await (await fixture.Server.ClientAsync(new Grant(Right.Finance, "list-some"))).ReadAsync(at)).ProblemAsync(403, "forbidden");
+    }
+
+    [Fact]
+    public async Task WhatOlderVersionsStoredWithoutOutlinesIsReadFromTheContent()
+    {
+        var directory = Directory.CreateTempSubdirectory("portfolio-").FullName;
+        await using (var server = new PortfolioServer(directory))
+            await server.Client().PortfolioAsync("old");
+        await using (var database = new Microsoft.Data.Sqlite.SqliteConnection($"Data Source={Path.Combine(directory, "portfolio.db")};Pooling=False"))
+        {
+            await database.OpenAsync(TestContext.Current.CancellationToken);
+            await using var command = database.CreateCommand();
+            command.CommandText = "delete from part_outline";
+            Assert.Equal(2, await command.ExecuteNonQueryAsync(TestContext.Current.CancellationToken));
+        }
+        await using (var server = new PortfolioServer(directory))
+        {
+            var again = server.Client();
+            Assert.Equal(["weir", "quay"], await IdsAsync(again, "/v1/portfolios/old/projects"));
+            Assert.Equal([("project.unknown", "weir/A20", "")], await (await again.RemoveAsync("/v1/portfolios/old/projects/quay", "*")).RefusedAsync());
+        }
+        Directory.Delete(directory, recursive: true);
+    }
+
+    private static async Task<IReadOnlyList<string?>> IdsAsync(HttpClient who, string address) =>
+        [.. (await (await who.ReadAsync(address)).JsonAsync()).GetProperty("items").EnumerateArray().Select(project => project.GetProperty("id").GetString())];
+}
