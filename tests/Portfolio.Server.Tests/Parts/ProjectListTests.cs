@@ -1,6 +1,8 @@
 using System.Net;
+using Microsoft.Extensions.DependencyInjection;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Store.Access;
+using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Tests.Parts;
 
@@ -40,26 +42,17 @@ public sealed class ProjectListTests(ServerFixture fixture) : IClassFixture<Serv
     }
 
     [Fact]
-    public async Task WhatOlderVersionsStoredWithoutOutlinesIsReadFromTheContent()
+    public async Task WhatWasStoredWithoutOutlinesIsReadFromTheContent()
     {
-        var directory = Directory.CreateTempSubdirectory("portfolio-").FullName;
-        await using (var server = new PortfolioServer(directory))
-            await server.Client().PortfolioAsync("old");
-        await using (var database = new Microsoft.Data.Sqlite.SqliteConnection($"Data Source={Path.Combine(directory, "portfolio.db")};Pooling=False"))
-        {
-            await database.OpenAsync(TestContext.Current.CancellationToken);
-            await using var command = database.CreateCommand();
-            command.CommandText = "delete from part_outline";
-            Assert.Equal(2, await command.ExecuteNonQueryAsync(TestContext.Current.CancellationToken));
-        }
-        await using (var server = new PortfolioServer(directory))
-        {
-            var again = server.Client();
-            Assert.Equal(["weir", "quay"], await IdsAsync(again, "/v1/portfolios/old/projects"));
-            Assert.Equal([("project.unknown", "weir/A20", "")], await (await again.RemoveAsync("/v1/portfolios/old/projects/quay", "*")).RefusedAsync());
-        }
-        Directory.Delete(directory, recursive: true);
+        ProposedPart[] parts = [Part("", PartCalls.Settings), Part("weir", PartCalls.Weir), Part("quay", PartCalls.Quay)];
+        await fixture.Server.Services.GetRequiredService<DocumentStore>().WriteAsync(
+            Caller.System, new DocumentWrite { Portfolio = "old", Action = "document.put" },
+            (_, _) => Task.FromResult<Proposal>(new Change(parts)), TestContext.Current.CancellationToken);
+        Assert.Equal([("project.unknown", "weir/A20", "")], await (await client.RemoveAsync("/v1/portfolios/old/projects/quay", "*")).RefusedAsync());
+        Assert.Equal(["weir", "quay"], await IdsAsync(client, "/v1/portfolios/old/projects"));
     }
+
+    private static ProposedPart Part(string project, string json) => new(project, System.Text.Encoding.UTF8.GetBytes(json.Replace("Weir", "Old")));
 
     private static async Task<IReadOnlyList<string?>> IdsAsync(HttpClient who, string address) =>
         [.. (await (await who.ReadAsync(address)).JsonAsync()).GetProperty("items").EnumerateArray().Select(project => project.GetProperty("id").GetString())];
