@@ -3,6 +3,8 @@ using Portfolio.Server.Demo.Start;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Endpoints;
 using Portfolio.Server.Hosting;
+using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
@@ -20,6 +22,8 @@ builder.Services.AddPortfolioOptions();
 builder.Services.AddStorage();
 builder.Services.AddAccess();
 builder.Services.AddProblems();
+builder.Services.AddTimeLimits();
+builder.Services.AddIdempotency();
 builder.Services.AddDocuments();
 builder.Services.AddResults();
 builder.Services.AddRuns();
@@ -31,12 +35,15 @@ builder.Services.AddApiDescription();
 builder.RestWhenDescribing();
 
 var app = builder.Build();
+app.UseHeads();
 app.UseProblems();
+app.UseRouting();
+app.UseRequestTimeouts();
 app.UseAccess();
 app.MapHealth();
 app.MapApiDescription();
 
-var api = app.MapGroup("/v1").Refuses(400, 401, 429, 503);
+var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToAccept().OnceOnly();
 api.MapPortfolios();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);

@@ -27,7 +27,7 @@ public abstract class AtomicityTests(StoreKind kind)
         ["run due"] = (store, _) => store.Requests.CreateDueAsync(
             Caller.System, RunScenes.Asked(RunScenes.Today), RunScenes.Today, TestStore.Cancellation),
         ["stop asked for"] = (
-            store, held) => store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation),
+            store, held) => store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, null, TestStore.Cancellation),
         ["claim after another engine"] = (store, _) =>
         {
             store.Clock.Advance(RunScenes.Lease);
@@ -37,7 +37,7 @@ public abstract class AtomicityTests(StoreKind kind)
         ["success"] = (store, held) => store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation),
         ["failure"] = (store, held) => store.Endings.FailAsync(held, "no room", TestStore.Cancellation),
         ["cancellation"] = (store, held) => store.Endings.CancelAsync(held, TestStore.Cancellation),
-        ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, TestStore.Cancellation),
+        ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation),
     };
 
     public static TheoryData<string> Names => [.. Writes.Keys];

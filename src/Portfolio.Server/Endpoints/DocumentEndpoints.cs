@@ -6,6 +6,7 @@ using Portfolio.Server.Contracts.Portfolios;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
@@ -23,7 +24,7 @@ internal static class DocumentEndpoints
         document.MapPut("", Put).WithName("putDocument").Needs(Right.Manage)
             .Accepts<DocumentJson>("application/json")
             .Produces<WrittenJson>().Produces<WrittenJson>(StatusCodes.Status201Created)
-            .WritesConditionally().Refuses(409, 412, 413, 415, 422, 428);
+            .WritesConditionally().Refuses(409, 412, 413, 415, 422, 428).WithRequestTimeout(TimeLimits.Documents);
     }
 
     /// <summary>The document as it was sent, defaults not filled in.</summary>
@@ -54,11 +55,16 @@ internal static class DocumentEndpoints
         string portfolio, ClaimsPrincipal user, DocumentStore documents, DocumentReader reader, DocumentCheck check,
         IOptions<LimitOptions> limits, HttpContext http, CancellationToken cancellation, string? note = null)
     {
-        var write = new DocumentWrite { Portfolio = portfolio, Note = Notes.Checked(note), Action = "document.put" };
+        var kept = Notes.Checked(note);
         var conditions = new Preconditions(http.Request);
         DocumentSubmission submission;
         using (var body = await RequestBody.ReadAsync(http.Request, limits.Value.DocumentBody))
             submission = DocumentSubmission.Of(portfolio, body.Bytes, reader, check);
+        var write = new DocumentWrite
+        {
+            Portfolio = portfolio, Note = kept, Action = "document.put",
+            Joining = http.Remembers<WriteResult>((to, done) => Written.Answer(to, portfolio, done, submission.Tag)),
+        };
         var result = await documents.WriteAsync(user.Caller(), write, (head, _) => submission.ReplaceAsync(head, conditions), cancellation);
         return Written.Answer(http, portfolio, result, submission.Tag);
     }

@@ -11,7 +11,7 @@ internal static class HealthEndpoints
 
     public static void MapHealth(this IEndpointRouteBuilder app)
     {
-        var health = app.MapGroup("/health").AllowAnonymous();
+        var health = app.MapGroup("/health").AllowAnonymous().DisableRateLimiting();
         health.MapHealthChecks("/live", new HealthCheckOptions { Predicate = _ => false, ResponseWriter = Write });
         health.MapHealthChecks("/ready", new HealthCheckOptions { ResponseWriter = Write });
     }

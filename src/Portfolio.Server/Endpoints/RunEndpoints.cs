@@ -1,5 +1,6 @@
 using System.ComponentModel.DataAnnotations;
 using System.Globalization;
+using System.Net.ServerSentEvents;
 using System.Security.Claims;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.Extensions.Options;
@@ -8,6 +9,7 @@ using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Runs;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Results;
@@ -27,9 +29,9 @@ internal static class RunEndpoints
             .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409, 413, 415, 422);
         runs.MapGet("", List).WithName("listRuns").Needs(Right.Read).Refuses(422);
         runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read).Refuses(422);
-        runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read);
+        runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read).DisableRequestTimeout();
         runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage)
-            .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409);
+            .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409, 422);
     }
 
     /// <summary>Asks for a run. Its revision is fixed now; it is worked as soon as a worker is free.</summary>
@@ -38,7 +40,9 @@ internal static class RunEndpoints
         CancellationToken cancellation)
     {
         var asked = await JsonBody.ReadAsync(http.Request, ApiContext.Default.RunRequestJson, limits.Value.Body) ?? new RunRequestJson();
-        var run = await intake.TakeAsync(user.Caller(), portfolio, asked, cancellation);
+        var run = await intake.TakeAsync(
+            user.Caller(), portfolio, asked,
+            http.Remembers<StoredRun>((to, made) => Accepted(to, view.Of(made, user.Caller()), portfolio)), cancellation);
         return Accepted(http, view.Of(run, user.Caller()), portfolio);
     }
 
@@ -72,10 +76,13 @@ internal static class RunEndpoints
     /// <summary>Progress as server-sent events: progress while it goes on, ended at last.</summary>
     /// <param name="run">An id, or latest.</param>
     internal static async Task<ServerSentEventsResult<RunProgressJson>> Follow(
-        string portfolio, string run, ClaimsPrincipal user, RunChoice runs, RunStream stream, CancellationToken cancellation)
+        string portfolio, string run, ClaimsPrincipal user, RunChoice runs, RunStream stream, HttpContext http,
+        CancellationToken cancellation)
     {
         var found = await runs.FindAsync(user.Caller(), portfolio, run, null, cancellation);
-        return TypedResults.ServerSentEvents(stream.FollowAsync(user.Caller(), found, cancellation));
+        return TypedResults.ServerSentEvents(http.AsksForHead()
+            ? AsyncEnumerable.Empty<SseItem<RunProgressJson>>()
+            : stream.FollowAsync(user.Caller(), found, cancellation));
     }
 
     /// <summary>Asks a run that has not ended to stop. Results are never deleted.</summary>
@@ -83,7 +90,9 @@ internal static class RunEndpoints
         string portfolio, string run, ClaimsPrincipal user, RunRequests requests, RunView view, RunSignal signal, HttpContext http,
         CancellationToken cancellation)
     {
-        var result = await requests.RequestCancelAsync(user.Caller(), portfolio, run, cancellation);
+        var result = await requests.RequestCancelAsync(
+            user.Caller(), portfolio, run,
+            http.Remembers<StoredRun>((to, asked) => Accepted(to, view.Of(asked, user.Caller()), portfolio)), cancellation);
         switch (result)
         {
             case { Outcome: RunCancelOutcome.Accepted, Run: { } stopping }:

@@ -5,6 +5,7 @@ using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Schedules;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Schedules;
 using Portfolio.Store.Access;
@@ -38,10 +39,14 @@ internal static class ScheduleEndpoints
         var asked = ScheduleRequest.Of(sent, limits.Value.Iterations);
         if (asked.Faults.Count > 0)
             return Problem.Refused(asked.Faults);
-        return await schedules.PutAsync(user.Caller(), portfolio, asked.Cron, asked.Iterations, asked.Enabled, cancellation) switch
+        var result = await schedules.PutAsync(
+            user.Caller(), portfolio, asked.Cron, asked.Iterations, asked.Enabled,
+            http.Remembers<StoredSchedule>(async (_, set) => TypedResults.Ok(await standing.OfAsync(user.Caller(), set, cancellation))),
+            cancellation);
+        return result.Outcome switch
         {
             SchedulePutOutcome.Stored or SchedulePutOutcome.Unchanged =>
-                TypedResults.Ok(await standing.ReadAsync(user.Caller(), portfolio, cancellation)),
+                TypedResults.Ok(await standing.OfAsync(user.Caller(), result.Schedule!, cancellation)),
             SchedulePutOutcome.Forbidden => Problem.Forbidden(),
             SchedulePutOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
             _ => Problem.NotFound(),

@@ -62,6 +62,30 @@ public sealed class LimitOptions
     [Range(1, 1_000_000)]
     public int RequestsPerSecond { get; set; } = 2_000;
 
+    /// <summary>Runs of one portfolio that may wait.</summary>
+    [Range(1, 100_000)]
+    public int QueuedRuns { get; set; } = 100;
+
+    /// <summary>Connections open at once; more are closed at once.</summary>
+    [Range(1, 1_000_000)]
+    public int Connections { get; set; } = 10_000;
+
+    /// <summary>How long a request may take; streams of progress have no end of their own.</summary>
+    [Range(typeof(TimeSpan), "00:00:00.100", "01:00:00")]
+    public TimeSpan RequestTime { get; set; } = TimeSpan.FromSeconds(30);
+
+    /// <summary>How long sending and checking a whole document may take.</summary>
+    [Range(typeof(TimeSpan), "00:00:00.100", "01:00:00")]
+    public TimeSpan DocumentTime { get; set; } = TimeSpan.FromMinutes(5);
+
+    /// <summary>How long the headers of a request may take to come.</summary>
+    [Range(typeof(TimeSpan), "00:00:01", "00:10:00")]
+    public TimeSpan HeaderTime { get; set; } = TimeSpan.FromSeconds(15);
+
+    /// <summary>Bytes a second that a body must bring, after its first five seconds.</summary>
+    [Range(1, 1_000_000)]
+    public int BodyBytesPerSecond { get; set; } = 240;
+
     /// <summary>Those that the model's rules hold a document to.</summary>
     public ModelLimits OfModel() => new()
     {

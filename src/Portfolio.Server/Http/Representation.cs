@@ -21,21 +21,12 @@ internal sealed class Representation
         if (format is not null) return new(faults.Word("format", format, "json", ["json", "csv"]) == "csv");
         var accepted = request.GetTypedHeaders().Accept;
         if (accepted.Count == 0) return new(isCsv: false);
-        var (json, csv) = (Quality(accepted, JsonType), Quality(accepted, CsvTable.MediaType));
+        var (json, csv) = (AcceptedTypes.Quality(accepted, JsonType), AcceptedTypes.Quality(accepted, CsvTable.MediaType));
         if (json == 0 && csv == 0)
-            throw new RequestRefused(new Problem(406, "not-acceptable", "No such representation", "There are JSON and CSV."));
+            throw new RequestRefused(AcceptedTypes.Unacceptable([JsonType, CsvTable.MediaType]));
         return new(csv > json);
     }
 
     public IResult Answer<T>(T value, JsonTypeInfo<T> type, Func<T, CsvTable> table) =>
         IsCsv ? table(value) : TypedResults.Json(value, type);
-
-    // The most specific range that names the type decides its quality.
-    private static double Quality(IEnumerable<MediaTypeHeaderValue> accepted, string type)
-    {
-        var named = MediaTypeHeaderValue.Parse(type);
-        return accepted.Where(named.IsSubsetOf)
-            .OrderBy(range => (range.MatchesAllTypes, range.MatchesAllSubTypes))
-            .Select(range => range.Quality ?? 1).FirstOrDefault();
-    }
 }

@@ -1,15 +1,17 @@
 using Portfolio.Server.Telemetry;
 using Portfolio.Store.Access;
+using Portfolio.Store.Idempotency;
 using Portfolio.Store.Runs;
 using Portfolio.Store.Schedules;
 
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// What is done every minute whatever signals were lost: due runs are made, the standing is measured. Working what is there comes after
+/// What is done every minute whatever signals were lost: due runs are made, the standing is measured, answers
+/// kept long enough are forgotten. Working what is there comes after
 /// it.
 /// </summary>
-public sealed class Sweep(Nightly nightly, RunStore runs, ScheduleStore schedules, RunMeasures measures)
+public sealed class Sweep(Nightly nightly, RunStore runs, ScheduleStore schedules, AnswerStore answers, RunMeasures measures)
 {
     // A run older than these many due dates is no longer looked for.
     private const int DueDatesBack = 30;
@@ -17,6 +19,7 @@ public sealed class Sweep(Nightly nightly, RunStore runs, ScheduleStore schedule
     public async Task RunAsync(CancellationToken cancellation)
     {
         await nightly.MakeDueAsync(cancellation);
+        await answers.ForgetAsync(cancellation);
         measures.Swept(await runs.CountQueuedAsync(Caller.System, cancellation), await OldestLastGoodAsync(cancellation));
     }
 

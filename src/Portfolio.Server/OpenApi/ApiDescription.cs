@@ -31,6 +31,7 @@ internal static class ApiDescription
             description.AddOperationTransformer(DescribeDates.Apply);
             description.AddOperationTransformer(DescribeHeaders.Apply);
             description.AddOperationTransformer(DescribeRights.Apply);
+            description.AddOperationTransformer(DescribeIdempotency.Apply);
             description.AddSchemaTransformer(DescribeTypes.Apply);
             description.AddDocumentTransformer(OpenAnswers.Apply);
         });

@@ -17,6 +17,7 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
         {
             RequestRefused refused => refused.Problem,
             JsonRefused refused => Problem.Malformed(refused),
+            BadHttpRequestException { StatusCode: 408 } => new Problem(408, "too-slow", "The body came too slowly"),
             BadHttpRequestException { StatusCode: 413 } => new Problem(413, "too-large", "The body is too large"),
             BadHttpRequestException unread when Unread().Match(unread.Message) is { Success: true } match =>
                 QueryFaults.Of(match.Groups["name"].Value, $"'{match.Groups["name"].Value}' cannot be read.").Problem,
@@ -24,7 +25,7 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
             StoreUnavailableException => Unavailable(exception),
             _ => Unforeseen(exception),
         };
-        if (problem.Status == StatusCodes.Status503ServiceUnavailable)
+        if (problem.Status is StatusCodes.Status503ServiceUnavailable or StatusCodes.Status429TooManyRequests)
             context.Response.Headers.RetryAfter = "5";
         await problem.ExecuteAsync(context);
         return true;

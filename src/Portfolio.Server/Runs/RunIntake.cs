@@ -8,6 +8,7 @@ using Portfolio.Server.Documents;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.Problems;
+using Portfolio.Store;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
 using Portfolio.Store.Runs;
@@ -19,8 +20,11 @@ internal sealed class RunIntake(
     DocumentStore documents, RevisionOfDate dates, RunRequests requests, RunSignal signal, TimeProvider clock,
     IOptions<LimitOptions> limits)
 {
+    /// <param name="joining">For rows that stand or fall with the request; null for none.</param>
     /// <exception cref="RequestRefused">The run is not taken.</exception>
-    public async Task<StoredRun> TakeAsync(Caller caller, string portfolio, RunRequestJson asked, CancellationToken cancellation)
+    public async Task<StoredRun> TakeAsync(
+        Caller caller, string portfolio, RunRequestJson asked, Func<StoreTransaction, StoredRun, CancellationToken, Task>? joining,
+        CancellationToken cancellation)
     {
         var revision = await RevisionAsync(caller, portfolio, asked.Revision, cancellation);
         var zone = await dates.ZoneAsync(portfolio, cancellation);
@@ -28,12 +32,12 @@ internal sealed class RunIntake(
             ?? throw new RequestRefused(Problem.NotFound());
         var settings = DocumentReader.OfStored.ReadSettings(part.Bytes).ToModel(new Reading(), "/settings");
         var order = new RunOrder(settings, zone, clock.GetUtcNow(), limits.Value.Iterations);
-        var run = order.Of(portfolio, revision, asked);
+        var run = order.Of(portfolio, revision, asked) with { MostQueued = limits.Value.QueuedRuns };
         if (order.Faults.Count > 0)
             throw new RequestRefused(Problem.Refused(order.Faults));
         if (!await HasActivitiesAsync(portfolio, revision, cancellation))
             throw Refused("", RunFaultCodes.NothingToRun, $"Revision {revision} holds no activity whose finish could be forecast.");
-        var result = await requests.CreateAsync(caller, run, null, cancellation);
+        var result = await requests.CreateAsync(caller, run, joining, cancellation);
         if (result is not { Outcome: RunRequestOutcome.Created, Run: { } made })
             throw new RequestRefused(Why(result, run));
         signal.Give();
@@ -84,6 +88,9 @@ internal sealed class RunIntake(
     {
         RunRequestOutcome.Forbidden => Problem.Forbidden(),
         RunRequestOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
+        RunRequestOutcome.QueueFull => new Problem(
+            429, "queue-full", "Too many runs wait",
+            $"{run.MostQueued} runs of this portfolio are queued. Ask again after the time in Retry-After, or stop one of them."),
         RunRequestOutcome.DateHeld => Problem.Conflict(
             "date-closed", "The date is closed",
             $"{run.AsOf:yyyy-MM-dd} has ended, and run {result.Run?.Id} stands or will stand for it; "

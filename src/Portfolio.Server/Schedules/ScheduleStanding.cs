@@ -13,12 +13,14 @@ internal sealed class ScheduleStanding(ScheduleStore schedules, RunStore runs, R
     private const int Shown = 14;
 
     /// <summary>Null when none is set, or not for this caller.</summary>
-    public async Task<ScheduleStandingJson?> ReadAsync(Caller caller, string portfolio, CancellationToken cancellation)
+    public async Task<ScheduleStandingJson?> ReadAsync(Caller caller, string portfolio, CancellationToken cancellation) =>
+        await schedules.FindAsync(caller, portfolio, cancellation) is { } schedule ? await OfAsync(caller, schedule, cancellation) : null;
+
+    /// <summary>The standing of a schedule that perhaps is only being set.</summary>
+    public async Task<ScheduleStandingJson> OfAsync(Caller caller, StoredSchedule schedule, CancellationToken cancellation)
     {
-        if (await schedules.FindAsync(caller, portfolio, cancellation) is not { } schedule)
-            return null;
-        var due = await runs.ListDueAsync(caller, portfolio, Shown, cancellation);
-        var times = new DueTimes(DueTimes.Parse(schedule.Cron)!, await dates.ZoneAsync(portfolio, cancellation));
+        var due = await runs.ListDueAsync(caller, schedule.Portfolio, Shown, cancellation);
+        var times = new DueTimes(DueTimes.Parse(schedule.Cron)!, await dates.ZoneAsync(schedule.Portfolio, cancellation));
         return new ScheduleStandingJson
         {
             Cron = schedule.Cron,

@@ -17,6 +17,9 @@ public sealed record NewRun
     public string? Replaces { get; init; }
     public byte[]? Overlay { get; init; }
 
+    /// <summary>It is not taken when this many runs of the portfolio wait already; null: however many there are.</summary>
+    public int? MostQueued { get; init; }
+
     /// <summary>W3C trace context of the request, so that the job continues its trace.</summary>
     public string? TraceParent { get; init; }
 }
@@ -41,6 +44,8 @@ public enum RunRequestOutcome
     ReplacesUnknown,
     /// <summary><see cref="NewRun.Replaces"/> names a run that does not stand for the date (409).</summary>
     ReplacesNotThePoint,
+    /// <summary>As many runs of the portfolio wait as <see cref="NewRun.MostQueued"/> allows (429).</summary>
+    QueueFull,
 }
 
 /// <summary>

@@ -27,24 +27,34 @@ public sealed partial class RunRequests
     /// <summary>
     /// Asks a run to stop: a queued one is cancelled at once, a running one by its worker. Needs <see cref="Right.Manage"/>.
     /// </summary>
+    /// <param name="joining">Called last inside the transaction of an accepted request; null for none.</param>
     public Task<RunCancelResult> RequestCancelAsync(
-        Caller caller, string portfolio, string run, CancellationToken cancellation) => database.WriteAsync(
+        Caller caller, string portfolio, string run, Func<StoreTransaction, StoredRun, CancellationToken, Task>? joining,
+        CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
-            var standing = await Standing.ReadAsync(open, caller, Right.Manage, portfolio);
-            var row = await RunStore.FindAsync(open, caller, portfolio, run);
-            if (row is null)
-                return new RunCancelResult(
-                    standing is { Exists: true, Known: true, Whole: false } ? RunCancelOutcome.Forbidden : RunCancelOutcome.NotFound, null);
-            if (!standing.Whole)
-                return new RunCancelResult(RunCancelOutcome.Forbidden, null);
-            if (row.FinishedAt is not null)
-                return new RunCancelResult(RunCancelOutcome.AlreadyEnded, row.ToRun());
-            if (await open.ExecuteAsync(CancelSql, new { row.Id, open.Now }) == 0)
-                return new RunCancelResult(RunCancelOutcome.Accepted, row.ToRun());
-            await RunEvents.TellAsync(
-                open, caller, portfolio, run, row.State == "queued" ? "cancelled" : "cancel-requested", new { row.AsOf, row.Revision });
-            return new RunCancelResult(RunCancelOutcome.Accepted, (await RunStore.FindAsync(open, caller, portfolio, run))!.ToRun());
+            var result = await RequestCancelAsync(open, caller, portfolio, run);
+            if (joining is not null && result is { Outcome: RunCancelOutcome.Accepted, Run: { } stopping })
+                await joining(open, stopping, cancellation);
+            return result;
         },
         cancellation);
+
+    private static async Task<RunCancelResult> RequestCancelAsync(StoreTransaction open, Caller caller, string portfolio, string run)
+    {
+        var standing = await Standing.ReadAsync(open, caller, Right.Manage, portfolio);
+        var row = await RunStore.FindAsync(open, caller, portfolio, run);
+        if (row is null)
+            return new RunCancelResult(
+                standing is { Exists: true, Known: true, Whole: false } ? RunCancelOutcome.Forbidden : RunCancelOutcome.NotFound, null);
+        if (!standing.Whole)
+            return new RunCancelResult(RunCancelOutcome.Forbidden, null);
+        if (row.FinishedAt is not null)
+            return new RunCancelResult(RunCancelOutcome.AlreadyEnded, row.ToRun());
+        if (await open.ExecuteAsync(CancelSql, new { row.Id, open.Now }) == 0)
+            return new RunCancelResult(RunCancelOutcome.Accepted, row.ToRun());
+        await RunEvents.TellAsync(
+            open, caller, portfolio, run, row.State == "queued" ? "cancelled" : "cancel-requested", new { row.AsOf, row.Revision });
+        return new RunCancelResult(RunCancelOutcome.Accepted, (await RunStore.FindAsync(open, caller, portfolio, run))!.ToRun());
+    }
 }

@@ -18,12 +18,16 @@ public sealed partial class RunRequests(Database database)
                 return new RunRequestResult(turned, null);
             if (await SeriesDates.ObstacleAsync(open, run) is { } obstacle)
                 return new RunRequestResult(obstacle.Outcome, await ReadAsync(open, caller, run.Portfolio, obstacle.Run));
+            if (run.MostQueued is { } most && await open.FirstAsync<long>(QueuedSql, new { run.Portfolio }) >= most)
+                return new RunRequestResult(RunRequestOutcome.QueueFull, null);
             var made = await QueueAsync(open, caller, run, null);
             if (joining is not null)
                 await joining(open, made, cancellation);
             return new RunRequestResult(RunRequestOutcome.Created, made);
         },
         cancellation);
+
+    private const string QueuedSql = "select count(*) from run where portfolio = @Portfolio and state = 'queued'";
 
     private const string DueSql = "select id from run where portfolio = @Portfolio and due_date = @DueDate";
 

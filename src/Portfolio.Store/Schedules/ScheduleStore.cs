@@ -26,6 +26,9 @@ public enum SchedulePutOutcome
     Archived,
 }
 
+/// <summary>The answer, with the schedule as it stands; null when it was not set.</summary>
+public sealed record SchedulePutResult(SchedulePutOutcome Outcome, StoredSchedule? Schedule);
+
 /// <summary>Schedules, one to a portfolio.</summary>
 public sealed class ScheduleStore(Database database)
 {
@@ -48,28 +51,38 @@ public sealed class ScheduleStore(Database database)
         """;
 
     /// <summary>Sets the schedule, with an audit entry. Needs <see cref="Right.Manage"/>.</summary>
-    public Task<SchedulePutOutcome> PutAsync(
-        Caller caller, string portfolio, string cron, int? iterations, bool enabled, CancellationToken cancellation) => database.WriteAsync(
+    /// <param name="joining">Called last inside the transaction, for rows that stand or fall with the schedule; null for none.</param>
+    public Task<SchedulePutResult> PutAsync(
+        Caller caller, string portfolio, string cron, int? iterations, bool enabled,
+        Func<StoreTransaction, StoredSchedule, CancellationToken, Task>? joining, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
-            var standing = await Standing.ReadAsync(open, caller, Right.Manage, portfolio);
-            if (!standing.Exists || !standing.Known)
-                return SchedulePutOutcome.NotFound;
-            if (!standing.Whole)
-                return SchedulePutOutcome.Forbidden;
-            if (standing.Archived)
-                return SchedulePutOutcome.Archived;
+            if (Turned(await Standing.ReadAsync(open, caller, Right.Manage, portfolio)) is { } turned)
+                return new SchedulePutResult(turned, null);
             var old = await FindAsync(open, caller, portfolio);
             var flag = enabled ? 1 : 0;
             var row = new Row { Portfolio = portfolio, Cron = cron, Iterations = iterations, Enabled = flag, ChangedAt = open.Now };
-            if (old is not null && old with { ChangedAt = row.ChangedAt } == row)
-                return SchedulePutOutcome.Unchanged;
-            await open.ExecuteAsync(PutSql, row);
-            await AuditChain.AppendAsync(
-                open, caller.KeyId, "schedule.put", $"portfolios/{portfolio}/schedule", new { cron, iterations, enabled });
-            return SchedulePutOutcome.Stored;
+            var unchanged = old is not null && old with { ChangedAt = row.ChangedAt } == row;
+            if (!unchanged)
+            {
+                await open.ExecuteAsync(PutSql, row);
+                await AuditChain.AppendAsync(
+                    open, caller.KeyId, "schedule.put", $"portfolios/{portfolio}/schedule", new { cron, iterations, enabled });
+            }
+            var set = (unchanged ? old! : row).ToSchedule();
+            if (joining is not null)
+                await joining(open, set, cancellation);
+            return new SchedulePutResult(unchanged ? SchedulePutOutcome.Unchanged : SchedulePutOutcome.Stored, set);
         },
         cancellation);
+
+    private static SchedulePutOutcome? Turned(Standing standing) => standing switch
+    {
+        { Exists: false } or { Known: false } => SchedulePutOutcome.NotFound,
+        { Whole: false } => SchedulePutOutcome.Forbidden,
+        { Archived: true } => SchedulePutOutcome.Archived,
+        _ => null,
+    };
 
     private static readonly string EnabledSql = $"""
         select {Columns} from schedule s join portfolio p on p.id = s.portfolio

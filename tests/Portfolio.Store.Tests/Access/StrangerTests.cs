@@ -21,7 +21,7 @@ public abstract class StrangerTests(StoreKind kind)
         var held = (await store.ClaimAsync())!;
         await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
         await store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation);
-        await store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, TestStore.Cancellation);
+        await store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation);
         return (store, run.Id);
     }
 
@@ -176,8 +176,8 @@ public abstract class StrangerTests(StoreKind kind)
         var caller = await store.CallerAsync(new Grant(right, portfolio));
         Assert.Equal(
             asked, (await store.Requests.CreateAsync(caller, RunScenes.Asked(RunScenes.Today), null, TestStore.Cancellation)).Outcome);
-        Assert.Equal(stopped, (await store.Requests.RequestCancelAsync(caller, "works", run, TestStore.Cancellation)).Outcome);
-        Assert.Equal(put, await store.Schedules.PutAsync(caller, "works", "0 3 * * *", 500, false, TestStore.Cancellation));
+        Assert.Equal(stopped, (await store.Requests.RequestCancelAsync(caller, "works", run, null, TestStore.Cancellation)).Outcome);
+        Assert.Equal(put, (await store.Schedules.PutAsync(caller, "works", "0 3 * * *", 500, false, null, TestStore.Cancellation)).Outcome);
         Assert.Null(await store.Claims.ClaimAsync(caller, "w", "1.0", RunScenes.Lease, TestStore.Cancellation));
     }
 }

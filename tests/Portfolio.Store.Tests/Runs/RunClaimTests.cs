@@ -124,17 +124,17 @@ public abstract class RunClaimTests(StoreKind kind)
         var held = (await store.ClaimAsync())!;
         var queued = (await store.Runs.ListAsync(Caller.System, "works", null, 1, TestStore.Cancellation))[0];
 
-        var stopped = await store.Requests.RequestCancelAsync(Caller.System, "works", queued.Id, TestStore.Cancellation);
+        var stopped = await store.Requests.RequestCancelAsync(Caller.System, "works", queued.Id, null, TestStore.Cancellation);
         Assert.Equal((RunCancelOutcome.Accepted, RunState.Cancelled), (stopped.Outcome, stopped.Run!.State));
         Assert.Null(await store.ClaimAsync());
 
-        var asked = await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation);
+        var asked = await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, null, TestStore.Cancellation);
         Assert.Equal((RunCancelOutcome.Accepted, RunState.Running, true), (asked.Outcome, asked.Run!.State, asked.Run.CancelRequested));
-        Assert.Equal(RunCancelOutcome.Accepted, (await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation)).Outcome);
+        Assert.Equal(RunCancelOutcome.Accepted, (await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, null, TestStore.Cancellation)).Outcome);
         Assert.Equal(LeaseState.CancelRequested, await store.Claims.RenewAsync(held, RunScenes.Lease, TestStore.Cancellation));
         Assert.True(await store.Endings.CancelAsync(held, TestStore.Cancellation));
         Assert.Equal(RunState.Cancelled, (await store.FindAsync(held.Run.Id)).State);
-        var late = await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, TestStore.Cancellation);
+        var late = await store.Requests.RequestCancelAsync(Caller.System, "works", held.Run.Id, null, TestStore.Cancellation);
         Assert.Equal(RunCancelOutcome.AlreadyEnded, late.Outcome);
         Assert.Equal(
             ["run.queued", "run.queued", "run.cancelled", "run.cancel-requested", "run.cancelled"],

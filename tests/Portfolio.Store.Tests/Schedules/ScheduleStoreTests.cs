@@ -10,9 +10,9 @@ public abstract class ScheduleStoreTests(StoreKind kind)
 
     public sealed class OnPostgres() : ScheduleStoreTests(StoreKind.Postgres);
 
-    private static Task<SchedulePutOutcome> PutAsync(
+    private static async Task<SchedulePutOutcome> PutAsync(
         TestStore store, string portfolio, string cron, bool enabled, int? iterations = null) =>
-        store.Schedules.PutAsync(Caller.System, portfolio, cron, iterations, enabled, TestStore.Cancellation);
+        (await store.Schedules.PutAsync(Caller.System, portfolio, cron, iterations, enabled, null, TestStore.Cancellation)).Outcome;
 
     [Fact]
     public async Task A_schedule_is_kept_changed_and_told_to_the_audit_trail()

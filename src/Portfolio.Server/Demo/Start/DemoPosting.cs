@@ -64,7 +64,7 @@ internal sealed class DemoPosting(
             yield return run;
         }
         if (await schedules.FindAsync(Office, Id, cancellation) is null)
-            await schedules.PutAsync(Office, Id, Nightly, iterations: null, enabled: false, cancellation);
+            await schedules.PutAsync(Office, Id, Nightly, iterations: null, enabled: false, joining: null, cancellation);
     }
 
     /// <summary>Points that are Sundays: somebody may have run days in between.</summary>

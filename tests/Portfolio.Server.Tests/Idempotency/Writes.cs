@@ -1,0 +1,59 @@
+using System.Net;
+using System.Text;
+using Portfolio.Server.Tests.Hosting;
+using Portfolio.Server.Tests.Runs;
+
+namespace Portfolio.Server.Tests.Idempotency;
+
+/// <summary>One accepted write of every route that writes; <c>{run}</c> stands for a run that waits or works.</summary>
+internal sealed record Write(string Operation, HttpMethod Method, string Address, string? Body = null, string? IfMatch = null)
+{
+    public string MediaType { get; init; } = "application/json";
+
+    public static IReadOnlyDictionary<string, Write> All { get; } = new Write[]
+    {
+        new("putDocument", HttpMethod.Put, "document?note=second", Samples.Document("Other"), "*"),
+        new("postRun", HttpMethod.Post, "runs", """{"iterations":10}"""),
+        new("cancelRun", HttpMethod.Delete, "runs/{run}"),
+        new("putSchedule", HttpMethod.Put, "schedule", """{"cron":"30 2 * * *","iterations":20,"enabled":true}"""),
+    }.ToDictionary(write => write.Operation);
+
+    /// <summary>Sends it to a portfolio.</summary>
+    /// <param name="key">The key of its own; null: without.</param>
+    public async Task<Said> SendAsync(HttpClient client, string portfolio, string? key, string run = "")
+    {
+        using var request = new HttpRequestMessage(Method, $"/v1/portfolios/{portfolio}/{Address.Replace("{run}", run)}");
+        if (Body is not null)
+            request.Content = new StringContent(Body, Encoding.UTF8, MediaType);
+        if (IfMatch is not null)
+            request.Headers.TryAddWithoutValidation("If-Match", IfMatch);
+        if (key is not null)
+            request.Headers.TryAddWithoutValidation("Idempotency-Key", key);
+        return await Said.OfAsync(await client.SendAsync(request, TestContext.Current.CancellationToken));
+    }
+
+    /// <summary>A server on which every write finds what it needs in the portfolio <c>p</c>; its runs wait for ever.</summary>
+    public static async Task<(PortfolioServer Server, HttpClient Client, string Run)> PrepareAsync()
+    {
+        var server = new PortfolioServer(null, ("Roles", "api"));
+        var client = server.Client();
+        await client.PutJsonAsync("/v1/portfolios/p/document", Samples.Document());
+        return (server, client, await client.RunAsync("p"));
+    }
+}
+
+/// <summary>What makes two answers the same.</summary>
+internal sealed record Said(HttpStatusCode Status, string Body, string? Tag, string? Location, string? RetryAfter, string? Type)
+{
+    public bool Again { get; private init; }
+
+    /// <summary>Without whether it was said before.</summary>
+    public Said Words() => this with { Again = false };
+
+    public static async Task<Said> OfAsync(HttpResponseMessage answer) => new(
+        answer.StatusCode, await answer.TextAsync(), answer.Tag(), answer.Headers.Location?.ToString(),
+        answer.Headers.RetryAfter?.ToString(), answer.Content.Headers.ContentType?.ToString())
+    {
+        Again = answer.Headers.TryGetValues("Idempotent-Replay", out var values) && values.Single() == "true",
+    };
+}
