@@ -43,7 +43,7 @@ app.UseAccess();
 app.MapHealth();
 app.MapApiDescription();
 
-var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToAccept().OnceOnly();
+var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToMediaTypes().OnceOnly();
 api.MapPortfolios();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);

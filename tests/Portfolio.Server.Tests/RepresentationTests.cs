@@ -103,6 +103,6 @@ public sealed class RepresentationTests(ServerFixture fixture) : IClassFixture<S
     private async Task<string> RunAsync(string portfolio)
     {
         await client.PutJsonAsync($"/v1/portfolios/{portfolio}/document", Samples.Document());
-        return (await client.SucceedAsync(portfolio, """{"iterations":10}""")).Text("id");
+        return (await client.SucceedAsync(portfolio, """{"iterations":100,"recorded":true}""")).Text("id");
     }
 }

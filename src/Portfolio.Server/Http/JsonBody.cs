@@ -20,10 +20,7 @@ internal static class JsonBody
         if (body.Bytes.IsEmpty)
             return null;
         if (!request.HasJsonContentType())
-        {
-            throw new RequestRefused(
-                new Problem(415, "unsupported-media-type", "The body's media type is not taken here", "Send application/json."));
-        }
+            throw new RequestRefused(MediaTypes.Unsupported(["application/json"]));
         return Read(body.Bytes.Span, type);
     }
 

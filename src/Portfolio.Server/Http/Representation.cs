@@ -21,9 +21,9 @@ internal sealed class Representation
         if (format is not null) return new(faults.Word("format", format, "json", ["json", "csv"]) == "csv");
         var accepted = request.GetTypedHeaders().Accept;
         if (accepted.Count == 0) return new(isCsv: false);
-        var (json, csv) = (AcceptedTypes.Quality(accepted, JsonType), AcceptedTypes.Quality(accepted, CsvTable.MediaType));
+        var (json, csv) = (MediaTypes.Quality(accepted, JsonType), MediaTypes.Quality(accepted, CsvTable.MediaType));
         if (json == 0 && csv == 0)
-            throw new RequestRefused(AcceptedTypes.Unacceptable([JsonType, CsvTable.MediaType]));
+            throw new RequestRefused(MediaTypes.Unacceptable([JsonType, CsvTable.MediaType]));
         return new(csv > json);
     }
 

@@ -18,7 +18,8 @@ internal sealed class ContractCheck(DescribedApi? given = null) : DelegatingHand
     {
         var response = await base.SendAsync(request, cancellationToken);
         var path = request.RequestUri!.AbsolutePath;
-        if (!path.StartsWith("/v1/", StringComparison.Ordinal))
+        // HEAD is GET without the body, which is what is described.
+        if (!path.StartsWith("/v1/", StringComparison.Ordinal) || request.Method == HttpMethod.Head)
             return response;
         var api = given ?? (described ??= new DescribedApi(await DescriptionAsync(request.RequestUri, cancellationToken)));
         if (await FlawAsync(api, request, response, cancellationToken) is { } flaw)

@@ -1,17 +1,34 @@
+using Microsoft.AspNetCore.Http.Features;
 using Microsoft.AspNetCore.Http.Metadata;
 using Microsoft.Net.Http.Headers;
 using Portfolio.Server.Problems;
 
 namespace Portfolio.Server.Http;
 
-/// <summary>What a request accepts (RFC 9110, section 12.5.1).</summary>
-internal static class AcceptedTypes
+/// <summary>In which forms a request brings its body and takes its answer (RFC 9110, sections 8.3 and 12.5.1).</summary>
+internal static class MediaTypes
 {
-    /// <summary>Refuses what accepts nothing of that which the route can answer (406), before it has any effect.</summary>
-    public static RouteGroupBuilder HoldsToAccept(this RouteGroupBuilder routes) => routes.AddEndpointFilter((context, next) =>
-        Offers(context.HttpContext) is { Count: > 0 } offered && !AcceptsOneOf(context.HttpContext.Request, offered)
-            ? ValueTask.FromResult<object?>(Unacceptable(offered))
-            : next(context));
+    /// <summary>
+    /// Refuses what accepts nothing of that which the route can answer (406) and bodies that do not say what they are (415), before there
+    /// is any effect.
+    /// </summary>
+    public static RouteGroupBuilder HoldsToMediaTypes(this RouteGroupBuilder routes) => routes.AddEndpointFilter((context, next) =>
+        Refused(context.HttpContext) is { } problem ? ValueTask.FromResult<object?>(problem) : next(context));
+
+    private static Problem? Refused(HttpContext http)
+    {
+        if (Offers(http) is { Count: > 0 } offered && !AcceptsOneOf(http.Request, offered))
+        {
+            http.Response.Headers.Vary = HeaderNames.Accept;
+            return Unacceptable(offered);
+        }
+        return http.Request.ContentType is null && HasBody(http)
+            && http.GetEndpoint()?.Metadata.GetMetadata<IAcceptsMetadata>() is { } taken
+            ? Unsupported(taken.ContentTypes)
+            : null;
+    }
+
+    private static bool HasBody(HttpContext http) => http.Features.Get<IHttpRequestBodyDetectionFeature>()?.CanHaveBody == true;
 
     /// <summary>The quality that a type is accepted with: the most specific range that names it decides.</summary>
     public static double Quality(IEnumerable<MediaTypeHeaderValue> accepted, string type)
@@ -21,6 +38,9 @@ internal static class AcceptedTypes
             .OrderBy(range => (range.MatchesAllTypes, range.MatchesAllSubTypes))
             .Select(range => range.Quality ?? 1).FirstOrDefault();
     }
+
+    public static Problem Unsupported(IEnumerable<string> taken) => new(
+        415, "unsupported-media-type", "The body's media type is not taken here", $"Send {string.Join(" or ", taken)}.");
 
     public static Problem Unacceptable(IEnumerable<string> offered) =>
         new(406, "not-acceptable", "No such representation", $"There is {string.Join(" and ", offered)}.");
