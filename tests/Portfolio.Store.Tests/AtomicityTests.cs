@@ -37,6 +37,12 @@ public abstract class AtomicityTests(StoreKind kind)
         ["success"] = (store, held) => store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation),
         ["failure"] = (store, held) => store.Endings.FailAsync(held, "no room", TestStore.Cancellation),
         ["cancellation"] = (store, held) => store.Endings.CancelAsync(held, TestStore.Cancellation),
+        ["document with its answer"] = (store, _) => store.Documents.WriteAsync(
+            Caller.System,
+            new DocumentWrite { Portfolio = "works", Action = "document.put", Joining = (open, _, _) => AnswerScenes.KeepAsync(open) },
+            (_, _) => Task.FromResult<Proposal>(TestStore.Parts(("lock", "a2"))), TestStore.Cancellation),
+        ["run with its answer"] = (store, _) => store.Requests.CreateAsync(
+            Caller.System, RunScenes.Asked(RunScenes.Today), (open, _, _) => AnswerScenes.KeepAsync(open), TestStore.Cancellation),
         ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation),
     };
 

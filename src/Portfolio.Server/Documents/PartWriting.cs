@@ -1,6 +1,7 @@
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
 using Portfolio.Server.Problems;
+using Portfolio.Store;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
 
@@ -18,12 +19,19 @@ internal sealed record PartsWritten(WriteResult Result, bool Creates = false, st
 internal sealed class PartWriting(DocumentStore documents, DraftCheck check, KnownParts known)
 {
     /// <param name="draw">Draws up the write on the document as it stands; perhaps twice, so it must change nothing itself.</param>
+    /// <param name="joining">Called last inside the transaction, for rows that stand or fall with the write; null for none.</param>
     public async Task<PartsWritten> WriteAsync(
-        Caller caller, DocumentWrite write, Func<DocumentState, Task<Draft>> draw, CancellationToken cancellation)
+        Caller caller, DocumentWrite write, Func<DocumentState, Task<Draft>> draw,
+        Func<StoreTransaction, PartsWritten, CancellationToken, Task>? joining, CancellationToken cancellation)
     {
         var last = new PartsWritten(new WriteResult(WriteOutcome.NotFound));
         var result = await documents.WriteDecidedAheadAsync(
-            caller, write with { MayCreate = false },
+            caller,
+            write with
+            {
+                MayCreate = false,
+                Joining = joining is null ? null : (open, done, ct) => joining(open, last with { Result = done }, ct),
+            },
             async (head, _) =>
             {
                 var (proposal, draft) = await DecideAsync(new DocumentState(head!, known), draw);

@@ -6,6 +6,7 @@ using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
 
@@ -45,9 +46,10 @@ internal sealed record PartWrite(
             Action = action,
             Object = Http.Request.Path.Value!["/v1/".Length..],
         };
-        var (result, creates, tag) = await Writing.WriteAsync(User.Caller(), write, draw, Cancellation);
-        return Written.Answer(Http, Portfolio, result, tag, creates);
+        return Answer(Http, await Writing.WriteAsync(User.Caller(), write, draw, Http.Remembers<PartsWritten>(Answer), Cancellation));
     }
+
+    private IResult Answer(HttpContext to, PartsWritten done) => Written.Answer(to, Portfolio, done.Result, done.Tag, done.Creates);
 
     /// <summary>The right that the caller uses here: to manage if it has it, otherwise to submit.</summary>
     public Right Used(string part) => Manages(part) ? Right.Manage : Right.Submit;

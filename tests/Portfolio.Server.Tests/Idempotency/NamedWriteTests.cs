@@ -44,7 +44,7 @@ public sealed class NamedWriteTests
         Assert.Equal(first, second.Words());
         Assert.Equal(after, await StateAsync(client));
 
-        var other = await (write with { IfMatch = "*", Body = write.Body is null ? null : write.Body + " " }).SendAsync(client, "p", "once", run);
+        var other = await (write with { IfMatch = write.IfMatch is null ? "*" : "\"other\"", Body = write.Body is null ? null : write.Body + " " }).SendAsync(client, "p", "once", run);
         Assert.Equal(HttpStatusCode.UnprocessableEntity, other.Status);
         Assert.Contains("/problems/idempotency-key-reused", other.Body);
         Assert.Equal(after, await StateAsync(client));

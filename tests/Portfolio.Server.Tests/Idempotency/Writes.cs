@@ -13,6 +13,8 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
     public static IReadOnlyDictionary<string, Write> All { get; } = new Write[]
     {
         new("putDocument", HttpMethod.Put, "document?note=second", Samples.Document("Other"), "*"),
+        new("putProject", HttpMethod.Put, "projects/quay?note=new", """{"statusDate":"2027-01-04"}"""),
+        new("deleteProject", HttpMethod.Delete, "projects/weir", IfMatch: "*"),
         new("postRun", HttpMethod.Post, "runs", """{"iterations":10}"""),
         new("cancelRun", HttpMethod.Delete, "runs/{run}"),
         new("putSchedule", HttpMethod.Put, "schedule", """{"cron":"30 2 * * *","iterations":20,"enabled":true}"""),

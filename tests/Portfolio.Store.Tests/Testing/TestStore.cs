@@ -4,6 +4,7 @@ using Microsoft.Extensions.Time.Testing;
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
 using Portfolio.Store.Documents;
+using Portfolio.Store.Idempotency;
 using Portfolio.Store.Outbox;
 using Portfolio.Store.Results;
 using Portfolio.Store.Runs;
@@ -33,6 +34,7 @@ public sealed class TestStore : IAsyncDisposable
     public SampleStore Samples => new(Database);
     public ResultStore Results => new(Database);
     public ScheduleStore Schedules => new(Database);
+    public AnswerStore Answers => new(Database);
 
     public static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
