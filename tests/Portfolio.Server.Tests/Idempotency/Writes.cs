@@ -8,12 +8,20 @@ namespace Portfolio.Server.Tests.Idempotency;
 /// <summary>One accepted write of every route that writes; <c>{run}</c> stands for a run that waits or works.</summary>
 internal sealed record Write(string Operation, HttpMethod Method, string Address, string? Body = null, string? IfMatch = null)
 {
+    private const string Patch = "application/merge-patch+json";
+
     public string MediaType { get; init; } = "application/json";
 
     public static IReadOnlyDictionary<string, Write> All { get; } = new Write[]
     {
         new("putDocument", HttpMethod.Put, "document?note=second", Samples.Document("Other"), "*"),
         new("putProject", HttpMethod.Put, "projects/quay?note=new", """{"statusDate":"2027-01-04"}"""),
+        new("patchProject", HttpMethod.Patch, "projects/weir", """{"name":"Weir"}""") { MediaType = Patch },
+        new("putSettings", HttpMethod.Put, "settings", """{"name":"Renamed","currency":"EUR"}""", "*"),
+        new("patchSettings", HttpMethod.Patch, "settings", """{"name":"Renamed"}""") { MediaType = Patch },
+        new("putActivity", HttpMethod.Put, "projects/weir/activities/B", """{"duration":3}"""),
+        new("patchActivity", HttpMethod.Patch, "projects/weir/activities/A", """{"duration":3}""") { MediaType = Patch },
+        new("deleteActivity", HttpMethod.Delete, "projects/weir/activities/A", IfMatch: "*"),
         new("deleteProject", HttpMethod.Delete, "projects/weir", IfMatch: "*"),
         new("postRun", HttpMethod.Post, "runs", """{"iterations":10}"""),
         new("cancelRun", HttpMethod.Delete, "runs/{run}"),
