@@ -27,6 +27,7 @@ public sealed class ReadmeTests : IDisposable
         Assert.Contains("\"scope\":\"milestone/lock-gate/OPEN\"", said, StringComparison.Ordinal);
         Assert.Contains("\"allocations\":[{\"project\":\"lock-gate\"", said, StringComparison.Ordinal);
         Assert.Contains("\"metric\":\"finish\",\"level\":80", said, StringComparison.Ordinal);
+        Assert.Contains("\"path\":\"/projects/quay/activities/B/duration\"", said, StringComparison.Ordinal);
         Assert.Contains("\"nextDue\"", said, StringComparison.Ordinal);
         // The one refusal is the wrong document, whose two faults are named.
         var refusal = Assert.Single(said.Split('\n'), line => line.Contains("\"/problems/", StringComparison.Ordinal));

@@ -3,7 +3,9 @@ using Portfolio.Model.Documents;
 namespace Portfolio.Model.Rules;
 
 /// <summary>A project with what its rules need beside it. Places are built only for faults, so that sound projects cost no text.</summary>
-internal sealed record PlacedProject(Project Project, ProjectOutline Outline, PortfolioContext Context, string? Path)
+/// <param name="Sent">Places of the activities that were sent; null: all of them.</param>
+internal sealed record PlacedProject(
+    Project Project, ProjectOutline Outline, PortfolioContext Context, string? Path, IReadOnlySet<int>? Sent = null)
 {
     public Place Here => new(Path, Project.Id);
 

@@ -5,7 +5,8 @@ using Portfolio.Model.Rules.AcrossParts;
 namespace Portfolio.Model.Rules;
 
 /// <summary>Outline of a project and where it stands in what was sent; a null path says that it was not sent but is stored.</summary>
-public sealed record PlacedOutline(ProjectOutline Outline, string? Path);
+/// <param name="Sent">Places of the activities that were sent where the others are stored; null: all.</param>
+public sealed record PlacedOutline(ProjectOutline Outline, string? Path, IReadOnlySet<int>? Sent = null);
 
 /// <summary>
 /// Rules across parts: whether what one part names exists in another, and circles through several projects. Outlines are enough, so that

@@ -12,10 +12,14 @@ public static class ProjectRules
     /// <param name="context">What it may refer to.</param>
     /// <param name="path">Pointer of the project in what was sent: <c>/projects/3</c> in a document, "" when sent alone; null: not sent
     /// but stored.</param>
+    /// <param name="sent">
+    /// Places of the activities that were sent where the others are stored: a circle is reported at a link of one of them. Null: all.
+    /// </param>
     /// <returns>All faults, in no particular order.</returns>
-    public static IEnumerable<Fault> Check(Project project, ProjectOutline outline, PortfolioContext context, string? path)
+    public static IEnumerable<Fault> Check(
+        Project project, ProjectOutline outline, PortfolioContext context, string? path, IReadOnlySet<int>? sent = null)
     {
-        var placed = new PlacedProject(project, outline, context, path);
+        var placed = new PlacedProject(project, outline, context, path, sent);
         return
         [
             .. ProjectRule.Check(placed),

@@ -9,7 +9,11 @@ namespace Portfolio.Server.Documents;
 /// <param name="Place">
 /// From a pointer into the part to the pointer into the JSON that was sent; "" where that member was not sent but is stored.
 /// </param>
-internal sealed record PartDraft<T>(T Content, Func<string, string> Place);
+internal sealed record PartDraft<T>(T Content, Func<string, string> Place)
+{
+    /// <summary>Places of the activities that were sent where the rest of the project is stored; null: the whole was sent.</summary>
+    public IReadOnlySet<int>? SentActivities { get; init; }
+}
 
 /// <summary>What a write would make of some parts of the document, before it is checked; or why it is refused at once.</summary>
 internal sealed record Draft

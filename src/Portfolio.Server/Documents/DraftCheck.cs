@@ -35,11 +35,12 @@ internal sealed class DraftCheck(ModelLimits limits, KnownParts known)
         }
     }
 
-    private ProjectJudgement Judge(ProjectJson content, PortfolioContext context, string path)
+    private ProjectJudgement Judge(PartDraft<ProjectJson> project, PortfolioContext context, string path)
     {
+        var content = project.Content;
         if (judged.TryGetValue(content, out var before) && before.Context == context && before.Path == path)
             return before;
-        var judgement = new ProjectJudgement(content, context, path);
+        var judgement = new ProjectJudgement(content, context, path, project.SentActivities);
         judged.AddOrUpdate(content, judgement);
         return judgement;
     }

@@ -23,14 +23,14 @@ internal sealed class DraftView
 
     private DraftView(
         Draft draft, DocumentState state, ModelLimits limits, KnownSettings before,
-        IReadOnlyList<(PartHead Head, ProjectOutline Outline)> kept, Func<ProjectJson, PortfolioContext, string, ProjectJudgement> judge)
+        IReadOnlyList<(PartHead Head, ProjectOutline Outline)> kept, Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
     {
         (this.draft, this.state, this.before, this.kept) = (draft, state, before, kept);
         // A portfolio that was let grow beyond a limit since lowered can still be written.
         this.limits = limits with { Projects = Math.Max(limits.Projects, state.Projects.Count()) };
         settings = draft.Settings?.Content.ToModel(reading, SettingsPath) ?? before.Settings;
         context = draft.Settings is null ? before.Context : PortfolioContext.Of(settings, limits);
-        Drafted = SideBySide.Each(draft.Projects, (project, k) => judge(project.Content, context, ProjectPath(k)));
+        Drafted = SideBySide.Each(draft.Projects, (project, k) => judge(project, context, ProjectPath(k)));
     }
 
     /// <summary>The drafted projects, in the draft's order.</summary>
@@ -39,7 +39,7 @@ internal sealed class DraftView
     public static string ProjectPath(int index) => FormattableString.Invariant($"/projects/{index}");
 
     public static async Task<DraftView> OfAsync(
-        Draft draft, DocumentState state, ModelLimits limits, Func<ProjectJson, PortfolioContext, string, ProjectJudgement> judge)
+        Draft draft, DocumentState state, ModelLimits limits, Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
     {
         var gone = draft.Removed.Concat(draft.Projects.Select(project => project.Content.Id!)).ToHashSet(StringComparer.Ordinal);
         PartHead[] kept = [.. state.Projects.Where(project => !gone.Contains(project.Project))];
@@ -74,11 +74,11 @@ internal sealed class DraftView
         var placed = new List<PlacedOutline>();
         foreach (var project in state.Projects)
             if (drafted.Remove(project.Project, out var judged))
-                placed.Add(new PlacedOutline(judged.Outline, judged.Path));
+                placed.Add(new PlacedOutline(judged.Outline, judged.Path, judged.Sent));
             else if (others.TryGetValue(project.Project, out var outline))
                 placed.Add(new PlacedOutline(outline, null));
         placed.AddRange(Drafted.Where(project => drafted.ContainsKey(project.Outline.Id))
-            .Select(project => new PlacedOutline(project.Outline, project.Path)));
+            .Select(project => new PlacedOutline(project.Outline, project.Path, project.Sent)));
         return placed;
     }
 

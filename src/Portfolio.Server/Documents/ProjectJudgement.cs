@@ -17,20 +17,23 @@ internal sealed class ProjectJudgement
     private ProposedPart? part;
 
     /// <param name="path">Stands before the pointers of all faults.</param>
+    /// <param name="sent">Places of the activities that were sent; null: all.</param>
     /// <exception cref="JsonRefused">A null where none can stand.</exception>
-    public ProjectJudgement(ProjectJson content, PortfolioContext context, string path)
+    public ProjectJudgement(ProjectJson content, PortfolioContext context, string path, IReadOnlySet<int>? sent)
     {
-        (this.content, Context, Path) = (content, context, path);
+        (this.content, Context, Path, Sent) = (content, context, path, sent);
         var reading = new Reading();
         Model = content.ToModel(reading, path);
         Outline = ProjectOutline.Of(Model);
         Shape = reading.Faults;
-        Broken = [.. ProjectRules.Check(Model, Outline, context, path)];
+        Broken = [.. ProjectRules.Check(Model, Outline, context, path, sent)];
     }
 
     public PortfolioContext Context { get; }
 
     public string Path { get; }
+
+    public IReadOnlySet<int>? Sent { get; }
 
     public Project Model { get; }
 

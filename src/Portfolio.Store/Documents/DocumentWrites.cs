@@ -30,13 +30,13 @@ public sealed partial class DocumentStore
                     return null;
                 var head = await Head.FindAsync(open, write.Portfolio);
                 var proposal = await decide(head, cancellation);
-                return head?.LookedBeyond == true ? null : new Ahead(head?.Revision ?? 0, proposal);
+                return new Ahead(head, head?.LookedBeyond == true ? null : proposal);
             },
             cancellation);
         return await WriteAsync(caller, write, decide, ahead, cancellation);
     }
 
-    private sealed record Ahead(long Revision, Proposal Proposal);
+    private sealed record Ahead(Head? Head, Proposal? Proposal);
 
     private async Task<WriteResult> WriteAsync(
         Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, Ahead? ahead,
@@ -49,10 +49,9 @@ public sealed partial class DocumentStore
                 var (standing, turned) = await TurnedAsync(open, caller, write);
                 if (turned is { } outcome)
                     return new WriteResult(outcome);
-                var head = await Head.FindAsync(open, write.Portfolio);
-                var proposal = ahead is not null && ahead.Revision == (head?.Revision ?? 0)
-                    ? ahead.Proposal
-                    : await decide(head, cancellation);
+                var head = await Head.FindAsync(open, write.Portfolio, ahead?.Head);
+                var proposal = ahead?.Head?.Revision == head?.Revision ? ahead?.Proposal : null;
+                proposal ??= await decide(head, cancellation);
                 if (proposal is Refusal refusal)
                 {
                     summary = refusal.Summary;

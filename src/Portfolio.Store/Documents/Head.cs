@@ -38,10 +38,13 @@ public sealed class Head
         """;
 
     /// <summary>Null when there is no such portfolio.</summary>
-    internal static async Task<Head?> FindAsync(StoreTransaction open, string portfolio)
+    /// <param name="before">What was seen shortly before; if it is still the newest, its parts are not read again.</param>
+    internal static async Task<Head?> FindAsync(StoreTransaction open, string portfolio, Head? before = null)
     {
         if (await open.FirstAsync<RevisionRow>(NewestSql, new { Portfolio = portfolio }) is not { } newest)
             return null;
+        if (before?.Revision == newest.Number)
+            return new Head(open, portfolio, newest, before.Rows);
         return new Head(open, portfolio, newest, await open.ListAsync<PartRow>(PartsSql, new { Portfolio = portfolio, newest.Number }));
     }
 

@@ -29,7 +29,10 @@ internal static class PartContents
                 unknown.Add(part);
         }
         var compressed = new byte[unknown.Count][];
-        Parallel.For(0, compressed.Length, i => compressed[i] = Compress(unknown[i].Bytes));
+        if (compressed.Length == 1)
+            compressed[0] = Compress(unknown[0].Bytes);
+        else
+            Parallel.For(0, compressed.Length, i => compressed[i] = Compress(unknown[i].Bytes));
         for (var i = 0; i < compressed.Length; i++)
         {
             await open.ExecuteAsync(InsertSql, new { unknown[i].Hash, Bytes = compressed[i], Size = unknown[i].Bytes.Length });

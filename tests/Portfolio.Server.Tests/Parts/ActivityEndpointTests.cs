@@ -69,10 +69,22 @@ public sealed class ActivityEndpointTests(ServerFixture fixture) : IClassFixture
 
     [Theory]
     [InlineData("weir/activities/A10", """{"duration":5,"predecessors":["A20"]}""", "weir/A10", "/predecessors/0")]
+    [InlineData("quay/activities/B20", """{"duration":5,"predecessors":["B10","weir/A20"]}""", "quay/B20", "/predecessors/1")]
     [InlineData("quay/activities/B10", """{"duration":5,"predecessors":["weir/A20"]}""", "quay/B10", "/predecessors/0")]
     public async Task ACircleIsReportedAtTheLinkThatWasSent(string activity, string json, string subject, string path)
     {
         var at = await client.PortfolioAsync("activity-circle-" + subject.Replace('/', '-')) + "/projects/";
+        await (await client.PatchAsync(at + "weir/activities/A20", """{"predecessors":["A10","quay/B20"]}""")).WrittenAsync(200, 2);
         Assert.Equal([("link.cycle", subject, path)], await (await client.PutJsonAsync(at + activity, json)).RefusedAsync());
+    }
+
+    [Fact]
+    public async Task ACircleIsReportedWhereItWasClosedEvenBehindOlderLinks()
+    {
+        var at = await client.PortfolioAsync("closing") + "/projects/quay/activities/";
+        await (await client.PutJsonAsync(at + "B30", """{"duration":1}""")).WrittenAsync(201, 2);
+        await (await client.PutJsonAsync(at + "B10", """{"duration":4,"predecessors":["B30"]}""")).WrittenAsync(200, 3);
+        // B10 and B20 stand before B30 in the list, but B30 is what was sent.
+        Assert.Equal([("link.cycle", "quay/B30", "/predecessors/0")], await (await client.PatchAsync(at + "B30", """{"predecessors":["B20"]}""")).RefusedAsync());
     }
 }

@@ -4,7 +4,7 @@ namespace Portfolio.Model.Rules.AcrossParts;
 
 /// <summary>
 /// Activities of several projects that wait for each other in a circle; circles within one project are that project's rule. Reported at a
-/// link into another project, of a project that was sent where there is one.
+/// link of an activity that was sent where there is one, and of these at one into another project.
 /// </summary>
 internal static class ForeignCycleRule
 {
@@ -29,10 +29,12 @@ internal static class ForeignCycleRule
     private static Fault Report(List<int> cycle, OutlineIndex whole, PortfolioNetwork network)
     {
         var names = cycle.Select(arc => network.Name(network.Arcs[arc].Successor));
-        var (project, link) = cycle.Select(network.Link).FirstOrDefault(
-            l => l.Link.Project is not null && whole.Projects[l.Project].Path is not null, network.Link(cycle[0]));
+        var (project, link) = cycle.Select(network.Link).MinBy(l => (WasSent(l.Project, l.Link) ? 0 : 2) + (l.Link.Project is null ? 1 : 0));
         return whole.ActivityAt(project, link.Successor).Under("predecessors", link.Entry).Fault(
             RuleCodes.LinkCycle, CycleSearch.Message(names));
+
+        bool WasSent(int place, OutlineLink one) =>
+            whole.Projects[place] is { Path: not null } placed && placed.Sent?.Contains(one.Successor) != false;
     }
 }
 

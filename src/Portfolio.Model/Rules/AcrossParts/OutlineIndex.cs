@@ -32,7 +32,7 @@ internal sealed class OutlineIndex
 
     public Place ActivityAt(int project, int activity)
     {
-        var (outline, path) = Projects[project];
+        var (outline, path, _) = Projects[project];
         return new Place(path, "").Under("activities", activity).About($"{outline.Id}/", outline.ActivityIds[activity], activity);
     }
 }

@@ -12,7 +12,8 @@ internal static class CycleRule
         var arcs = links.ConvertAll(l => new Arc(l.Predecessor, l.Successor));
         foreach (var cycle in CycleSearch.Find(outline.ActivityIds.Count, arcs))
         {
-            var link = links[cycle[0]];
+            // What was stored had no circle: each goes through something that was sent.
+            var link = links[cycle.FirstOrDefault(a => placed.Sent?.Contains(links[a].Successor) != false, cycle[0])];
             yield return placed.Activity(link.Successor).Under("predecessors", link.Entry).Fault(
                 RuleCodes.LinkCycle, CycleSearch.Message(cycle.Select(a => outline.ActivityIds[links[a].Successor])));
         }

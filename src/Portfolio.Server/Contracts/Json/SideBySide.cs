@@ -6,6 +6,9 @@ internal static class SideBySide
     /// <summary>Results in the order of the items. When items fail, the exception of the first of them is thrown.</summary>
     public static T[] Each<TItem, T>(IReadOnlyList<TItem> items, Func<TItem, int, T> work)
     {
+        // One alone needs no other processor, and waking one costs more than a small project.
+        if (items.Count == 1)
+            return [work(items[0], 0)];
         var results = new T[items.Count];
         try
         {

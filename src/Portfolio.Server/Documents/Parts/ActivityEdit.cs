@@ -25,7 +25,13 @@ internal sealed class ActivityEdit(string project, string activity, PartBody<Act
         ActivityJson[] activities = [.. list.Take(index), after.Content, .. list.Skip(index + 1)];
         return new Draft
         {
-            Projects = [new(owner with { Activities = activities }, path => ActivityList.PlaceOf(path, index, after.Place))],
+            Projects =
+            [
+                new(owner with { Activities = activities }, path => ActivityList.PlaceOf(path, index, after.Place))
+                {
+                    SentActivities = new HashSet<int> { index },
+                },
+            ],
             Faults = after.Faults,
             Sent = body.Json,
             Creates = stored is null,
