@@ -39,7 +39,10 @@ public abstract class Database : IAsyncDisposable
     /// <summary>A chore for quiet hours.</summary>
     public abstract Task MaintainAsync(CancellationToken cancellation);
 
-    /// <summary>Reads within one snapshot: every statement of <paramref name="work"/> sees the same commits.</summary>
+    /// <summary>
+    /// Reads within one snapshot: every statement of <paramref name="work"/> sees the same commits. It changes nothing outside: where a
+    /// connection had died unnoticed it is called a second time.
+    /// </summary>
     internal abstract Task<T> ReadAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation);
 
     /// <summary>
@@ -48,6 +51,9 @@ public abstract class Database : IAsyncDisposable
     /// </summary>
     /// <exception cref="StoreUnavailableException">The storage cannot be written just now.</exception>
     internal abstract Task<T> WriteAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation);
+
+    /// <summary>Does something of which two processes must not be at the same time, such as preparing a schema. Not to be nested.</summary>
+    public abstract Task AloneAsync(Func<Task> work, CancellationToken cancellation);
 
     /// <summary>Waits for the writer at work, then gives the storage back. A second time does nothing.</summary>
     public abstract ValueTask DisposeAsync();

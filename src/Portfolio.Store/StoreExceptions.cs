@@ -12,7 +12,11 @@ public sealed class StoreSchemaException(string message) : InvalidOperationExcep
 /// the way to the server broke in the moment of the commit: then nobody knows, and whoever asks again finds out.
 /// </summary>
 public sealed class StoreUnavailableException(Exception inner)
-    : IOException($"The storage cannot be used: {inner.Message}", inner);
+    : IOException($"The storage cannot be used: {inner.Message}", inner)
+{
+    /// <summary>True when the write may have been kept after all.</summary>
+    public bool IsInDoubt { get; init; }
+}
 
 /// <summary>Stored bytes are not the ones that were written.</summary>
 public sealed class StoreDamagedException(string message) : IOException(message);

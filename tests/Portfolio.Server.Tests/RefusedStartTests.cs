@@ -14,7 +14,8 @@ public sealed class RefusedStartTests : IDisposable
     [InlineData("Roles", "everything", "Roles must be all, api or worker.")]
     [InlineData("Limits__JsonDepth", "5", "JsonDepth")]
     [InlineData("Limits__DocumentBody", "large", "Limits:DocumentBody")]
-    [InlineData("Storage__Postgres", "Host=localhost", "Storage:Postgres is not served yet")]
+    [InlineData("Storage__Postgres", "the server in the cellar", "Storage:Postgres is no connection string")]
+    [InlineData("Storage__Postgres", "Host=127.0.0.1;Port=1;Database=d", "The storage cannot be used: Failed to connect to 127.0.0.1:1")]
     public async Task AWrongSettingIsNamed(string key, string value, string said) =>
         Assert.Contains(said, await WhyAsync((key, value)), StringComparison.Ordinal);
 

@@ -10,6 +10,7 @@ internal static class FirstKey
     {
         var id = Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(8));
         var key = $"pk_{id}_{Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(32))}";
+        MakeFolder(Path.GetDirectoryName(path)!);
         File.Delete(path);
         var options = new FileStreamOptions { Mode = FileMode.CreateNew, Access = FileAccess.Write };
         if (!OperatingSystem.IsWindows())
@@ -20,5 +21,13 @@ internal static class FirstKey
         writer.Flush();
         stream.Flush(flushToDisk: true);
         return key;
+    }
+
+    private static void MakeFolder(string directory)
+    {
+        if (OperatingSystem.IsWindows())
+            Directory.CreateDirectory(directory);
+        else
+            Directory.CreateDirectory(directory, UnixFileMode.UserRead | UnixFileMode.UserWrite | UnixFileMode.UserExecute);
     }
 }

@@ -3,6 +3,7 @@ using System.Net.Http.Headers;
 using System.Text;
 using System.Text.Encodings.Web;
 using Microsoft.AspNetCore.Authentication;
+using Microsoft.AspNetCore.Authorization;
 using Microsoft.Extensions.Options;
 using Microsoft.Net.Http.Headers;
 using Portfolio.Server.Problems;
@@ -24,7 +25,8 @@ internal sealed class KeyAuthentication(
 
     protected override async Task<AuthenticateResult> HandleAuthenticateAsync()
     {
-        if (Request.Headers.Authorization.Count == 0)
+        // What needs no key is told also while keys cannot be looked up: health above all.
+        if (Request.Headers.Authorization.Count == 0 || Context.GetEndpoint()?.Metadata.GetMetadata<IAllowAnonymous>() is not null)
             return AuthenticateResult.NoResult();
         if (Presented(Request.Headers.Authorization.ToString()) is not { Length: > 0 and <= LongestKey } key)
             return AuthenticateResult.Fail("The authorization header holds no key.");

@@ -1,3 +1,5 @@
+using Portfolio.Store.Postgres;
+
 namespace Portfolio.Server.Hosting;
 
 /// <summary>Binds every options class to its section and has it checked before the server starts.</summary>
@@ -6,7 +8,9 @@ internal static class OptionsSetup
     public static void AddPortfolioOptions(this IServiceCollection services)
     {
         services.AddOptions<StorageOptions>().BindConfiguration(StorageOptions.Section).ValidateDataAnnotations()
-            .Validate(storage => string.IsNullOrEmpty(storage.Postgres), "Storage:Postgres is not served yet; leave it out.")
+            .Validate(
+                storage => storage.Postgres is null || PostgresDatabase.IsConnectionString(storage.Postgres),
+                "Storage:Postgres is no connection string (Host=…;Username=…;Password=…;Database=…).")
             .ValidateOnStart();
         services.AddOptions<SecurityOptions>().BindConfiguration(SecurityOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.AddOptions<LimitOptions>().BindConfiguration(LimitOptions.Section).ValidateDataAnnotations().ValidateOnStart();

@@ -7,12 +7,16 @@ public sealed class StorageOptions
 {
     public const string Section = "Storage";
 
-    /// <summary>Folder of the embedded database and of backups; one process at a time.</summary>
+    /// <summary>Folder of the embedded database (then one process at a time), of backups and of the first key.</summary>
     [Required]
     public string Directory { get; set; } = "./data";
 
-    /// <summary>Connection string; not served yet and therefore refused.</summary>
-    public string? Postgres { get; set; }
+    /// <summary>Connection string of a PostgreSQL database that is used in place of the embedded one; unset or empty: none.</summary>
+    public string? Postgres
+    {
+        get;
+        set => field = string.IsNullOrEmpty(value) ? null : value;
+    }
 
     public string FirstKeyFile => Path.GetFullPath(Path.Combine(Directory, "first-key.txt"));
 }

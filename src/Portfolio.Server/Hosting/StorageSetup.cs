@@ -4,6 +4,7 @@ using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
 using Portfolio.Store.Documents;
 using Portfolio.Store.Outbox;
+using Portfolio.Store.Postgres;
 using Portfolio.Store.Results;
 using Portfolio.Store.Runs;
 using Portfolio.Store.Samples;
@@ -36,9 +37,11 @@ internal static class StorageSetup
     }
 
     // At the start nothing else runs on this thread, so waiting here blocks nobody.
-    private static Database Open(IServiceProvider services) =>
-        SqliteDatabase.OpenAsync(
-            services.GetRequiredService<IOptions<StorageOptions>>().Value.Directory,
-            services.GetRequiredService<TimeProvider>(),
-            CancellationToken.None).GetAwaiter().GetResult();
+    private static Database Open(IServiceProvider services) => OpenAsync(
+        services.GetRequiredService<IOptions<StorageOptions>>().Value,
+        services.GetRequiredService<TimeProvider>()).GetAwaiter().GetResult();
+
+    private static async Task<Database> OpenAsync(StorageOptions storage, TimeProvider clock) => storage.Postgres is { } server
+        ? await PostgresDatabase.OpenAsync(server, clock, CancellationToken.None)
+        : await SqliteDatabase.OpenAsync(storage.Directory, clock, CancellationToken.None);
 }

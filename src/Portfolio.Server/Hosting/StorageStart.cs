@@ -13,6 +13,12 @@ internal sealed partial class StorageStart(
     public async Task StartAsync(CancellationToken cancellation)
     {
         LogOpened(await database.MigrationLevelAsync(cancellation));
+        // Of processes that start together one makes the key.
+        await database.AloneAsync(() => LetInAsync(cancellation), cancellation);
+    }
+
+    private async Task LetInAsync(CancellationToken cancellation)
+    {
         if (await keys.HasAdministratorAsync(cancellation))
             return;
         if (security.Value.BootstrapKey is { } given)

@@ -1,4 +1,5 @@
 using Portfolio.Server.Hosting;
+using Portfolio.Server.Jobs.Waking;
 
 namespace Portfolio.Server.Jobs;
 
@@ -18,7 +19,11 @@ internal static class JobSetup
         services.AddSingleton<Nightly>();
         services.AddSingleton<Sweep>();
         var engine = configuration.GetSection(EngineOptions.Section).Get<EngineOptions>() ?? new EngineOptions();
-        if ((configuration.Get<RoleOptions>() ?? new RoleOptions()).Works)
-            services.AddWakeUps(engine.Runs);
+        var works = (configuration.Get<RoleOptions>() ?? new RoleOptions()).Works;
+        // In memory nobody else could hear it.
+        if (works || !string.IsNullOrEmpty(configuration[$"{StorageOptions.Section}:{nameof(StorageOptions.Postgres)}"]))
+            services.AddWaking();
+        if (works)
+            services.AddWoken(engine.Runs);
     }
 }

@@ -21,6 +21,9 @@ internal static partial class RunLog
     [LoggerMessage(2005, LogLevel.Error, "Looking for runs failed; the next look tries again.")]
     public static partial void LookedInVain(ILogger log, Exception failure);
 
+    [LoggerMessage(2006, LogLevel.Warning, "No worker could be woken; it will look by itself.")]
+    public static partial void NotWoken(ILogger log, Exception failure);
+
     [LoggerMessage(2010, LogLevel.Information, "The schedule of {Portfolio} made run {Run} for {Date}.")]
     public static partial void Due(ILogger log, string portfolio, string run, DateOnly date);
 

@@ -22,7 +22,7 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
             BadHttpRequestException unread when Unread().Match(unread.Message) is { Success: true } match =>
                 QueryFaults.Of(match.Groups["name"].Value, $"'{match.Groups["name"].Value}' cannot be read.").Problem,
             BadHttpRequestException => Problem.BadRequest("A parameter of the address or a header cannot be read."),
-            StoreUnavailableException => Unavailable(exception),
+            StoreUnavailableException unavailable => Unavailable(unavailable),
             _ => Unforeseen(exception),
         };
         if (problem.Status is StatusCodes.Status503ServiceUnavailable or StatusCodes.Status429TooManyRequests)
@@ -35,11 +35,12 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
     [GeneratedRegex("^Failed to bind parameter \"\\S+ (?<name>\\w+)\" from ")]
     private static partial Regex Unread();
 
-    private Problem Unavailable(Exception exception)
+    private Problem Unavailable(StoreUnavailableException exception)
     {
         LogUnavailable(exception);
+        var kept = exception.IsInDoubt ? "The connection broke while the write was being kept: it may have been." : "Nothing was kept.";
         return new Problem(
-            503, "storage-unavailable", "The storage cannot be written", "Nothing was kept. Try again after the time in Retry-After.");
+            503, "storage-unavailable", "The storage cannot be used", $"{kept} Try again after the time in Retry-After.");
     }
 
     private Problem Unforeseen(Exception exception)
@@ -48,7 +49,7 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
         return new Problem(500, "internal", "The server failed", "The failure is logged under the trace id.");
     }
 
-    [LoggerMessage(Level = LogLevel.Error, Message = "The storage cannot be written.")]
+    [LoggerMessage(Level = LogLevel.Error, Message = "The storage cannot be used.")]
     private partial void LogUnavailable(Exception exception);
 
     [LoggerMessage(Level = LogLevel.Error, Message = "A request failed.")]

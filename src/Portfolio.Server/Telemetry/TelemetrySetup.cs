@@ -1,3 +1,4 @@
+using Npgsql;
 using OpenTelemetry.Metrics;
 using OpenTelemetry.Resources;
 using OpenTelemetry.Trace;
@@ -10,6 +11,8 @@ internal static class TelemetrySetup
     // Name and meaning are those of the OpenTelemetry specification.
     private const string Endpoint = "OTEL_EXPORTER_OTLP_ENDPOINT";
 
+    private const string PostgresMeter = "Npgsql";
+
     public static void AddTelemetry(this IServiceCollection services, IConfiguration configuration)
     {
         services.AddMetrics();
@@ -18,8 +21,8 @@ internal static class TelemetrySetup
             return;
         services.AddOpenTelemetry()
             .ConfigureResource(resource => resource.AddService("portfolio"))
-            .WithTracing(tracing => tracing.AddSource(ServerTelemetry.Name).AddAspNetCoreInstrumentation().AddOtlpExporter())
+            .WithTracing(tracing => tracing.AddSource(ServerTelemetry.Name).AddNpgsql().AddAspNetCoreInstrumentation().AddOtlpExporter())
             .WithMetrics(metrics => metrics
-                .AddMeter(ServerTelemetry.Name).AddAspNetCoreInstrumentation().AddRuntimeInstrumentation().AddOtlpExporter());
+                .AddMeter(ServerTelemetry.Name, PostgresMeter).AddAspNetCoreInstrumentation().AddRuntimeInstrumentation().AddOtlpExporter());
     }
 }

@@ -65,20 +65,11 @@ public sealed class PostgresDatabase : Database
         }
     }
 
-    /// <summary>Does something of which two processes must not be at the same time, such as preparing a schema.</summary>
-    public Task AloneAsync(Func<Task> work, CancellationToken cancellation) => server.AloneAsync(_ => work(), cancellation);
-
-    /// <summary>Nothing: the server cleans up by itself (autovacuum).</summary>
-    public override Task MaintainAsync(CancellationToken cancellation) => Task.CompletedTask;
-
-    internal override async Task<T> ReadAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
+    public override async Task AloneAsync(Func<Task> work, CancellationToken cancellation)
     {
         try
         {
-            await using var connection = await server.OpenReaderAsync(cancellation);
-            // Read-only by the connection's settings: asking for it here would be one more round trip.
-            await using var transaction = await connection.BeginTransactionAsync(IsolationLevel.RepeatableRead, cancellation);
-            return await work(Opened(transaction, writes: false, cancellation));
+            await server.AloneAsync(_ => work(), cancellation);
         }
         catch (Exception failure) when (PostgresFailures.IsUnavailable(failure))
         {
@@ -86,16 +77,44 @@ public sealed class PostgresDatabase : Database
         }
     }
 
+    /// <summary>Nothing: the server cleans up by itself (autovacuum).</summary>
+    public override Task MaintainAsync(CancellationToken cancellation) => Task.CompletedTask;
+
+    internal override async Task<T> ReadAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
+    {
+        for (var again = true; ; again = false)
+        {
+            try
+            {
+                return await ReadOnceAsync(work, cancellation);
+            }
+            catch (Exception failure) when (PostgresFailures.IsUnavailable(failure))
+            {
+                if (!again || !PostgresFailures.IsBroken(failure))
+                    throw new StoreUnavailableException(failure);
+            }
+        }
+    }
+
+    private async Task<T> ReadOnceAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
+    {
+        await using var connection = await server.OpenReaderAsync(cancellation);
+        // Read-only by the connection's settings: asking for it here would be one more round trip.
+        await using var transaction = await connection.BeginTransactionAsync(IsolationLevel.RepeatableRead, cancellation);
+        return await work(Opened(transaction, writes: false, cancellation));
+    }
+
     internal override async Task<T> WriteAsync<T>(Func<StoreTransaction, Task<T>> work, CancellationToken cancellation)
     {
         await writing.WaitAsync(cancellation);
+        var committing = false;
         try
         {
-            await using var connection = await server.OpenWriterAsync(cancellation);
-            await using var transaction = await connection.BeginTransactionAsync(IsolationLevel.ReadCommitted, cancellation);
-            await PostgresServer.TakeWriterLockAsync(connection, cancellation);
+            await using var transaction = await server.TakeTurnAsync(cancellation);
+            await using var connection = transaction.Connection;
             var result = await work(Opened(transaction, writes: true, cancellation));
             BeforeStatement?.Invoke("commit");
+            committing = true;
             // Not to be called off half way: nobody would know how it ended.
             await transaction.CommitAsync(CancellationToken.None);
             Written(refused: false);
@@ -104,7 +123,7 @@ public sealed class PostgresDatabase : Database
         catch (Exception failure) when (PostgresFailures.IsUnavailable(failure))
         {
             Written(refused: true);
-            throw new StoreUnavailableException(failure);
+            throw new StoreUnavailableException(failure) { IsInDoubt = committing };
         }
         finally
         {

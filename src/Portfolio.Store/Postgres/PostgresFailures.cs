@@ -14,6 +14,12 @@ internal static class PostgresFailures
         _ => false,
     };
 
+    /// <summary>
+    /// Whether a connection has ended, as one that was idle may have done unnoticed: what it had not begun to change can be asked again.
+    /// </summary>
+    public static bool IsBroken(Exception failure) =>
+        failure is NpgsqlException { InnerException: IOException } or PostgresException { SqlState: "57P01" or "57P02" };
+
     private static bool IsUnavailable(string state) => state[..2] switch
     {
         // Connection; who may connect; no such database; room, memory, connections; stopped by an operator; input and output.

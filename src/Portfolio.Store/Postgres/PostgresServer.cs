@@ -1,3 +1,4 @@
+using System.Data;
 using Npgsql;
 
 namespace Portfolio.Store.Postgres;
@@ -28,16 +29,34 @@ internal sealed class PostgresServer : IAsyncDisposable
 
     public ValueTask<NpgsqlConnection> OpenReaderAsync(CancellationToken cancellation) => readers.OpenConnectionAsync(cancellation);
 
-    public ValueTask<NpgsqlConnection> OpenWriterAsync(CancellationToken cancellation) => writers.OpenConnectionAsync(cancellation);
-
-    /// <summary>Waits for the writer at work, whichever process it is in; the lock goes with the transaction, however that ends.</summary>
-    public static Task TakeWriterLockAsync(NpgsqlConnection connection, CancellationToken cancellation) =>
-        RunAsync(connection, $"select pg_advisory_xact_lock({WriterLock})", cancellation);
+    /// <summary>
+    /// Waits for the writer at work, whichever process it is in; the lock goes with the transaction, however that ends. The caller disposes
+    /// of it and of its connection.
+    /// </summary>
+    public async Task<NpgsqlTransaction> TakeTurnAsync(CancellationToken cancellation)
+    {
+        for (var again = true; ; again = false)
+        {
+            var connection = await writers.OpenConnectionAsync(cancellation);
+            try
+            {
+                var transaction = await connection.BeginTransactionAsync(IsolationLevel.ReadCommitted, cancellation);
+                await RunAsync(connection, $"select pg_advisory_xact_lock({WriterLock})", cancellation);
+                return transaction;
+            }
+            catch (Exception failure)
+            {
+                await connection.DisposeAsync();
+                if (!again || !PostgresFailures.IsBroken(failure))
+                    throw;
+            }
+        }
+    }
 
     /// <summary>Works on a connection while no other process migrates the same database.</summary>
     public async Task AloneAsync(Func<NpgsqlConnection, Task> work, CancellationToken cancellation)
     {
-        await using var connection = await OpenWriterAsync(cancellation);
+        await using var connection = await writers.OpenConnectionAsync(cancellation);
         await using (var waiting = new NpgsqlCommand($"select pg_advisory_lock({MigrationLock})", connection) { CommandTimeout = 300 })
             await waiting.ExecuteNonQueryAsync(cancellation);
         try
@@ -47,7 +66,7 @@ internal sealed class PostgresServer : IAsyncDisposable
         finally
         {
             // The lock of a connection that broke is gone already.
-            if (connection.FullState == System.Data.ConnectionState.Open)
+            if (connection.FullState == ConnectionState.Open)
                 await RunAsync(connection, $"select pg_advisory_unlock({MigrationLock})", CancellationToken.None);
         }
     }

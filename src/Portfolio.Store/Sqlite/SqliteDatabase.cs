@@ -112,6 +112,9 @@ public sealed class SqliteDatabase : Database
         }
     }
 
+    /// <summary>One process has the folder.</summary>
+    public override Task AloneAsync(Func<Task> work, CancellationToken cancellation) => work();
+
     public override async ValueTask DisposeAsync()
     {
         if (Interlocked.Exchange(ref disposed, 1) == 1)

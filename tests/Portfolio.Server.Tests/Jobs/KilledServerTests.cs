@@ -20,7 +20,7 @@ public sealed class KilledServerTests
             {
                 await first.Client.PutJsonAsync("/v1/portfolios/p/document", RunSamples.Uncertain(projects: 10, activities: 30));
                 killed = await first.Client.RunAsync("p", Run);
-                await UntilSomeBlocksAreStoredAsync(first.Client, killed);
+                await first.Client.UntilSomeBlocksAreStoredAsync("p", killed);
                 await first.KillAsync();
             }
             using (var second = await ServerProcess.StartAsync(directory.FullName))
@@ -28,7 +28,7 @@ public sealed class KilledServerTests
                 var resumed = await second.Client.UntilAsync("p", killed, "succeeded");
                 Assert.Equal(2, resumed.GetProperty("attempt").GetInt32());
                 stopped = await second.Client.RunAsync("p", Run);
-                await UntilSomeBlocksAreStoredAsync(second.Client, stopped);
+                await second.Client.UntilSomeBlocksAreStoredAsync("p", stopped);
                 Assert.Equal(0, await second.StopAsync());
             }
             using var third = await ServerProcess.StartAsync(directory.FullName);
@@ -43,16 +43,6 @@ public sealed class KilledServerTests
         finally
         {
             directory.Delete(recursive: true);
-        }
-    }
-
-    // Two threads work two blocks at a time at most beside those waiting to be stored.
-    private static async Task UntilSomeBlocksAreStoredAsync(HttpClient client, string run)
-    {
-        while (await client.ReadRunAsync("p", run) is var now && now.GetProperty("progress").GetDouble() < 0.2)
-        {
-            Assert.True(now.State() is "queued" or "running", now.ToString());
-            await Task.Delay(20, TestContext.Current.CancellationToken);
         }
     }
 }

@@ -1,3 +1,4 @@
+using System.Collections.Concurrent;
 using System.Diagnostics;
 using System.Net;
 using System.Net.Http.Headers;
@@ -12,12 +13,16 @@ internal sealed class ServerProcess : IDisposable
 {
     private readonly Process process;
 
-    private ServerProcess(Process process, HttpClient client) => (this.process, Client) = (process, client);
+    private ServerProcess(Process process, HttpClient client, ConcurrentQueue<string> said) =>
+        (this.process, Client, Said) = (process, client, said);
 
     public HttpClient Client { get; }
 
+    /// <summary>The lines of its log.</summary>
+    public IReadOnlyCollection<string> Said { get; }
+
     /// <summary>Starts the server on a folder and waits until it is ready.</summary>
-    public static async Task<ServerProcess> StartAsync(string directory)
+    public static async Task<ServerProcess> StartAsync(string directory, params (string Key, string Value)[] settings)
     {
         var address = $"http://127.0.0.1:{FreePort()}";
         var start = new ProcessStartInfo("dotnet", [Path.Combine(AppContext.BaseDirectory, "Portfolio.Server.dll")])
@@ -32,9 +37,12 @@ internal sealed class ServerProcess : IDisposable
                 ["Engine__Threads"] = "1",
             },
         };
+        foreach (var (key, value) in settings)
+            start.Environment[key] = value;
         var process = Process.Start(start)!;
+        var said = new ConcurrentQueue<string>();
         // What is not read would fill the pipe and stop the server.
-        process.OutputDataReceived += (_, _) => { };
+        process.OutputDataReceived += (_, line) => said.Enqueue(line.Data ?? "");
         process.BeginOutputReadLine();
         var client = new HttpClient(new ContractCheck { InnerHandler = new SocketsHttpHandler() }) { BaseAddress = new Uri(address) };
         client.DefaultRequestHeaders.Authorization = new AuthenticationHeaderValue("Bearer", PortfolioServer.AdminKey);
@@ -43,7 +51,7 @@ internal sealed class ServerProcess : IDisposable
             Assert.False(process.HasExited);
             await Task.Delay(100, TestContext.Current.CancellationToken);
         }
-        return new ServerProcess(process, client);
+        return new ServerProcess(process, client, said);
     }
 
     private static async Task<bool> IsReadyAsync(HttpClient client)

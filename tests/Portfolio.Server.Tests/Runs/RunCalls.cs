@@ -48,6 +48,16 @@ internal static class RunCalls
         }
     }
 
+    /// <summary>Waits until a fifth of the run is stored, which is more than is worked but not stored yet.</summary>
+    public static async Task UntilSomeBlocksAreStoredAsync(this HttpClient client, string portfolio, string run)
+    {
+        while (await client.ReadRunAsync(portfolio, run) is var now && now.GetProperty("progress").GetDouble() < 0.2)
+        {
+            Assert.True(now.State() is "queued" or "running", now.ToString());
+            await Task.Delay(20, Cancellation);
+        }
+    }
+
     public static async Task<JsonElement> SucceedAsync(this HttpClient client, string portfolio, string json = "{}") =>
         await client.UntilAsync(portfolio, await client.RunAsync(portfolio, json), "succeeded");
 

@@ -107,6 +107,18 @@ public sealed class PostgresDatabaseTests
     }
 
     [Fact]
+    public async Task Idle_connections_that_died_unnoticed_are_made_again_and_nobody_is_told()
+    {
+        await using var store = await TestStore.OpenAsync(StoreKind.Postgres);
+        await AppendAsync(store.Database);
+        await store.Database.PingAsync(TestStore.Cancellation);
+        await store.RawAsync<long>(PostgresPlace.CutSql);
+        await AppendAsync(store.Database);
+        await store.RawAsync<long>(PostgresPlace.CutSql);
+        Assert.Equal(2, (await store.Audit.ListAsync(Caller.System, null, 10, TestStore.Cancellation)).Count);
+    }
+
+    [Fact]
     public async Task A_server_that_is_not_there_is_told_in_a_sentence()
     {
         var told = await Assert.ThrowsAsync<StoreUnavailableException>(() => PostgresDatabase.OpenAsync(
