@@ -51,6 +51,7 @@ portfolio.MapDocument();
 portfolio.MapSettings();
 portfolio.MapProjects();
 portfolio.MapActivities();
+portfolio.MapUpdates();
 portfolio.MapRevisions();
 portfolio.MapRuns();
 portfolio.MapSchedule();

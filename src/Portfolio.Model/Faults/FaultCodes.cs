@@ -35,6 +35,16 @@ public static class FaultCodes
     // A member that the key's right does not reach (403).
     public const string RightMissing = "right.missing";
 
+    // Tables of updates: their columns, rows and cells.
+    public const string TableMalformed = "table.malformed";
+    public const string ColumnUnknown = "column.unknown";
+    public const string ColumnRepeated = "column.repeated";
+    public const string ColumnList = "column.list";
+    public const string RowCells = "row.cells";
+    public const string CellPlace = "cell.place";
+    public const string CellValue = "cell.value";
+    public const string CellConflict = "cell.conflict";
+
     // A parameter of the query that cannot be read or is out of range; the subject is its name.
     public const string ParameterInvalid = "parameter.invalid";
 

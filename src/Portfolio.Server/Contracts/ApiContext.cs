@@ -16,6 +16,7 @@ namespace Portfolio.Server.Contracts;
 [JsonSerializable(typeof(PageJson<ProjectEntryJson>))]
 [JsonSerializable(typeof(PageJson<ChangeJson>))]
 [JsonSerializable(typeof(WrittenJson))]
+[JsonSerializable(typeof(UpdatedJson))]
 [JsonSerializable(typeof(RunRequestJson))]
 [JsonSerializable(typeof(RunJson))]
 [JsonSerializable(typeof(PageJson<RunJson>))]

@@ -25,8 +25,11 @@ public sealed record ProblemJson
 /// <summary>One fault in what was sent.</summary>
 public sealed record FaultJson
 {
-    /// <summary>RFC 6901 pointer into the JSON that was sent, or empty when the fault lies in what is stored.</summary>
-    public required string Path { get; init; }
+    /// <summary>
+    /// RFC 6901 pointer into the JSON that was sent, or empty when the fault lies in what is stored; absent where line and column of a table
+    /// stand for it.
+    /// </summary>
+    public string? Path { get; init; }
 
     /// <summary>The thing at fault, such as weir-lock/A10.</summary>
     public required string Subject { get; init; }
@@ -36,10 +39,10 @@ public sealed record FaultJson
 
     public required string Message { get; init; }
 
-    /// <summary>Line of the text from 1; only of text that could not be read.</summary>
+    /// <summary>Line from 1, of a table or of text that could not be read.</summary>
     public int? Line { get; init; }
 
-    /// <summary>Column from 1; only of text that could not be read.</summary>
+    /// <summary>Column from 1: of a table the cell in its line, of text that could not be read the character.</summary>
     public int? Column { get; init; }
 
     internal static FaultJson From(Model.Faults.Fault fault) =>

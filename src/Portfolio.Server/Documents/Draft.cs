@@ -42,5 +42,11 @@ internal sealed record Draft
     /// <summary>The activity at the address; null when the address is that of a whole part.</summary>
     public ActivityJson? Activity { get; init; }
 
+    /// <summary>True when the address stands for the whole document.</summary>
+    public bool OfWhole { get; init; }
+
+    /// <summary>How faults are told; null: by pointers into the JSON that was sent.</summary>
+    public Func<IReadOnlyList<Fault>, Problem>? Refused { get; init; }
+
     public static implicit operator Draft(Problem refusal) => new() { Refusal = refusal };
 }

@@ -1,3 +1,5 @@
+using System.Text.Json;
+using Microsoft.Net.Http.Headers;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
 using Portfolio.Server.Problems;
@@ -35,11 +37,42 @@ internal sealed class PartWriting(DocumentStore documents, DraftCheck check, Kno
             async (head, _) =>
             {
                 var (proposal, draft) = await DecideAsync(new DocumentState(head!, known), draw);
-                last = last with { Creates = draft?.Creates == true, Tag = proposal is Change change ? TagOf(draft!, change) : null };
+                last = last with { Creates = draft?.Creates == true, Tag = proposal is Change change ? TagOf(draft!, change, head!) : null };
                 return proposal;
             },
             cancellation);
         return last with { Result = result };
+    }
+
+    /// <summary>
+    /// What the write would come to and change, place by place; nothing is kept. The tag is that of the document as it stands.
+    /// </summary>
+    public async Task<(WriteResult Result, string? Tag, IReadOnlyList<JsonChange> Changes)> TryAsync(
+        Caller caller, DocumentWrite write, Func<DocumentState, Task<Draft>> draw, CancellationToken cancellation)
+    {
+        var (tag, changes) = ((string?)null, (IReadOnlyList<JsonChange>)[]);
+        var result = await documents.TryAsync(
+            caller, write with { MayCreate = false },
+            async (head, _) =>
+            {
+                var (proposal, _) = await DecideAsync(new DocumentState(head!, known), draw);
+                tag = Http.EntityTags.OfDocument(head!.Parts).ToString();
+                changes = proposal is Change change ? await ChangesAsync(change, head) : [];
+                return proposal;
+            },
+            cancellation);
+        return (result, tag, changes);
+    }
+
+    private static async Task<IReadOnlyList<JsonChange>> ChangesAsync(Change change, Head head)
+    {
+        var changes = new List<JsonChange>();
+        foreach (var part in change.Parts)
+        {
+            var before = await head.ReadAsync(part.Project) is { } bytes ? JsonElement.Parse(bytes) : (JsonElement?)null;
+            changes.AddRange(JsonChanges.Between($"/projects/{part.Project}", before, JsonElement.Parse(part.Bytes)));
+        }
+        return changes;
     }
 
     private async Task<(Proposal Proposal, Draft? Draft)> DecideAsync(DocumentState state, Func<DocumentState, Task<Draft>> draw)
@@ -50,7 +83,7 @@ internal sealed class PartWriting(DocumentStore documents, DraftCheck check, Kno
             if (draft.Refusal is { } refusal)
                 return (Refuse(refusal), null);
             var (change, faults) = await check.CheckAsync(draft, state);
-            return change is null ? (Refuse(Problem.Refused(faults)), null) : (change, draft);
+            return change is null ? (Refuse(draft.Refused?.Invoke(faults) ?? Problem.Refused(faults)), null) : (change, draft);
         }
         catch (JsonRefused refused)
         {
@@ -60,10 +93,18 @@ internal sealed class PartWriting(DocumentStore documents, DraftCheck check, Kno
 
     private static Refusal Refuse(Problem problem) => new(problem, problem.Slug);
 
-    private static string? TagOf(Draft draft, Change change) =>
-        draft.Activity is { } activity ? TagOf(ContentHash.Of(DocumentReader.Bytes(activity)))
+    private static string? TagOf(Draft draft, Change change, Head head) =>
+        draft.OfWhole ? OfWhole(change, head).ToString()
+        : draft.Activity is { } activity ? TagOf(ContentHash.Of(DocumentReader.Bytes(activity)))
         : change.Parts is [var part] ? TagOf(part.Hash)
         : null;
+
+    // Parts that are changed keep their place.
+    private static EntityTagHeaderValue OfWhole(Change change, Head head)
+    {
+        var changed = change.Parts.ToDictionary(part => part.Project, part => part.Hash, StringComparer.Ordinal);
+        return Http.EntityTags.OfDocument(head.Parts.Select(part => part with { Hash = changed.GetValueOrDefault(part.Project, part.Hash) }));
+    }
 
     private static string TagOf(string hash) => Http.EntityTags.OfPart(hash).ToString();
 }

@@ -28,26 +28,30 @@ internal sealed record PartWrite(
     public Preconditions Conditions { get; } = new(Http.Request);
 
     /// <summary>False for who may only submit to this part.</summary>
-    public bool Manages(string part) => User.Caller().Holds(Right.Manage, Portfolio, part);
+    public bool Manages(string part) => Caller.Holds(Right.Manage, Portfolio, part);
+
+    public bool Submits(string project) => Caller.Holds(Right.Submit, Portfolio, project);
+
+    public Caller Caller => User.Caller();
 
     public Task<RequestBody> BodyAsync() => RequestBody.ReadAsync(Http.Request, Limits.Value.Body);
 
     /// <summary>Writes and answers.</summary>
     /// <param name="part">The settings or the project in the address.</param>
     /// <param name="right">What the caller needs on it.</param>
-    public async Task<IResult> ToAsync(string part, string action, Right right, Func<DocumentState, Task<Draft>> draw)
+    public async Task<IResult> ToAsync(string part, string action, Right right, Func<DocumentState, Task<Draft>> draw) =>
+        Answer(Http, await Writing.WriteAsync(
+            Caller, Of(action, right) with { Parts = [part] }, draw, Http.Remembers<PartsWritten>(Answer), Cancellation));
+
+    /// <summary>The write as the store knows it.</summary>
+    public DocumentWrite Of(string action, Right right) => new()
     {
-        var write = new DocumentWrite
-        {
-            Portfolio = Portfolio,
-            Parts = [part],
-            Right = right,
-            Note = Notes.Checked(Note),
-            Action = action,
-            Object = Http.Request.Path.Value!["/v1/".Length..],
-        };
-        return Answer(Http, await Writing.WriteAsync(User.Caller(), write, draw, Http.Remembers<PartsWritten>(Answer), Cancellation));
-    }
+        Portfolio = Portfolio,
+        Right = right,
+        Note = Notes.Checked(Note),
+        Action = action,
+        Object = Http.Request.Path.Value!["/v1/".Length..],
+    };
 
     private IResult Answer(HttpContext to, PartsWritten done) => Written.Answer(to, Portfolio, done.Result, done.Tag, done.Creates);
 

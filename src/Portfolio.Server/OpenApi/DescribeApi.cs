@@ -11,6 +11,7 @@ internal static class DescribeApi
         ["Portfolios"] = "What there is for a key to see.",
         ["Document"] = "Settings and projects as the office states them, whole.",
         ["Parts"] = "Settings, projects and activities, each at an address of its own; whatever they touch elsewhere is checked with them.",
+        ["Updates"] = "What other systems report, as JSON or as a table.",
         ["Revisions"] = "Every accepted write that changed something.",
         ["Runs"] = "Simulations of one revision, asked for or scheduled.",
         ["Schedule"] = "When the portfolio is run by itself.",

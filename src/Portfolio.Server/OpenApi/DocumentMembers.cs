@@ -14,6 +14,8 @@ internal static class DocumentMembers
         [typeof(CapacityChangeJson)] = ["from", "capacity"],
         [typeof(DriverJson)] = ["id"],
         [typeof(RankPairJson)] = ["between", "rank"],
+        [typeof(UpdatesJson)] = ["updates"],
+        [typeof(ProjectUpdateJson)] = ["project"],
         [typeof(ProjectJson)] = ["id", "statusDate"],
         [typeof(ActivityJson)] = ["id"],
         [typeof(DemandJson)] = ["pool", "units"],

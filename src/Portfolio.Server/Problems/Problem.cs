@@ -43,11 +43,14 @@ internal sealed class Problem(int status, string slug, string title, string? det
     };
 
     /// <summary>Readable, but wrong (422).</summary>
-    public static Problem Refused(IReadOnlyList<Fault> faults) => new(
+    public static Problem Refused(IReadOnlyList<Fault> faults) => Refused([.. faults.Select(FaultJson.From)]);
+
+    /// <summary>With faults that say themselves where they are.</summary>
+    public static Problem Refused(IReadOnlyList<FaultJson> faults) => new(
         422, "refused", "The content is refused",
         faults.Count == 1 ? faults[0].Message : $"{faults.Count} faults were found; 'errors' names them.")
     {
-        Faults = [.. faults.Select(FaultJson.From)],
+        Faults = faults,
     };
 
     public static Problem BadRequest(string detail) => new(400, "bad-request", "The request cannot be understood", detail);
@@ -59,10 +62,11 @@ internal sealed class Problem(int status, string slug, string title, string? det
         "The key has a grant on this portfolio, but not the right for this.");
 
     /// <summary>With the members that the key's right does not reach.</summary>
-    public static Problem Forbidden(IReadOnlyList<Fault> members) => new(403, "forbidden", "The key lacks the right",
-        members.Count == 1 ? members[0].Message : $"{members.Count} members need the right 'manage'; 'errors' names them.")
+    public static Problem Forbidden(IReadOnlyList<Fault> members, IReadOnlyList<FaultJson>? placed = null) => new(
+        403, "forbidden", "The key lacks the right",
+        members.Count == 1 ? members[0].Message : $"The key's right does not reach {members.Count} places; 'errors' names them.")
     {
-        Faults = [.. members.Select(FaultJson.From)],
+        Faults = placed ?? [.. members.Select(FaultJson.From)],
     };
 
     public static Problem NotFound(string? detail = null) => new(404, "not-found", "There is no such thing here", detail);

@@ -36,6 +36,27 @@ public sealed partial class DocumentStore
         return await WriteAsync(caller, write, decide, ahead, cancellation);
     }
 
+    /// <summary>What a write would come to; nothing is kept, no audit entry either.</summary>
+    public Task<WriteResult> TryAsync(
+        Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, CancellationToken cancellation) =>
+        database.ReadAsync(
+            async open =>
+            {
+                var (standing, turned) = await TurnedAsync(open, caller, write);
+                if (turned is { } outcome)
+                    return new WriteResult(outcome);
+                var head = await Head.FindAsync(open, write.Portfolio);
+                var result = new WriteResult(WriteOutcome.Refused) { Revision = head?.Revision ?? 0 };
+                var proposal = await decide(head, cancellation);
+                if (proposal is Refusal refusal)
+                    return result with { Refusal = refusal.Reason };
+                var plan = PartPlan.Make(head?.Rows ?? [], (Change)proposal);
+                if (!standing.Whole && !await ReachesAsync(open, caller, write, plan.Select(part => part.Project)))
+                    return new WriteResult(WriteOutcome.Forbidden);
+                return result with { Outcome = plan.Count > 0 ? WriteOutcome.Accepted : WriteOutcome.Unchanged };
+            },
+            cancellation);
+
     private sealed record Ahead(Head? Head, Proposal? Proposal);
 
     private async Task<WriteResult> WriteAsync(

@@ -23,6 +23,7 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         new("patchActivity", HttpMethod.Patch, "projects/weir/activities/A", """{"duration":3}""") { MediaType = Patch },
         new("deleteActivity", HttpMethod.Delete, "projects/weir/activities/A", IfMatch: "*"),
         new("deleteProject", HttpMethod.Delete, "projects/weir", IfMatch: "*"),
+        new("postUpdates", HttpMethod.Post, "updates", """{"updates":[{"project":"weir","name":"Weir"}]}"""),
         new("postRun", HttpMethod.Post, "runs", """{"iterations":10}"""),
         new("cancelRun", HttpMethod.Delete, "runs/{run}"),
         new("putSchedule", HttpMethod.Put, "schedule", """{"cron":"30 2 * * *","iterations":20,"enabled":true}"""),

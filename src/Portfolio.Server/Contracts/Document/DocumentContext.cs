@@ -10,6 +10,7 @@ namespace Portfolio.Server.Contracts.Document;
 [JsonSerializable(typeof(SettingsJson))]
 [JsonSerializable(typeof(ProjectJson))]
 [JsonSerializable(typeof(ActivityJson))]
+[JsonSerializable(typeof(UpdatesJson))]
 [JsonSerializable(typeof(JsonElement))]
 [JsonSerializable(typeof(JsonNode))]
 internal sealed partial class DocumentContext : JsonSerializerContext

@@ -1,4 +1,5 @@
 using System.Text.Json;
+using System.Text.Json.Nodes;
 using System.Text.Json.Serialization.Metadata;
 using Portfolio.Model.Documents;
 using Portfolio.Server.Contracts.Json;
@@ -18,6 +19,9 @@ public sealed class DocumentReader(int maxDepth)
     public static readonly JsonTypeInfo SettingsType = OfStored.context.SettingsJson;
     public static readonly JsonTypeInfo ProjectType = OfStored.context.ProjectJson;
     public static readonly JsonTypeInfo ActivityType = OfStored.context.ActivityJson;
+
+    /// <summary>Any JSON, written as parts are.</summary>
+    public static readonly JsonTypeInfo<JsonNode> AnyType = OfStored.context.JsonNode;
 
     private readonly DocumentContext context = DocumentContext.Strict(maxDepth);
 
@@ -39,6 +43,8 @@ public sealed class DocumentReader(int maxDepth)
     public ProjectJson ReadProject(ReadOnlySpan<byte> json) => Read(json, context.ProjectJson);
 
     public ActivityJson ReadActivity(ReadOnlySpan<byte> json) => Read(json, context.ActivityJson);
+
+    public UpdatesJson ReadUpdates(ReadOnlySpan<byte> json) => Read(json, context.UpdatesJson);
 
     /// <summary>Any JSON value, as long as no object in it names a member twice.</summary>
     public JsonElement ReadAny(ReadOnlySpan<byte> json)

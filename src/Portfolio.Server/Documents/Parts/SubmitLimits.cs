@@ -13,24 +13,31 @@ namespace Portfolio.Server.Documents.Parts;
 internal static class SubmitLimits
 {
     /// <param name="stored">Canonical bytes; null when there is no such project yet.</param>
-    public static Problem? OfProject(string project, byte[]? stored, PartContent<ProjectJson> after)
+    public static Problem? OfProject(string project, byte[]? stored, PartContent<ProjectJson> after) =>
+        Refusal(FaultsOfProject(project, stored, after));
+
+    public static Problem? OfActivity(string subject, byte[]? stored, PartContent<ActivityJson> after) =>
+        Refusal(FaultsOfActivity(subject, stored, after));
+
+    public static IReadOnlyList<Fault> FaultsOfProject(string project, byte[]? stored, PartContent<ProjectJson> after)
     {
         var changed = Changed(stored, DocumentReader.Bytes(after.Content));
-        return Refusal(project, after.Place, changed.Where(member => member is not ("/statusDate" or "/overhead/actual")));
+        return Faults(project, after.Place, changed.Where(member => member is not ("/statusDate" or "/overhead/actual")));
     }
 
-    public static Problem? OfActivity(string subject, byte[]? stored, PartContent<ActivityJson> after)
+    public static IReadOnlyList<Fault> FaultsOfActivity(string subject, byte[]? stored, PartContent<ActivityJson> after)
     {
         var changed = Changed(stored, DocumentReader.Bytes(after.Content));
-        return Refusal(subject, after.Place, changed.Where(member => member is "/demands" or "/drivers"));
+        return Faults(subject, after.Place, changed.Where(member => member is "/demands" or "/drivers"));
     }
 
-    private static Problem? Refusal(string subject, Func<string, string> place, IEnumerable<string> members)
-    {
-        Fault[] faults = [.. members.Select(member => new Fault(
-            place(member), subject, FaultCodes.RightMissing, $"To change '{member[1..]}' of {subject} the right 'manage' is needed."))];
-        return faults.Length == 0 ? null : Problem.Forbidden(faults);
-    }
+    private static Problem? Refusal(IReadOnlyList<Fault> faults) => faults.Count == 0 ? null : Problem.Forbidden(faults);
+
+    private static Fault[] Faults(string subject, Func<string, string> place, IEnumerable<string> members) =>
+    [
+        .. members.Select(member => new Fault(
+            place(member), subject, FaultCodes.RightMissing, $"To change '{member[1..]}' of {subject} the right 'manage' is needed.")),
+    ];
 
     /// <summary>Members that differ; of overhead, which is only partly reached, the members in it.</summary>
     private static IEnumerable<string> Changed(byte[]? stored, byte[] after)
