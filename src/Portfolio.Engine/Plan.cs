@@ -43,7 +43,7 @@ public sealed class Plan
     }
 
     /// <summary>Engine version: a change of bits for equal inputs changes it. Kept with every run.</summary>
-    public const string EngineVersion = "1";
+    public const string EngineVersion = "2";
 
     public PortfolioDocument Document { get; }
 

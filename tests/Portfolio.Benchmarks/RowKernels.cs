@@ -14,7 +14,7 @@ namespace Portfolio.Benchmarks;
 [Config(typeof(InProcess))]
 public class RowKernels
 {
-    private const int Chunk = 256, Key = 0x5EED;
+    private const int Chunk = 1024, Key = 0x5EED;
 
     private readonly double[] row = new double[Chunk];
     private readonly double[] scores = new double[Chunk];

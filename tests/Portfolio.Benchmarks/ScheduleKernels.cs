@@ -8,7 +8,7 @@ namespace Portfolio.Benchmarks;
 /// <summary>The steps of an iteration: drawing the work of an activity, placing it, dispatching it.</summary>
 internal static class ScheduleKernels
 {
-    private const int Chunk = 256, PoolChunk = 64;
+    private const int Chunk = 1024, PoolChunk = 64;
 
     public static void Print(Action<string, double> line)
     {

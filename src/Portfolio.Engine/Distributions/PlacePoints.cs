@@ -1,3 +1,6 @@
+using System.Runtime.Intrinsics;
+using Portfolio.Engine.Draws;
+
 namespace Portfolio.Engine.Distributions;
 
 /// <summary>
@@ -27,19 +30,27 @@ internal sealed class PlacePoints
     /// <summary>What each point counts at a place, summing to 1.</summary>
     public void WriteShares(double place, Span<double> shares)
     {
-        var exact = Array.IndexOf(places, place);
+        var exact = places.AsSpan().IndexOf(place);
         if (exact >= 0)
         {
             shares.Clear();
             shares[exact] = 1;
             return;
         }
-
+        var j = 0;
+        for (; j <= places.Length - Wide.Lanes; j += Wide.Lanes)
+        {
+            var distances = Vector512.Create(place) - Vector512.Create(places, j);
+            (Vector512.Create(weights, j) / distances).CopyTo(shares[j..]);
+        }
+        for (; j < places.Length; j++)
+            shares[j] = weights[j] / (place - places[j]);
         var sum = 0.0;
-        for (var j = 0; j < shares.Length; j++)
-            sum += shares[j] = weights[j] / (place - places[j]);
+        foreach (var share in shares)
+            sum += share;
+        var inverse = 1 / sum;
         foreach (ref var share in shares)
-            share /= sum;
+            share *= inverse;
     }
 
     /// <summary>The value at a place of what has <paramref name="values"/> at the points.</summary>

@@ -20,6 +20,9 @@ internal readonly struct RegularisedBeta(double alpha, double beta)
     public double Quantile(double lower, double upper) =>
         lower <= upper ? LowerQuantile(alpha, beta, Elementary.Log(lower)) : 1 - LowerQuantile(beta, alpha, Elementary.Log(upper));
 
+    /// <summary>The quantile at Φ(<paramref name="score"/>).</summary>
+    public double QuantileAt(double score) => Quantile(NormalScore.Phi(score), NormalScore.Phi(-score));
+
     /// <summary>
     /// Newton's method for ln I as a function of s = ln x. The density of s is log-concave for β ≥ 1, hence ln I is concave in s and the
     /// steps rise to

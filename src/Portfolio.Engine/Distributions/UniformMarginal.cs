@@ -4,9 +4,13 @@ using Portfolio.Engine.Draws;
 
 namespace Portfolio.Engine.Distributions;
 
-/// <summary>Every value between two ends equally likely.</summary>
+/// <summary>
+/// Every value between two ends equally likely. At a score it is read from <see cref="ScorePieces"/>: error below 10⁻⁷ of the range (tested).
+/// </summary>
 internal sealed class UniformMarginal : Marginal
 {
+    private static readonly double[] Phi = ScorePieces.Of(NormalScore.Phi);
+
     private readonly double low, range;
 
     private UniformMarginal(double low, double range) => (this.low, this.range) = (low, range);
@@ -23,11 +27,20 @@ internal sealed class UniformMarginal : Marginal
 
     public override double Lowest => low;
 
-    public override void Read(ReadOnlySpan<double> scores, Span<double> values) => Wide.Map(new AtScore(low, range), scores, values);
+    public override void Read(ReadOnlySpan<double> scores, Span<double> values) =>
+        PieceRows.Read(new AtScore(low, range, Phi), scores, values);
 
-    private readonly struct AtScore(double low, double range) : IWideFunction
+    private readonly ref struct AtScore(double low, double range, ReadOnlySpan<double> pieces) : IPiecewise
     {
+        private readonly ReadOnlySpan<double> pieces = pieces;
+
         [MethodImpl(MethodImplOptions.AggressiveInlining)]
-        public Vector512<double> At(Vector512<double> x) => Vector512.Create(low) + new NormalCdf().At(x) * Vector512.Create(range);
+        public Vector512<double> Within(Vector512<double> scores) => At(ScorePieces.At(pieces, scores));
+
+        public Vector512<double> Everywhere(Vector512<double> scores, Vector512<double> beyond) =>
+            Vector512.ConditionalSelect(beyond, At(default(NormalCdf).At(scores)), Within(scores));
+
+        [MethodImpl(MethodImplOptions.AggressiveInlining)]
+        private Vector512<double> At(Vector512<double> phi) => Wide.Fused(phi, Vector512.Create(range), Vector512.Create(low));
     }
 }

@@ -24,7 +24,7 @@ internal sealed class DrawnInputs : ChunkInputs
     private readonly double[] _delays;        // [delay row] working days
     private readonly double[] _eventCost;     // [project] money
     private readonly int[] _picks;            // [fork]
-    private readonly double[] _uniforms, _scores, _values;
+    private readonly double[] _uniforms, _scores, _values, _rates, _product;
     private ulong _seed;
     private long _first;
     private int _count;
@@ -42,6 +42,7 @@ internal sealed class DrawnInputs : ChunkInputs
         _eventCost = new double[network.Projects.Count * capacity];
         _picks = new int[forks.Count * capacity];
         (_uniforms, _scores, _values) = (new double[capacity], new double[capacity], new double[capacity]);
+        (_rates, _product) = (new double[capacity], new double[capacity]);
     }
 
     public override int Count => _count;
@@ -61,50 +62,64 @@ internal sealed class DrawnInputs : ChunkInputs
 
     public override void Durations(int activity, Span<int> minutes)
     {
-        var days = _values.AsSpan(0, _count);
+        var delays = _events.DelayRow[activity] is >= 0 and var delay ? Row(_delays, delay) : (RowOrNumber)0;
         if (_estimates.Duration[activity] is { } estimate)
         {
-            Draw(estimate, activity, days);
-            ValueRows.Floor(days);
-            foreach (var driver in _estimates.DurationDrivers[activity])
-                ValueRows.Multiply(days, Row(_durationFactor, driver));
+            var days = Draw(estimate, activity, _values);
+            ValueRows.ToMinutes(days, Product(_durationFactor, _estimates.DurationDrivers[activity]), delays, minutes);
         }
         else
         {
-            days.Clear();
+            ValueRows.ToMinutes(0, 1, delays, minutes);
         }
-        if (_events.DelayRow[activity] is >= 0 and var delay)
-            ValueRows.Add(days, Row(_delays, delay));
-        ValueRows.ToMinutes(days, minutes);
         ClearAbsent(activity, minutes);
     }
 
     public override void AddCosts(int activity, ReadOnlySpan<int> minutes, Span<double> cost)
     {
-        if (_estimates.Fixed[activity] is { } fixedCost)
-            ValueRows.Add(cost, CostRow(fixedCost, activity));
-        if (_estimates.Rate[activity] is { } rate)
-            ValueRows.AddWorked(cost, CostRow(rate, activity), minutes);
+        var (stated, rate) = (_estimates.Fixed[activity], _estimates.Rate[activity]);
+        if (stated is null && rate is null)
+            return;
+        var once = stated is null ? 0 : WhereItHappens(Draw(stated, activity, _values), activity);
+        var factors = Product(_costFactor, _estimates.CostDrivers[activity]);
+        if (rate is null)
+            ValueRows.AddProduct(cost, once, factors);
+        else
+            ValueRows.AddWorked(cost, once, Draw(rate, activity, _rates), minutes, factors);
     }
 
-    public override void AddEventCosts(int project, Span<double> cost) => ValueRows.Add(cost, Row(_eventCost, project));
+    public override void AddEventCosts(int project, Span<double> cost) => ValueRows.AddProduct(cost, Row(_eventCost, project), 1);
 
     private Span<double> Row(double[] rows, int row) => rows.AsSpan(row * _count, _count);
 
-    // The marginal at Φ(√r·F + √(1−r)·ε).
-    private void Draw(Estimate estimate, int activity, Span<double> values)
+    // The marginal at Φ(√r·F + √(1−r)·ε), worked in the room given.
+    private RowOrNumber Draw(Estimate estimate, int activity, double[] room)
     {
         if (estimate.Certain)
-        {
-            values.Fill(estimate.Base);
-            return;
-        }
+            return estimate.Base;
         var scores = Scores(estimate.Key);
         var project = _network.ProjectOf[activity];
         var (loading, own) = (_estimates.Loading[project], _estimates.Own[project]);
         if (loading > 0)
             ValueRows.Mix(loading, Row(_factors, project), own, scores);
+        var values = room.AsSpan(0, _count);
         estimate.Marginal.Read(scores, values);
+        return values;
+    }
+
+    // What the drivers together multiply by.
+    private RowOrNumber Product(double[] factors, int[] drivers)
+    {
+        if (drivers.Length == 0)
+            return 1;
+        var product = Row(factors, drivers[0]);
+        foreach (var driver in drivers.AsSpan(1))
+        {
+            var room = _product.AsSpan(0, _count);
+            ValueRows.Multiply(product, Row(factors, driver), room);
+            product = room;
+        }
+        return product;
     }
 
     private Span<double> UniformsOf(ulong key)
@@ -121,15 +136,16 @@ internal sealed class DrawnInputs : ChunkInputs
         return scores;
     }
 
-    // A fixed cost or daily rate with its drivers; 0 where the activity does not happen.
-    private Span<double> CostRow(Estimate estimate, int activity)
+    // A fixed cost, 0 where the activity does not happen. Daily rates need no such care: there are no minutes there.
+    private RowOrNumber WhereItHappens(RowOrNumber values, int activity)
     {
-        var values = _values.AsSpan(0, _count);
-        Draw(estimate, activity, values);
-        foreach (var driver in _estimates.CostDrivers[activity])
-            ValueRows.Multiply(values, Row(_costFactor, driver));
-        ClearAbsent(activity, values);
-        return values;
+        if (_network.Fork[activity] < 0)
+            return values;
+        var row = _values.AsSpan(0, _count);
+        for (var k = 0; k < row.Length; k++)
+            row[k] = values[k];
+        ClearAbsent(activity, row);
+        return row;
     }
 
     private void ClearAbsent<T>(int activity, Span<T> row) where T : struct

@@ -37,14 +37,23 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
     /// </summary>
     public void EarliestStarts(int activity, Span<int> starts, Stages? beforePools)
     {
-        starts.Fill(network.Status[activity]);
-        if (network.EarliestStart[activity] is var earliest and not Network.None)
-            WaitFor(activity, earliest, starts);
+        var bound = network.Status[activity];
+        var first = true; // nothing stands in the row yet
         foreach (ref readonly var link in network.LinksOf(activity))
         {
-            if (beforePools is null || beforePools.IsBefore(link.Predecessor))
-                Bind(activity, link, starts);
+            if (beforePools is not null && !beforePools.IsBefore(link.Predecessor))
+                continue;
+            var moved = Bound(activity, link, starts.Length);
+            if (first)
+                InstantRows.Latest(bound, moved, starts);
+            else
+                InstantRows.Latest(moved, starts);
+            first = false;
         }
+        if (first)
+            starts.Fill(bound);
+        if (network.EarliestStart[activity] is var earliest and not Network.None)
+            WaitFor(activity, earliest, starts);
     }
 
     /// <summary>True when the activity stands in a branch that iteration k of the chunk does not take.</summary>
@@ -61,10 +70,11 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
         }
     }
 
-    private void Bind(int activity, in NetworkLink link, Span<int> starts)
+    // The earliest starts by one link: the predecessor's own row where the link does not move it.
+    private ReadOnlySpan<int> Bound(int activity, in NetworkLink link, int count)
     {
-        var from = link.FromFinish ? rows.Finish(link.Predecessor, starts.Length) : rows.Start(link.Predecessor, starts.Length);
-        var bounds = _bound.AsSpan(0, starts.Length);
+        var from = link.FromFinish ? rows.Finish(link.Predecessor, count) : rows.Start(link.Predecessor, count);
+        var bounds = _bound.AsSpan(0, count);
         ReadOnlySpan<int> moved = from;
         if (link.Lag != 0)
         {
@@ -76,10 +86,10 @@ internal sealed class ForwardPass(Network network, ScheduleRows rows, ChunkInput
         }
         if (!link.ToStart)
         {
-            InstantRows.Back(network.Calendar[activity], moved, rows.Work(activity, starts.Length), bounds);
+            InstantRows.Back(network.Calendar[activity], moved, rows.Work(activity, count), bounds);
             moved = bounds;
         }
-        InstantRows.Latest(moved, starts);
+        return moved;
     }
 
     // Links into and out of work that does not happen act without lag.

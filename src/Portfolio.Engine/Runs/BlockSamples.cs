@@ -33,5 +33,7 @@ public sealed class BlockSamples
     /// <summary>[milestone][iteration].</summary>
     public int[][] MilestoneFinish { get; }
 
-    private static T[][] Rows<T>(int rows, int count) => [.. Enumerable.Range(0, rows).Select(_ => new T[count])];
+    // Every entry is written before the block is handed over.
+    private static T[][] Rows<T>(int rows, int count) =>
+        [.. Enumerable.Range(0, rows).Select(_ => GC.AllocateUninitializedArray<T>(count))];
 }
