@@ -7,6 +7,7 @@ using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
 using Portfolio.Server.Documents;
 using Portfolio.Store;
+using Portfolio.Store.Sqlite;
 using Portfolio.Store.Access;
 using Portfolio.Store.Documents;
 
@@ -25,7 +26,7 @@ internal static class ReadingBenchmark
         var json = await File.ReadAllBytesAsync(args[0]);
         var folder = Directory.CreateTempSubdirectory("portfolio-reading-").FullName;
         var rounds = new List<Dictionary<string, Spent>>();
-        await using (var database = await Database.OpenAsync(folder, clock, CancellationToken.None))
+        await using (var database = await SqliteDatabase.OpenAsync(folder, clock, CancellationToken.None))
         {
             for (var round = 0; round < Rounds; round++)
                 rounds.Add(await RoundAsync(json, new DocumentStore(database), $"round{round}", round));
