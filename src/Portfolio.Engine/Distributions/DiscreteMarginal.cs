@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.Intrinsics;
 using Portfolio.Engine.Draws;
 using Portfolio.Model.Distributions;
 
@@ -6,6 +8,8 @@ namespace Portfolio.Engine.Distributions;
 /// <summary>One of finitely many values: at p the smallest x with F(x) ≥ p. The last cumulative probability counts as exactly 1.</summary>
 internal sealed class DiscreteMarginal : Marginal
 {
+    private const int FewOutcomes = 24; // up to here comparing with each threshold is quicker than a search
+
     private readonly double[] values, cumulative, thresholds;
 
     private DiscreteMarginal(double[] values, double[] cumulative, double likeliest, double mean, double variance)
@@ -50,6 +54,11 @@ internal sealed class DiscreteMarginal : Marginal
 
     public override void Read(ReadOnlySpan<double> scores, Span<double> values)
     {
+        if (this.values.Length <= FewOutcomes)
+        {
+            Wide.Map(new OfFew(this.values, thresholds), scores, values);
+            return;
+        }
         for (var i = 0; i < scores.Length; i++)
             values[i] = this.values[FirstAtLeast(thresholds, scores[i])];
     }
@@ -68,5 +77,18 @@ internal sealed class DiscreteMarginal : Marginal
         }
 
         return first;
+    }
+
+    // Goes through all outcomes: of the thresholds below the score the last decides.
+    private readonly struct OfFew(double[] values, double[] thresholds) : IWideFunction
+    {
+        [MethodImpl(MethodImplOptions.AggressiveInlining)]
+        public Vector512<double> At(Vector512<double> x)
+        {
+            var value = Vector512.Create(values[0]);
+            for (var i = 1; i < values.Length; i++)
+                value = Vector512.ConditionalSelect(Vector512.LessThan(Vector512.Create(thresholds[i - 1]), x), Vector512.Create(values[i]), value);
+            return value;
+        }
     }
 }

@@ -7,12 +7,14 @@ namespace Portfolio.Engine.Distributions;
 /// <summary>
 /// Normal held between two bounds: with a = Φ((min−mean)/sd) and b = Φ((max−mean)/sd) the value at p is mean + sd·Φ⁻¹(a + p(b−a)).
 /// When both bounds lie above the mean the mirror image is worked, because only the lower tail of Φ has its digits.
+/// At a score it is read from <see cref="ScorePieces"/>: error below 10⁻⁶ of the range between the 0.1 % and the 99.9 % quantile (tested).
 /// </summary>
 internal sealed class TruncatedNormalMarginal : Marginal
 {
     private readonly double mean, sd, min, max;
     private readonly double below, held;
     private readonly bool mirrored;
+    private readonly double[] pieces;
 
     public TruncatedNormalMarginal(double mean, double sd, double min, double max)
     {
@@ -21,6 +23,7 @@ internal sealed class TruncatedNormalMarginal : Marginal
         var (from, to) = mirrored ? (NormalScore.Phi((mean - max) / sd), NormalScore.Phi((mean - min) / sd))
                                   : (NormalScore.Phi((min - mean) / sd), NormalScore.Phi((max - mean) / sd));
         (below, held) = (from, to - from);
+        pieces = ScorePieces.Of(Exact);
     }
 
     /// <summary>Probability between the bounds before truncation.</summary>
@@ -48,9 +51,12 @@ internal sealed class TruncatedNormalMarginal : Marginal
     public override double Lowest => min;
 
     public override void Read(ReadOnlySpan<double> scores, Span<double> values) =>
-        Wide.Map(new AtScore(AtProbability(), mirrored), scores, values);
+        PieceRows.Read(new AtScore(AtProbability(), mirrored, pieces, min, max), scores, values);
 
     public override void Quantile(ReadOnlySpan<double> p, Span<double> values) => Wide.Map(AtProbability(), p, values);
+
+    // The value at Φ(z).
+    private double Exact(double z) => AtProbability().Mirrored(Vector512.Create(NormalScore.Phi(mirrored ? -z : z))).ToScalar();
 
     private double MeanScore => (Density((min - mean) / sd) - Density((max - mean) / sd)) / held;
 
@@ -79,9 +85,15 @@ internal sealed class TruncatedNormalMarginal : Marginal
         }
     }
 
-    private readonly struct AtScore(Truncated truncated, bool mirrored) : IWideFunction
+    private readonly ref struct AtScore(Truncated truncated, bool mirrored, ReadOnlySpan<double> pieces, double min, double max) : IPiecewise
     {
+        private readonly ReadOnlySpan<double> pieces = pieces;
+
         [MethodImpl(MethodImplOptions.AggressiveInlining)]
-        public Vector512<double> At(Vector512<double> x) => truncated.Mirrored(new NormalCdf().At(mirrored ? -x : x));
+        public Vector512<double> Within(Vector512<double> scores) => Vector512.MinNative(
+            Vector512.MaxNative(ScorePieces.At(pieces, scores), Vector512.Create(min)), Vector512.Create(max));
+
+        public Vector512<double> Everywhere(Vector512<double> scores, Vector512<double> beyond) => Vector512.ConditionalSelect(
+            beyond, truncated.Mirrored(default(NormalCdf).At(mirrored ? -scores : scores)), Within(scores));
     }
 }

@@ -10,9 +10,10 @@ public sealed class ReadTests
 {
     public static TheoryData<Distribution> Closed =>
     [
-        new Constant(3), new Normal(10, 3), new Normal(10, 5, 0), new Normal(10, 5, null, 12), new Normal(10, 5, 14, 16), new Normal(10, 5, -3, 4),
+        new Constant(3), new Normal(10, 3),
         new LognormalByMoments(100, 30), new LognormalByPercentiles(80, 150, 10, 90),
         new Percentiles([new(0, 80), new(10, 90), new(50, 100), new(90, 130), new(100, 160)]),
+        new Percentiles([.. Enumerable.Range(0, 41).Select(i => new PercentilePoint(2.5 * i, i * i))]),
     ];
 
     public static TheoryData<Distribution> InPieces =>
@@ -37,12 +38,53 @@ public sealed class ReadTests
         }
     }
 
+    [Theory]
+    [InlineData(0.0, null)]
+    [InlineData(null, 12.0)]
+    [InlineData(14.0, 16.0)]
+    [InlineData(-3.0, 4.0)]
+    [InlineData(-10.0, 30.0)]
+    [InlineData(-5.0, 27.0)]
+    [InlineData(-7.5, null)]
+    [InlineData(-30.0, 45.0)]
+    [InlineData(60.0, null)]
+    [InlineData(-90.0, -60.0)]
+    [InlineData(9.999, 10.001)]
+    public void Truncated_normal_pieces_keep_their_stated_error(double? min, double? max)
+    {
+        var marginal = Marginal.Of(new Normal(10, 5, min, max));
+        var range = marginal.Quantile(0.999) - marginal.Quantile(0.001);
+        var scores = Scores(-7, 7, 0.00137);
+        var values = new double[scores.Length];
+        marginal.Read(scores, values);
+        for (var i = 0; i < scores.Length; i++)
+        {
+            var p = NormalScore.Phi(scores[i]);
+            var blur = Math.Abs(marginal.Quantile(p) - marginal.Quantile(p * (1 - 2e-16)));
+            Assert.InRange(values[i], marginal.Quantile(p) - 1e-6 * range - 4 * blur, marginal.Quantile(p) + 1e-6 * range + 4 * blur);
+        }
+    }
+
+    [Fact]
+    public void Many_outcomes_change_at_their_cumulative_probability()
+    {
+        var scores = Scores(-5, 5, 0.0037);
+        foreach (var count in new[] { 2, 3, 24, 25, 100 })
+        {
+            var marginal = Marginal.Of(new Discrete([.. Enumerable.Range(0, count).Select(i => new Outcome(i, 1.0 / count))]));
+            var values = new double[scores.Length];
+            marginal.Read(scores, values);
+            for (var i = 0; i < scores.Length; i++)
+                Assert.Equal(Math.Floor(NormalScore.Phi(scores[i]) * count), values[i]);
+        }
+    }
+
     // A row with scores beyond the pieces, of a length that no register divides, in place: each value as if it stood alone.
     [Fact]
     public void Neighbours_do_not_matter()
     {
         double[] scores = [.. Scores(-0.9, 0.9, 0.05), -3.999, 3.999, 0.1, 0.2, 5, .. Scores(-8.2, 8.2, 0.77), 12, -12, 0.3];
-        foreach (var stated in InPieces.Select(row => row.Data).Append(new Pert(2, 5, 14)).Append(new Pert(2, 5, 14, 7.3)))
+        foreach (var stated in InPieces.Select(row => row.Data).Append(new Pert(2, 5, 14)).Append(new Pert(2, 5, 14, 7.3)).Append(new Normal(10, 5, 0)))
         {
             var marginal = Marginal.Of(stated);
             var (values, single) = (scores.ToArray(), new double[1]);
