@@ -1,4 +1,5 @@
 using Portfolio.Server.Access;
+using Portfolio.Server.Audit;
 using Portfolio.Server.Demo.Start;
 using Portfolio.Server.Documents;
 using Portfolio.Server.Endpoints;
@@ -11,6 +12,9 @@ using Portfolio.Server.Problems;
 using Portfolio.Server.Results;
 using Portfolio.Server.Runs;
 using Portfolio.Server.Telemetry;
+
+if (VerifyAudit.IsAsked(args))
+    return await VerifyAudit.RunAsync(args, Console.Out, Console.Error);
 
 var builder = WebApplication.CreateBuilder(args);
 #pragma warning disable RS0030 // The one place where the system's clock comes in.
@@ -45,8 +49,11 @@ app.MapApiDescription();
 
 var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToMediaTypes().OnceOnly();
 api.MapPortfolios();
+api.MapKeys();
+api.MapAudit();
 
 var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
+portfolio.MapPortfolio();
 portfolio.MapDocument();
 portfolio.MapSettings();
 portfolio.MapProjects();

@@ -9,7 +9,10 @@ public sealed class StoreTransaction
     private readonly DbTransaction transaction;
     private readonly Action<string>? beforeStatement;
 
-    static StoreTransaction() => DefaultTypeMap.MatchNamesWithUnderscores = true;
+    static StoreTransaction() => MatchColumns();
+
+    /// <summary>Columns called a_b are read into members called AB.</summary>
+    internal static void MatchColumns() => DefaultTypeMap.MatchNamesWithUnderscores = true;
 
     /// <param name="transaction">Open; committed by whoever made it.</param>
     /// <param name="now">The one instant that all rows of the transaction carry, microseconds.</param>

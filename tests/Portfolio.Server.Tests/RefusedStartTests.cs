@@ -16,8 +16,17 @@ public sealed class RefusedStartTests : IDisposable
     [InlineData("Limits__DocumentBody", "large", "Limits:DocumentBody")]
     [InlineData("Storage__Postgres", "the server in the cellar", "Storage:Postgres is no connection string")]
     [InlineData("Storage__Postgres", "Host=127.0.0.1;Port=1;Database=d", "The storage cannot be used: Failed to connect to 127.0.0.1:1")]
+    [InlineData("Security__Oidc__Authority", "http://issuer.invalid", "must be an https address. Security:Oidc:Audience is missing")]
     public async Task AWrongSettingIsNamed(string key, string value, string said) =>
         Assert.Contains(said, await WhyAsync((key, value)), StringComparison.Ordinal);
+
+    [Theory]
+    [InlineData("none")]
+    [InlineData("HS256,RS256")]
+    public async Task OnlySignaturesOfTheIssuerAloneCanBeAllowed(string algorithms) =>
+        Assert.StartsWith("Security:Oidc:Algorithms may name RS256", await WhyAsync(
+            ("Security__Oidc__Authority", "https://issuer.invalid"), ("Security__Oidc__Audience", "portfolio"),
+            ("Security__Oidc__Algorithms", algorithms)));
 
     [Fact]
     public async Task AFolderThatAnotherProcessHasIsNamed()

@@ -2,6 +2,7 @@ using System.Threading.RateLimiting;
 using Microsoft.AspNetCore.Authentication;
 using Microsoft.AspNetCore.Authorization;
 using Microsoft.Extensions.Options;
+using Portfolio.Server.Access.Tokens;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Problems;
 using Portfolio.Store.Access;
@@ -11,10 +12,15 @@ namespace Portfolio.Server.Access;
 /// <summary>Keys, rights and the rate of each key. Whatever does not say otherwise needs a valid key.</summary>
 internal static class AccessSetup
 {
+    private const string EitherScheme = "KeyOrToken";
+
     public static void AddAccess(this IServiceCollection services)
     {
-        services.AddAuthentication(KeyAuthentication.SchemeName)
-            .AddScheme<AuthenticationSchemeOptions, KeyAuthentication>(KeyAuthentication.SchemeName, null);
+        services.AddAuthentication(EitherScheme)
+            .AddPolicyScheme(EitherScheme, null, either => either.ForwardDefaultSelector = context =>
+                TokenSetup.IsPresented(context) ? TokenSetup.SchemeName : KeyAuthentication.SchemeName)
+            .AddScheme<AuthenticationSchemeOptions, KeyAuthentication>(KeyAuthentication.SchemeName, null)
+            .AddTokens();
         services.AddAuthorization(options => options.FallbackPolicy = options.DefaultPolicy);
         services.AddSingleton<IAuthorizationHandler, RightHandler>();
         services.AddSingleton<IAuthorizationMiddlewareResultHandler, RightsOutcome>();

@@ -1,15 +1,14 @@
-using System.Security.Cryptography;
+using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Access;
 
 /// <summary>The key of the first administrator, left in a file that only the server's user can read.</summary>
 internal static class FirstKey
 {
-    /// <summary>Makes a key of 256 random bits, writes it to the file and returns it.</summary>
+    /// <summary>Makes a key, writes it to the file and returns it.</summary>
     public static string Write(string path)
     {
-        var id = Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(8));
-        var key = $"pk_{id}_{Convert.ToHexStringLower(RandomNumberGenerator.GetBytes(32))}";
+        var key = KeySecret.New(KeySecret.NewId());
         MakeFolder(Path.GetDirectoryName(path)!);
         File.Delete(path);
         var options = new FileStreamOptions { Mode = FileMode.CreateNew, Access = FileAccess.Write };

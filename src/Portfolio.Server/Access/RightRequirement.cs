@@ -4,7 +4,8 @@ using Portfolio.Store.Access;
 namespace Portfolio.Server.Access;
 
 /// <summary>
-/// The rights of which a route needs one on the portfolio in its address, or on some project of it: the store decides about single projects.
+/// The rights of which a route needs one on the portfolio in its address, or on some project of it: the store decides about single
+/// projects. Where the address names no portfolio: on everything.
 /// </summary>
 internal sealed record RightRequirement(params Right[] Rights) : IAuthorizationRequirement;
 
@@ -19,10 +20,12 @@ internal sealed class RightHandler : AuthorizationHandler<RightRequirement>
     {
         if (context.User.Identity is not CallerIdentity { Caller: var caller } || context.Resource is not HttpContext http)
             return Task.CompletedTask;
-        var portfolio = http.GetRouteValue("portfolio") as string ?? Grant.Everywhere;
-        if (requirement.Rights.Any(right => caller.HoldsSomewhere(right, portfolio)))
+        var portfolio = http.GetRouteValue("portfolio") as string;
+        if (requirement.Rights.Any(right => portfolio is null
+            ? caller.Holds(right, Grant.Everywhere)
+            : caller.HoldsSomewhere(right, portfolio)))
             context.Succeed(requirement);
-        else if (portfolio != Grant.Everywhere && !caller.Knows(portfolio))
+        else if (portfolio is not null && !caller.Knows(portfolio))
             context.Fail(new AuthorizationFailureReason(this, Stranger));
         return Task.CompletedTask;
     }

@@ -1,5 +1,6 @@
 using System.Text.Json;
 using System.Text.Json.Serialization;
+using Portfolio.Server.Contracts.Keys;
 using Portfolio.Server.Contracts.Portfolios;
 using Portfolio.Server.Contracts.Runs;
 using Portfolio.Server.Contracts.Schedules;
@@ -12,6 +13,7 @@ namespace Portfolio.Server.Contracts;
     DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull)]
 [JsonSerializable(typeof(ProblemJson))]
 [JsonSerializable(typeof(PageJson<PortfolioEntryJson>))]
+[JsonSerializable(typeof(PortfolioEntryJson))]
 [JsonSerializable(typeof(PageJson<RevisionJson>))]
 [JsonSerializable(typeof(PageJson<ProjectEntryJson>))]
 [JsonSerializable(typeof(PageJson<ChangeJson>))]
@@ -23,4 +25,8 @@ namespace Portfolio.Server.Contracts;
 [JsonSerializable(typeof(RunProgressJson))]
 [JsonSerializable(typeof(ScheduleJson))]
 [JsonSerializable(typeof(ScheduleStandingJson))]
+[JsonSerializable(typeof(KeyRequestJson))]
+[JsonSerializable(typeof(RotationJson))]
+[JsonSerializable(typeof(PageJson<KeyJson>))]
+[JsonSerializable(typeof(PageJson<AuditEntryJson>))]
 internal sealed partial class ApiContext : JsonSerializerContext;

@@ -48,7 +48,7 @@ internal static class ScheduleEndpoints
             SchedulePutOutcome.Stored or SchedulePutOutcome.Unchanged =>
                 TypedResults.Ok(await standing.OfAsync(user.Caller(), result.Schedule!, cancellation)),
             SchedulePutOutcome.Forbidden => Problem.Forbidden(),
-            SchedulePutOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
+            SchedulePutOutcome.Archived => Problem.Archived(),
             _ => Problem.NotFound(),
         };
     }

@@ -16,7 +16,7 @@ internal static class Written
         WriteOutcome.Accepted or WriteOutcome.Unchanged => Done(http, portfolio, result, tag, creates || result.Created),
         WriteOutcome.Refused => (Problem)result.Refusal!,
         WriteOutcome.Forbidden => Problem.Forbidden(),
-        WriteOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer written."),
+        WriteOutcome.Archived => Problem.Archived(),
         _ => Problem.NotFound(),
     };
 

@@ -13,6 +13,7 @@ internal static class OptionsSetup
                 "Storage:Postgres is no connection string (Host=…;Username=…;Password=…;Database=…).")
             .ValidateOnStart();
         services.AddOptions<SecurityOptions>().BindConfiguration(SecurityOptions.Section).ValidateDataAnnotations().ValidateOnStart();
+        services.AddOptions<OidcOptions>().BindConfiguration(OidcOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.AddOptions<LimitOptions>().BindConfiguration(LimitOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.AddOptions<RoleOptions>().BindConfiguration("").ValidateDataAnnotations().ValidateOnStart();
     }

@@ -23,8 +23,10 @@ internal static class StorageSetup
     {
         services.AddSingleton(Open);
         services.AddSingleton<KeyStore>();
+        services.AddSingleton<PersonStore>();
         services.AddSingleton<AuditStore>();
         services.AddSingleton<DocumentStore>();
+        services.AddSingleton<PortfolioArchive>();
         services.AddSingleton<RunStore>();
         services.AddSingleton<RunRequests>();
         services.AddSingleton<RunClaims>();

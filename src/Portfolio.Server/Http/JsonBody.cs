@@ -8,6 +8,9 @@ namespace Portfolio.Server.Http;
 /// <summary>Small JSON bodies, read so that whatever is wrong with them is said with its place.</summary>
 internal static class JsonBody
 {
+    /// <summary>RFC 7396.</summary>
+    public const string MergePatch = "application/merge-patch+json";
+
     private const int Depth = 16;
 
     /// <summary>The body; null when there is none.</summary>

@@ -33,6 +33,9 @@ internal sealed class NamedWrite
     /// <summary>The answer that was kept with the effect; null as long as there is none.</summary>
     public KeptAnswer? Kept { get; private set; }
 
+    /// <summary>True when the first answer says more than what was kept of it: then it is the handler's own that is given first.</summary>
+    public bool KeptInPart { get; private set; }
+
     /// <summary>Null for a read, and for a write without the header.</summary>
     /// <exception cref="RequestRefused">The header is no key (400).</exception>
     public static NamedWrite? Of(HttpContext http)
@@ -57,6 +60,13 @@ internal sealed class NamedWrite
         var made = await GivenAnswer.MakeAsync(http, body.Digest, answer);
         await AnswerStore.KeepAsync(open, Key, made);
         Kept = made;
+    }
+
+    /// <summary>Keeps the answer without a secret that only the first one may show.</summary>
+    public async Task KeepInPartAsync(StoreTransaction open, Func<HttpContext, Task<IResult>> answer)
+    {
+        await KeepAsync(open, answer);
+        KeptInPart = true;
     }
 
     /// <summary>The first answer for an equal request, a refusal for another.</summary>
@@ -94,4 +104,12 @@ internal static class JoiningWrites
     /// <inheritdoc cref="Remembers{T}(HttpContext, Func{HttpContext, T, Task{IResult}})"/>
     public static Func<StoreTransaction, T, CancellationToken, Task>? Remembers<T>(
         this HttpContext http, Func<HttpContext, T, IResult> answer) => http.Remembers<T>((to, result) => Task.FromResult(answer(to, result)));
+
+    /// <summary>The same for an answer whose first giving shows a secret, which is kept nowhere.</summary>
+    /// <param name="answer">Makes the answer without it.</param>
+    public static Func<StoreTransaction, T, CancellationToken, Task>? RemembersWithoutSecret<T>(
+        this HttpContext http, Func<HttpContext, T, IResult> answer) =>
+        http.Features.Get<NamedWrite>() is { } write
+            ? (open, result, _) => write.KeepInPartAsync(open, to => Task.FromResult(answer(to, result)))
+            : null;
 }

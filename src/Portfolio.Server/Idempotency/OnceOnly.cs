@@ -36,6 +36,8 @@ internal sealed class OnceOnly(AnswerStore answers, WritesAtWork atWork, IOption
         try
         {
             var answer = await next(context);
+            if (write.KeptInPart)
+                return answer;
             // Refused, perhaps only because another process has just done the same.
             return write.Kept is { } kept ? new GivenAnswer(kept, again: false) : await AgainAsync(write, context) ?? answer;
         }

@@ -9,6 +9,8 @@ internal static class DescribeApi
     private static readonly Dictionary<string, string> Tags = new(StringComparer.Ordinal)
     {
         ["Portfolios"] = "What there is for a key to see.",
+        ["Keys"] = "Who may do what.",
+        ["Audit"] = "Who did what, refused attempts included.",
         ["Document"] = "Settings and projects as the office states them, whole.",
         ["Parts"] = "Settings, projects and activities, each at an address of its own; whatever they touch elsewhere is checked with them.",
         ["Updates"] = "What other systems report, as JSON or as a table.",

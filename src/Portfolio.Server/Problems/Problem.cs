@@ -1,5 +1,6 @@
 using System.Diagnostics;
 using Portfolio.Model.Faults;
+using Portfolio.Server.Audit;
 using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Json;
 
@@ -19,10 +20,12 @@ internal sealed class Problem(int status, string slug, string title, string? det
 
     public IReadOnlyList<FaultJson>? Faults { get; init; }
 
-    public Task ExecuteAsync(HttpContext context)
+    public async Task ExecuteAsync(HttpContext context)
     {
+        // Every refusal passes here, whoever found it, so this is where refused writes are told.
+        await RefusedWrites.TellAsync(context, this);
         context.Response.StatusCode = Status;
-        return context.Response.WriteAsJsonAsync(
+        await context.Response.WriteAsJsonAsync(
             new ProblemJson
             {
                 Type = "/problems/" + Slug,
@@ -72,6 +75,9 @@ internal sealed class Problem(int status, string slug, string title, string? det
     public static Problem NotFound(string? detail = null) => new(404, "not-found", "There is no such thing here", detail);
 
     public static Problem Conflict(string slug, string title, string? detail = null) => new(409, slug, title, detail);
+
+    public static Problem Archived() =>
+        Conflict("archived", "The portfolio is archived", "It can be read, but no longer written or run, and its id is not used again.");
 
     public static Problem PreconditionFailed() => new(412, "precondition-failed", "What is there has changed",
         "The ETag in If-Match is not that of what is there now. Read it again first.");

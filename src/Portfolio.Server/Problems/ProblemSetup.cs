@@ -1,3 +1,4 @@
+using Portfolio.Server.Audit;
 using Portfolio.Server.Contracts;
 
 namespace Portfolio.Server.Problems;
@@ -8,6 +9,7 @@ internal static class ProblemSetup
     public static void AddProblems(this IServiceCollection services)
     {
         services.Configure<RouteHandlerOptions>(options => options.ThrowOnBadRequest = true);
+        services.AddSingleton<RefusedWrites>();
         services.AddExceptionHandler<ExceptionProblems>();
     }
 

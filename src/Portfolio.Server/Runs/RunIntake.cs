@@ -87,7 +87,7 @@ internal sealed class RunIntake(
     private static Problem Why(RunRequestResult result, NewRun run) => result.Outcome switch
     {
         RunRequestOutcome.Forbidden => Problem.Forbidden(),
-        RunRequestOutcome.Archived => Problem.Conflict("archived", "The portfolio is archived", "It can be read, but no longer run."),
+        RunRequestOutcome.Archived => Problem.Archived(),
         RunRequestOutcome.QueueFull => new Problem(
             429, "queue-full", "Too many runs wait",
             $"{run.MostQueued} runs of this portfolio are queued. Ask again after the time in Retry-After, or stop one of them."),

@@ -37,6 +37,22 @@ internal static class AuditChain
         await open.ExecuteAsync(InsertSql, entry with { Hash = HashOf(entry) });
     }
 
+    public const string AllSql = "select sequence, at, actor, action, object, detail, prev_hash, hash from audit order by sequence";
+
+    /// <summary>Recomputes the chain from entry 1.</summary>
+    /// <param name="entries">All of them, in the order of their numbers.</param>
+    public static async Task<AuditVerification> VerifyAsync(IAsyncEnumerable<AuditRow> entries, CancellationToken cancellation)
+    {
+        var (sequence, head) = (0L, Genesis);
+        await foreach (var entry in entries.WithCancellation(cancellation))
+        {
+            if (entry.Sequence != sequence + 1 || entry.PrevHash != head || entry.Hash != HashOf(entry))
+                return new AuditVerification(sequence, sequence + 1, head);
+            (sequence, head) = (entry.Sequence, entry.Hash);
+        }
+        return new AuditVerification(sequence, null, head);
+    }
+
     public static string HashOf(AuditRow entry)
     {
         using var hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);

@@ -22,8 +22,21 @@ public sealed partial class DocumentStore(Database database)
         var rows = await database.ReadAsync(
             open => open.ListAsync<PortfolioRow>(
                 ListSql, new { Caller = caller.KeyId, open.Now, After = after, Limit = limit }), cancellation);
-        return [.. rows.Select(row => new PortfolioEntry(row.Id, row.Number, row.CreatedAt.ToInstant(), row.ArchivedAt.ToInstant()))];
+        return [.. rows.Select(row => row.ToEntry())];
     }
+
+    private static readonly string FindEntrySql = $"""
+        select p.id, p.created_at, p.archived_at, (select max(r.number) from revision r where r.portfolio = p.id) as number
+        from portfolio p where p.id = @Portfolio and {Granted.Any("p.id")}
+        """;
+
+    /// <summary>One portfolio as listed; null without any grant on it.</summary>
+    public Task<PortfolioEntry?> FindEntryAsync(Caller caller, string portfolio, CancellationToken cancellation) =>
+        database.ReadAsync(open => FindEntryAsync(open, caller, portfolio), cancellation);
+
+    internal static async Task<PortfolioEntry?> FindEntryAsync(StoreTransaction open, Caller caller, string portfolio) =>
+        (await open.FirstAsync<PortfolioRow>(
+            FindEntrySql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio }))?.ToEntry();
 
     private static readonly string PartsSql = $"""
         select v.project, c.hash, c.bytes, c.size from revision_part v join part_content c on c.hash = v.hash
@@ -95,5 +108,7 @@ public sealed partial class DocumentStore(Database database)
         public long Number { get; init; }
         public long CreatedAt { get; init; }
         public long? ArchivedAt { get; init; }
+
+        public PortfolioEntry ToEntry() => new(Id, Number, CreatedAt.ToInstant(), ArchivedAt.ToInstant());
     }
 }

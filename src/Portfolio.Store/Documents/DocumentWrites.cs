@@ -63,8 +63,7 @@ public sealed partial class DocumentStore
         Caller caller, DocumentWrite write, Func<Head?, CancellationToken, Task<Proposal>> decide, Ahead? ahead,
         CancellationToken cancellation)
     {
-        var summary = "";
-        var result = await database.WriteAsync(
+        return await database.WriteAsync(
             async open =>
             {
                 var (standing, turned) = await TurnedAsync(open, caller, write);
@@ -74,16 +73,10 @@ public sealed partial class DocumentStore
                 var proposal = ahead?.Head?.Revision == head?.Revision ? ahead?.Proposal : null;
                 proposal ??= await decide(head, cancellation);
                 if (proposal is Refusal refusal)
-                {
-                    summary = refusal.Summary;
                     return new WriteResult(WriteOutcome.Refused) { Revision = head?.Revision ?? 0, Refusal = refusal.Reason };
-                }
                 return await AcceptAsync(open, caller, write, standing, head, PartPlan.Make(head?.Rows ?? [], (Change)proposal));
             },
             cancellation);
-        if (result.Outcome is not (WriteOutcome.Accepted or WriteOutcome.Unchanged))
-            await AuditRefusalAsync(caller, write, result.Outcome, summary, cancellation);
-        return result;
     }
 
     private const string ExistsSql = "select count(*) from portfolio where id = @Portfolio";
@@ -187,11 +180,6 @@ public sealed partial class DocumentStore
         var payload = new { result.Revision, changed = result.Changes.Select(change => change.Project) };
         await OutboxStore.AppendAsync(open, write.Portfolio, "revision.created", $"{result.Revision}", payload);
     }
-
-    private Task AuditRefusalAsync(
-        Caller caller, DocumentWrite write, WriteOutcome outcome, string summary, CancellationToken cancellation) =>
-        new AuditStore(database).AppendAsync(
-            caller, write.Action, ObjectOf(write), new { outcome = "refused", because = outcome.ToString(), summary }, cancellation);
 
     private static string ObjectOf(DocumentWrite write) => write.Object ?? $"portfolios/{write.Portfolio}";
 }

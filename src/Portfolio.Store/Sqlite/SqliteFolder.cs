@@ -16,7 +16,7 @@ internal sealed class SqliteFolder : IDisposable
         this.hold = hold;
         connectionString = new SqliteConnectionStringBuilder
         {
-            DataSource = Path.Combine(directory, FileName),
+            DataSource = FileIn(directory),
             ForeignKeys = true,
             Pooling = false,
             DefaultTimeout = 30,
@@ -24,6 +24,8 @@ internal sealed class SqliteFolder : IDisposable
     }
 
     private const string FileName = "portfolio.db";
+
+    public static string FileIn(string directory) => Path.Combine(directory, FileName);
 
     // What the systems say of a file that another process has locked: EWOULDBLOCK, ERROR_SHARING_VIOLATION.
     private const int WouldBlock = 11;
@@ -43,7 +45,7 @@ internal sealed class SqliteFolder : IDisposable
         catch (SqliteException unusable)
         {
             hold.Dispose();
-            throw new StoreDamagedException($"'{Path.Combine(directory, FileName)}' cannot be used: {unusable.Message}");
+            throw new StoreDamagedException($"'{FileIn(directory)}' cannot be used: {unusable.Message}");
         }
         catch
         {

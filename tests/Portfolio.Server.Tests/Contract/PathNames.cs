@@ -12,6 +12,7 @@ internal static class PathNames
         ["programme"] = "seen-programme",
         ["project"] = "seen",
         ["activity"] = "M",
+        ["key"] = "0123456789abcdef",
     };
 
     public static Dictionary<string, string> With(this IReadOnlyDictionary<string, string> names, string parameter, string value) =>

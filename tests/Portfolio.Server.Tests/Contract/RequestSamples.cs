@@ -11,6 +11,7 @@ internal sealed class RequestSamples(DescribedApi api, IReadOnlyDictionary<strin
     private static readonly Dictionary<string, string> Bodies = new()
     {
         ["Document"] = """{"settings":{"name":"Replaced","currency":"EUR"},"projects":[]}""",
+        ["KeyRequest"] = """{"name":"of a test","grants":[{"right":"read","portfolio":"nowhere"}]}""",
         ["Schedule"] = """{"cron":"30 4 * * *"}""",
     };
 

@@ -31,7 +31,11 @@ public sealed class PortfolioServer : IAsyncDisposable
             host.UseSetting("Logging:LogLevel:Default", "Warning");
             foreach (var (key, value) in settings)
                 host.UseSetting(key, value);
-            host.ConfigureTestServices(services => services.AddSingleton<TimeProvider>(Clock));
+            host.ConfigureTestServices(services =>
+            {
+                services.AddSingleton<TimeProvider>(Clock);
+                Outside(services);
+            });
         });
     }
 
@@ -39,6 +43,9 @@ public sealed class PortfolioServer : IAsyncDisposable
 
     /// <summary>2027-01-04T12:00Z, a Monday.</summary>
     public FakeTimeProvider Clock { get; } = new(new DateTimeOffset(2027, 1, 4, 12, 0, 0, TimeSpan.Zero));
+
+    /// <summary>Puts something in the place of the network outside.</summary>
+    public Action<IServiceCollection> Outside { get; init; } = _ => { };
 
     public IServiceProvider Services => factory.Services;
 

@@ -1,7 +1,9 @@
 using System.Net;
 using System.Text;
+using System.Text.RegularExpressions;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Runs;
+using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Idempotency;
 
@@ -26,6 +28,11 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         new("postUpdates", HttpMethod.Post, "updates", """{"updates":[{"project":"weir","name":"Weir"}]}"""),
         new("postRun", HttpMethod.Post, "runs", """{"iterations":10}"""),
         new("cancelRun", HttpMethod.Delete, "runs/{run}"),
+        new("archivePortfolio", HttpMethod.Delete, "/v1/portfolios/p"),
+        new("createKey", HttpMethod.Post, "/v1/keys", """{"name":"new","grants":[{"right":"read","portfolio":"p"}]}"""),
+        new("patchKey", HttpMethod.Patch, "/v1/keys/{key}", """{"name":"renamed"}""") { MediaType = Patch },
+        new("rotateKey", HttpMethod.Post, "/v1/keys/{key}/rotate", """{"overlapHours":1}"""),
+        new("revokeKey", HttpMethod.Delete, "/v1/keys/{key}"),
         new("putSchedule", HttpMethod.Put, "schedule", """{"cron":"30 2 * * *","iterations":20,"enabled":true}"""),
     }.ToDictionary(write => write.Operation);
 
@@ -33,7 +40,10 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
     /// <param name="key">The key of its own; null: without.</param>
     public async Task<Said> SendAsync(HttpClient client, string portfolio, string? key, string run = "")
     {
-        using var request = new HttpRequestMessage(Method, $"/v1/portfolios/{portfolio}/{Address.Replace("{run}", run)}");
+        var address = Address.StartsWith('/') ? Address : $"/v1/portfolios/{portfolio}/{Address.Replace("{run}", run)}";
+        if (address.Contains("{key}", StringComparison.Ordinal))
+            address = address.Replace("{key}", await OldestOtherKeyAsync(client), StringComparison.Ordinal);
+        using var request = new HttpRequestMessage(Method, address);
         if (Body is not null)
             request.Content = new StringContent(Body, Encoding.UTF8, MediaType);
         if (IfMatch is not null)
@@ -43,12 +53,17 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         return await Said.OfAsync(await client.SendAsync(request, TestContext.Current.CancellationToken));
     }
 
+    private static async Task<string> OldestOtherKeyAsync(HttpClient client) =>
+        (await (await client.ReadAsync("/v1/keys")).JsonAsync()).GetProperty("items").EnumerateArray()
+            .Single(key => key.Text("name") is "of a test" or "renamed").Text("id");
+
     /// <summary>A server on which every write finds what it needs in the portfolio <c>p</c>; its runs wait for ever.</summary>
     public static async Task<(PortfolioServer Server, HttpClient Client, string Run)> PrepareAsync()
     {
         var server = new PortfolioServer(null, ("Roles", "api"));
         var client = server.Client();
         await client.PutJsonAsync("/v1/portfolios/p/document", Samples.Document());
+        await server.ClientAsync(new Grant(Right.Read, "p"));
         return (server, client, await client.RunAsync("p"));
     }
 }
@@ -58,8 +73,8 @@ internal sealed record Said(HttpStatusCode Status, string Body, string? Tag, str
 {
     public bool Again { get; private init; }
 
-    /// <summary>Without whether it was said before.</summary>
-    public Said Words() => this with { Again = false };
+    /// <summary>Without whether it was said before, and without the text of a key, which is said once.</summary>
+    public Said Words() => this with { Again = false, Body = Regex.Replace(Body, ",\"secret\":\"[^\"]*\"", "") };
 
     public static async Task<Said> OfAsync(HttpResponseMessage answer) => new(
         answer.StatusCode, await answer.TextAsync(), answer.Tag(), answer.Headers.Location?.ToString(),

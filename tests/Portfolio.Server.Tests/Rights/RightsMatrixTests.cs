@@ -33,7 +33,7 @@ public sealed class RightsMatrixTests(TwoPortfolios scene) : IClassFixture<TwoPo
         var everything = new[] { new Grant(Right.Admin, Grant.Everywhere) };
         var expired = await keys.CreateAsync(Caller.System, "expired", everything, scene.Server.Clock.GetUtcNow().AddSeconds(1), Cancellation);
         var revoked = await keys.CreateAsync(Caller.System, "revoked", everything, expiresAt: null, Cancellation);
-        await keys.RevokeAsync(Caller.System, revoked!.Key.Id, Cancellation);
+        await keys.RevokeAsync(Caller.System, revoked!.Key.Id, null, Cancellation);
         scene.Server.Clock.Advance(TimeSpan.FromSeconds(2));
         string?[] headers =
         [

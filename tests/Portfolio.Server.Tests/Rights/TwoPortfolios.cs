@@ -29,8 +29,8 @@ public sealed class TwoPortfolios : IAsyncLifetime
     public async ValueTask InitializeAsync()
     {
         Api = new DescribedApi(await (await Admin.ReadAsync("/openapi.json")).TextAsync());
-        Mine = PathNames.Of("mine", await MakeAsync("mine", MarkOfMine));
-        Yours = PathNames.Of("yours", await MakeAsync("yours", MarkOfYours));
+        Mine = await MakeAsync("mine", MarkOfMine);
+        Yours = await MakeAsync("yours", MarkOfYours);
     }
 
     public ValueTask DisposeAsync() => Server.DisposeAsync();
@@ -38,13 +38,14 @@ public sealed class TwoPortfolios : IAsyncLifetime
     public Task<HttpClient> KeyAsync(Right right, string portfolio, params string[] projects) =>
         Server.ClientAsync(new Grant(right, portfolio, projects.Length > 0 ? projects : null));
 
-    private async Task<string> MakeAsync(string portfolio, string mark)
+    private async Task<Dictionary<string, string>> MakeAsync(string portfolio, string mark)
     {
         Assert.True((await Admin.PutJsonAsync($"/v1/portfolios/{portfolio}/document", Document(mark))).IsSuccessStatusCode);
         Assert.True((await Admin.PutJsonAsync($"/v1/portfolios/{portfolio}/schedule", """{"cron":"30 4 * * *"}""")).IsSuccessStatusCode);
-        await Server.Services.GetRequiredService<KeyStore>().CreateAsync(
+        var key = await Server.Services.GetRequiredService<KeyStore>().CreateAsync(
             Caller.System, mark, [new Grant(Right.Read, portfolio)], expiresAt: null, TestContext.Current.CancellationToken);
-        return (await Admin.SucceedAsync(portfolio, """{"iterations":10,"recorded":true}""")).Text("id");
+        var run = await Admin.SucceedAsync(portfolio, """{"iterations":10,"recorded":true}""");
+        return PathNames.Of(portfolio, run.Text("id")).With("key", key!.Key.Id);
     }
 
     private static string Document(string mark) => $$$"""

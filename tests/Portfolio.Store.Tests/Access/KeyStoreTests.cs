@@ -21,7 +21,7 @@ public abstract class KeyStoreTests(StoreKind kind)
         Assert.True(await store.Keys.HasAdministratorAsync(TestStore.Cancellation));
         var caller = await store.Keys.AuthenticateAsync(First, TestStore.Cancellation);
         Assert.True(caller!.Holds(Right.Admin, Grant.Everywhere));
-        Assert.Single(await store.Keys.ListAsync(caller, TestStore.Cancellation));
+        Assert.Single(await store.Keys.ListAsync(caller, null, 9, TestStore.Cancellation));
     }
 
     [Fact]
@@ -56,8 +56,10 @@ public abstract class KeyStoreTests(StoreKind kind)
         var expiring = (await store.Keys.CreateAsync(Caller.System, "soon", [new(Right.Admin, "*")], soon, TestStore.Cancellation))!;
         var revoked = (await store.Keys.CreateAsync(Caller.System, "gone", [new(Right.Read, "*")], null, TestStore.Cancellation))!;
         Assert.NotNull(await store.Keys.AuthenticateAsync(expiring.Secret, TestStore.Cancellation));
-        Assert.True(await store.Keys.RevokeAsync(Caller.System, revoked.Key.Id, TestStore.Cancellation));
-        Assert.False(await store.Keys.RevokeAsync(Caller.System, revoked.Key.Id, TestStore.Cancellation));
+        var ended = await store.Keys.RevokeAsync(Caller.System, revoked.Key.Id, null, TestStore.Cancellation);
+        Assert.Equal((KeyOutcome.Done, store.Clock.GetUtcNow()), (ended.Outcome, ended.Key!.RevokedAt));
+        store.Clock.Advance(TimeSpan.FromMinutes(1));
+        Assert.Equal(ended.Key!.RevokedAt, (await store.Keys.RevokeAsync(Caller.System, revoked.Key.Id, null, TestStore.Cancellation)).Key!.RevokedAt);
         Assert.Null(await store.Keys.AuthenticateAsync(revoked.Secret, TestStore.Cancellation));
         store.Clock.Advance(TimeSpan.FromHours(1));
         Assert.Null(await store.Keys.AuthenticateAsync(expiring.Secret, TestStore.Cancellation));
@@ -70,8 +72,8 @@ public abstract class KeyStoreTests(StoreKind kind)
         await using var store = await TestStore.OpenAsync(kind);
         var local = await store.CallerAsync(new Grant(Right.Admin, "works"));
         Assert.Null(await store.Keys.CreateAsync(local, "x", [], null, TestStore.Cancellation));
-        Assert.Empty(await store.Keys.ListAsync(local, TestStore.Cancellation));
-        Assert.False(await store.Keys.RevokeAsync(local, local.KeyId, TestStore.Cancellation));
+        Assert.Empty(await store.Keys.ListAsync(local, null, 9, TestStore.Cancellation));
+        Assert.Equal(KeyOutcome.Forbidden, (await store.Keys.RevokeAsync(local, local.KeyId, null, TestStore.Cancellation)).Outcome);
         Assert.Equal(local.KeyId, (await store.Keys.FindAsync(local, local.KeyId, TestStore.Cancellation))!.Id);
         var other = await store.CallerAsync(new Grant(Right.Read, "works"));
         Assert.Null(await store.Keys.FindAsync(local, other.KeyId, TestStore.Cancellation));
@@ -82,6 +84,6 @@ public abstract class KeyStoreTests(StoreKind kind)
     {
         await using var store = await TestStore.OpenAsync(kind);
         Assert.Null(await store.Keys.FindAsync(Caller.System, Caller.System.KeyId, TestStore.Cancellation));
-        Assert.False(await store.Keys.RevokeAsync(Caller.System, Caller.System.KeyId, TestStore.Cancellation));
+        Assert.Equal(KeyOutcome.NotFound, (await store.Keys.RevokeAsync(Caller.System, Caller.System.KeyId, null, TestStore.Cancellation)).Outcome);
     }
 }

@@ -90,10 +90,12 @@ public abstract class StrangerTests(StoreKind kind)
     {
         var (store, run) = await WithRunAsync();
         await using var _ = store;
+        // The last administrator's key could not be revoked.
+        await store.Keys.BootstrapAsync("an-administrator-key-of-more-than-32-characters", TestStore.Cancellation);
         var made = (await store.Keys.CreateAsync(Caller.System, "k", [new(Right.Admin, "*")], store.Clock.GetUtcNow().AddHours(1), TestStore.Cancellation))!;
         var caller = (await store.Keys.AuthenticateAsync(made.Secret, TestStore.Cancellation))!;
         if (revoked)
-            await store.Keys.RevokeAsync(Caller.System, made.Key.Id, TestStore.Cancellation);
+            await store.Keys.RevokeAsync(Caller.System, made.Key.Id, null, TestStore.Cancellation);
         else
             store.Clock.Advance(TimeSpan.FromHours(1));
         Assert.All((await ReadEverythingAsync(store, caller, run)).Values, found => Assert.Equal(0, found));
@@ -143,8 +145,7 @@ public abstract class StrangerTests(StoreKind kind)
         Assert.Equal(expected, result.Outcome);
         Assert.Equal(expected == WriteOutcome.Accepted ? 2 : 1, await store.CountAsync("revision"));
         var entry = (await store.Audit.ListAsync(Caller.System, null, 1, TestStore.Cancellation))[0];
-        Assert.Equal(
-            (caller.KeyId, expected == WriteOutcome.Accepted), (entry.Actor, entry.Detail.Contains("accepted", StringComparison.Ordinal)));
+        Assert.Equal(expected == WriteOutcome.Accepted, entry.Actor == caller.KeyId);
     }
 
     [Theory]

@@ -1,6 +1,7 @@
 using System.Security.Cryptography;
 using System.Text;
 using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
 using Portfolio.Store.Tests.Testing;
 
 namespace Portfolio.Store.Tests.Audit;
@@ -52,20 +53,27 @@ public abstract class AuditTests(StoreKind kind)
     }
 
     [Theory]
-    [InlineData("update audit set detail = '{\"number\":4}' where sequence = 3", 3)]
-    [InlineData("update audit set at = at + 1 where sequence = 1", 1)]
+    [InlineData("update audit set at = at + 1 where sequence = 3", 3)]
     [InlineData("update audit set actor = 'System' where sequence = 5", 5)]
     [InlineData("update audit set action = 'testt', object = 'hing/2' where sequence = 2", 2)]
+    [InlineData("update audit set object = object || '0' where sequence = 1", 1)]
+    [InlineData("update audit set detail = '{\"number\":4}' where sequence = 3", 3)]
+    [InlineData("update audit set prev_hash = hash where sequence = 4", 4)]
     [InlineData("update audit set hash = prev_hash where sequence = 2", 2)]
+    [InlineData("update audit set sequence = 9 where sequence = 5", 5)]
     [InlineData("delete from audit where sequence = 4", 4)]
     [InlineData("delete from audit where sequence = 1", 1)]
+    [InlineData("insert into audit select 6, at, actor, action, object, detail, hash, hash from audit where sequence = 5", 6)]
+    [InlineData(
+        "update audit set sequence = 9 where sequence = 3; update audit set sequence = 3 where sequence = 4; "
+        + "update audit set sequence = 4 where sequence = 9", 3)]
     public async Task Tampering_past_the_triggers_is_found_at_the_first_broken_entry(string tampering, long broken)
     {
         await using var store = await WithEntriesAsync(5);
         await store.RawAsync<long>($"{store.Place.DropAuditGuardsSql}; {tampering}");
         var found = await store.Audit.VerifyAsync(TestStore.Cancellation);
-        Assert.Equal(broken, found.FirstBroken);
-        Assert.Equal(broken - 1, found.Entries);
+        Assert.Equal((broken - 1, broken), (found.Entries, found.FirstBroken));
+        Assert.Equal(found, await store.Place.CheckAuditAsync());
     }
 
     [Fact]
@@ -83,7 +91,7 @@ public abstract class AuditTests(StoreKind kind)
     public async Task Only_administrators_of_everything_read_it_newest_first()
     {
         await using var store = await WithEntriesAsync(5);
-        var page = await store.Audit.ListAsync(Caller.System, before: 5, limit: 2, TestStore.Cancellation);
+        var page = await store.Audit.ListAsync(Caller.System, new AuditQuestion { Before = 5 }, 2, TestStore.Cancellation);
         Assert.Equal([4, 3], page.Select(entry => entry.Sequence));
         var stranger = await store.CallerAsync(new Grant(Right.Admin, "works"));
         Assert.Empty(await store.Audit.ListAsync(stranger, null, 10, TestStore.Cancellation));

@@ -69,7 +69,7 @@ public abstract class DocumentWriteTests(StoreKind kind)
     }
 
     [Fact]
-    public async Task A_refusal_keeps_nothing_but_its_audit_entry()
+    public async Task A_refusal_keeps_nothing()
     {
         await using var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"));
@@ -79,8 +79,7 @@ public abstract class DocumentWriteTests(StoreKind kind)
         Assert.Equal((WriteOutcome.Refused, 1), (result.Outcome, result.Revision));
         Assert.Same(reason, result.Refusal);
         Assert.Equal((1, 1), (await store.CountAsync("revision"), await store.CountAsync("outbox")));
-        var entry = (await store.Audit.ListAsync(Caller.System, null, 1, TestStore.Cancellation))[0];
-        Assert.Equal("""{"outcome":"refused","because":"Refused","summary":"3 faults"}""", entry.Detail);
+        Assert.Equal(1, await store.CountAsync("audit"));
     }
 
     [Fact]

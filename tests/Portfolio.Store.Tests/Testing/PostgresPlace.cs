@@ -1,6 +1,7 @@
 using System.Data.Common;
 using Microsoft.Extensions.Time.Testing;
 using Npgsql;
+using Portfolio.Store.Audit;
 using Portfolio.Store.Postgres;
 using Portfolio.Store.Tests.Testing;
 
@@ -66,6 +67,8 @@ internal sealed class PostgresPlace : TestPlace
     public override string WithoutReferencesSql => "set session_replication_role = replica";
 
     public override string DropAuditGuardsSql => "drop trigger audit_no_update on audit; drop trigger audit_no_delete on audit";
+
+    public override Task<AuditVerification> CheckAuditAsync() => AuditCheck.OfPostgresAsync(ConnectionString, TestStore.Cancellation);
 
     public override async ValueTask DisposeAsync() => await OnServerAsync($"drop database {name} with (force)");
 

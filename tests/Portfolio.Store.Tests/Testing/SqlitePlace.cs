@@ -1,5 +1,6 @@
 using System.Data.Common;
 using Microsoft.Data.Sqlite;
+using Portfolio.Store.Audit;
 using Portfolio.Store.Sqlite;
 
 namespace Portfolio.Store.Tests.Testing;
@@ -28,6 +29,8 @@ internal sealed class SqlitePlace(string? folder = null) : TestPlace
     public override string WithoutReferencesSql => "pragma foreign_keys = off";
 
     public override string DropAuditGuardsSql => "drop trigger audit_no_update; drop trigger audit_no_delete";
+
+    public override Task<AuditVerification> CheckAuditAsync() => AuditCheck.OfFolderAsync(Folder, TestStore.Cancellation);
 
     public override ValueTask DisposeAsync()
     {

@@ -1,4 +1,5 @@
 using System.Data.Common;
+using Portfolio.Store.Audit;
 
 namespace Portfolio.Store.Tests.Testing;
 
@@ -34,6 +35,9 @@ internal abstract class TestPlace : IAsyncDisposable
     public abstract string WithoutReferencesSql { get; }
 
     public abstract string DropAuditGuardsSql { get; }
+
+    /// <summary>From outside, as an auditor does beside a server that is running.</summary>
+    public abstract Task<AuditVerification> CheckAuditAsync();
 
     public abstract ValueTask DisposeAsync();
 }
