@@ -47,7 +47,7 @@ public sealed class AuditEndpointTests(ServerFixture fixture) : IClassFixture<Se
         {
             var address = "/" + route.RoutePattern.RawText!.TrimStart('/').Replace("{portfolio}", "many", StringComparison.Ordinal);
             var last = Number((await EntriesAsync("limit=1"))[0]);
-            var response = await reader.SendAsync(new HttpMethod(method), address, method == "DELETE" ? null : "{}");
+            var response = await reader.WriteAsync(new HttpMethod(method), address, method == "DELETE" ? null : "{}");
             Assert.InRange((int)response.StatusCode, 400, 499);
             var entry = Assert.Single(await EntriesAsync(), entry => Number(entry) > last);
             Assert.Equal((int)response.StatusCode, entry.GetProperty("detail").GetProperty("status").GetInt32());
@@ -65,7 +65,7 @@ public sealed class AuditEndpointTests(ServerFixture fixture) : IClassFixture<Se
     {
         await admin.PutJsonAsync("/v1/portfolios/why/document", Samples.Document());
         var before = (await EntriesAsync("portfolio=why")).Count;
-        var response = await admin.SendAsync(new HttpMethod(method), "/v1/portfolios/why/" + address, json);
+        var response = await admin.WriteAsync(new HttpMethod(method), "/v1/portfolios/why/" + address, json);
         Assert.Equal(status, (int)response.StatusCode);
         var entries = await EntriesAsync("portfolio=why");
         Assert.Equal((before + 1, status), (entries.Count, entries[0].GetProperty("detail").GetProperty("status").GetInt32()));

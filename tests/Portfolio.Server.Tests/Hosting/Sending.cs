@@ -6,7 +6,7 @@ namespace Portfolio.Server.Tests.Hosting;
 /// <summary>Writes other than PUT.</summary>
 internal static class Sending
 {
-    public static Task<HttpResponseMessage> SendAsync(
+    public static Task<HttpResponseMessage> WriteAsync(
         this HttpClient client, HttpMethod method, string address, string? json = null, string type = "application/json", string? ifMatch = null)
     {
         var request = new HttpRequestMessage(method, address);
@@ -18,11 +18,11 @@ internal static class Sending
     }
 
     public static Task<HttpResponseMessage> PostJsonAsync(this HttpClient client, string address, string? json = null) =>
-        client.SendAsync(HttpMethod.Post, address, json);
+        client.WriteAsync(HttpMethod.Post, address, json);
 
     public static Task<HttpResponseMessage> MergeAsync(this HttpClient client, string address, string json) =>
-        client.SendAsync(HttpMethod.Patch, address, json, "application/merge-patch+json");
+        client.WriteAsync(HttpMethod.Patch, address, json, "application/merge-patch+json");
 
     public static Task<HttpResponseMessage> RemoveAsync(this HttpClient client, string address, string? ifMatch = null) =>
-        client.SendAsync(HttpMethod.Delete, address, ifMatch: ifMatch);
+        client.WriteAsync(HttpMethod.Delete, address, ifMatch: ifMatch);
 }
