@@ -38,7 +38,8 @@ builder.Services.AddDemo(args);
 builder.Services.AddApiDescription();
 builder.RestWhenDescribing();
 
-var app = builder.Build();
+if (builder.BuildOrSayWhyNot() is not { } app)
+    return Starting.CannotStart;
 app.UseHeads();
 app.UseProblems();
 app.UseRouting();

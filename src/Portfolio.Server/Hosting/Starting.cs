@@ -6,7 +6,22 @@ namespace Portfolio.Server.Hosting;
 /// <summary>Runs the server until it is told to stop; why it cannot start is said in one line, not as a crash.</summary>
 internal static class Starting
 {
-    private const int CannotStart = 1;
+    /// <summary>The exit code.</summary>
+    public const int CannotStart = 1;
+
+    /// <summary>Null when a setting that the web server is made with cannot be read.</summary>
+    public static WebApplication? BuildOrSayWhyNot(this WebApplicationBuilder builder)
+    {
+        try
+        {
+            return builder.Build();
+        }
+        catch (Exception refused) when (Why(refused) is { } line)
+        {
+            Console.Error.WriteLine(line);
+            return null;
+        }
+    }
 
     public static async Task<int> RunToEndAsync(this WebApplication app)
     {
