@@ -29,6 +29,7 @@ internal static class ApiDescription
             description.AddDocumentTransformer(DescribeApi.Apply);
             description.AddOperationTransformer(DescribeCsv.Apply);
             description.AddOperationTransformer(DescribeDates.Apply);
+            description.AddOperationTransformer(DescribeParameters.Apply);
             description.AddOperationTransformer(DescribeHeaders.Apply);
             description.AddOperationTransformer(DescribeRights.Apply);
             description.AddOperationTransformer(DescribeIdempotency.Apply);

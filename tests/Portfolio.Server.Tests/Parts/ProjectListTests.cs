@@ -42,6 +42,24 @@ public sealed class ProjectListTests(ServerFixture fixture) : IClassFixture<Serv
     }
 
     [Fact]
+    public async Task OutlinesOutliveTheProcess()
+    {
+        var directory = Directory.CreateTempSubdirectory("portfolio-").FullName;
+        await using (var server = new PortfolioServer(directory))
+            await server.Client().PortfolioAsync("again");
+        await using (var server = new PortfolioServer(directory))
+        {
+            var (again, at) = (server.Client(), "/v1/portfolios/again");
+            Assert.Equal([("activity.unknown", "quay/B20", ""), ("activity.unknown", "weir/A20", "")], await (await again.RemoveAsync(at + "/projects/quay/activities/B10", "*")).RefusedAsync());
+            Assert.Equal([("demand.never-fits", "weir/A10", "")], await (await again.PutJsonAsync(at + "/settings", PartCalls.Settings.Replace("\"capacity\":2", "\"capacity\":1"), "*")).RefusedAsync());
+            await (await again.PutJsonAsync(at + "/settings", PartCalls.Settings.Replace("Harbour", "Works"), "*")).WrittenAsync(200, 2);
+            var weir = (await (await again.ReadAsync(at + "/projects")).JsonAsync()).GetProperty("items")[0];
+            Assert.Equal(("Weir", "river", 2), (weir.GetProperty("name").GetString(), weir.GetProperty("programme").GetString(), weir.GetProperty("activities").GetInt32()));
+        }
+        Directory.Delete(directory, recursive: true);
+    }
+
+    [Fact]
     public async Task WhatWasStoredWithoutOutlinesIsReadFromTheContent()
     {
         ProposedPart[] parts = [Part("", PartCalls.Settings), Part("weir", PartCalls.Weir), Part("quay", PartCalls.Quay)];
