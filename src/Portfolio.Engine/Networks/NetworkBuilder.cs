@@ -28,10 +28,11 @@ internal static class NetworkBuilder
             projectStart[p + 1] = a;
         }
         var links = Links(projects, activities, projectOf, index, out var linkStart);
-        var calendars = Calendars(document);
+        var used = InUse(document);
+        var calendars = Calendars(document, used);
         var (fork, branch) = Forks(projects, index, n);
         var (successorStart, successors) = Successors(n, links, linkStart);
-        var scale = Scale(document, calendars);
+        var scale = Scale(used, calendars);
         WorkTime CalendarOf(string? id) => scale.Working ? scale : calendars[id ?? document.Settings.DefaultCalendar];
         return new Network
         {
@@ -93,26 +94,34 @@ internal static class NetworkBuilder
     }
 
     // The calendars in use. Minutes mean the same on each of them, so any can be the scale of a network with several.
-    private static Dictionary<string, WorkTime> Calendars(PortfolioDocument document)
+    private static Dictionary<string, WorkTime> Calendars(PortfolioDocument document, string[] used)
     {
         var first = document.Projects.Select(p => p.StatusDate)
             .Concat(document.Projects.SelectMany(p => p.Activities)
                 .SelectMany(a => new[] { a.ActualStart, a.ActualFinish }).OfType<DateOnly>())
             .DefaultIfEmpty(new DateOnly(1970, 1, 1)).Min();
-        var used = document.Projects.SelectMany(p => p.Activities.Select(a => a.Calendar ?? p.Calendar).Append(p.Calendar))
-            .Select(id => id ?? document.Settings.DefaultCalendar).Append(document.Settings.DefaultCalendar).ToHashSet(StringComparer.Ordinal);
-        return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay).Where(c => used.Contains(c.Id))
+        var kept = used.Append(document.Settings.DefaultCalendar)
+            .Concat(document.Projects.Select(p => p.Calendar).OfType<string>()).ToHashSet(StringComparer.Ordinal);
+        return document.Settings.Calendars.Prepend(WorkCalendar.EveryDay).Where(c => kept.Contains(c.Id))
             .ToDictionary(c => c.Id, c => new WorkTime(c, first.AddDays(-DaysBefore)), StringComparer.Ordinal);
     }
 
-    // One calendar for all: working time. Otherwise minutes, which every calendar understands.
-    private static WorkTime Scale(PortfolioDocument document, Dictionary<string, WorkTime> calendars)
+    // Calendars on which activities and the overhead of their projects run, each once.
+    private static string[] InUse(PortfolioDocument document)
     {
-        var used = document.Projects.Where(p => p.Activities.Count > 0)
-            .SelectMany(p => p.Activities.Select(a => a.Calendar ?? p.Calendar).Append(p.Calendar))
-            .Select(id => id ?? document.Settings.DefaultCalendar).Distinct(StringComparer.Ordinal).ToArray();
-        return used is [var only] && calendars[only].InWorkingTime() is { } working ? working : calendars.Values.First();
+        var used = new HashSet<string>(StringComparer.Ordinal);
+        foreach (var project in document.Projects.Where(p => p.Activities.Count > 0))
+        {
+            used.Add(project.Calendar ?? document.Settings.DefaultCalendar);
+            foreach (var activity in project.Activities)
+                used.Add(activity.Calendar ?? project.Calendar ?? document.Settings.DefaultCalendar);
+        }
+        return [.. used];
     }
+
+    // One calendar for all: working time. Otherwise minutes, which every calendar understands.
+    private static WorkTime Scale(string[] used, Dictionary<string, WorkTime> calendars) =>
+        used is [var only] && calendars[only].InWorkingTime() is { } working ? working : calendars.Values.First();
 
     private static bool[] StartMatters(NetworkLink[] links, bool[] matters)
     {

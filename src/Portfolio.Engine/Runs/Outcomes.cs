@@ -93,7 +93,15 @@ internal sealed class Outcomes
 
     private void Reach(int milestone, ReadOnlySpan<int> finish, Span<int> reached)
     {
+        var scale = _network.Scale;
         for (var k = 0; k < reached.Length; k++)
-            reached[k] = _pass.Absent(milestone, k) ? BlockSamples.Absent : _network.Scale.ToMinutes(finish[k]);
+            reached[k] = scale.ToMinutes(finish[k]);
+        if (_network.Fork[milestone] < 0)
+            return;
+        for (var k = 0; k < reached.Length; k++)
+        {
+            if (_pass.Absent(milestone, k))
+                reached[k] = BlockSamples.Absent;
+        }
     }
 }
