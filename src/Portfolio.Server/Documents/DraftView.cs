@@ -23,7 +23,8 @@ internal sealed class DraftView
 
     private DraftView(
         Draft draft, DocumentState state, ModelLimits limits, KnownSettings before,
-        IReadOnlyList<(PartHead Head, ProjectOutline Outline)> kept, Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
+        IReadOnlyList<(PartHead Head, ProjectOutline Outline)> kept,
+        Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
     {
         (this.draft, this.state, this.before, this.kept) = (draft, state, before, kept);
         // A portfolio that was let grow beyond a limit since lowered can still be written.
@@ -39,7 +40,8 @@ internal sealed class DraftView
     public static string ProjectPath(int index) => FormattableString.Invariant($"/projects/{index}");
 
     public static async Task<DraftView> OfAsync(
-        Draft draft, DocumentState state, ModelLimits limits, Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
+        Draft draft, DocumentState state, ModelLimits limits,
+        Func<PartDraft<ProjectJson>, PortfolioContext, string, ProjectJudgement> judge)
     {
         var gone = draft.Removed.Concat(draft.Projects.Select(project => project.Content.Id!)).ToHashSet(StringComparer.Ordinal);
         PartHead[] kept = [.. state.Projects.Where(project => !gone.Contains(project.Project))];

@@ -9,7 +9,8 @@ namespace Portfolio.Server.Documents;
 internal sealed class RevisionChanges(DocumentStore documents)
 {
     /// <summary>Which parts; null when there is no such revision.</summary>
-    public async Task<IReadOnlyList<PartChange>?> PartsAsync(Caller caller, string portfolio, long number, CancellationToken cancellation) =>
+    public async Task<IReadOnlyList<PartChange>?> PartsAsync(
+        Caller caller, string portfolio, long number, CancellationToken cancellation) =>
         await documents.FindRevisionAsync(caller, portfolio, number, cancellation) is null
             ? null
             : await documents.ListChangesAsync(caller, portfolio, number, cancellation);

@@ -41,7 +41,8 @@ public sealed partial class DocumentStore
     /// <summary>
     /// Contents by hash. Who may see them was decided where the hashes came from: a hash alone tells nothing of who may.
     /// </summary>
-    public Task<IReadOnlyDictionary<string, byte[]>> ReadContentsAsync(IReadOnlyCollection<string> hashes, CancellationToken cancellation) =>
+    public Task<IReadOnlyDictionary<string, byte[]>> ReadContentsAsync(
+        IReadOnlyCollection<string> hashes, CancellationToken cancellation) =>
         database.ReadAsync<IReadOnlyDictionary<string, byte[]>>(
             async open =>
             {

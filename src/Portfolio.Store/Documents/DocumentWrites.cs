@@ -85,7 +85,8 @@ public sealed partial class DocumentStore
         await open.FirstAsync<long>(ExistsSql, new { write.Portfolio }) > 0 ? write.Right : Right.Admin;
 
     /// <summary>Where the caller stands, and why it is turned away before anything is decided; null: it is not.</summary>
-    private static async Task<(Standing Standing, WriteOutcome? Turned)> TurnedAsync(StoreTransaction open, Caller caller, DocumentWrite write)
+    private static async Task<(Standing Standing, WriteOutcome? Turned)> TurnedAsync(
+        StoreTransaction open, Caller caller, DocumentWrite write)
     {
         var standing = await Standing.ReadAsync(open, caller, await RightNeededAsync(open, write), write.Portfolio);
         var turned = Turned(standing, write);

@@ -44,7 +44,8 @@ internal static class PartContents
     private const string OutlineSql = "select bytes from part_outline where hash = @Hash";
 
     /// <summary>Null when none was kept with the content.</summary>
-    public static Task<byte[]?> ReadOutlineAsync(StoreTransaction open, string hash) => open.FirstAsync<byte[]>(OutlineSql, new { Hash = hash });
+    public static Task<byte[]?> ReadOutlineAsync(StoreTransaction open, string hash) =>
+        open.FirstAsync<byte[]>(OutlineSql, new { Hash = hash });
 
     private const string ReadSql = "select hash, bytes, size from part_content where hash = @Hash";
 

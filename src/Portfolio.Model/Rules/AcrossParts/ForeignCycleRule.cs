@@ -29,7 +29,8 @@ internal static class ForeignCycleRule
     private static Fault Report(List<int> cycle, OutlineIndex whole, PortfolioNetwork network)
     {
         var names = cycle.Select(arc => network.Name(network.Arcs[arc].Successor));
-        var (project, link) = cycle.Select(network.Link).MinBy(l => (WasSent(l.Project, l.Link) ? 0 : 2) + (l.Link.Project is null ? 1 : 0));
+        var (project, link) = cycle.Select(network.Link)
+            .MinBy(l => (WasSent(l.Project, l.Link) ? 0 : 2) + (l.Link.Project is null ? 1 : 0));
         return whole.ActivityAt(project, link.Successor).Under("predecessors", link.Entry).Fault(
             RuleCodes.LinkCycle, CycleSearch.Message(names));
 

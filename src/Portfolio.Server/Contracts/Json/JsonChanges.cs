@@ -40,7 +40,8 @@ public static class JsonChanges
     }
 
     private static IEnumerable<JsonChange> Order(
-        string path, OrderedDictionary<string, JsonElement> old, OrderedDictionary<string, JsonElement> now) => Order(path, old.Keys, now.Keys);
+        string path, OrderedDictionary<string, JsonElement> old, OrderedDictionary<string, JsonElement> now) =>
+        Order(path, old.Keys, now.Keys);
 
     private static IEnumerable<JsonChange> OfMembers(
         string path, OrderedDictionary<string, JsonElement> old, OrderedDictionary<string, JsonElement> now) =>
