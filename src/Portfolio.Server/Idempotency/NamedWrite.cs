@@ -103,7 +103,8 @@ internal static class JoiningWrites
 
     /// <inheritdoc cref="Remembers{T}(HttpContext, Func{HttpContext, T, Task{IResult}})"/>
     public static Func<StoreTransaction, T, CancellationToken, Task>? Remembers<T>(
-        this HttpContext http, Func<HttpContext, T, IResult> answer) => http.Remembers<T>((to, result) => Task.FromResult(answer(to, result)));
+        this HttpContext http, Func<HttpContext, T, IResult> answer) =>
+        http.Remembers<T>((to, result) => Task.FromResult(answer(to, result)));
 
     /// <summary>The same for an answer whose first giving shows a secret, which is kept nowhere.</summary>
     /// <param name="answer">Makes the answer without it.</param>

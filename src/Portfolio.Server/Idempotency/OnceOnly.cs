@@ -7,9 +7,11 @@ namespace Portfolio.Server.Idempotency;
 
 /// <summary>
 /// Around every write: an answer that is kept is given again; a second one waits while the first is at work; what was not accepted is not
-/// remembered. A handler joins by handing <see cref="JoiningWrites.Remembers{T}(HttpContext, Func{HttpContext, T, IResult})"/> to its store.
+/// remembered. A handler joins by handing <see cref="JoiningWrites.Remembers{T}(HttpContext, Func{HttpContext, T, IResult})"/> to its
+/// store.
 /// </summary>
-internal sealed class OnceOnly(AnswerStore answers, WritesAtWork atWork, IOptions<LimitOptions> limits, TimeProvider clock) : IEndpointFilter
+internal sealed class OnceOnly(AnswerStore answers, WritesAtWork atWork, IOptions<LimitOptions> limits, TimeProvider clock)
+    : IEndpointFilter
 {
     private static readonly TimeSpan Patience = TimeSpan.FromSeconds(5);
 

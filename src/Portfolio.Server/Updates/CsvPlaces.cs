@@ -14,7 +14,8 @@ internal sealed class CsvPlaces : IFaultPlaces
     /// <summary>Faults of the table itself: what rules say of a thing one of whose cells cannot be read repeats them.</summary>
     public IReadOnlyList<Fault> Forms { get; set; } = [];
 
-    public void Begin(IEnumerable<CsvColumn> columns, int line) => (header, headerLine) = ([.. columns.Select(column => column.Name)], line);
+    public void Begin(IEnumerable<CsvColumn> columns, int line) =>
+        (header, headerLine) = ([.. columns.Select(column => column.Name)], line);
 
     /// <summary>The number of the row, from 0.</summary>
     public int Add(string[] cells, int line)

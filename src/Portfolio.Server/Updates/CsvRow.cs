@@ -5,7 +5,9 @@ using Portfolio.Server.Contracts.Json;
 
 namespace Portfolio.Server.Updates;
 
-/// <summary>The members that the cells of one row give. Empty cells are not sent; the cells of one object but cost and overhead form it whole.</summary>
+/// <summary>
+/// The members that the cells of one row give. Empty cells are not sent; the cells of one object form it whole, but for cost and overhead.
+/// </summary>
 internal sealed partial class CsvRow(string path, string subject, List<Fault> faults)
 {
     private const string Null = "null";

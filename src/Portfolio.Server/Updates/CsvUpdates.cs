@@ -35,9 +35,8 @@ internal sealed class CsvUpdates
         }
         catch (CsvFormatException malformed)
         {
-            throw new JsonRefused(
-                new Fault("", "", FaultCodes.TableMalformed, $"The quotes of the record that begins at line {malformed.LineNumber} are not closed or doubled."),
-                (int)malformed.LineNumber, 1);
+            var why = $"The quotes of the record that begins at line {malformed.LineNumber} are not closed or doubled.";
+            throw new JsonRefused(new Fault("", "", FaultCodes.TableMalformed, why), (int)malformed.LineNumber, 1);
         }
     }
 
@@ -101,7 +100,10 @@ internal sealed class CsvUpdates
         row.Finish();
         var update = set.Of(project, $"{path}/project");
         if (activity.Length > 0)
-            set.Add(update, new ActivityUpdate(activity, new SentThing(path, $"{path}/activity", row.Members), CsvRow.Flag(create) == true));
+        {
+            var sent = new SentThing(path, $"{path}/activity", row.Members);
+            set.Add(update, new ActivityUpdate(activity, sent, CsvRow.Flag(create) == true));
+        }
         else
             set.Add(update, new SentThing(path, $"{path}/project", row.Members));
     }
@@ -116,5 +118,6 @@ internal sealed class CsvUpdates
         return i >= 0 && i < cells.Length ? cells[i] : "";
     }
 
-    private void Refuse(string path, string subject, string code, string message) => set.Faults.Add(new Fault(path, subject, code, message));
+    private void Refuse(string path, string subject, string code, string message) =>
+        set.Faults.Add(new Fault(path, subject, code, message));
 }

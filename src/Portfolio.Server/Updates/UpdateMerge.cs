@@ -22,7 +22,9 @@ internal static class UpdateMerge
         }
     }
 
-    /// <summary>The same for an activity: finished work has nothing left, so what is stored as remaining goes unless some is sent.</summary>
+    /// <summary>
+    /// The same for an activity: finished work has nothing left, so what is stored as remaining goes unless some is sent.
+    /// </summary>
     public static void OverActivity(JsonObject stored, JsonObject sent)
     {
         if (sent["actualFinish"] is not null && !sent.ContainsKey("remaining"))

@@ -75,5 +75,6 @@ internal sealed class UpdateSet
             Refuse(activity.Sent.IdPath, $"{project.Id}/{activity.Id}", $"The activity {activity.Id} is named a second time.");
     }
 
-    private void Refuse(string path, string subject, string message) => Faults.Add(new Fault(path, subject, RuleCodes.IdDuplicate, message));
+    private void Refuse(string path, string subject, string message) =>
+        Faults.Add(new Fault(path, subject, RuleCodes.IdDuplicate, message));
 }
