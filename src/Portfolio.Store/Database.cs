@@ -21,8 +21,11 @@ public abstract class Database : IAsyncDisposable
     /// </summary>
     public abstract bool IsShared { get; }
 
-    // Changes nothing and has to be written all the same.
-    private const string TouchSql = "update schema_migration set applied_at = applied_at where number = 1";
+    // Changes nothing and has to be written all the same; there and back, as SQLite writes no page for a row that is given the values it has.
+    private const string TouchSql = """
+        update schema_migration set applied_at = applied_at + 1 where number = 1;
+        update schema_migration set applied_at = applied_at - 1 where number = 1
+        """;
 
     /// <summary>Throws when the storage cannot be read or, after a write that the storage refused, still cannot be written.</summary>
     public async Task PingAsync(CancellationToken cancellation)

@@ -7,6 +7,9 @@ namespace Portfolio.Server.Http;
 /// <summary>Reads parameters of the query and collects what is wrong with them, so that one answer (422) names all.</summary>
 internal sealed class QueryFaults
 {
+    private static readonly DateOnly Earliest = new(1970, 1, 1);
+    private static readonly DateOnly Latest = new(2199, 12, 31);
+
     private readonly List<Fault> faults = [];
 
     public void Add(string parameter, string message) => faults.Add(new("", parameter, FaultCodes.ParameterInvalid, message));
@@ -22,8 +25,10 @@ internal sealed class QueryFaults
     public DateOnly? Date(string parameter, string? text)
     {
         if (text is null) return null;
-        if (DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date)) return date;
-        Add(parameter, $"'{parameter}' must be a date such as 2027-03-31.");
+        if (DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date)
+            && date >= Earliest && date <= Latest)
+            return date;
+        Add(parameter, $"'{parameter}' must be a date such as 2027-03-31, from {Earliest.Year} to {Latest.Year}.");
         return null;
     }
 

@@ -41,9 +41,9 @@ internal sealed class ContractCheck(DescribedApi? given = null) : DelegatingHand
         var status = (int)response.StatusCode;
         var operations = api.At(request.RequestUri!.AbsolutePath);
         if (operations.Count == 0)
-            return status == 404 ? await OfProblemAsync(api, response, cancellation) : "no such path is described; only 404 would do.";
+            return status is 404 or 401 ? await OfProblemAsync(api, response, cancellation) : "no such path is described; only 404 would do.";
         if (operations.FirstOrDefault(operation => operation.Method == request.Method.Method) is not { } described)
-            return status == 405 ? await OfProblemAsync(api, response, cancellation) : "no such method is described; only 405 would do.";
+            return status is 405 or 401 ? await OfProblemAsync(api, response, cancellation) : "no such method is described; only 405 would do.";
         if (!described.Responses.TryGetValue(status, out var promised))
             return $"{described.Name} describes only {string.Join(", ", described.Responses.Keys.Order())}.";
         if (promised.Headers.FirstOrDefault(header => !Has(response, header)) is { } missing)

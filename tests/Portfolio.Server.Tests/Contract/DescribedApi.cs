@@ -65,7 +65,18 @@ internal sealed record DescribedOperation(
     /// <summary>The media type in which a body is sent, JSON where it may be; null when it takes none.</summary>
     public string? BodyType => Content?.Select(type => type.Key).OrderBy(type => type.EndsWith("json", StringComparison.Ordinal) ? 0 : 1).First();
 
+    /// <summary>Names of the parameters of the query, and of headers.</summary>
+    public IReadOnlyList<string> Query => ParametersIn("query");
+
+    public IReadOnlyList<string> Headers => ParametersIn("header");
+
+    /// <summary>The schema's name; empty when it has none.</summary>
+    public string BodyName => BodySchema?["$ref"]?.GetValue<string>() is { } reference ? SchemaSamples.NameOf(reference) : "";
+
     public JsonNode? BodySchema => BodyType is { } type ? Content![type]!["schema"] : null;
+
+    private IReadOnlyList<string> ParametersIn(string place) =>
+        [.. (Description["parameters"] as JsonArray ?? []).Where(each => each!["in"]!.GetValue<string>() == place).Select(each => each!["name"]!.GetValue<string>())];
 
     private JsonObject? Content => Description["requestBody"]?["content"]?.AsObject();
 

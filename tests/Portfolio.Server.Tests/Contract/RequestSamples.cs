@@ -31,9 +31,7 @@ internal sealed class RequestSamples(DescribedApi api, IReadOnlyDictionary<strin
     /// <summary>A body that is taken as far as the description tells.</summary>
     public string BodyOf(DescribedOperation operation)
     {
-        var schema = operation.BodySchema!;
-        var named = schema["$ref"]?.GetValue<string>() is { } reference ? SchemaSamples.NameOf(reference) : "";
-        return Bodies.GetValueOrDefault(named) ?? samples.Smallest(schema)?.ToJsonString() ?? "{}";
+        return Bodies.GetValueOrDefault(operation.BodyName) ?? samples.Smallest(operation.BodySchema!)?.ToJsonString() ?? "{}";
     }
 
     private string NameOf(DescribedOperation operation, string parameter)

@@ -68,6 +68,9 @@ public sealed class PortfolioServer : IAsyncDisposable
         return Client(key!.Secret);
     }
 
+    /// <summary>The API as this server describes it.</summary>
+    internal async Task<DescribedApi> ApiAsync() => new(await (await Client(key: null).ReadAsync("/openapi.json")).TextAsync());
+
     public async ValueTask DisposeAsync()
     {
         await factory.DisposeAsync();

@@ -28,7 +28,7 @@ public sealed class TwoPortfolios : IAsyncLifetime
 
     public async ValueTask InitializeAsync()
     {
-        Api = new DescribedApi(await (await Admin.ReadAsync("/openapi.json")).TextAsync());
+        Api = await Server.ApiAsync();
         Mine = await MakeAsync("mine", MarkOfMine);
         Yours = await MakeAsync("yours", MarkOfYours);
     }
