@@ -15,6 +15,8 @@ internal sealed partial class RefusedWrites(AuditStore audit, ILogger<RefusedWri
 {
     private const int LongestObject = 300;
 
+    private static readonly HashSet<string> Contents = new(["document", "settings", "project", "activity", "updates"], StringComparer.Ordinal);
+
     public static Task TellAsync(HttpContext context, Problem problem) =>
         IsWrite(context.Request.Method) && IsRefusal(problem.Status) && context.User.Identity is CallerIdentity { Caller: var caller }
             ? context.RequestServices.GetRequiredService<RefusedWrites>()
@@ -36,13 +38,20 @@ internal sealed partial class RefusedWrites(AuditStore audit, ILogger<RefusedWri
         try
         {
             // Whoever hangs up is told of all the same.
-            await audit.AppendAsync(caller, action, @object, detail, CancellationToken.None);
+            if (PortfolioOf(action, @object, problem) is { } portfolio)
+                await audit.AppendRefusedPostAsync(caller, portfolio, action, @object, detail, CancellationToken.None);
+            else
+                await audit.AppendAsync(caller, action, @object, detail, CancellationToken.None);
         }
         catch (StoreUnavailableException unavailable)
         {
             LogUntold(action, unavailable);
         }
     }
+
+    /// <summary>The portfolio whose content was refused, of which those who listen are told too; null of everything else.</summary>
+    private static string? PortfolioOf(string action, string @object, Problem problem) =>
+        problem.Faults is { Count: > 0 } && Contents.Contains(action.Split('.')[0]) && @object.Split('/') is ["portfolios", var id, ..] ? id : null;
 
     private static bool IsWrite(string method) =>
         HttpMethods.IsPost(method) || HttpMethods.IsPut(method) || HttpMethods.IsPatch(method) || HttpMethods.IsDelete(method);

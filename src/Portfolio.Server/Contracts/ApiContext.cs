@@ -1,9 +1,11 @@
 using System.Text.Json;
 using System.Text.Json.Serialization;
 using Portfolio.Server.Contracts.Keys;
+using Portfolio.Server.Contracts.Events;
 using Portfolio.Server.Contracts.Portfolios;
 using Portfolio.Server.Contracts.Runs;
 using Portfolio.Server.Contracts.Schedules;
+using Portfolio.Server.Contracts.Subscriptions;
 
 namespace Portfolio.Server.Contracts;
 
@@ -29,4 +31,10 @@ namespace Portfolio.Server.Contracts;
 [JsonSerializable(typeof(RotationJson))]
 [JsonSerializable(typeof(PageJson<KeyJson>))]
 [JsonSerializable(typeof(PageJson<AuditEntryJson>))]
+[JsonSerializable(typeof(PageJson<EventJson>))]
+[JsonSerializable(typeof(SubscriptionRequestJson))]
+[JsonSerializable(typeof(SecretRequestJson))]
+[JsonSerializable(typeof(PageJson<SubscriptionJson>))]
+[JsonSerializable(typeof(PageJson<DeliveryJson>))]
+[JsonSerializable(typeof(IReadOnlyList<WantedEventJson>))]
 internal sealed partial class ApiContext : JsonSerializerContext;

@@ -2,6 +2,7 @@ using Microsoft.Extensions.Options;
 using Portfolio.Store;
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
+using Portfolio.Store.Deliveries;
 using Portfolio.Store.Documents;
 using Portfolio.Store.Outbox;
 using Portfolio.Store.Postgres;
@@ -10,6 +11,7 @@ using Portfolio.Store.Runs;
 using Portfolio.Store.Samples;
 using Portfolio.Store.Schedules;
 using Portfolio.Store.Sqlite;
+using Portfolio.Store.Subscriptions;
 
 namespace Portfolio.Server.Hosting;
 
@@ -35,6 +37,11 @@ internal static class StorageSetup
         services.AddSingleton<ResultStore>();
         services.AddSingleton<ScheduleStore>();
         services.AddSingleton<OutboxStore>();
+        services.AddSingleton<EventDistribution>();
+        services.AddSingleton<SubscriptionStore>();
+        services.AddSingleton<DeliveryStore>();
+        services.AddSingleton<DeliveryClaims>();
+        services.AddSingleton<DeliveryEndings>();
         services.AddHostedService<StorageStart>();
     }
 

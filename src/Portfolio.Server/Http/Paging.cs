@@ -28,21 +28,22 @@ internal static class Paging
     /// <summary>The page, with its link to the next.</summary>
     /// <param name="found">Up to one more than <paramref name="limit"/>.</param>
     /// <param name="cursorOf">Cursor after an item.</param>
+    /// <param name="cursor">Name of the parameter that takes it.</param>
     public static PageJson<TJson> Page<T, TJson>(
-        HttpResponse response, IReadOnlyList<T> found, int limit, Func<T, TJson> from, Func<T, string> cursorOf)
+        HttpResponse response, IReadOnlyList<T> found, int limit, Func<T, TJson> from, Func<T, string> cursorOf, string cursor = "cursor")
     {
         if (found.Count <= limit)
             return new PageJson<TJson> { Items = [.. found.Select(from)] };
         var next = cursorOf(found[limit - 1]);
-        LinkNext(response, next);
+        LinkNext(response, next, cursor);
         return new PageJson<TJson> { Items = [.. found.Take(limit).Select(from)], Next = next };
     }
 
     /// <summary>Links the page that begins after the cursor.</summary>
-    public static void LinkNext(HttpResponse response, string next)
+    public static void LinkNext(HttpResponse response, string next, string cursor = "cursor")
     {
         var request = response.HttpContext.Request;
-        var query = new QueryBuilder(request.Query.Where(pair => pair.Key != "cursor")) { { "cursor", next } };
+        var query = new QueryBuilder(request.Query.Where(pair => pair.Key != cursor)) { { cursor, next } };
         response.Headers.Link = $"<{request.PathBase}{request.Path}{query}>; rel=\"next\"";
     }
 }

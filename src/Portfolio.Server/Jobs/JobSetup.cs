@@ -14,6 +14,7 @@ internal static class JobSetup
         services.AddOptions<EngineOptions>().BindConfiguration(EngineOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.Configure<HostOptions>(host => host.ShutdownTimeout = StopsWithin);
         services.AddSingleton<RunSignal>();
+        services.AddSingleton<EventSignal>();
         services.AddSingleton<RunProgress>();
         services.AddSingleton<RunWorker>();
         services.AddSingleton<Nightly>();

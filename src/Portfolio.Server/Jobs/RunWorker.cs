@@ -16,7 +16,7 @@ namespace Portfolio.Server.Jobs;
 /// </summary>
 public sealed class RunWorker(
     RunClaims claims, RunEndings endings, DocumentStore documents, SampleStore samples, RunSignal signal, RunProgress progress,
-    RunMeasures measures, TimeProvider clock, IOptions<EngineOptions> options, ILogger<RunWorker> log)
+    EventSignal events, RunMeasures measures, TimeProvider clock, IOptions<EngineOptions> options, ILogger<RunWorker> log)
 {
     private readonly EngineOptions settings = options.Value;
     private readonly SemaphoreSlim free = new(options.Value.Runs);
@@ -55,6 +55,7 @@ public sealed class RunWorker(
         var began = clock.GetTimestamp();
         var outcome = await EndAsync(held, stopping);
         progress.Forget(held.Run.Id);
+        events.Give();
         measures.Ended(held.Run, outcome, clock.GetElapsedTime(began));
         span?.SetTag("portfolio.outcome", outcome).SetStatus(outcome == "failed" ? ActivityStatusCode.Error : ActivityStatusCode.Ok);
         RunLog.Ended(log, held.Run.Id, outcome);

@@ -17,6 +17,7 @@ internal static class DescribeApi
         ["Revisions"] = "Every accepted write that changed something.",
         ["Runs"] = "Simulations of one revision, asked for or scheduled.",
         ["Schedule"] = "When the portfolio is run by itself.",
+        ["Events"] = "What happened: to poll, or posted signed to those who subscribed.",
         ["Results"] = "Dates, costs and contingency of a run, and how they moved from run to run.",
     };
 

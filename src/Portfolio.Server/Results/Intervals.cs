@@ -1,3 +1,4 @@
+using System.Globalization;
 using Portfolio.Store.Results;
 
 namespace Portfolio.Server.Results;
@@ -20,6 +21,14 @@ internal static class Intervals
         Week => points.GroupBy(point => EndOfWeek(point.AsOf, weekEnds)).Select(group => group.Last()),
         Month => points.GroupBy(point => (point.AsOf.Year, point.AsOf.Month)).Select(group => group.Last()),
         _ => points,
+    };
+
+    /// <summary>Names the interval in which a date lies: the same text for all its dates, another for every other interval.</summary>
+    public static string NameOf(DateOnly date, string every, DayOfWeek weekEnds) => every switch
+    {
+        Week => EndOfWeek(date, weekEnds).ToString("yyyy-MM-dd", CultureInfo.InvariantCulture),
+        Month => date.ToString("yyyy-MM", CultureInfo.InvariantCulture),
+        _ => date.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture),
     };
 
     private static DateOnly EndOfWeek(DateOnly date, DayOfWeek weekEnds) => date.AddDays(((int)weekEnds - (int)date.DayOfWeek + 7) % 7);

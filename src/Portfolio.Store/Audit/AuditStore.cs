@@ -1,4 +1,5 @@
 using Portfolio.Store.Access;
+using Portfolio.Store.Outbox;
 
 namespace Portfolio.Store.Audit;
 
@@ -16,6 +17,26 @@ public sealed class AuditStore(Database database)
             async open =>
             {
                 await AuditChain.AppendAsync(open, caller.KeyId, action, @object, detail);
+                return true;
+            },
+            cancellation);
+
+    private static readonly string KnownSql = $"select count(*) from portfolio p where p.id = @Portfolio and {Granted.Any("p.id")}";
+
+    /// <summary>
+    /// Appends about content of a portfolio that was refused, and tells those who listen, when there is such a portfolio for the caller.
+    /// </summary>
+    public Task AppendRefusedPostAsync(
+        Caller caller, string portfolio, string action, string @object, object detail, CancellationToken cancellation) =>
+        database.WriteAsync(
+            async open =>
+            {
+                await AuditChain.AppendAsync(open, caller.KeyId, action, @object, detail);
+                if (await open.FirstAsync<long>(KnownSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio }) > 0)
+                {
+                    var payload = new { action, by = new { key = caller.KeyId, caller.Name }, refused = detail };
+                    await OutboxStore.AppendAsync(open, portfolio, "post.refused", @object, payload);
+                }
                 return true;
             },
             cancellation);

@@ -1,0 +1,75 @@
+using Portfolio.Store.Access;
+using Portfolio.Store.Audit;
+
+namespace Portfolio.Store.Deliveries;
+
+/// <summary>The ways in which an attempt ends. Each returns false, and writes nothing, when the lease was lost.</summary>
+public sealed class DeliveryEndings(Database database)
+{
+    private const string Ended = """
+        owner = null, lease_until = null, last_status = @Status, last_error = @Error
+        where id = @Id and fence = @Fence and state = 'sending'
+        """;
+
+    private const string DeliveredSql = $"update delivery set state = 'delivered', delivered_at = @Now, {Ended}";
+
+    private const string HealthySql =
+        "update subscription set failures = 0 where portfolio = @Portfolio and id = @Subscription and failures > 0";
+
+    public Task<bool> DeliveredAsync(DeliveryLease held, AttemptResult result, CancellationToken cancellation) =>
+        EndAsync(DeliveredSql, held, result, null, HealthySql, cancellation);
+
+    private const string AgainSql = $"update delivery set state = 'waiting', next_attempt_at = @Next, {Ended}";
+
+    private const string DeadSql = $"update delivery set state = 'dead', {Ended}";
+
+    private const string FailingSql = "update subscription set failures = failures + 1 where portfolio = @Portfolio and id = @Subscription";
+
+    /// <param name="next">When it is tried again; null: never.</param>
+    public Task<bool> FailedAsync(DeliveryLease held, AttemptResult result, DateTimeOffset? next, CancellationToken cancellation) =>
+        EndAsync(next is null ? DeadSql : AgainSql, held, result, next, FailingSql, cancellation);
+
+    private const string EndSubscriptionSql = """
+        update subscription set active = 0, ended = 'gone', failures = failures + 1, changed_at = @Now
+        where portfolio = @Portfolio and id = @Subscription
+        """;
+
+    private const string EndOthersSql = """
+        update delivery set state = 'dead', next_attempt_at = null, last_error = @Error
+        where portfolio = @Portfolio and subscription = @Subscription and state = 'waiting'
+        """;
+
+    /// <summary>The target says that it is gone for good: the subscription ends, and whatever waits for it is dead.</summary>
+    public Task<bool> GoneAsync(DeliveryLease held, AttemptResult result, CancellationToken cancellation) => database.WriteAsync(
+        async open =>
+        {
+            if (!await EndAsync(open, DeadSql, held, result, null))
+                return false;
+            var (portfolio, subscription) = (held.Event.Portfolio, held.Subscription);
+            await open.ExecuteAsync(EndSubscriptionSql, new { Portfolio = portfolio, Subscription = subscription, open.Now });
+            await open.ExecuteAsync(EndOthersSql, new { Portfolio = portfolio, Subscription = subscription, result.Error });
+            await AuditChain.AppendAsync(
+                open, Caller.System.KeyId, "subscription.end", $"portfolios/{portfolio}/subscriptions/{subscription}",
+                new { because = "gone" });
+            return true;
+        },
+        cancellation);
+
+    private Task<bool> EndAsync(
+        string sql, DeliveryLease held, AttemptResult result, DateTimeOffset? next, string subscriptionSql,
+        CancellationToken cancellation) => database.WriteAsync(
+        async open =>
+        {
+            if (!await EndAsync(open, sql, held, result, next))
+                return false;
+            await open.ExecuteAsync(subscriptionSql, new { held.Event.Portfolio, held.Subscription });
+            return true;
+        },
+        cancellation);
+
+    private static async Task<bool> EndAsync(
+        StoreTransaction open, string sql, DeliveryLease held, AttemptResult result, DateTimeOffset? next) =>
+        await open.ExecuteAsync(
+            sql,
+            new { held.Id, held.Fence, open.Now, result.Status, result.Error, Next = next?.ToMicroseconds() }) == 1;
+}
