@@ -44,6 +44,12 @@ public abstract class AtomicityTests(StoreKind kind)
         ["run with its answer"] = (store, _) => store.Requests.CreateAsync(
             Caller.System, RunScenes.Asked(RunScenes.Today), (open, _, _) => AnswerScenes.KeepAsync(open), TestStore.Cancellation),
         ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation),
+        ["subscription"] = (store, _) => store.SubscribeAsync("other"),
+        ["another secret"] = (store, _) => store.Subscriptions.RotateAsync(
+            Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromHours(1), _ => null, TestStore.Cancellation),
+        ["event handed on"] = (store, _) => store.HandOnAsync("office"),
+        ["delivery claimed"] = (store, _) => store.SendingAsync(),
+        ["old events"] = (store, _) => store.Outbox.ForgetAsync(Caller.System, TestStore.Start.AddYears(1), TestStore.Cancellation),
     };
 
     public static TheoryData<string> Names => [.. Writes.Keys];

@@ -1,6 +1,7 @@
 using System.ComponentModel.DataAnnotations;
 using System.Globalization;
 using System.Security.Claims;
+using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.Extensions.Options;
 using Portfolio.Server.Access;
 using Portfolio.Server.Contracts;
@@ -22,6 +23,7 @@ internal static class DeliveryEndpoints
     {
         var deliveries = portfolio.MapGroup("/subscriptions/{subscription}/deliveries").WithTags("Events").Needs(Right.Manage);
         deliveries.MapGet("", List).WithName("listDeliveries").Produces<PageJson<DeliveryJson>>().Refuses(422);
+        deliveries.MapGet("/{delivery}", Get).WithName("getDelivery").Produces<DeliveryJson>();
         deliveries.MapPost("/{delivery}/redeliver", Redeliver).WithName("redeliver")
             .Produces<DeliveryJson>(StatusCodes.Status202Accepted).Refuses(409);
     }
@@ -49,24 +51,44 @@ internal static class DeliveryEndpoints
             response, found, limit, DeliveryJson.From, delivery => delivery.Event.Sequence.ToString(CultureInfo.InvariantCulture)));
     }
 
+    /// <summary>One delivery.</summary>
+    internal static async Task<IResult> Get(
+        string portfolio, string subscription, string delivery, ClaimsPrincipal user, DeliveryStore deliveries,
+        CancellationToken cancellation)
+    {
+        if (!user.Caller().Holds(Right.Manage, portfolio))
+            return Problem.Forbidden();
+        return await deliveries.FindAsync(user.Caller(), portfolio, subscription, delivery, cancellation) is { } found
+            ? TypedResults.Ok(DeliveryJson.From(found))
+            : Problem.NotFound("There is no such delivery.");
+    }
+
     /// <summary>Has an event sent once more: at once, and with all its time when it had come to an end.</summary>
     internal static async Task<IResult> Redeliver(
         string portfolio, string subscription, string delivery, ClaimsPrincipal user, DeliveryStore deliveries,
-        IOptions<WebhookOptions> options, EventSignal signal, CancellationToken cancellation)
+        IOptions<WebhookOptions> options, EventSignal signal, HttpContext http, CancellationToken cancellation)
     {
         if (!user.Caller().Holds(Right.Manage, portfolio))
             return Problem.Forbidden();
         var (outcome, again) =
             await deliveries.RedeliverAsync(user.Caller(), portfolio, subscription, delivery, options.Value.TriedFor, cancellation);
-        signal.Give();
         return outcome switch
         {
-            RedeliverOutcome.Accepted => TypedResults.Accepted((string?)null, DeliveryJson.From(again!)),
+            RedeliverOutcome.Accepted => Accepted(http, signal, portfolio, subscription, again!),
             RedeliverOutcome.UnderWay => Problem.Conflict(
                 "delivery-under-way", "The delivery is being sent", "Look at it again in a moment."),
             RedeliverOutcome.Inactive => Problem.Conflict(
                 "subscription-inactive", "The subscription is not active", "Make it active first: PUT it with \"active\": true."),
             _ => Problem.NotFound("There is no such delivery."),
         };
+    }
+
+    private static Accepted<DeliveryJson> Accepted(
+        HttpContext http, EventSignal signal, string portfolio, string subscription, StoredDelivery again)
+    {
+        signal.Give();
+        http.Response.Headers.RetryAfter = "1";
+        var address = $"{http.Request.PathBase}/v1/portfolios/{portfolio}/subscriptions/{subscription}/deliveries/{again.Id}";
+        return TypedResults.Accepted(address, DeliveryJson.From(again));
     }
 }

@@ -28,9 +28,9 @@ internal static class SubscriptionEndpoints
         one.MapPut("", Put).WithName("putSubscription").Accepts<SubscriptionRequestJson>("application/json")
             .Produces<SubscriptionJson>().WritesConditionally().Refuses(409, 412, 413, 415, 422, 428);
         one.MapDelete("", Delete).WithName("deleteSubscription").Produces(StatusCodes.Status204NoContent)
-            .WritesConditionally().Refuses(409, 412, 428);
+            .RemovesConditionally().Refuses(409, 412, 428);
         one.MapPost("/secret", PostSecret).WithName("postSubscriptionSecret").Accepts<SecretRequestJson>(true, "application/json")
-            .Produces<SubscriptionJson>().Refuses(409, 412, 413, 415, 422);
+            .Produces<SubscriptionJson>().ChangesConditionally().Refuses(409, 412, 413, 415, 422);
     }
 
     /// <summary>Subscriptions by id, without their secrets.</summary>

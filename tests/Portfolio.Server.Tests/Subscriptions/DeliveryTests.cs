@@ -105,6 +105,7 @@ public sealed class DeliveryTests : IAsyncDisposable
         var again = await client.PostJsonAsync($"{Address}/office/deliveries/{dead.Text("id")}/redeliver");
         Assert.Equal((HttpStatusCode.Accepted, "waiting"), (again.StatusCode, (await again.JsonAsync()).State()));
         await StateAsync(client, "office", "delivered");
+        Assert.Equal("delivered", (await (await client.ReadAsync(again.Headers.Location!.OriginalString)).JsonAsync()).State());
         Assert.Equal(3, receiver.All.Count);
         Assert.Contains("delivery.redeliver", await server.AuditTextAsync(), StringComparison.Ordinal);
         await (await client.PostJsonAsync($"{Address}/office/deliveries/none/redeliver")).ProblemAsync(404, "not-found");

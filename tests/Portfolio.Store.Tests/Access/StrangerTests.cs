@@ -22,6 +22,8 @@ public abstract class StrangerTests(StoreKind kind)
         await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
         await store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation);
         await store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation);
+        await store.SubscribeAsync("office");
+        await store.HandOnAsync("office");
         return (store, run.Id);
     }
 
@@ -58,6 +60,11 @@ public abstract class StrangerTests(StoreKind kind)
             ["money"] = Found(await store.Samples.ReadMoneyAsync(caller, "works", run, "cost/lock", stop)),
             ["schedule"] = Found(await store.Schedules.FindAsync(caller, "works", stop)),
             ["enabled"] = (await store.Schedules.ListEnabledAsync(caller, stop)).Count,
+            ["page of events"] = (await store.Outbox.ReadAfterAsync(caller, "works", null, 9, stop)).Events.Count,
+            ["subscription"] = Found(await store.Subscriptions.FindAsync(caller, "works", "office", stop)),
+            ["subscriptions"] = (await store.Subscriptions.ListAsync(caller, "works", null, 9, stop)).Count,
+            ["active"] = (await store.Subscriptions.ListActiveAsync(caller, null, stop)).Count,
+            ["deliveries"] = (await store.Deliveries.ListAsync(caller, "works", "office", null, null, 9, stop)).Count,
         };
 
         static int Found(object? thing) => thing is null ? 0 : 1;
@@ -108,7 +115,11 @@ public abstract class StrangerTests(StoreKind kind)
         await using var _ = store;
         var reader = await store.CallerAsync(new Grant(Right.Read, "works", ["lock"]));
         var found = await ReadEverythingAsync(store, reader, run);
-        string[] nothing = ["settings", "quay", "events", "total", "allocation", "total series", "enabled"];
+        string[] nothing = 
+        [
+            "settings", "quay", "events", "total", "allocation", "total series", "enabled", "page of events", "subscription", "subscriptions",
+            "active", "deliveries",
+        ];
         Assert.All(nothing, name => Assert.Equal((name, 0), (name, found[name])));
         Assert.All(found.Keys.Except(nothing), name => Assert.True(found[name] > 0, name));
         Assert.Equal((1, 1, 2, 2), (found["document"], found["changes"], found["rows"], found["grids"]));

@@ -3,6 +3,7 @@ using Dapper;
 using Microsoft.Extensions.Time.Testing;
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
+using Portfolio.Store.Deliveries;
 using Portfolio.Store.Documents;
 using Portfolio.Store.Idempotency;
 using Portfolio.Store.Outbox;
@@ -10,6 +11,7 @@ using Portfolio.Store.Results;
 using Portfolio.Store.Runs;
 using Portfolio.Store.Samples;
 using Portfolio.Store.Schedules;
+using Portfolio.Store.Subscriptions;
 
 namespace Portfolio.Store.Tests.Testing;
 
@@ -35,6 +37,11 @@ public sealed class TestStore : IAsyncDisposable
     public ResultStore Results => new(Database);
     public ScheduleStore Schedules => new(Database);
     public AnswerStore Answers => new(Database);
+    public EventDistribution Distribution => new(Database);
+    public SubscriptionStore Subscriptions => new(Database);
+    public DeliveryStore Deliveries => new(Database);
+    public DeliveryClaims DeliveryClaims => new(Database);
+    public DeliveryEndings DeliveryEndings => new(Database);
 
     public static CancellationToken Cancellation => TestContext.Current.CancellationToken;
 
