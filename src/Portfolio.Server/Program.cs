@@ -69,6 +69,7 @@ portfolio.MapResults();
 portfolio.MapDistribution();
 portfolio.MapSeries();
 portfolio.MapContingency();
+portfolio.MapCalendar();
 portfolio.MapEvents();
 portfolio.MapSubscriptions();
 portfolio.MapDeliveries();

@@ -47,8 +47,10 @@ public abstract class AtomicityTests(StoreKind kind)
         ["subscription"] = (store, _) => store.SubscribeAsync("other"),
         ["another secret"] = (store, _) => store.Subscriptions.RotateAsync(
             Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromHours(1), _ => null, TestStore.Cancellation),
-        ["event handed on"] = (store, _) => store.HandOnAsync("office"),
-        ["delivery claimed"] = (store, _) => store.SendingAsync(),
+        ["event handed on"] = (store, _) => store.HandOnLastAsync("office"),
+        ["something noticed"] = (store, _) => store.Distribution.TellAsync(
+            "works", "look", [new("a", "level.moved", "project/lock", "lock", new { }), new("b", "level.moved", "portfolio", null, new { })],
+            TestStore.Cancellation),
         ["old events"] = (store, _) => store.Outbox.ForgetAsync(Caller.System, TestStore.Start.AddYears(1), TestStore.Cancellation),
     };
 
@@ -154,6 +156,7 @@ public abstract class AtomicityTests(StoreKind kind)
     {
         var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
+        await store.SubscribeAsync("office");
         await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         var held = (await store.ClaimAsync())!;
         await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);

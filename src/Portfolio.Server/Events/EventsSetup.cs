@@ -1,4 +1,5 @@
 using System.Net;
+using Portfolio.Server.Feeds;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.Subscriptions;
@@ -14,6 +15,7 @@ internal static class EventsSetup
         services.AddOptions<EventOptions>().BindConfiguration(EventOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.AddOptions<WebhookOptions>().BindConfiguration(WebhookOptions.Section).ValidateDataAnnotations().ValidateOnStart();
         services.AddSingleton<EventEnvelope>();
+        services.AddSingleton<CalendarReading>();
         services.AddSingleton<TargetRule>();
         services.AddSingleton<SubscriptionIntake>();
         if ((configuration.Get<RoleOptions>() ?? new RoleOptions()).Works)

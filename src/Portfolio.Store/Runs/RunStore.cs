@@ -52,6 +52,17 @@ public sealed class RunStore(Database database)
         Caller caller, string portfolio, DateOnly? from, DateOnly? to, CancellationToken cancellation) =>
         ListAsync(PointsSql, caller, portfolio, new { From = from?.ToText(), To = to?.ToText() }, cancellation);
 
+    private static readonly string DigestsSql = $"""
+        select r.result_digest from series_point s join run r on r.id = s.run
+        where s.portfolio = @Portfolio and s.as_of < @Before and {Visible}
+        order by s.as_of
+        """;
+
+    /// <summary>The result digests of the points before a date, in date order: two that are equal had the same figures.</summary>
+    public Task<List<string>> ListDigestsAsync(Caller caller, string portfolio, DateOnly before, CancellationToken cancellation) =>
+        database.ReadAsync(
+            open => open.ListAsync<string>(DigestsSql, Asked(open, caller, portfolio, new { Before = before.ToText() })), cancellation);
+
     private static readonly string DueSql = $"""
         select {RunRow.Columns} from run r where r.due_date is not null and {Visible} order by r.due_date desc limit @Limit
         """;

@@ -17,13 +17,13 @@ public abstract class StrangerTests(StoreKind kind)
     {
         var store = await TestStore.OpenAsync(kind);
         await store.WriteAsync("works", ("", "s"), ("lock", "a"), ("quay", "b"));
+        await store.SubscribeAsync("office");
         var run = await store.QueueAsync(RunScenes.Asked(RunScenes.Today));
         var held = (await store.ClaimAsync())!;
         await store.Samples.WriteBlockAsync(held, 0, 3, RunScenes.Block(0), TestStore.Cancellation);
         await store.Endings.SucceedAsync(held, RunScenes.Result("r"), TestStore.Cancellation);
         await store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation);
-        await store.SubscribeAsync("office");
-        await store.HandOnAsync("office");
+        await store.HandOnLastAsync("office");
         return (store, run.Id);
     }
 

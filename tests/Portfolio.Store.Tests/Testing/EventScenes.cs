@@ -20,6 +20,12 @@ internal static class EventScenes
     public static async Task<OutboxEvent> HandOnAsync(this TestStore store, params string[] subscriptions)
     {
         await store.WriteAsync("works", ("lock", Guid.NewGuid().ToString()));
+        return await store.HandOnLastAsync(subscriptions);
+    }
+
+    /// <summary>What happened last is handed on to these.</summary>
+    public static async Task<OutboxEvent> HandOnLastAsync(this TestStore store, params string[] subscriptions)
+    {
         var told = (await store.Distribution.ListNextAsync(Caller.System, 1000, TestStore.Cancellation))[^1];
         Assert.True(await store.Distribution.HandOnAsync(told, [], subscriptions, TriedFor, TestStore.Cancellation));
         return told;
