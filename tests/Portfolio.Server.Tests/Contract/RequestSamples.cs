@@ -12,6 +12,7 @@ internal sealed class RequestSamples(DescribedApi api, IReadOnlyDictionary<strin
     {
         ["Document"] = """{"settings":{"name":"Replaced","currency":"EUR"},"projects":[]}""",
         ["KeyRequest"] = """{"name":"of a test","grants":[{"right":"read","portfolio":"nowhere"}]}""",
+        ["SubscriptionRequest"] = """{"url":"http://localhost:1/","events":[{"type":"run.failed"}]}""",
         ["Schedule"] = """{"cron":"30 4 * * *"}""",
     };
 

@@ -2,6 +2,7 @@ using Microsoft.Extensions.DependencyInjection;
 using Portfolio.Server.Tests.Contract;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Runs;
+using Portfolio.Server.Tests.Subscriptions;
 using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Rights;
@@ -15,7 +16,8 @@ public sealed class TwoPortfolios : IAsyncLifetime
     public const string MarkOfMine = "kingfisher";
     public const string MarkOfYours = "cormorant";
 
-    public PortfolioServer Server { get; } = new(null, ("Limits:RequestsPerSecond", "100000"));
+    public PortfolioServer Server { get; } = new(
+        null, ("Limits:RequestsPerSecond", "100000"), ("Webhooks:AllowedHosts", "localhost"));
 
     public HttpClient Admin => field ??= Server.Client();
 
@@ -44,8 +46,13 @@ public sealed class TwoPortfolios : IAsyncLifetime
         Assert.True((await Admin.PutJsonAsync($"/v1/portfolios/{portfolio}/schedule", """{"cron":"30 4 * * *"}""")).IsSuccessStatusCode);
         var key = await Server.Services.GetRequiredService<KeyStore>().CreateAsync(
             Caller.System, mark, [new Grant(Right.Read, portfolio)], expiresAt: null, TestContext.Current.CancellationToken);
+        var subscriptions = $"/v1/portfolios/{portfolio}/subscriptions";
+        var wanted = $$"""{"id":"office","url":"http://localhost:1/{{mark}}","events":[{"type":"run.succeeded"}]}""";
+        Assert.True((await Admin.PostJsonAsync(subscriptions, wanted)).IsSuccessStatusCode);
         var run = await Admin.SucceedAsync(portfolio, """{"iterations":10,"recorded":true}""");
-        return PathNames.Of(portfolio, run.Text("id")).With("key", key!.Key.Id);
+        var deliveries = await SubscriptionScene.UntilAsync(
+            () => Admin.ItemsAsync(subscriptions + "/office/deliveries"), found => found.Count > 0);
+        return PathNames.Of(portfolio, run.Text("id"), deliveries[0].Text("id")).With("key", key!.Key.Id);
     }
 
     private static string Document(string mark) => $$$"""
