@@ -51,7 +51,6 @@ public abstract class AtomicityTests(StoreKind kind)
         ["something noticed"] = (store, _) => store.Distribution.TellAsync(
             "works", "look", [new("a", "level.moved", "project/lock", "lock", new { }), new("b", "level.moved", "portfolio", null, new { })],
             TestStore.Cancellation),
-        ["old events"] = (store, _) => store.Outbox.ForgetAsync(Caller.System, TestStore.Start.AddYears(1), TestStore.Cancellation),
     };
 
     public static TheoryData<string> Names => [.. Writes.Keys];
