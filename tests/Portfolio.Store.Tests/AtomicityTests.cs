@@ -46,7 +46,7 @@ public abstract class AtomicityTests(StoreKind kind)
         ["schedule"] = (store, _) => store.Schedules.PutAsync(Caller.System, "works", "0 2 * * *", null, true, null, TestStore.Cancellation),
         ["subscription"] = (store, _) => store.SubscribeAsync("other"),
         ["another secret"] = (store, _) => store.Subscriptions.RotateAsync(
-            Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromHours(1), _ => null, TestStore.Cancellation),
+            Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromHours(1), _ => null, null, TestStore.Cancellation),
         ["event handed on"] = (store, _) => store.HandOnLastAsync("office"),
         ["something noticed"] = (store, _) => store.Distribution.TellAsync(
             "works", "look", [new("a", "level.moved", "project/lock", "lock", new { }), new("b", "level.moved", "portfolio", null, new { })],

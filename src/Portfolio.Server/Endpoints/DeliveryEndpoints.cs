@@ -7,6 +7,7 @@ using Portfolio.Server.Access;
 using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Subscriptions;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.Jobs;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Webhooks;
@@ -70,8 +71,9 @@ internal static class DeliveryEndpoints
     {
         if (!user.Caller().Holds(Right.Manage, portfolio))
             return Problem.Forbidden();
-        var (outcome, again) =
-            await deliveries.RedeliverAsync(user.Caller(), portfolio, subscription, delivery, options.Value.TriedFor, cancellation);
+        var (outcome, again) = await deliveries.RedeliverAsync(
+            user.Caller(), portfolio, subscription, delivery, options.Value.TriedFor,
+            http.Remembers<StoredDelivery>((to, accepted) => Accepted(to, signal, portfolio, subscription, accepted)), cancellation);
         return outcome switch
         {
             RedeliverOutcome.Accepted => Accepted(http, signal, portfolio, subscription, again!),

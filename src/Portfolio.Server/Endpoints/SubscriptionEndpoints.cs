@@ -6,6 +6,7 @@ using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Subscriptions;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Http;
+using Portfolio.Server.Idempotency;
 using Portfolio.Server.OpenApi;
 using Portfolio.Server.Problems;
 using Portfolio.Server.Subscriptions;
@@ -53,12 +54,9 @@ internal static class SubscriptionEndpoints
         CancellationToken cancellation)
     {
         var sent = await JsonBody.ReadAsync(http.Request, ApiContext.Default.SubscriptionRequestJson, limits.Value.Body);
-        var (result, secret) = await intake.CreateAsync(user.Caller(), portfolio, sent ?? new(), cancellation);
-        if (result is not { Outcome: SubscriptionOutcome.Done, Subscription: { } made })
-            return SubscriptionIntake.Refusal(result);
-        http.Response.GetTypedHeaders().ETag = SubscriptionIntake.TagOf(made);
-        return TypedResults.Created(
-            $"{http.Request.PathBase}{http.Request.Path}/{made.Id}", SubscriptionJson.From(made) with { Secret = secret });
+        var (result, secret) = await intake.CreateAsync(
+            user.Caller(), portfolio, sent ?? new(), Joining(http, (to, done) => Created(to, done, null)), cancellation);
+        return Created(http, result, secret);
     }
 
     /// <summary>One subscription, without its secret.</summary>
@@ -84,7 +82,9 @@ internal static class SubscriptionEndpoints
     {
         var sent = await JsonBody.ReadAsync(http.Request, ApiContext.Default.SubscriptionRequestJson, limits.Value.Body);
         var conditions = new Preconditions(http.Request);
-        var result = await intake.ReplaceAsync(user.Caller(), portfolio, subscription, sent ?? new(), conditions, cancellation);
+        var result = await intake.ReplaceAsync(
+            user.Caller(), portfolio, subscription, sent ?? new(), conditions, Joining(http, (to, done) => Answer(to, done, null)),
+            cancellation);
         return Answer(http, result, null);
     }
 
@@ -95,7 +95,8 @@ internal static class SubscriptionEndpoints
     {
         var conditions = new Preconditions(http.Request);
         var result = await subscriptions.DeleteAsync(
-            user.Caller(), portfolio, subscription, found => conditions.OfReplacing(SubscriptionIntake.TagOf(found)), cancellation);
+            user.Caller(), portfolio, subscription, found => conditions.OfReplacing(SubscriptionIntake.TagOf(found)),
+            Joining(http, (_, _) => TypedResults.NoContent()), cancellation);
         return result.Outcome == SubscriptionOutcome.Done ? TypedResults.NoContent() : SubscriptionIntake.Refusal(result);
     }
 
@@ -106,8 +107,22 @@ internal static class SubscriptionEndpoints
     {
         var sent = await JsonBody.ReadAsync(http.Request, ApiContext.Default.SecretRequestJson, limits.Value.Body);
         var conditions = new Preconditions(http.Request);
-        var (result, secret) = await intake.RotateAsync(user.Caller(), portfolio, subscription, sent, conditions, cancellation);
+        var (result, secret) = await intake.RotateAsync(
+            user.Caller(), portfolio, subscription, sent, conditions, Joining(http, (to, done) => Answer(to, done, null)),
+            cancellation);
         return Answer(http, result, secret);
+    }
+
+    private static SubscriptionJoining? Joining(HttpContext http, Func<HttpContext, SubscriptionResult, IResult> answer) =>
+        http.RemembersWithoutSecret(answer) is { } joining ? (open, result, cancellation) => joining(open, result, cancellation) : null;
+
+    private static IResult Created(HttpContext http, SubscriptionResult result, string? secret)
+    {
+        if (result is not { Outcome: SubscriptionOutcome.Done, Subscription: { } made })
+            return SubscriptionIntake.Refusal(result);
+        http.Response.GetTypedHeaders().ETag = SubscriptionIntake.TagOf(made);
+        return TypedResults.Created(
+            $"{http.Request.PathBase}{http.Request.Path}/{made.Id}", SubscriptionJson.From(made) with { Secret = secret });
     }
 
     private static IResult Answer(HttpContext http, SubscriptionResult result, string? secret)

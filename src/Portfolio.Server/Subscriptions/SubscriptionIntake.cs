@@ -26,27 +26,30 @@ internal sealed class SubscriptionIntake(
 
     /// <exception cref="RequestRefused">Something is wrong with it.</exception>
     public async Task<(SubscriptionResult Result, string Secret)> CreateAsync(
-        Caller caller, string portfolio, SubscriptionRequestJson sent, CancellationToken cancellation)
+        Caller caller, string portfolio, SubscriptionRequestJson sent, SubscriptionJoining? joining,
+        CancellationToken cancellation)
     {
         var asked = await CheckedAsync(portfolio, sent, null, cancellation);
         var secret = WebhookSecrets.New();
         var id = asked.Id ?? Guid.CreateVersion7(clock.GetUtcNow()).ToString();
         var most = options.Value.Subscriptions;
-        return (await subscriptions.CreateAsync(caller, portfolio, id, asked.Content, secret, most, cancellation), secret);
+        return (await subscriptions.CreateAsync(caller, portfolio, id, asked.Content, secret, most, joining, cancellation), secret);
     }
 
     /// <exception cref="RequestRefused">Something is wrong with it.</exception>
     public async Task<SubscriptionResult> ReplaceAsync(
-        Caller caller, string portfolio, string id, SubscriptionRequestJson sent, Preconditions conditions, CancellationToken cancellation)
+        Caller caller, string portfolio, string id, SubscriptionRequestJson sent, Preconditions conditions, SubscriptionJoining? joining,
+        CancellationToken cancellation)
     {
         var asked = await CheckedAsync(portfolio, sent, id, cancellation);
         return await subscriptions.ReplaceAsync(
-            caller, portfolio, id, asked.Content, found => conditions.OfReplacing(TagOf(found)), cancellation);
+            caller, portfolio, id, asked.Content, found => conditions.OfReplacing(TagOf(found)), joining, cancellation);
     }
 
     /// <exception cref="RequestRefused">The overlap is out of range.</exception>
     public async Task<(SubscriptionResult Result, string Secret)> RotateAsync(
-        Caller caller, string portfolio, string id, SecretRequestJson? sent, Preconditions conditions, CancellationToken cancellation)
+        Caller caller, string portfolio, string id, SecretRequestJson? sent, Preconditions conditions,
+        SubscriptionJoining? joining, CancellationToken cancellation)
     {
         var hours = sent?.OverlapHours ?? options.Value.SecretOverlapHours;
         if (hours is < 0 or > MostOverlapHours)
@@ -58,7 +61,7 @@ internal sealed class SubscriptionIntake(
         var secret = WebhookSecrets.New();
         var overlap = TimeSpan.FromHours((double)hours);
         var result = await subscriptions.RotateAsync(
-            caller, portfolio, id, secret, overlap, found => conditions.OfChanging(TagOf(found)), cancellation);
+            caller, portfolio, id, secret, overlap, found => conditions.OfChanging(TagOf(found)), joining, cancellation);
         return (result, secret);
     }
 

@@ -73,8 +73,10 @@ public sealed class DeliveryStore(Database database)
         """;
 
     /// <summary>Has an event sent once more, with an audit entry.</summary>
+    /// <param name="joining">Called last inside the transaction, for rows that stand or fall with it; null for none.</param>
     public Task<(RedeliverOutcome Outcome, StoredDelivery? Delivery)> RedeliverAsync(
-        Caller caller, string portfolio, string subscription, string id, TimeSpan triedFor, CancellationToken cancellation) =>
+        Caller caller, string portfolio, string subscription, string id, TimeSpan triedFor,
+        Func<StoreTransaction, StoredDelivery, CancellationToken, Task>? joining, CancellationToken cancellation) =>
         database.WriteAsync<(RedeliverOutcome, StoredDelivery?)>(
             async open =>
             {
@@ -87,8 +89,10 @@ public sealed class DeliveryStore(Database database)
                     return (RedeliverOutcome.UnderWay, null);
                 var told = $"portfolios/{portfolio}/subscriptions/{subscription}";
                 await AuditChain.AppendAsync(open, caller.KeyId, "delivery.redeliver", told, new { delivery = id });
-                var row = (await RowsAsync(open, caller, portfolio, subscription, null, null, id, 1))[0];
-                return (RedeliverOutcome.Accepted, row.ToDelivery());
+                var again = (await RowsAsync(open, caller, portfolio, subscription, null, null, id, 1))[0].ToDelivery();
+                if (joining is not null)
+                    await joining(open, again, cancellation);
+                return (RedeliverOutcome.Accepted, again);
             },
             cancellation);
 

@@ -25,6 +25,9 @@ public enum SubscriptionOutcome
 /// <param name="Refusal">What the condition said.</param>
 public sealed record SubscriptionResult(SubscriptionOutcome Outcome, StoredSubscription? Subscription = null, object? Refusal = null);
 
+/// <summary>Called last inside a transaction that is done, for rows that stand or fall with the write; null for none.</summary>
+public delegate Task SubscriptionJoining(StoreTransaction open, SubscriptionResult result, CancellationToken cancellation);
+
 /// <content>Writing subscriptions: each write one transaction with its audit entry, in which no secret and no whole URL stands.</content>
 public sealed partial class SubscriptionStore
 {
@@ -37,9 +40,10 @@ public sealed partial class SubscriptionStore
 
     /// <param name="most">How many a portfolio may have.</param>
     public Task<SubscriptionResult> CreateAsync(
-        Caller caller, string portfolio, string id, SubscriptionContent content, string secret, int most, CancellationToken cancellation) =>
+        Caller caller, string portfolio, string id, SubscriptionContent content, string secret, int most,
+        SubscriptionJoining? joining, CancellationToken cancellation) =>
         WriteAsync(
-            caller, portfolio, id,
+            caller, portfolio, id, joining,
             async (open, found) =>
             {
                 if (found is not null)
@@ -62,8 +66,8 @@ public sealed partial class SubscriptionStore
     /// <param name="refuse">Looks at what is there; what it returns refuses the write.</param>
     public Task<SubscriptionResult> ReplaceAsync(
         Caller caller, string portfolio, string id, SubscriptionContent content, Func<StoredSubscription, object?> refuse,
-        CancellationToken cancellation) => ChangeAsync(
-        caller, portfolio, id, refuse,
+        SubscriptionJoining? joining, CancellationToken cancellation) => ChangeAsync(
+        caller, portfolio, id, refuse, joining,
         async open =>
         {
             await open.ExecuteAsync(ReplaceSql, Row(open, caller, portfolio, id, content, null));
@@ -79,8 +83,8 @@ public sealed partial class SubscriptionStore
     /// <summary>Gives it a new secret; the present one signs beside it for a while.</summary>
     public Task<SubscriptionResult> RotateAsync(
         Caller caller, string portfolio, string id, string secret, TimeSpan overlap, Func<StoredSubscription, object?> refuse,
-        CancellationToken cancellation) => ChangeAsync(
-        caller, portfolio, id, refuse,
+        SubscriptionJoining? joining, CancellationToken cancellation) => ChangeAsync(
+        caller, portfolio, id, refuse, joining,
         async open =>
         {
             var until = open.Now.ToInstant().Add(overlap).ToMicroseconds();
@@ -93,9 +97,9 @@ public sealed partial class SubscriptionStore
 
     /// <summary>Removes it with its deliveries.</summary>
     public Task<SubscriptionResult> DeleteAsync(
-        Caller caller, string portfolio, string id, Func<StoredSubscription, object?> refuse,
+        Caller caller, string portfolio, string id, Func<StoredSubscription, object?> refuse, SubscriptionJoining? joining,
         CancellationToken cancellation) => ChangeAsync(
-        caller, portfolio, id, refuse,
+        caller, portfolio, id, refuse, joining,
         async open =>
         {
             await open.ExecuteAsync(DeleteSql, new { Portfolio = portfolio, Id = id });
@@ -105,23 +109,29 @@ public sealed partial class SubscriptionStore
         cancellation);
 
     private Task<SubscriptionResult> ChangeAsync(
-        Caller caller, string portfolio, string id, Func<StoredSubscription, object?> refuse,
+        Caller caller, string portfolio, string id, Func<StoredSubscription, object?> refuse, SubscriptionJoining? joining,
         Func<StoreTransaction, Task<SubscriptionResult>> change, CancellationToken cancellation) => WriteAsync(
-        caller, portfolio, id,
+        caller, portfolio, id, joining,
         async (open, found) => found is null ? new SubscriptionResult(SubscriptionOutcome.NotFound)
             : refuse(found) is { } refusal ? new SubscriptionResult(SubscriptionOutcome.Refused, null, refusal)
             : await change(open),
         cancellation);
 
     private Task<SubscriptionResult> WriteAsync(
-        Caller caller, string portfolio, string id, Func<StoreTransaction, StoredSubscription?, Task<SubscriptionResult>> write,
-        CancellationToken cancellation) => database.WriteAsync(
-        async open => await Standing.ReadAsync(open, caller, Right.Manage, portfolio) switch
+        Caller caller, string portfolio, string id, SubscriptionJoining? joining,
+        Func<StoreTransaction, StoredSubscription?, Task<SubscriptionResult>> write, CancellationToken cancellation) => database.WriteAsync(
+        async open =>
         {
-            { Exists: false } or { Known: false } => new SubscriptionResult(SubscriptionOutcome.NotFound),
-            { Whole: false } => new SubscriptionResult(SubscriptionOutcome.Forbidden),
-            { Archived: true } => new SubscriptionResult(SubscriptionOutcome.Archived),
-            _ => await write(open, await FindAsync(open, caller, portfolio, id)),
+            var result = await Standing.ReadAsync(open, caller, Right.Manage, portfolio) switch
+            {
+                { Exists: false } or { Known: false } => new SubscriptionResult(SubscriptionOutcome.NotFound),
+                { Whole: false } => new SubscriptionResult(SubscriptionOutcome.Forbidden),
+                { Archived: true } => new SubscriptionResult(SubscriptionOutcome.Archived),
+                _ => await write(open, await FindAsync(open, caller, portfolio, id)),
+            };
+            if (result.Outcome == SubscriptionOutcome.Done && joining is not null)
+                await joining(open, result, cancellation);
+            return result;
         },
         cancellation);
 

@@ -154,7 +154,7 @@ public sealed class NamedWriteTests
     private static async Task<string> StateAsync(HttpClient client)
     {
         var state = new List<string>();
-        foreach (var address in new[] { "document", "revisions", "runs", "schedule" })
+        foreach (var address in new[] { "document", "revisions", "runs", "schedule", "subscriptions", "subscriptions/office/deliveries" })
             state.Add(await (await client.ReadAsync($"/v1/portfolios/p/{address}")).TextAsync());
         state.Add(await (await client.ReadAsync("/v1/keys")).TextAsync());
         return Regex.Replace(string.Join('\n', state), "\"traceId\":\"[^\"]*\"", "");

@@ -3,6 +3,7 @@ using System.Text;
 using System.Text.RegularExpressions;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Runs;
+using Portfolio.Server.Tests.Subscriptions;
 using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Idempotency;
@@ -34,6 +35,11 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         new("rotateKey", HttpMethod.Post, "/v1/keys/{key}/rotate", """{"overlapHours":1}"""),
         new("revokeKey", HttpMethod.Delete, "/v1/keys/{key}"),
         new("putSchedule", HttpMethod.Put, "schedule", """{"cron":"30 2 * * *","iterations":20,"enabled":true}"""),
+        new("postSubscription", HttpMethod.Post, "subscriptions", """{"id":"other","url":"https://hooks.harbour.example/","events":[{"type":"run.failed"}]}"""),
+        new("putSubscription", HttpMethod.Put, "subscriptions/office", """{"url":"https://hooks.harbour.example/","events":[{"type":"run.failed"}]}""", "*"),
+        new("deleteSubscription", HttpMethod.Delete, "subscriptions/office", IfMatch: "*"),
+        new("postSubscriptionSecret", HttpMethod.Post, "subscriptions/office/secret", """{"overlapHours":1}"""),
+        new("redeliver", HttpMethod.Post, "subscriptions/office/deliveries/{delivery}/redeliver"),
     }.ToDictionary(write => write.Operation);
 
     /// <summary>Sends it to a portfolio.</summary>
@@ -43,6 +49,8 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         var address = Address.StartsWith('/') ? Address : $"/v1/portfolios/{portfolio}/{Address.Replace("{run}", run)}";
         if (address.Contains("{key}", StringComparison.Ordinal))
             address = address.Replace("{key}", await OldestOtherKeyAsync(client), StringComparison.Ordinal);
+        if (address.Contains("{delivery}", StringComparison.Ordinal))
+            address = address.Replace("{delivery}", (await client.DeliveriesAsync("office"))[0].Text("id"));
         using var request = new HttpRequestMessage(Method, address);
         if (Body is not null)
             request.Content = new StringContent(Body, Encoding.UTF8, MediaType);
@@ -64,7 +72,10 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         var client = server.Client();
         await client.PutJsonAsync("/v1/portfolios/p/document", Samples.Document());
         await server.ClientAsync(new Grant(Right.Read, "p"));
-        return (server, client, await client.RunAsync("p"));
+        await client.SubscribeAsync("https://hooks.harbour.example/risk", """{"type":"run.cancelled"}""", "office");
+        var run = await client.RunAsync("p");
+        await server.DeliverAsync("office");
+        return (server, client, run);
     }
 }
 

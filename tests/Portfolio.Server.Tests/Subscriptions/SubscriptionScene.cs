@@ -63,6 +63,17 @@ internal static class SubscriptionScene
         () => server.Services.GetRequiredService<Store.Outbox.EventDistribution>().ListNextAsync(Store.Access.Caller.System, 1, Cancellation),
         left => left.Count == 0);
 
+    /// <summary>On a server that sends nothing: the newest event is handed on to a subscription and counts as delivered.</summary>
+    public static async Task DeliverAsync(this PortfolioServer server, string subscription)
+    {
+        var distribution = server.Services.GetRequiredService<Store.Outbox.EventDistribution>();
+        var told = (await distribution.ListNextAsync(Store.Access.Caller.System, 1000, Cancellation))[^1];
+        await distribution.HandOnAsync(told, [], [subscription], TimeSpan.FromHours(1), Cancellation);
+        var held = await server.Services.GetRequiredService<DeliveryClaims>()
+            .ClaimAsync(Store.Access.Caller.System, "test", TimeSpan.FromMinutes(1), true, Cancellation);
+        Assert.True(await server.Services.GetRequiredService<DeliveryEndings>().DeliveredAsync(held!, new(204, null), Cancellation));
+    }
+
     /// <summary>Asserts that the request is signed with the secret and holds a CloudEvent, and returns that.</summary>
     public static CloudEvent Verified(this Received received, string secret, params string[] others)
     {

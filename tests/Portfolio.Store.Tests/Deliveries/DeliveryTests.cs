@@ -112,7 +112,7 @@ public abstract class DeliveryTests(StoreKind kind)
     {
         await using var store = await BeginAsync("office");
         await store.Subscriptions.RotateAsync(
-            Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromMinutes(5), _ => null, TestStore.Cancellation);
+            Caller.System, "works", "office", "whsec_c2Vjb25k", TimeSpan.FromMinutes(5), _ => null, null, TestStore.Cancellation);
         await store.HandOnAsync("office");
         var held = (await store.SendingAsync())!;
         Assert.Equal(new SigningSecrets("whsec_c2Vjb25k", "whsec_Zmlyc3Q="), held.Secrets);

@@ -14,7 +14,7 @@ internal static class EventScenes
     public static readonly TimeSpan TriedFor = TimeSpan.FromHours(24);
 
     public static Task<SubscriptionResult> SubscribeAsync(this TestStore store, string id) => store.Subscriptions.CreateAsync(
-        Caller.System, "works", id, Content, "whsec_Zmlyc3Q=", 99, TestStore.Cancellation);
+        Caller.System, "works", id, Content, "whsec_Zmlyc3Q=", 99, null, TestStore.Cancellation);
 
     /// <summary>Something happens, and is handed on to these.</summary>
     public static async Task<OutboxEvent> HandOnAsync(this TestStore store, params string[] subscriptions)
