@@ -26,7 +26,7 @@ internal static class DeliveryEndpoints
         deliveries.MapGet("", List).WithName("listDeliveries").Produces<PageJson<DeliveryJson>>().Refuses(422);
         deliveries.MapGet("/{delivery}", Get).WithName("getDelivery").Produces<DeliveryJson>();
         deliveries.MapPost("/{delivery}/redeliver", Redeliver).WithName("redeliver")
-            .Produces<DeliveryJson>(StatusCodes.Status202Accepted).Refuses(409);
+            .Produces<DeliveryJson>(StatusCodes.Status202Accepted).Refuses(409, 422);
     }
 
     /// <summary>Deliveries, the newest event first; those that were given up are <c>dead</c>.</summary>

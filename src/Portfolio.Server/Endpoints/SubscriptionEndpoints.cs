@@ -29,7 +29,7 @@ internal static class SubscriptionEndpoints
         one.MapPut("", Put).WithName("putSubscription").Accepts<SubscriptionRequestJson>("application/json")
             .Produces<SubscriptionJson>().WritesConditionally().Refuses(409, 412, 413, 415, 422, 428);
         one.MapDelete("", Delete).WithName("deleteSubscription").Produces(StatusCodes.Status204NoContent)
-            .RemovesConditionally().Refuses(409, 412, 428);
+            .RemovesConditionally().Refuses(409, 412, 422, 428);
         one.MapPost("/secret", PostSecret).WithName("postSubscriptionSecret").Accepts<SecretRequestJson>(true, "application/json")
             .Produces<SubscriptionJson>().ChangesConditionally().Refuses(409, 412, 413, 415, 422);
     }
