@@ -23,9 +23,6 @@ internal static class SubscriptionScene
     public static PortfolioServer Server(params (string Key, string? Value)[] settings) =>
         new(null, [("Webhooks:AllowedHosts", "localhost"), .. settings]);
 
-    public static Task<HttpResponseMessage> PostJsonAsync(this HttpClient client, string address, string json = "") =>
-        client.PostAsync(address, new StringContent(json, null, "application/json"), Cancellation);
-
     /// <summary>Makes a subscription; returns the answer, which shows the secret.</summary>
     /// <param name="events">Items of the list.</param>
     public static async Task<JsonElement> SubscribeAsync(this HttpClient client, string url, string events, string? id = null)
