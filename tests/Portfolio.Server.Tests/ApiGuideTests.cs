@@ -33,7 +33,7 @@ public sealed partial class ApiGuideTests : IDisposable
         Assert.Equal(blocks.Count, answers.Count);
         foreach (var (block, answer) in blocks.Zip(answers))
             foreach (var line in block.Groups["shown"].Value.Split('\n', StringSplitOptions.RemoveEmptyEntries))
-                Assert.Contains(line, answer, StringComparison.Ordinal);
+                Assert.True(answer.Contains(line, StringComparison.Ordinal), $"Not found: {line}\nin: {answer}");
     }
 
     private async Task<string> BashAsync(string script)
