@@ -6,11 +6,12 @@ cd "$(dirname "$0")/.."
 export DOTNET_CLI_TELEMETRY_OPTOUT=1 TESTINGPLATFORM_TELEMETRY_OPTOUT=1 DOTNET_NOLOGO=1 LC_ALL=C
 
 # The independent simulator that results are compared with is a NumPy program, and the store is tested on PostgreSQL too (without them
-# those tests skip and say so); local dates need the time zone data.
+# those tests skip and say so); local dates need the time zone data, the examples of the documents curl and openssl.
 postgres_programs() { find /usr/lib/postgresql /usr/pgsql* -path '*/bin/initdb' -printf '%h\n' 2>/dev/null | sort -V | tail -n 1; }
 missing=()
 /usr/bin/python3 -c 'import numpy, scipy' 2>/dev/null || missing+=(python3-numpy python3-scipy)
 [ -e /usr/share/zoneinfo/Europe/Berlin ] || missing+=(tzdata)
+for program in curl openssl; do command -v $program >/dev/null || missing+=($program); done
 [ -n "${PORTFOLIO_POSTGRES:-}" ] || [ -n "$(postgres_programs)" ] || missing+=(postgresql)
 if [ ${#missing[@]} -gt 0 ] && [ "$(id -u)" = 0 ] && command -v apt-get >/dev/null; then
   apt-get update -qq && DEBIAN_FRONTEND=noninteractive apt-get install -y -qq "${missing[@]}" >/dev/null ||

@@ -8,6 +8,8 @@ namespace Portfolio.Server.Tests;
 /// <summary>The examples of docs/api.md, block by block in one shell, as a reader would paste them; each says what the guide shows.</summary>
 public sealed partial class ApiGuideTests : IDisposable
 {
+    private const string Needs = "The examples need bash, curl and openssl.";
+
     private readonly DirectoryInfo folder = Directory.CreateTempSubdirectory("portfolio-");
 
     private static CancellationToken Cancellation => TestContext.Current.CancellationToken;
@@ -18,7 +20,7 @@ public sealed partial class ApiGuideTests : IDisposable
     [Fact]
     public async Task EveryExampleSaysWhatIsShown()
     {
-        Assert.SkipUnless(File.Exists("/bin/bash") && File.Exists("/usr/bin/curl"), "The examples need bash and curl.");
+        Assert.SkipUnless(File.Exists("/bin/bash") && File.Exists("/usr/bin/curl") && File.Exists("/usr/bin/openssl"), Needs);
         var guide = await File.ReadAllTextAsync(Path.Combine(Repository.Root, "docs", "api.md"), Cancellation);
         var blocks = Blocks().Matches(guide);
         Assert.Equal(Regex.Count(guide, "^```sh$", RegexOptions.Multiline), blocks.Count);
