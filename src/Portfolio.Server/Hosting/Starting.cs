@@ -50,11 +50,19 @@ internal static class Starting
 
     private static string? Why(Exception refused) => refused switch
     {
-        OptionsValidationException settings => string.Join(' ', settings.Failures),
+        OptionsValidationException settings => string.Join(' ', settings.Failures.Select(Sentence)),
         // A value that is no number, say; the binder wraps what the converter threw.
         InvalidOperationException { InnerException: FormatException or ArgumentException } => refused.Message,
         // A folder that cannot be used, an address that is taken.
         StoreSchemaException or IOException or UnauthorizedAccessException => refused.Message,
         _ => null,
     };
+
+    // The framework wraps a sentence in words about the class that holds the setting.
+    private static string Sentence(string failure)
+    {
+        const string before = "with the error: '";
+        var at = failure.IndexOf(before, StringComparison.Ordinal);
+        return at < 0 || !failure.EndsWith("'.", StringComparison.Ordinal) ? failure : failure[(at + before.Length)..^2];
+    }
 }
