@@ -38,6 +38,7 @@ builder.Services.AddJobs(builder.Configuration);
 builder.Services.AddEvents(builder.Configuration);
 builder.Services.AddDemo(args);
 builder.Services.AddApiDescription();
+builder.Services.AddReference();
 builder.RestWhenDescribing();
 
 if (builder.BuildOrSayWhyNot() is not { } app)
@@ -49,6 +50,7 @@ app.UseRequestTimeouts();
 app.UseAccess();
 app.MapHealth();
 app.MapApiDescription();
+app.MapReference();
 
 var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToMediaTypes().OnceOnly();
 api.MapPortfolios();

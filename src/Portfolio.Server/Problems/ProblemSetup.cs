@@ -35,6 +35,6 @@ internal static class ProblemSetup
         406 => new Problem(406, "not-acceptable", "No such representation"),
         415 => new Problem(415, "unsupported-media-type", "The body's media type is not taken here"),
         400 => Problem.BadRequest("The request is not well formed."),
-        _ => new Problem(status, status.ToString(System.Globalization.CultureInfo.InvariantCulture), "The request was refused"),
+        _ => new Problem(status, ProblemKinds.Other, "The request was refused"),
     };
 }

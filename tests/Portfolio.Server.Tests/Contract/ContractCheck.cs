@@ -14,6 +14,8 @@ internal sealed class ContractCheck(DescribedApi? given = null) : DelegatingHand
     // That the committed description is the one served is a test of its own.
     private static DescribedApi? described;
 
+    private static readonly HashSet<string> Codes = Problems.CodeMeanings.All.Select(each => each.Code).ToHashSet(StringComparer.Ordinal);
+
     protected override async Task<HttpResponseMessage> SendAsync(HttpRequestMessage request, CancellationToken cancellationToken)
     {
         var response = await base.SendAsync(request, cancellationToken);
@@ -70,8 +72,13 @@ internal sealed class ContractCheck(DescribedApi? given = null) : DelegatingHand
         var body = await JsonAsync(response, cancellation);
         if (type == Problems.Problem.MediaType && (int?)body?["status"] != (int)response.StatusCode)
             return "the problem's status is another.";
+        if (type == Problems.Problem.MediaType && CodesOf(body).FirstOrDefault(code => !Codes.Contains(code)) is { } unknown)
+            return $"the code {unknown} stands in no class named …Codes, so nothing explains it.";
         return AgainstSchema(schema, body);
     }
+
+    private static IEnumerable<string> CodesOf(JsonNode? problem) =>
+        problem?["errors"] is JsonArray faults ? faults.Select(fault => (string?)fault?["code"] ?? "") : [];
 
     private static async Task<string?> OfProblemAsync(DescribedApi api, HttpResponseMessage response, CancellationToken cancellation) =>
         response.Content.Headers.ContentType?.MediaType != Problems.Problem.MediaType

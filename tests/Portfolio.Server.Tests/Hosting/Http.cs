@@ -2,6 +2,7 @@ using System.Net;
 using System.Net.Http.Headers;
 using System.Text;
 using System.Text.Json;
+using Portfolio.Server.Problems;
 
 namespace Portfolio.Server.Tests.Hosting;
 
@@ -44,6 +45,7 @@ internal static class Http
         Assert.Equal("/problems/" + slug, problem.GetProperty("type").GetString());
         Assert.Equal(status, problem.GetProperty("status").GetInt32());
         Assert.False(string.IsNullOrEmpty(problem.GetProperty("traceId").GetString()));
+        Assert.Contains(ProblemKinds.All, kind => kind.Slug == slug && (kind.Status == 0 || kind.Status == status));
         return problem;
     }
 
