@@ -3,7 +3,8 @@ using Microsoft.Extensions.Options;
 
 namespace Portfolio.Server.Webhooks;
 
-/// <summary>What is wrong with a URL as a target; the codes never change meaning.</summary>
+/// <summary>What is wrong with a URL as a target.</summary>
+/// <param name="Code">One of <see cref="TargetCodes"/>.</param>
 /// <param name="Message">A sentence that begins with what the URL must be.</param>
 internal sealed record TargetFlaw(string Code, string Message);
 
@@ -23,7 +24,9 @@ internal sealed class TargetRule(IOptions<WebhookOptions> options)
         {
             return
             [
-                new("url.format", $"must be an absolute URL of at most {Longest} characters, such as https://hooks.harbour.example/risk."),
+                new(
+                    TargetCodes.Format,
+                    $"must be an absolute URL of at most {Longest} characters, such as https://hooks.harbour.example/risk."),
             ];
         }
         return [.. Flaws(uri)];
@@ -33,15 +36,15 @@ internal sealed class TargetRule(IOptions<WebhookOptions> options)
     {
         var known = Allows(HostOf(uri));
         if (uri.Scheme != Uri.UriSchemeHttps && !(known && uri.Scheme == Uri.UriSchemeHttp))
-            yield return new("url.scheme", "must begin with https; plain http is for hosts that the operator allows.");
+            yield return new(TargetCodes.Scheme, "must begin with https; plain http is for hosts that the operator allows.");
         if (uri.UserInfo.Length > 0)
-            yield return new("url.userinfo", "must hold no user or password; requests are signed instead.");
+            yield return new(TargetCodes.UserInfo, "must hold no user or password; requests are signed instead.");
         if (uri.Fragment.Length > 0)
-            yield return new("url.fragment", "must have no fragment (#); it would never be sent.");
+            yield return new(TargetCodes.Fragment, "must have no fragment (#); it would never be sent.");
         if (!known && !uri.IsDefaultPort)
-            yield return new("url.port", "must use port 443; other ports are for hosts that the operator allows.");
+            yield return new(TargetCodes.Port, "must use port 443; other ports are for hosts that the operator allows.");
         if (!known && IPAddress.TryParse(HostOf(uri), out var address) && !PublicAddresses.Contains(address))
-            yield return new("url.address", "must not name a private, local or reserved address.");
+            yield return new(TargetCodes.Address, "must not name a private, local or reserved address.");
     }
 
     /// <summary>The host as names are looked up: letters of other scripts encoded, no brackets.</summary>
