@@ -59,7 +59,7 @@ internal sealed class DocumentSubmission
     {
         var refused = conditions.OfReplacing(head is null ? null : EntityTags.OfDocument(head.Parts))
             ?? problem ?? await FixedCurrencyAsync(head);
-        return refused is null ? Change.Everything(head, parts) : new Refusal(refused, refused.Slug);
+        return refused is null ? Change.Everything(head, parts) : new Refusal(refused);
     }
 
     private async Task<Problem?> FixedCurrencyAsync(Head? head) =>

@@ -91,7 +91,7 @@ internal sealed class PartWriting(DocumentStore documents, DraftCheck check, Kno
         }
     }
 
-    private static Refusal Refuse(Problem problem) => new(problem, problem.Slug);
+    private static Refusal Refuse(Problem problem) => new(problem);
 
     private static string? TagOf(Draft draft, Change change, Head head) =>
         draft.OfWhole ? OfWhole(change, head).ToString()

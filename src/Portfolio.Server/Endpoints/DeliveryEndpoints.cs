@@ -79,6 +79,7 @@ internal static class DeliveryEndpoints
             RedeliverOutcome.Accepted => Accepted(http, signal, portfolio, subscription, again!),
             RedeliverOutcome.UnderWay => Problem.Conflict(
                 "delivery-under-way", "The delivery is being sent", "Look at it again in a moment."),
+            RedeliverOutcome.Archived => Problem.Archived(),
             RedeliverOutcome.Inactive => Problem.Conflict(
                 "subscription-inactive", "The subscription is not active", "Make it active first: PUT it with \"active\": true."),
             _ => Problem.NotFound("There is no such delivery."),

@@ -2,6 +2,7 @@ using System.Collections.Concurrent;
 using Microsoft.Extensions.Options;
 using Portfolio.Server.Events;
 using Portfolio.Server.Webhooks;
+using Portfolio.Store;
 using Portfolio.Store.Access;
 using Portfolio.Store.Deliveries;
 
@@ -13,17 +14,19 @@ namespace Portfolio.Server.Jobs;
 /// a delivery that was sent and not yet recorded is sent again.
 /// </summary>
 internal sealed class DeliveryWorker(
-    DeliveryClaims claims, DeliveryEndings endings, WebhookSender sender, EventSignal signal, TimeProvider clock,
+    Database database, DeliveryClaims claims, DeliveryEndings endings, WebhookSender sender, EventSignal signal, TimeProvider clock,
     IOptions<WebhookOptions> options, ILogger<DeliveryWorker> log)
 {
     private readonly WebhookOptions settings = options.Value;
     private readonly string owner = $"{Environment.MachineName}/{Environment.ProcessId}";
     private readonly ConcurrentDictionary<string, (Task Work, bool Failing)> working = new(StringComparer.Ordinal);
+    private bool begun;
 
     /// <summary>Starts whatever is due as far as senders are free. When one becomes free the signal is given.</summary>
     /// <param name="stopping">The process ends: what is being sent goes back.</param>
     public async Task StartDueAsync(CancellationToken stopping)
     {
+        await BeginAsync(stopping);
         while (working.Count < settings.Senders && !stopping.IsCancellationRequested)
         {
             var failing = working.Values.Count(work => work.Failing) < settings.Senders / 2;
@@ -34,6 +37,14 @@ internal sealed class DeliveryWorker(
             working[$"{held.Id}/{held.Fence}"] = (work, held.Failing);
             started.SetResult();
         }
+    }
+
+    /// <summary>Where one process owns the storage, whoever held a lease before it is gone.</summary>
+    private async Task BeginAsync(CancellationToken stopping)
+    {
+        if (!begun && !database.IsShared)
+            await claims.ExpireAllAsync(Caller.System, stopping);
+        begun = true;
     }
 
     /// <summary>Waits for what was started.</summary>
@@ -76,7 +87,7 @@ internal sealed class DeliveryWorker(
                 EventLog.SubscriptionEnded(log, held.Subscription);
             return;
         }
-        var next = RetryTimes.Next(held.Id, held.Attempt, clock.GetUtcNow(), held.GiveUpAt, settings);
+        var next = RetryTimes.Next(held.Id, held.Attempt, clock.GetUtcNow(), held.GiveUpAt, settings, result.RetryAt);
         if (await endings.FailedAsync(held, result, next, CancellationToken.None) && next is null)
             EventLog.GivenUp(log, held.Id, held.Subscription, held.Attempt);
     }

@@ -14,13 +14,19 @@ internal static class RetryTimes
 
     /// <param name="attempt">The attempt that failed, from 1.</param>
     /// <param name="giveUpAt">No attempt is made after it.</param>
+    /// <param name="wanted">Before it the target wants none; beyond the time for trying, the last one is made at its end.</param>
     /// <returns>Null when it is given up.</returns>
-    public static DateTimeOffset? Next(string delivery, int attempt, DateTimeOffset now, DateTimeOffset giveUpAt, WebhookOptions options)
+    public static DateTimeOffset? Next(
+        string delivery, int attempt, DateTimeOffset now, DateTimeOffset giveUpAt, WebhookOptions options, DateTimeOffset? wanted = null)
     {
         var doubled = options.FirstRetrySeconds * Math.Pow(2, Math.Min(attempt - 1, 30));
         var seconds = Math.Min(doubled, options.LongestRetrySeconds) * (1 - Spread * Share(delivery, attempt));
         var next = now.AddSeconds(seconds);
-        return next <= giveUpAt ? next : null;
+        if (next > giveUpAt)
+            return null;
+        if (wanted is not { } later || later <= next)
+            return next;
+        return later <= giveUpAt ? later : giveUpAt;
     }
 
     // Evenly spread over 0…1.

@@ -57,7 +57,7 @@ internal sealed class WebhookSender : IDisposable
             using var request = Request(held);
             using var answer = await client.SendAsync(request, HttpCompletionOption.ResponseHeadersRead, limit.Token);
             await PassOverAsync(answer, limit.Token);
-            return new AttemptResult((int)answer.StatusCode, Why((int)answer.StatusCode));
+            return new AttemptResult((int)answer.StatusCode, Why((int)answer.StatusCode), RetryAt(answer));
         }
         catch (OperationCanceledException) when (!stopping.IsCancellationRequested)
         {
@@ -99,6 +99,12 @@ internal sealed class WebhookSender : IDisposable
                 return;
         }
     }
+
+    /// <summary>What a target that is too busy says about the next attempt (RFC 9110, 10.2.3).</summary>
+    private DateTimeOffset? RetryAt(HttpResponseMessage answer) =>
+        answer is { StatusCode: HttpStatusCode.TooManyRequests or HttpStatusCode.ServiceUnavailable, Headers.RetryAfter: { } wanted }
+            ? wanted.Date ?? clock.GetUtcNow() + wanted.Delta
+            : null;
 
     private static string? Why(int status) => status switch
     {

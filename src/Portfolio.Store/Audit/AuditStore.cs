@@ -21,10 +21,14 @@ public sealed class AuditStore(Database database)
             },
             cancellation);
 
+    // Microseconds.
+    private const long Minute = 60_000_000;
+
     private static readonly string KnownSql = $"select count(*) from portfolio p where p.id = @Portfolio and {Granted.Any("p.id")}";
 
     /// <summary>
-    /// Appends about content of a portfolio that was refused, and tells those who listen, when there is such a portfolio for the caller.
+    /// Appends about content of a portfolio that was refused, and tells those who listen, when there is such a portfolio for the caller:
+    /// of each key once a minute, so that one which posts without end does not drown what else is told.
     /// </summary>
     public Task AppendRefusedPostAsync(
         Caller caller, string portfolio, string action, string @object, object detail, CancellationToken cancellation) =>
@@ -32,7 +36,9 @@ public sealed class AuditStore(Database database)
             async open =>
             {
                 await AuditChain.AppendAsync(open, caller.KeyId, action, @object, detail);
-                if (await open.FirstAsync<long>(KnownSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio }) > 0)
+                var minute = open.Now / Minute;
+                if (await open.FirstAsync<long>(KnownSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio }) > 0
+                    && await EventDistribution.TakeAsync(open, portfolio, $"post.refused/{caller.KeyId}/{minute}"))
                 {
                     var payload = new { action, by = new { key = caller.KeyId, caller.Name }, refused = detail };
                     await OutboxStore.AppendAsync(open, portfolio, "post.refused", @object, payload);

@@ -17,6 +17,7 @@ public sealed class DeliveryClaims(Database database)
     // Targets that answer go before those that did not.
     private static readonly string NextSql = $"""
         select d.id from delivery d join subscription s on s.portfolio = d.portfolio and s.id = d.subscription
+          join portfolio p on p.id = d.portfolio and p.archived_at is null
         where {Due}
         order by case s.failures when 0 then 0 else 1 end, d.event, d.id limit 1
         """;
@@ -68,6 +69,17 @@ public sealed class DeliveryClaims(Database database)
     /// <summary>Puts it back, as if it had not been tried; for a sender that stops in good order.</summary>
     public Task<bool> ReleaseAsync(DeliveryLease held, CancellationToken cancellation) =>
         database.WriteAsync(async open => await open.ExecuteAsync(ReleaseSql, new { held.Id, held.Fence, open.Now }) == 1, cancellation);
+
+    private static readonly string ExpireSql = $"""
+        update delivery set lease_until = @Now
+        where state = 'sending' and lease_until > @Now and {Granted.Whole(Right.Admin, "delivery.portfolio")}
+        """;
+
+    /// <summary>
+    /// Ends all leases, so that what was being sent is sent again at once. For the start of a process that has the storage to itself.
+    /// </summary>
+    public Task<int> ExpireAllAsync(Caller caller, CancellationToken cancellation) =>
+        database.WriteAsync(open => open.ExecuteAsync(ExpireSql, new { Caller = caller.KeyId, open.Now }), cancellation);
 
     private sealed record Row : OutboxRow
     {

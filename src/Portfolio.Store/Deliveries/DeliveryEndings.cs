@@ -17,7 +17,7 @@ public sealed class DeliveryEndings(Database database)
         "update subscription set failures = 0 where portfolio = @Portfolio and id = @Subscription and failures > 0";
 
     public Task<bool> DeliveredAsync(DeliveryLease held, AttemptResult result, CancellationToken cancellation) =>
-        EndAsync(DeliveredSql, held, result, null, HealthySql, cancellation);
+        database.WriteAsync(open => EndAsync(open, DeliveredSql, held, result, null, HealthySql), cancellation);
 
     private const string AgainSql = $"update delivery set state = 'waiting', next_attempt_at = @Next, {Ended}";
 
@@ -25,9 +25,15 @@ public sealed class DeliveryEndings(Database database)
 
     private const string FailingSql = "update subscription set failures = failures + 1 where portfolio = @Portfolio and id = @Subscription";
 
-    /// <param name="next">When it is tried again; null: never.</param>
+    /// <param name="next">When it is tried again, unless the portfolio was archived meanwhile; null: never.</param>
     public Task<bool> FailedAsync(DeliveryLease held, AttemptResult result, DateTimeOffset? next, CancellationToken cancellation) =>
-        EndAsync(next is null ? DeadSql : AgainSql, held, result, next, FailingSql, cancellation);
+        database.WriteAsync(
+            async open =>
+            {
+                var over = next is null || await OpenDeliveries.IsArchivedAsync(open, held.Event.Portfolio);
+                return await EndAsync(open, over ? DeadSql : AgainSql, held, result, next, FailingSql);
+            },
+            cancellation);
 
     private const string EndSubscriptionSql = """
         update subscription set active = 0, ended = 'gone', failures = failures + 1, changed_at = @Now
@@ -55,17 +61,14 @@ public sealed class DeliveryEndings(Database database)
         },
         cancellation);
 
-    private Task<bool> EndAsync(
-        string sql, DeliveryLease held, AttemptResult result, DateTimeOffset? next, string subscriptionSql,
-        CancellationToken cancellation) => database.WriteAsync(
-        async open =>
-        {
-            if (!await EndAsync(open, sql, held, result, next))
-                return false;
-            await open.ExecuteAsync(subscriptionSql, new { held.Event.Portfolio, held.Subscription });
-            return true;
-        },
-        cancellation);
+    private static async Task<bool> EndAsync(
+        StoreTransaction open, string sql, DeliveryLease held, AttemptResult result, DateTimeOffset? next, string subscriptionSql)
+    {
+        if (!await EndAsync(open, sql, held, result, next))
+            return false;
+        await open.ExecuteAsync(subscriptionSql, new { held.Event.Portfolio, held.Subscription });
+        return true;
+    }
 
     private static async Task<bool> EndAsync(
         StoreTransaction open, string sql, DeliveryLease held, AttemptResult result, DateTimeOffset? next) =>

@@ -20,4 +20,5 @@ public sealed record DeliveryLease(
 /// <summary>How an attempt ended.</summary>
 /// <param name="Status">HTTP status of the answer; null when there was none.</param>
 /// <param name="Error">A sentence about what failed; null when nothing did.</param>
-public sealed record AttemptResult(int? Status, string? Error);
+/// <param name="RetryAt">Before it the target wants no further attempt; null when it did not say.</param>
+public sealed record AttemptResult(int? Status, string? Error, DateTimeOffset? RetryAt = null);

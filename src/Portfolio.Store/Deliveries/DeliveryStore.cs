@@ -14,6 +14,8 @@ public enum RedeliverOutcome
     UnderWay,
     /// <summary>Its subscription is not active (409).</summary>
     Inactive,
+    /// <summary>The portfolio is archived (409).</summary>
+    Archived,
 }
 
 /// <summary>What became of events on their way. Needs <see cref="Right.Manage"/> on the whole portfolio.</summary>
@@ -82,6 +84,8 @@ public sealed class DeliveryStore(Database database)
             {
                 if ((await RowsAsync(open, caller, portfolio, subscription, null, null, id, 1)).Count == 0)
                     return (RedeliverOutcome.NotFound, null);
+                if (await OpenDeliveries.IsArchivedAsync(open, portfolio))
+                    return (RedeliverOutcome.Archived, null);
                 if (await open.FirstAsync<long>(ActiveSql, new { Portfolio = portfolio, Subscription = subscription }) == 0)
                     return (RedeliverOutcome.Inactive, null);
                 var until = open.Now.ToInstant().Add(triedFor).ToMicroseconds();

@@ -5,10 +5,11 @@ namespace Portfolio.Store.Deliveries;
 /// <summary>Deliveries are made in the transaction that hands their event on, one for each subscription.</summary>
 internal static class NewDeliveries
 {
-    // A subscription that was ended, or made after the event, gets none.
+    // A subscription that was ended, made after the event or is one of an archived portfolio gets none.
     private const string AddSql = """
         insert into delivery (id, portfolio, subscription, event, state, next_attempt_at, give_up_at)
-        select @Id, s.portfolio, s.id, @Event, 'waiting', @Now, @GiveUpAt from subscription s
+        select @Id, s.portfolio, s.id, @Event, 'waiting', @Now, @GiveUpAt
+        from subscription s join portfolio p on p.id = s.portfolio and p.archived_at is null
         where s.portfolio = @Portfolio and s.id = @Subscription and s.active = 1 and s.after_event < @Event
         on conflict (portfolio, subscription, event) do nothing
         """;

@@ -1,5 +1,6 @@
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
+using Portfolio.Store.Deliveries;
 using Portfolio.Store.Outbox;
 using Portfolio.Store.Runs;
 
@@ -46,6 +47,7 @@ public sealed class PortfolioArchive(Database database)
         await open.ExecuteAsync(ArchiveSql, new { Portfolio = portfolio, open.Now });
         await open.ExecuteAsync(ScheduleOffSql, new { Portfolio = portfolio, open.Now });
         await OpenRuns.StopAsync(open, caller, portfolio);
+        await OpenDeliveries.StopAsync(open, portfolio);
         await AuditChain.AppendAsync(open, caller.KeyId, "portfolio.archive", $"portfolios/{portfolio}", new { });
         await OutboxStore.AppendAsync(open, portfolio, "portfolio.archived", portfolio, new { });
     }

@@ -41,5 +41,4 @@ public sealed record Change(IReadOnlyList<ProposedPart> Parts) : Proposal
 
 /// <summary>The write is refused and nothing of it kept but an audit entry.</summary>
 /// <param name="Reason">Handed back untouched in <see cref="WriteResult.Refusal"/>: faults, a failed precondition …</param>
-/// <param name="Summary">One line for the audit entry.</param>
-public sealed record Refusal(object Reason, string Summary) : Proposal;
+public sealed record Refusal(object Reason) : Proposal;

@@ -80,6 +80,7 @@ public sealed class EventDistribution(Database database)
     private const string TakeSql =
         "insert into event_marker (portfolio, name, at) values (@Portfolio, @Name, @Now) on conflict (portfolio, name) do nothing";
 
-    private static async Task<bool> TakeAsync(StoreTransaction open, string portfolio, string name) =>
+    /// <summary>Takes a name for ever; false when it was taken before.</summary>
+    internal static async Task<bool> TakeAsync(StoreTransaction open, string portfolio, string name) =>
         await open.ExecuteAsync(TakeSql, new { Portfolio = portfolio, Name = name, open.Now }) == 1;
 }

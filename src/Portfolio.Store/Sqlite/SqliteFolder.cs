@@ -34,10 +34,12 @@ internal sealed class SqliteFolder : IDisposable
 
     public static SqliteFolder Take(string directory)
     {
-        MakeDirectory(directory);
+        OwnerOnly.MakeDirectory(directory);
         var hold = Hold(directory);
         try
         {
+            OwnerOnly.MakeFile(FileIn(directory));
+            OwnerOnly.Keep(Directory.GetFiles(directory, "portfolio.*"));
             var folder = new SqliteFolder(directory, hold);
             folder.CheckVersion();
             return folder;
@@ -104,14 +106,6 @@ internal sealed class SqliteFolder : IDisposable
         using var command = connection.CreateCommand();
         command.CommandText = sql;
         return command.ExecuteScalar();
-    }
-
-    private static void MakeDirectory(string directory)
-    {
-        if (OperatingSystem.IsWindows())
-            Directory.CreateDirectory(directory);
-        else
-            Directory.CreateDirectory(directory, UnixFileMode.UserRead | UnixFileMode.UserWrite | UnixFileMode.UserExecute);
     }
 
     /// <summary>The lock goes with the process, however it ends; the file itself stays and means nothing.</summary>

@@ -2,11 +2,15 @@ using System.Collections.Concurrent;
 using System.Diagnostics;
 using System.Text;
 using System.Text.Json.Nodes;
+using Microsoft.AspNetCore.Http;
 using Microsoft.Extensions.DependencyInjection;
 using Microsoft.Extensions.DependencyInjection.Extensions;
 using Microsoft.Extensions.Logging;
 using Portfolio.Server.Tests.Contract;
 using Portfolio.Server.Tests.Hosting;
+using Portfolio.Server.Tests.Runs;
+using Portfolio.Server.Tests.Subscriptions;
+using Portfolio.Server.Tests.Webhooks;
 using Portfolio.Store.Access;
 
 namespace Portfolio.Server.Tests.Attacks;
@@ -52,6 +56,40 @@ public sealed class SecretTests : ILoggerProvider, ILogger
         {
             Directory.Delete(directory, recursive: true);
         }
+    }
+
+    [Fact]
+    public async Task WhatSignsForSubscriptionsStandsInNoLogAnswerOrTrace()
+    {
+        const string token = "only-in-a-url-gannet";
+        using var traces = Listen();
+        await using var receiver = await Receiver.StartAsync();
+        // What a target answers is a stranger's text.
+        receiver.Answer = (http, arrived) =>
+        {
+            http.Response.StatusCode = 500;
+            http.Response.Headers["x-signature"] = arrived.Headers["webhook-signature"];
+            return http.Response.WriteAsync($"{InBody} {arrived.Headers["webhook-signature"]}", Cancellation);
+        };
+        await using var server = new PortfolioServer(null, ("Logging:LogLevel:Default", "Trace"), ("Webhooks:AllowedHosts", "localhost"))
+        {
+            Outside = services => services.RemoveAll<ILoggerProvider>().AddSingleton<ILoggerProvider>(this),
+        };
+        var client = server.Client();
+        await client.PutJsonAsync("/v1/portfolios/p/document", Samples.Document());
+        var first = (await client.SubscribeAsync($"{receiver.Url}?token={token}", """{"type":"revision.created"}""", "office")).Text("secret");
+        var second = (await (await client.PostJsonAsync(SubscriptionScene.Address + "/office/secret", "{}")).JsonAsync()).Text("secret");
+        await client.PutJsonAsync("/v1/portfolios/p/document", Samples.Document("again"), "*");
+        await SubscriptionScene.StateAsync(client, "office", "waiting", 1);
+        await AskEverythingAsync(server, PortfolioServer.AdminKey);
+        answered.Enqueue(await server.AuditTextAsync());
+
+        var signatures = receiver.All.SelectMany(arrived => arrived.Headers["webhook-signature"].Split(' ')).ToList();
+        Assert.True(signatures.Count >= 2);
+        string[] secrets = [first, second, first["whsec_".Length..], second["whsec_".Length..], .. signatures];
+        Assert.Contains(logged, line => line.Contains("localhost", StringComparison.Ordinal));
+        Assert.All([.. secrets, token, InBody], secret => Assert.DoesNotContain(logged, line => line.Contains(secret, StringComparison.Ordinal)));
+        Assert.All([.. secrets, InBody], secret => Assert.DoesNotContain(answered, answer => answer.Contains(secret, StringComparison.Ordinal)));
     }
 
     /// <summary>Every operation with every key, twice; returns the secrets that were made meanwhile, each of which is answered once.</summary>

@@ -5,6 +5,7 @@ using Portfolio.Server.Events;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Runs;
 using Portfolio.Server.Tests.Subscriptions;
+using Portfolio.Store.Access;
 using static Portfolio.Server.Tests.Subscriptions.SubscriptionScene;
 
 namespace Portfolio.Server.Tests.Events;
@@ -161,6 +162,23 @@ public sealed class ConditionTests : IAsyncDisposable
         Assert.DoesNotContain("weir-lock", told.ToString(), StringComparison.Ordinal);
         await server.SettledAsync();
         Assert.Single(await client.DeliveriesAsync("one"));
+    }
+
+    [Fact]
+    public async Task OfPostsThatAreRefusedWithoutEndEachKeyIsToldOfOnceAMinute()
+    {
+        var client = await WishAsync("""{"type":"post.refused"}""", Certain(10));
+        var other = await server.ClientAsync(new Grant(Right.Manage, "p"));
+        var wrong = Certain(10, statusDate: "2027-13-01");
+        foreach (var (sender, told) in new[] { (client, 1), (client, 1), (other, 2), (client, 2), (other, 2) })
+        {
+            await (await sender.PutJsonAsync("/v1/portfolios/p/document", wrong, "*")).ProblemAsync(422, "refused");
+            Assert.Equal(told, (await client.EventsAsync("portfolio.post.refused")).Count);
+        }
+        server.Clock.Advance(TimeSpan.FromMinutes(1));
+        await (await client.PutJsonAsync("/v1/portfolios/p/document", wrong, "*")).ProblemAsync(422, "refused");
+        Assert.Equal(3, (await client.EventsAsync("portfolio.post.refused")).Count);
+        Assert.Equal(6, (await server.AuditTextAsync()).Split('\n').Count(line => line.Contains("\"refused\"", StringComparison.Ordinal)));
     }
 
     private async Task<int> StaleAsync(HttpClient client, string day)

@@ -197,13 +197,5 @@ public sealed class DeliveryTests : IAsyncDisposable
 
     private static Task<JsonElement> DeliveredAsync(HttpClient client, string subscription) => StateAsync(client, subscription, "delivered");
 
-    private static async Task<JsonElement> StateAsync(HttpClient client, string subscription, string state, int attempts = 0)
-    {
-        var found = await UntilAsync(
-            () => client.DeliveriesAsync(subscription, $"?state={state}"),
-            some => some.Any(delivery => delivery.GetProperty("attempts").GetInt32() >= attempts));
-        return found.First(delivery => delivery.GetProperty("attempts").GetInt32() >= attempts);
-    }
-
     public ValueTask DisposeAsync() => server.DisposeAsync();
 }

@@ -55,6 +55,15 @@ internal static class SubscriptionScene
         }
     }
 
+    /// <summary>Waits for a delivery in this state after so many attempts.</summary>
+    public static async Task<JsonElement> StateAsync(HttpClient client, string subscription, string state, int attempts = 0)
+    {
+        var found = await UntilAsync(
+            () => client.DeliveriesAsync(subscription, $"?state={state}"),
+            some => some.Any(delivery => delivery.GetProperty("attempts").GetInt32() >= attempts));
+        return found.First(delivery => delivery.GetProperty("attempts").GetInt32() >= attempts);
+    }
+
     /// <summary>Waits until everything that has happened was handed on.</summary>
     public static Task SettledAsync(this PortfolioServer server) => UntilAsync(
         () => server.Services.GetRequiredService<Store.Outbox.EventDistribution>().ListNextAsync(Store.Access.Caller.System, 1, Cancellation),

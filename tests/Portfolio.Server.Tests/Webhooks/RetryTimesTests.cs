@@ -49,4 +49,17 @@ public sealed class RetryTimesTests
         // Nine waits up to about 85 minutes together, then hourly ones.
         Assert.InRange(made, 31, 42);
     }
+
+    [Theory]
+    [InlineData(60, 60)]
+    [InlineData(3, null)]
+    [InlineData(-60, null)]
+    [InlineData(90_000, 86_400)]
+    public void AWishOfTheTargetCountsWhenItIsLaterAndEndsWithTheTimeForTrying(int wanted, int? expected)
+    {
+        var (own, end) = (RetryTimes.Next("d", 1, Now, Never, Options), Now.AddHours(24));
+        var next = RetryTimes.Next("d", 1, Now, end, Options, Now.AddSeconds(wanted));
+        Assert.Equal(expected is { } seconds ? Now.AddSeconds(seconds) : own, next);
+        Assert.Null(RetryTimes.Next("d", 1, end, end, Options, end.AddSeconds(wanted)));
+    }
 }

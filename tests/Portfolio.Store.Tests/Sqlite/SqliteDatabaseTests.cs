@@ -84,5 +84,27 @@ public sealed class SqliteDatabaseTests
         Assert.Equal(0, new FileInfo(Path.Combine(((SqlitePlace)store.Place).Folder, "portfolio.db-wal")).Length);
     }
 
+    [Fact]
+    public async Task Nobody_but_the_owner_reads_the_files()
+    {
+        if (OperatingSystem.IsWindows())
+            return;
+        const UnixFileMode owner = UnixFileMode.UserRead | UnixFileMode.UserWrite;
+        await using var place = new SqlitePlace();
+        var folder = Path.Combine(place.Folder, "data");
+        string[] names = ["portfolio.db", "portfolio.db-shm", "portfolio.db-wal", "portfolio.lock"];
+        for (var time = 0; time < 2; time++)
+        {
+            await using (var database = await SqliteDatabase.OpenAsync(folder, TimeProvider.System, TestStore.Cancellation))
+            {
+                Assert.Equal(names, Directory.GetFiles(folder).Select(file => Path.GetFileName(file)).Order(StringComparer.Ordinal));
+                Assert.All(names, name => Assert.Equal(owner, File.GetUnixFileMode(Path.Combine(folder, name))));
+            }
+            // As an older program left it.
+            File.SetUnixFileMode(Path.Combine(folder, "portfolio.db"), owner | UnixFileMode.GroupRead | UnixFileMode.OtherRead);
+        }
+        Assert.Equal(owner | UnixFileMode.UserExecute, File.GetUnixFileMode(folder));
+    }
+
     private static Task AppendAsync(TestStore store) => store.Audit.AppendAsync(Caller.System, "a", "b", new { }, TestStore.Cancellation);
 }

@@ -4,8 +4,8 @@ namespace Portfolio.Server.Contracts.Subscriptions;
 public sealed record WantedEventJson
 {
     /// <summary>
-    /// <c>run.succeeded</c>, <c>run.failed</c>, <c>run.cancelled</c>, <c>revision.created</c>, <c>post.refused</c>, <c>level.moved</c>,
-    /// <c>commitment.belowProbability</c> or <c>estimates.stale</c>.
+    /// <c>run.succeeded</c>, <c>run.failed</c>, <c>run.cancelled</c>, <c>revision.created</c>, <c>post.refused</c> (of each key once
+    /// a minute), <c>level.moved</c>, <c>commitment.belowProbability</c> or <c>estimates.stale</c>.
     /// </summary>
     public string? Type { get; init; }
 
