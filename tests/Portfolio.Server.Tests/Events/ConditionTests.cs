@@ -178,7 +178,7 @@ public sealed class ConditionTests : IAsyncDisposable
         server.Clock.Advance(TimeSpan.FromMinutes(1));
         await (await client.PutJsonAsync("/v1/portfolios/p/document", wrong, "*")).ProblemAsync(422, "refused");
         Assert.Equal(3, (await client.EventsAsync("portfolio.post.refused")).Count);
-        Assert.Equal(6, (await server.AuditTextAsync()).Split('\n').Count(line => line.Contains("\"refused\"", StringComparison.Ordinal)));
+        Assert.Equal(6, (await server.AuditTextAsync()).Split('\n').Count(line => line.Contains("\"problem\":\"refused\"", StringComparison.Ordinal)));
     }
 
     private async Task<int> StaleAsync(HttpClient client, string day)
