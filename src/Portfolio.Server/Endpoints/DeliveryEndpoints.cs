@@ -25,7 +25,7 @@ internal static class DeliveryEndpoints
         var deliveries = portfolio.MapGroup("/subscriptions/{subscription}/deliveries").WithTags("Events").Needs(Right.Manage);
         deliveries.MapGet("", List).WithName("listDeliveries").Produces<PageJson<DeliveryJson>>().Refuses(422);
         deliveries.MapGet("/{delivery}", Get).WithName("getDelivery").Produces<DeliveryJson>();
-        deliveries.MapPost("/{delivery}/redeliver", Redeliver).WithName("redeliver")
+        deliveries.MapPost("/{delivery}/redeliver", Redeliver).WithName("redeliverDelivery")
             .Produces<DeliveryJson>(StatusCodes.Status202Accepted).Refuses(409, 422);
     }
 

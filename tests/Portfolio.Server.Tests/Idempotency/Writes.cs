@@ -39,7 +39,7 @@ internal sealed record Write(string Operation, HttpMethod Method, string Address
         new("putSubscription", HttpMethod.Put, "subscriptions/office", """{"url":"https://hooks.harbour.example/","events":[{"type":"run.failed"}]}""", "*"),
         new("deleteSubscription", HttpMethod.Delete, "subscriptions/office", IfMatch: "*"),
         new("postSubscriptionSecret", HttpMethod.Post, "subscriptions/office/secret", """{"overlapHours":1}"""),
-        new("redeliver", HttpMethod.Post, "subscriptions/office/deliveries/{delivery}/redeliver"),
+        new("redeliverDelivery", HttpMethod.Post, "subscriptions/office/deliveries/{delivery}/redeliver"),
     }.ToDictionary(write => write.Operation);
 
     /// <summary>Sends it to a portfolio.</summary>
