@@ -39,7 +39,7 @@ public sealed class FuzzTests
     {
         await using var server = new PortfolioServer(null, ("Roles", "api"), ("Limits:RequestsPerSecond", "1000000"), ("Limits:QueuedRuns", "10000"))
         {
-            Beside = services => services.AddSingleton<Microsoft.AspNetCore.Hosting.IStartupFilter>(times),
+            Outside = services => services.AddSingleton<Microsoft.AspNetCore.Hosting.IStartupFilter>(times),
         };
         var fuzz = await PrepareAsync(server);
         var client = server.Client(key: null);
