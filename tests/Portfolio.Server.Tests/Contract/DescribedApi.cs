@@ -33,14 +33,18 @@ internal sealed class DescribedApi
 
     private IEnumerable<DescribedOperation> OperationsOf(string template, JsonObject path) =>
         path.Where(member => member.Key is "get" or "put" or "post" or "patch" or "delete")
-            .Select(member => new DescribedOperation(template, member.Key.ToUpperInvariant(), member.Value!.AsObject(), ResponsesOf(member.Value)));
+            .Select(member => (Method: member.Key.ToUpperInvariant(), Operation: member.Value!.AsObject()))
+            .Select(member => new DescribedOperation(template, member.Method, member.Operation, ResponsesOf(member.Operation)));
 
     private Dictionary<int, DescribedResponse> ResponsesOf(JsonNode operation) => operation["responses"]!.AsObject().ToDictionary(
         response => int.Parse(response.Key, System.Globalization.CultureInfo.InvariantCulture),
         response => new DescribedResponse(
-            [.. (response.Value!["headers"]?.AsObject() ?? []).Where(header => (bool?)header.Value!["required"] == true).Select(header => header.Key)],
-            (response.Value["content"]?.AsObject() ?? []).ToDictionary(
-                content => content.Key, content => content.Value!["schema"] is { } schema ? Compile(schema.DeepClone().AsObject()) : null)));
+            [.. Members(response.Value!["headers"]).Where(header => (bool?)header.Value!["required"] == true).Select(header => header.Key)],
+            Members(response.Value["content"]).ToDictionary(
+                content => content.Key,
+                content => content.Value!["schema"] is { } schema ? Compile(schema.DeepClone().AsObject()) : null)));
+
+    private static JsonObject Members(JsonNode? node) => node as JsonObject ?? [];
 
     private JsonSchema Compile(JsonObject schema)
     {
@@ -63,12 +67,18 @@ internal sealed record DescribedOperation(
     public IReadOnlyList<string>? Rights => Description["x-rights"]?.AsArray().Select(right => right!.GetValue<string>()).ToList();
 
     /// <summary>The media type in which a body is sent, JSON where it may be; null when it takes none.</summary>
-    public string? BodyType => Content?.Select(type => type.Key).OrderBy(type => type.EndsWith("json", StringComparison.Ordinal) ? 0 : 1).First();
+    public string? BodyType => BodyTypes.OrderBy(type => type.EndsWith("json", StringComparison.Ordinal) ? 0 : 1).FirstOrDefault();
+
+    /// <summary>Every media type in which a body may be sent.</summary>
+    public IReadOnlyList<string> BodyTypes => [.. Content?.Select(type => type.Key) ?? []];
 
     /// <summary>Names of the parameters of the query, and of headers.</summary>
     public IReadOnlyList<string> Query => ParametersIn("query");
 
     public IReadOnlyList<string> Headers => ParametersIn("header");
+
+    /// <summary>Names of the parameters of the address.</summary>
+    public IReadOnlyList<string> PathParameters => [.. segments.Where(IsParameter).Select(segment => segment.Trim('{', '}'))];
 
     /// <summary>The schema's name; empty when it has none.</summary>
     public string BodyName => BodySchema?["$ref"]?.GetValue<string>() is { } reference ? SchemaSamples.NameOf(reference) : "";
@@ -76,7 +86,8 @@ internal sealed record DescribedOperation(
     public JsonNode? BodySchema => BodyType is { } type ? Content![type]!["schema"] : null;
 
     private IReadOnlyList<string> ParametersIn(string place) =>
-        [.. (Description["parameters"] as JsonArray ?? []).Where(each => each!["in"]!.GetValue<string>() == place).Select(each => each!["name"]!.GetValue<string>())];
+        [.. (Description["parameters"] as JsonArray ?? []).Where(each => each!["in"]!.GetValue<string>() == place)
+            .Select(each => each!["name"]!.GetValue<string>())];
 
     private JsonObject? Content => Description["requestBody"]?["content"]?.AsObject();
 

@@ -7,6 +7,8 @@ namespace Portfolio.Server.Tests.Fuzz;
 /// <summary>Sound JSON with a few things done to it: to its members, or to its bytes.</summary>
 internal static class Damage
 {
+    private static readonly char[] Signs = ['[', '{', '"', '\\', '0', '-', ' ', ',', '\n'];
+
     /// <summary>Still JSON: members taken away, renamed, replaced or doubled, things put in the place of others.</summary>
     public static byte[] Members(JsonNode json, Dice dice)
     {
@@ -24,7 +26,7 @@ internal static class Damage
     }
 
     private static List<JsonNode> Containers(JsonNode json) =>
-        [.. (json as JsonObject)?.Select(member => member.Value).OfType<JsonNode>().Where(IsContainer) ?? (json as JsonArray ?? []).OfType<JsonNode>().Where(IsContainer)];
+        [.. ((json as JsonObject)?.Select(member => member.Value) ?? json as JsonArray ?? []).OfType<JsonNode>().Where(IsContainer)];
 
     private static bool IsContainer(JsonNode json) => json is JsonObject or JsonArray;
 
@@ -74,8 +76,8 @@ internal static class Damage
                 case 0: bytes.RemoveRange(place, bytes.Count - place); break;
                 case 1: bytes.RemoveRange(place, length); break;
                 case 2: bytes.InsertRange(place, bytes.Skip(place).Take(length).ToArray()); break;
-                case 3: bytes.InsertRange(place, Enumerable.Range(0, dice.Whole(1, 8)).Select(_ => (byte)dice.Whole(0, 255)).ToArray()); break;
-                case 4: bytes.InsertRange(place, Enumerable.Repeat((byte)dice.Pick('[', '{', '"', '\\', '0', '-', ' '), dice.Pick(1, 2, 20, 2000)).ToArray()); break;
+                case 3: bytes.InsertRange(place, Enumerable.Range(0, dice.Whole(1, 8)).Select(_ => (byte)dice.Whole(0, 255))); break;
+                case 4: bytes.InsertRange(place, Enumerable.Repeat((byte)dice.Pick(Signs), dice.Pick(1, 2, 20, 2000))); break;
                 default: if (place < bytes.Count) bytes[place] = (byte)dice.Whole(0, 255); break;
             }
         }

@@ -9,7 +9,8 @@ internal sealed class SchemaFuzz(DescribedApi api, Dice dice)
 {
     private const int Deepest = 9;
 
-    private static readonly string[] Ids = ["A0", "A1", "first", "M", "A", "weir", "project-0", "project-1", "north", "driver-0", "driver/driver-0", "project/project-0"];
+    private static readonly string[] Ids =
+        ["A0", "A1", "first", "M", "A", "weir", "project-0", "project-1", "north", "driver-0", "driver/driver-0", "project/project-0"];
 
     private readonly SchemaSamples samples = new(api);
 
@@ -23,7 +24,9 @@ internal sealed class SchemaFuzz(DescribedApi api, Dice dice)
             return constant.DeepClone();
         if (schema["enum"] is JsonArray words)
             return dice.Pick(words)!.DeepClone();
-        return schema["oneOf"] is JsonArray forms && schema["properties"] is null ? Any(dice.Pick(forms)!, depth + 1) : OfType(schema, depth);
+        return schema["oneOf"] is JsonArray forms && schema["properties"] is null
+            ? Any(dice.Pick(forms)!, depth + 1)
+            : OfType(schema, depth);
     }
 
     private JsonNode? OfType(JsonNode schema, int depth) => SchemaSamples.TypeOf(schema) switch

@@ -6,11 +6,16 @@ using Microsoft.AspNetCore.Hosting;
 namespace Portfolio.Server.Tests.Fuzz;
 
 /// <summary>How long requests take inside the server, by the number that they carry.</summary>
-internal sealed class ServerTimes : IStartupFilter
+/// <param name="longest">Those that take longer are kept.</param>
+internal sealed class ServerTimes(TimeSpan longest) : IStartupFilter
 {
     public const string Header = "X-Fuzz";
 
-    public ConcurrentDictionary<int, TimeSpan> Taken { get; } = [];
+    private long most;
+
+    public ConcurrentDictionary<int, TimeSpan> Slow { get; } = [];
+
+    public TimeSpan Most => new(Interlocked.Read(ref most));
 
     public Action<IApplicationBuilder> Configure(Action<IApplicationBuilder> next) => app =>
     {
@@ -19,8 +24,16 @@ internal sealed class ServerTimes : IStartupFilter
             var began = Stopwatch.GetTimestamp();
             await rest(context);
             if (int.TryParse(context.Request.Headers[Header], out var number))
-                Taken[number] = Stopwatch.GetElapsedTime(began);
+                Keep(number, Stopwatch.GetElapsedTime(began));
         });
         next(app);
     };
+
+    private void Keep(int number, TimeSpan taken)
+    {
+        if (taken > longest)
+            Slow[number] = taken;
+        for (var seen = Interlocked.Read(ref most); taken.Ticks > seen; seen = Interlocked.Read(ref most))
+            Interlocked.CompareExchange(ref most, taken.Ticks, seen);
+    }
 }

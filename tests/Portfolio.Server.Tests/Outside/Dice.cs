@@ -21,6 +21,9 @@ internal sealed class Dice(int seed)
 
     public T Pick<T>(params IReadOnlyList<T> from) => from[_random.Next(from.Count)];
 
+    /// <summary>One of its items; the other would take the array for its only choice.</summary>
+    public JsonNode? Pick(JsonArray from) => from[_random.Next(from.Count)];
+
     /// <summary>So many different ones, in the order in which they stand.</summary>
     public IReadOnlyList<T> Some<T>(IReadOnlyList<T> from, int count)
     {

@@ -52,7 +52,9 @@ public sealed class DocumentReader(int maxDepth)
         json = WithoutMark(json);
         try
         {
-            return JsonSerializer.Deserialize(json, context.JsonElement);
+            var read = JsonSerializer.Deserialize(json, context.JsonElement);
+            JsonRefused.WhereTextsAreBroken(json);
+            return read;
         }
         catch (JsonException refused)
         {

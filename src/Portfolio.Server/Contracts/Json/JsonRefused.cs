@@ -56,6 +56,29 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
             // InvalidOperationException: a text that is not valid UTF-8 or half a surrogate pair.
             stop = malformed is JsonException syntax ? Offset(json, syntax) : walk.Consumed;
         }
+        return Malformed(json, walk, stop);
+    }
+
+    /// <summary>
+    /// Refuses names and texts that are not valid UTF-8 or hold half a surrogate pair: JSON that is kept as it came, not read into a type,
+    /// fails only where they are used.
+    /// </summary>
+    public static void WhereTextsAreBroken(ReadOnlySpan<byte> json)
+    {
+        var walk = new PointerWalk(json);
+        try
+        {
+            while (walk.Read())
+                walk.CheckText();
+        }
+        catch (InvalidOperationException)
+        {
+            throw Malformed(json, walk, walk.Consumed);
+        }
+    }
+
+    private static JsonRefused Malformed(ReadOnlySpan<byte> json, PointerWalk walk, long stop)
+    {
         var (line, column) = Position(json, stop);
         return new JsonRefused(
             new Fault(walk.Pointer.ToString(), "", FaultCodes.JsonMalformed,

@@ -57,6 +57,13 @@ internal ref struct PointerWalk
         return true;
     }
 
+    /// <summary>Throws <see cref="InvalidOperationException"/> when the current value is a text that cannot be read.</summary>
+    public readonly void CheckText()
+    {
+        if (reader.TokenType == JsonTokenType.String)
+            reader.GetString();
+    }
+
     private void Append(string segment)
     {
         var needed = length + 1 + segment.Length;
