@@ -1,6 +1,6 @@
 namespace Portfolio.Server.Tests.Fuzz;
 
-/// <summary>In memory where the system has such folders: whether writes outlive a power cut is not asked here, and the disk is slow.</summary>
+/// <summary>In memory where the system allows it: whether writes outlive a power cut is not asked here, and the disk is slow.</summary>
 internal sealed class QuickFolder : IDisposable
 {
     private const string InMemory = "/dev/shm";
