@@ -64,7 +64,8 @@ public sealed class FuzzTests
         var accepted = answers.Where(answer => answer.Key.Status < 300).ToList();
         var all = answers.Values.Sum();
         Assert.True(accepted.Sum(answer => answer.Value) > all / 4, $"Seed {seed}: too little is accepted to prove anything.");
-        var asked = answers.GroupBy(answer => answer.Key.Operation).ToDictionary(group => group.Key, group => group.Sum(each => each.Value));
+        var asked = answers.GroupBy(answer => answer.Key.Operation)
+            .ToDictionary(group => group.Key, group => group.Sum(each => each.Value));
         Assert.All(api.Operations, operation => Assert.Contains(operation.Name, asked.Keys));
         var never = asked.Where(each => each.Value >= OftenEnough).Select(each => each.Key)
             .Except(accepted.Select(answer => answer.Key.Operation)).ToList();
