@@ -13,8 +13,6 @@ using Portfolio.Store.Documents;
 namespace Portfolio.Server.Endpoints;
 
 /// <summary>What a write of one part brings along.</summary>
-/// <param name="Portfolio">The portfolio's id.</param>
-/// <param name="Note">Kept with the revision.</param>
 internal sealed record PartWrite(
     [FromRoute(Name = "portfolio")] string Portfolio,
     [FromQuery(Name = "note")] string? Note,
