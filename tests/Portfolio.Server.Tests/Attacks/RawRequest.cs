@@ -20,40 +20,51 @@ internal sealed record RawRequest(string Head, IEnumerable<byte[]>? Body = null)
     public static RawRequest Json(string method, string target, byte[] body) =>
         new(Line(method, target, "Content-Type: application/json", $"Content-Length: {body.Length}"), [body]);
 
-    /// <summary>The status that is answered, 0 when the connection is just closed, and how long that took.</summary>
+    /// <summary>
+    /// The status that is answered, 0 when the connection is just closed, and how long it took to the first byte of the answer. The server
+    /// goes on to take what is still on its way for some seconds before it closes, unless it is told that nothing more will come.
+    /// </summary>
     public async Task<(int Status, string Text, TimeSpan Took)> SendAsync(int port)
     {
         var began = Stopwatch.GetTimestamp();
         using var socket = new TcpClient();
         await socket.ConnectAsync(IPAddress.Loopback, port, Cancellation);
         var stream = socket.GetStream();
-        var reading = ReadAsync(stream);
+        var first = TimeSpan.Zero;
+        var reading = ReadAsync(stream, () => first = Stopwatch.GetElapsedTime(began));
         try
         {
             await stream.WriteAsync(Encoding.Latin1.GetBytes(Head), Cancellation);
             foreach (var piece in Body ?? [])
             {
-                if (reading.IsCompleted)
+                if (first > TimeSpan.Zero)
                     break;
                 await stream.WriteAsync(piece, Cancellation);
             }
+            if (first > TimeSpan.Zero)
+                socket.Client.Shutdown(SocketShutdown.Send);
         }
-        catch (IOException)
+        catch (Exception closed) when (closed is IOException or SocketException)
         {
             // Closed from the other side.
         }
         var text = await reading;
-        return (text.StartsWith("HTTP/1.1 ", StringComparison.Ordinal) ? int.Parse(text.AsSpan(9, 3), provider: null) : 0, text, Stopwatch.GetElapsedTime(began));
+        var status = text.StartsWith("HTTP/1.1 ", StringComparison.Ordinal) ? int.Parse(text.AsSpan(9, 3), provider: null) : 0;
+        return (status, text, first > TimeSpan.Zero ? first : Stopwatch.GetElapsedTime(began));
     }
 
-    private static async Task<string> ReadAsync(NetworkStream stream)
+    private static async Task<string> ReadAsync(NetworkStream stream, Action begins)
     {
         var text = new StringBuilder();
         var buffer = new byte[4096];
         try
         {
             for (int read; (read = await stream.ReadAsync(buffer, Cancellation)) > 0;)
+            {
+                if (text.Length == 0)
+                    begins();
                 text.Append(Encoding.UTF8.GetString(buffer, 0, read));
+            }
         }
         catch (IOException)
         {
