@@ -6,7 +6,7 @@ namespace Portfolio.Engine.Runs;
 /// <summary>The engine's own threads: never the pool's, and at lower priority, so that requests stay quick while a run works.</summary>
 internal static partial class EngineThreads
 {
-    private const int Niceness = 10;
+    private const int Niceness = 19;
     private const int StackBytes = 4 << 20;
 
     /// <summary>Runs the work on so many threads and waits; the first exception stops the others and is thrown here.</summary>
