@@ -26,10 +26,9 @@ internal sealed class DescribedApi
 
     public JsonSchema Problem { get; }
 
-    /// <summary>The operations at an address, whatever their method; of several templates the one with the most literal segments.</summary>
+    /// <summary>The operations at an address, one of each method: as in routing, that of the template with the most literal segments.</summary>
     public IReadOnlyList<DescribedOperation> At(string path) =>
-        Operations.Where(operation => operation.Fits(path)).GroupBy(operation => operation.Template)
-            .MinBy(template => template.First().Parameters)?.ToList() ?? [];
+        [.. Operations.Where(operation => operation.Fits(path)).OrderBy(operation => operation.Parameters).DistinctBy(operation => operation.Method)];
 
     private IEnumerable<DescribedOperation> OperationsOf(string template, JsonObject path) =>
         path.Where(member => member.Key is "get" or "put" or "post" or "patch" or "delete")
