@@ -10,18 +10,6 @@ namespace Portfolio.Engine;
 /// <summary>Cautions that follow from the model itself, whatever is drawn.</summary>
 internal static class PlanWarnings
 {
-    /// <summary>Activities that start later when they get shorter, so that what follows their start may too.</summary>
-    public const string Reverse = "schedule.reverse";
-
-    /// <summary>Nothing was said about how projects move together.</summary>
-    public const string NotStated = "dependence.not-stated";
-
-    /// <summary>Projects that dependence is stated for but cannot reach, because their own correlation is 0.</summary>
-    public const string NoEffect = "dependence.no-effect";
-
-    /// <summary>Ranks that the repair of the matrix changed.</summary>
-    public const string Repaired = "dependence.repaired";
-
     public static IReadOnlyList<Warning> Of(Plan plan) => [.. Dependence(plan), .. ReverseActivities(plan.Network)];
 
     private static IEnumerable<Warning> Dependence(Plan plan)
@@ -29,7 +17,7 @@ internal static class PlanWarnings
         if (!plan.Document.Settings.Dependence.Stated && plan.Document.Projects.Count > 1)
         {
             yield return new Warning(
-                NotStated,
+                CautionCodes.NotStated,
                 "Nothing was stated about how projects move together: apart from shared drivers, pools and links they are "
                 + "taken as independent (rank correlation 0), which makes the spread of the portfolio too narrow if they are not.",
                 []);
@@ -37,14 +25,14 @@ internal static class PlanWarnings
         if (plan.Dependence.WithoutEffect.Count > 0)
         {
             yield return new Warning(
-                NoEffect,
+                CautionCodes.NoEffect,
                 "The stated dependence cannot reach the estimates of these projects, because their own correlation is 0.",
                 [.. plan.Dependence.WithoutEffect.Select(id => $"project/{id}")]);
         }
         if (plan.Dependence.Repaired.Count > 0)
         {
             yield return new Warning(
-                Repaired,
+                CautionCodes.Repaired,
                 "The stated ranks contradict each other and were replaced by the nearest that can exist together (from stated to used).",
                 [.. plan.Dependence.Repaired.Select(c => string.Create(
                     CultureInfo.InvariantCulture, $"{c.First} with {c.Second}: {c.Stated:0.####} to {c.Used:0.####}"))]);
@@ -61,7 +49,7 @@ internal static class PlanWarnings
         if (named.Length > 0)
         {
             yield return new Warning(
-                Reverse,
+                CautionCodes.Reverse,
                 "These activities have a finish-to-finish or start-to-finish predecessor and something that follows their start or "
                 + "their place at a pool: when they get shorter they start later, and dates behind them may become later too.",
                 named);

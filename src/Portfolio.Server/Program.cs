@@ -51,29 +51,6 @@ app.UseAccess();
 app.MapHealth();
 app.MapApiDescription();
 app.MapReference();
-
-var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToMediaTypes().OnceOnly();
-api.MapPortfolios();
-api.MapKeys();
-api.MapAudit();
-
-var portfolio = api.MapGroup("/portfolios/{portfolio}").Refuses(403, 404);
-portfolio.MapPortfolio();
-portfolio.MapDocument();
-portfolio.MapSettings();
-portfolio.MapProjects();
-portfolio.MapActivities();
-portfolio.MapUpdates();
-portfolio.MapRevisions();
-portfolio.MapRuns();
-portfolio.MapSchedule();
-portfolio.MapResults();
-portfolio.MapDistribution();
-portfolio.MapSeries();
-portfolio.MapContingency();
-portfolio.MapCalendar();
-portfolio.MapEvents();
-portfolio.MapSubscriptions();
-portfolio.MapDeliveries();
+app.MapApi();
 
 return await app.RunToEndAsync();

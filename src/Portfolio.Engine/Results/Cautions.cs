@@ -9,15 +9,11 @@ public sealed record Warning(string Code, string Message, IReadOnlyList<string> 
 /// <summary>The cautions that come with results whatever they are, and those that follow from the figures themselves.</summary>
 public static class Cautions
 {
-    public const string CoversWhatWasEntered = "covers.entered-only";
-    public const string SamplingIsNotInput = "sampling.not-input";
-    public const string LevelsUnderAdd = "levels.under-add";
-
     /// <summary>The cautions that every result carries.</summary>
     public static IReadOnlyList<Warning> Always { get; } =
     [
-        new(CoversWhatWasEntered, "The figures cover only what was entered: work, costs and risks that nobody stated are not in them.", []),
-        new(SamplingIsNotInput,
+        new(CautionCodes.CoversWhatWasEntered, "The figures cover only what was entered: work, costs and risks that nobody stated are not in them.", []),
+        new(CautionCodes.SamplingIsNotInput,
             "The sampling bounds say how exactly the stated inputs were worked through, not how good those inputs are.", []),
     ];
 
@@ -27,7 +23,7 @@ public static class Cautions
     public static IReadOnlyList<Warning> Of(Contingency contingency) => contingency.Diversification >= 0 ? Always :
     [
         .. Always,
-        new(LevelsUnderAdd,
+        new(CautionCodes.LevelsUnderAdd,
             $"At level {contingency.Level} the projects' own contingencies add up to less than the portfolio needs, "
             + "as they do when risks are rare: funding each project at its own level is not enough.",
             []),

@@ -30,7 +30,7 @@ internal static class ProblemPages
         new XElement("p", "A code never changes its meaning."),
         Page.Table(
             "Codes in 'errors'", ["Code", "Meaning"],
-            CodeMeanings.All.Select(each => new object[] { Page.Code(each.Code), each.Meaning })));
+            CodeMeanings.OfFaults.Select(each => new object[] { Page.Code(each.Code), each.Meaning })));
 
     private static string Status(ProblemKind kind) => kind.Status == 0 ? "any" : kind.Status.ToString(CultureInfo.InvariantCulture);
 }

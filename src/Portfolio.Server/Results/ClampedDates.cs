@@ -24,7 +24,7 @@ internal sealed class ClampedDates
         if (projects.Count > 0)
         {
             yield return new(
-                RunWarnings.DatesClamped,
+                CautionCodes.DatesClamped,
                 $"In some iterations these projects finish after {Instants.ToDate(Instants.LastDay):yyyy-MM-dd}, the last date there is; " +
                 "such finishes are counted on that day.",
                 [.. projects.Order().Select(p => document.Projects[p].Id)]);

@@ -17,7 +17,7 @@ internal sealed class ContingencyReading(ResultStore results, ScopeIterations it
         var contingency = await FindAsync(run.Caller, run.Portfolio, run.Id, level, cancellation)
             ?? await AgainAsync(run, level, cancellation);
         var digits = (await facts.OfAsync(run.Portfolio, run.Run.Revision, cancellation)).Digits;
-        var warnings = KeptWarnings.Read(run).Of(Scope.Portfolio).Where(warning => warning.Code != Cautions.LevelsUnderAdd);
+        var warnings = KeptWarnings.Read(run).Of(Scope.Portfolio).Where(warning => warning.Code != CautionCodes.LevelsUnderAdd);
         var own = Cautions.Of(contingency).Except(Cautions.Always).Select(warning => new WarningJson(warning.Code, warning.Message));
         return ContingencyJson.From(run.Run, contingency, digits, [.. warnings, .. own]);
     }

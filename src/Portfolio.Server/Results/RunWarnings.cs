@@ -7,9 +7,6 @@ namespace Portfolio.Server.Results;
 /// <summary>The cautions of a run: of every result, its plan, its inputs' age, its figures; each with the scopes it concerns.</summary>
 public static class RunWarnings
 {
-    public const string StaleStatus = "status.stale";
-    public const string DatesClamped = "dates.clamped";
-
     /// <summary>A month and some days of grace: progress is commonly reported monthly.</summary>
     public const int StaleAfterDays = 35;
 
@@ -34,7 +31,7 @@ public static class RunWarnings
         if (open.Where(project => project.StatusDate < limit).Select(project => project.Id).ToArray() is { Length: > 0 } stale)
         {
             yield return new(
-                StaleStatus,
+                CautionCodes.StaleStatus,
                 $"The progress of these projects is reported up to a date more than {StaleAfterDays} days before {asOf:yyyy-MM-dd}; " +
                 "what happened since is not in the figures.",
                 stale);

@@ -71,7 +71,9 @@ public sealed class ContingencyTests
         var result = At(P80, projects, [0, 0]);
         Assert.Equal((100, 0, -100), (result.Total, result.SumOfStandalone, result.Diversification));
         Assert.Equal(100, result.Allocations.Sum(allocation => allocation.Allocated));
-        Assert.Equal([Cautions.CoversWhatWasEntered, Cautions.SamplingIsNotInput, Cautions.LevelsUnderAdd], Cautions.Of(result).Select(warning => warning.Code));
+        Assert.Equal(
+            [CautionCodes.CoversWhatWasEntered, CautionCodes.SamplingIsNotInput, CautionCodes.LevelsUnderAdd],
+            Cautions.Of(result).Select(warning => warning.Code));
     }
 
     /// <summary>Two independent lognormals of mean 100 and sd 40 (convolution by SciPy): P50s make 185.695338177, the P50 of the sum is
@@ -87,7 +89,7 @@ public sealed class ContingencyTests
         const double tolerance = 4 * 1.6 * 80 / 447.2; // se below 1.6 sd/√n for these densities, sds sum to 80
         Assert.Equal((185.695338177, 192.35344838), (p50.SumOfStandalone / Scale, p50.Total / Scale), Within(tolerance));
         Assert.Equal((256.81208028, 242.8704519), (p80.SumOfStandalone / Scale, p80.Total / Scale), Within(tolerance));
-        Assert.Contains(Cautions.Of(p50), warning => warning.Code == Cautions.LevelsUnderAdd);
+        Assert.Contains(Cautions.Of(p50), warning => warning.Code == CautionCodes.LevelsUnderAdd);
     }
 
     [Fact]

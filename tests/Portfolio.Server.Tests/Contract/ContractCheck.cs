@@ -14,7 +14,7 @@ internal sealed class ContractCheck(DescribedApi? given = null) : DelegatingHand
     // That the committed description is the one served is a test of its own.
     private static DescribedApi? described;
 
-    private static readonly HashSet<string> Codes = Problems.CodeMeanings.All.Select(each => each.Code).ToHashSet(StringComparer.Ordinal);
+    private static readonly HashSet<string> Codes = Problems.CodeMeanings.OfFaults.Select(each => each.Code).ToHashSet(StringComparer.Ordinal);
 
     protected override async Task<HttpResponseMessage> SendAsync(HttpRequestMessage request, CancellationToken cancellationToken)
     {

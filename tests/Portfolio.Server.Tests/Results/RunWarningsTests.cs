@@ -1,4 +1,5 @@
 using System.Text.Json;
+using Portfolio.Engine.Results;
 using Portfolio.Server.Contracts.Results;
 using Portfolio.Server.Results;
 
@@ -17,15 +18,15 @@ public sealed class RunWarningsTests
         var codes = Of(Fresh).Select(warning => warning.Code).ToArray();
         Assert.Contains("covers.entered-only", codes);
         Assert.Contains("sampling.not-input", codes);
-        Assert.DoesNotContain(RunWarnings.StaleStatus, codes);
-        Assert.DoesNotContain(RunWarnings.DatesClamped, codes);
+        Assert.DoesNotContain(CautionCodes.StaleStatus, codes);
+        Assert.DoesNotContain(CautionCodes.DatesClamped, codes);
     }
 
     [Fact]
     public void OldProgressIsNamedWithTheScopesItTouches()
     {
         // 2026-10-26 is 36 days before 2026-12-01, 2026-10-27 is 35.
-        var stale = Single(Of(Fresh, Old("weir", "2026-10-26"), Old("dyke", "2026-10-27")), RunWarnings.StaleStatus);
+        var stale = Single(Of(Fresh, Old("weir", "2026-10-26"), Old("dyke", "2026-10-27")), CautionCodes.StaleStatus);
         Assert.Equal(["weir"], stale.Subjects!);
         Assert.Equal(["portfolio", "programme/locks", "project/weir"], stale.Scopes!);
     }
@@ -34,14 +35,14 @@ public sealed class RunWarningsTests
     public void FinishedWorkDoesNotGrowOld()
     {
         var done = """{"id":"dyke","statusDate":"2026-01-05","activities":[{"id":"A","duration":3,"actualStart":"2025-12-01","actualFinish":"2025-12-05"}]}""";
-        Assert.DoesNotContain(Of(Fresh, done), warning => warning.Code == RunWarnings.StaleStatus);
+        Assert.DoesNotContain(Of(Fresh, done), warning => warning.Code == CautionCodes.StaleStatus);
     }
 
     [Fact]
     public void FinishesBeyondTheLastDateAreNamed()
     {
         var endless = """{"id":"canal","statusDate":"2026-11-30","activities":[{"id":"A","duration":{"type":"uniform","low":10,"high":90000}}]}""";
-        var clamped = Single(Of(Fresh, endless), RunWarnings.DatesClamped);
+        var clamped = Single(Of(Fresh, endless), CautionCodes.DatesClamped);
         Assert.Equal(["canal"], clamped.Subjects!);
     }
 
