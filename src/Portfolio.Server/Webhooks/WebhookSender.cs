@@ -35,6 +35,8 @@ internal sealed class WebhookSender : IDisposable
             PooledConnectionLifetime = TimeSpan.FromMinutes(1),
             MaxConnectionsPerServer = this.options.Senders,
             MaxResponseHeadersLength = 16,
+            // What is left of an answer is not worth its connection.
+            MaxResponseDrainSize = 0,
             // No trace of ours is a stranger's business.
             ActivityHeadersPropagator = null,
         })
@@ -57,7 +59,8 @@ internal sealed class WebhookSender : IDisposable
             using var request = Request(held);
             using var answer = await client.SendAsync(request, HttpCompletionOption.ResponseHeadersRead, limit.Token);
             await PassOverAsync(answer, limit.Token);
-            return new AttemptResult((int)answer.StatusCode, Why((int)answer.StatusCode), RetryAt(answer));
+            var status = (int)answer.StatusCode;
+            return new AttemptResult(status is >= 100 and <= 599 ? status : null, Why(status), RetryAt(answer));
         }
         catch (OperationCanceledException) when (!stopping.IsCancellationRequested)
         {
@@ -111,6 +114,7 @@ internal sealed class WebhookSender : IDisposable
         >= 200 and < 300 => null,
         >= 300 and < 400 => $"The target answered {status}; redirects are not followed.",
         410 => "The target answered 410: it is gone for good.",
+        < 100 or > 599 => $"The target answered {status:000}, which is no status of HTTP.",
         _ => $"The target answered {status}.",
     };
 

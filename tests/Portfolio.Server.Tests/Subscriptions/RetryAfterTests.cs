@@ -70,6 +70,27 @@ public sealed class RetryAfterTests
         Assert.Single(await client.DeliveriesAsync("office"));
     }
 
+    // Whatever a target answers is recorded, and tried again only as other failures are.
+    [Theory]
+    [InlineData("999", null)]
+    [InlineData("600", null)]
+    [InlineData("099", null)]
+    [InlineData("599", 599)]
+    public async Task AStatusThatIsNoneIsAFailedAttempt(string status, int? recorded)
+    {
+        await using var server = SubscriptionScene.Server();
+        await using var target = new RawTarget($"HTTP/1.1 {status} Unheard\r\nContent-Length: 0\r\nConnection: close\r\n\r\n");
+        var client = server.Client();
+        await client.PutDocumentAsync(Certain(5));
+        await client.SubscribeAsync(target.Url, Revisions, "office");
+        await client.PutDocumentAsync(Certain(6));
+        var waiting = await StateAsync(client, "office", "waiting", 1);
+        Assert.StartsWith($"The target answered {status}", waiting.Text("lastError"), StringComparison.Ordinal);
+        Assert.Equal(recorded, waiting.TryGetProperty("lastStatus", out var last) ? last.GetInt32() : null);
+        server.Clock.Advance(TimeSpan.FromHours(25));
+        Assert.Equal(2, (await StateAsync(client, "office", "dead")).GetProperty("attempts").GetInt32());
+    }
+
     private static void Answering(Receiver receiver, int status, string after) => receiver.Answer = (http, _) =>
     {
         http.Response.StatusCode = status;
