@@ -66,6 +66,9 @@ internal sealed class RunOrder(Settings settings, TimeZoneInfo zone, DateTimeOff
     {
         if (asked.Recorded == true && seed != settings.Seed)
             reading.Refuse(Body, "recorded", RunFaultCodes.RecordedSeed, $"A recorded run has the seed of the settings, {settings.Seed}.");
+        // No id holds it, and PostgreSQL does not even look for one that does.
+        if (asked.Replaces?.Contains('\0', StringComparison.Ordinal) == true)
+            reading.Refuse(Body, "replaces", RunFaultCodes.ReplacesUnknown, "'replaces' must name a recorded run of the same date.");
         if (asked.Recorded == false && asked.Replaces is not null)
             reading.Refuse(Body, "replaces", RunFaultCodes.ReplacesUnrecorded, "Only a recorded run can replace another.");
         return asked.Recorded ?? (seed == settings.Seed && iterations == settings.Iterations);

@@ -69,6 +69,22 @@ public sealed class PostgresServerTests : IAsyncLifetime
         Assert.Equal("2027-01-05", Assert.Single(runs.EnumerateArray()).Text("asOf"));
     }
 
+    [Theory]
+    [InlineData("/v1/audit?actor=%00")]
+    [InlineData("/v1/keys?cursor=a%00")]
+    [InlineData("/v1/portfolios/p/events?after=%00")]
+    [InlineData("/v1/portfolios/p/subscriptions?cursor=%00")]
+    [InlineData("/v1/portfolios/p/calendar.ics?run=%00")]
+    [InlineData("/v1/portfolios/p/series?scope=project/%00&metric=finish")]
+    public async Task ACharacterThatNoTextHoldsIsRefused(string address)
+    {
+        await using var server = OnPostgres();
+        var client = server.Client();
+        await client.PutJsonAsync($"{Address}/document", RunSamples.Uncertain());
+        await (await client.ReadAsync(address)).ProblemAsync(400, "bad-request");
+        await (await client.PostJsonAsync($"{Address}/runs", """{"replaces":"\u0000"}""")).ProblemAsync(422, "refused");
+    }
+
     [Fact]
     public async Task WhileTheDatabaseIsAwayItIsSaidAndAfterwardsEverythingGoesOn()
     {
