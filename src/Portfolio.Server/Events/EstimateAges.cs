@@ -15,7 +15,8 @@ namespace Portfolio.Server.Events;
 /// not told of again until it is renewed and grows old anew. Projects whose work is all finished do not grow old.
 /// </summary>
 internal sealed class EstimateAges(
-    SubscriptionStore subscriptions, DocumentStore documents, RevisionOfDate dates, EventDistribution distribution, TimeProvider clock)
+    SubscriptionStore subscriptions, DocumentStore documents, RevisionOfDate dates, EventDistribution distribution, TimeProvider clock,
+    ILogger<EstimateAges> log)
 {
     public async Task LookAsync(CancellationToken cancellation)
     {
@@ -24,14 +25,27 @@ internal sealed class EstimateAges(
         {
             var wishes = portfolio.SelectMany(listener => listener.Wishes).Where(wish => wish.Type == EventTypes.EstimatesStale).Distinct();
             foreach (var wish in wishes)
-                await LookAsync(portfolio.Key, wish, cancellation);
+                await TryAsync(portfolio.Key, wish, cancellation);
+        }
+    }
+
+    private async Task TryAsync(string portfolio, WantedEventJson wish, CancellationToken cancellation)
+    {
+        try
+        {
+            await LookAsync(portfolio, wish, cancellation);
+        }
+        catch (Exception failure) when (failure is not OperationCanceledException)
+        {
+            // One portfolio that cannot be read must not hold up the others.
+            EventLog.AgesFailed(log, portfolio, failure);
         }
     }
 
     private async Task LookAsync(string portfolio, WantedEventJson wish, CancellationToken cancellation)
     {
         var today = LocalDates.Of(clock.GetUtcNow(), await dates.ZoneAsync(portfolio, cancellation));
-        var look = $"{Wish.NameOf(wish)}/looked/{Text(today)}";
+        var look = $"{Wish.NameOf(wish)}/{Text(today)}";
         if (await distribution.IsTakenAsync(portfolio, look, cancellation))
             return;
         var document = await documents.ReadAsync(Caller.System, portfolio, null, cancellation);

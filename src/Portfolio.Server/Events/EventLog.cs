@@ -15,6 +15,9 @@ internal static partial class EventLog
     [LoggerMessage(2103, LogLevel.Error, "Delivery {Delivery} could not be sent.")]
     public static partial void SendFailed(ILogger log, string delivery, Exception failure);
 
+    [LoggerMessage(2104, LogLevel.Error, "How old the estimates of {Portfolio} are cannot be told; the next look tries again.")]
+    public static partial void AgesFailed(ILogger log, string portfolio, Exception failure);
+
     [LoggerMessage(2110, LogLevel.Information, "Delivery {Delivery} to {Subscription} failed (attempt {Attempt}): {Reason}")]
     public static partial void AttemptFailed(ILogger log, string delivery, string subscription, int attempt, string reason);
 

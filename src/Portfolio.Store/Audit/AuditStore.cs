@@ -36,9 +36,8 @@ public sealed class AuditStore(Database database)
             async open =>
             {
                 await AuditChain.AppendAsync(open, caller.KeyId, action, @object, detail);
-                var minute = open.Now / Minute;
                 if (await open.FirstAsync<long>(KnownSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio }) > 0
-                    && await EventDistribution.TakeAsync(open, portfolio, $"post.refused/{caller.KeyId}/{minute}"))
+                    && await EventDistribution.TakeAgainAsync(open, portfolio, EventDistribution.Refused + caller.KeyId, Minute))
                 {
                     var payload = new { action, by = new { key = caller.KeyId, caller.Name }, refused = detail };
                     await OutboxStore.AppendAsync(open, portfolio, "post.refused", @object, payload);

@@ -8,7 +8,7 @@ public sealed class DeliveryClaims(Database database)
 {
     private static readonly string Due = $"""
         (d.state = 'waiting' and d.next_attempt_at <= @Now or d.state = 'sending' and d.lease_until <= @Now)
-          and s.active = 1 and (@Failing = 1 or s.failures = 0)
+          and s.active = 1 and (@Failing = 1 or s.failures = 0) and (s.quiet_until is null or s.quiet_until <= @Now)
           and not exists (select 1 from delivery b where b.portfolio = d.portfolio and b.subscription = d.subscription
             and b.state = 'sending' and b.lease_until > @Now)
           and {Granted.Whole(Right.Admin, "d.portfolio")}

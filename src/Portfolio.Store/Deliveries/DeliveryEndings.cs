@@ -23,37 +23,43 @@ public sealed class DeliveryEndings(Database database)
 
     private const string DeadSql = $"update delivery set state = 'dead', {Ended}";
 
-    private const string FailingSql = "update subscription set failures = failures + 1 where portfolio = @Portfolio and id = @Subscription";
+    // A wish to wait holds for everything that the target is sent.
+    private const string FailingSql = """
+        update subscription set failures = failures + 1, quiet_until = @Quiet where portfolio = @Portfolio and id = @Subscription
+        """;
 
-    /// <param name="next">When it is tried again, unless the portfolio was archived meanwhile; null: never.</param>
+    /// <param name="next">When it is tried again, unless nothing more is sent there; null: never.</param>
     public Task<bool> FailedAsync(DeliveryLease held, AttemptResult result, DateTimeOffset? next, CancellationToken cancellation) =>
-        database.WriteAsync(
-            async open =>
-            {
-                var over = next is null || await OpenDeliveries.IsArchivedAsync(open, held.Event.Portfolio);
-                return await EndAsync(open, over ? DeadSql : AgainSql, held, result, next, FailingSql);
-            },
-            cancellation);
+        database.WriteAsync(open => FailAsync(open, held, result, next), cancellation);
+
+    private static async Task<bool> FailAsync(StoreTransaction open, DeliveryLease held, AttemptResult result, DateTimeOffset? next)
+    {
+        var over = next is null || !await OpenDeliveries.IsToldAsync(open, held.Event.Portfolio, held.Subscription);
+        return await EndAsync(open, over ? DeadSql : AgainSql, held, result, next, FailingSql);
+    }
 
     private const string EndSubscriptionSql = """
         update subscription set active = 0, ended = 'gone', failures = failures + 1, changed_at = @Now
         where portfolio = @Portfolio and id = @Subscription
         """;
 
-    private const string EndOthersSql = """
-        update delivery set state = 'dead', next_attempt_at = null, last_error = @Error
-        where portfolio = @Portfolio and subscription = @Subscription and state = 'waiting'
-        """;
+    private const string UrlSql = "select url from subscription where portfolio = @Portfolio and id = @Subscription";
 
     /// <summary>The target says that it is gone for good: the subscription ends, and whatever waits for it is dead.</summary>
+    /// <returns>False also when the subscription has another target by now, to which the event is sent instead.</returns>
     public Task<bool> GoneAsync(DeliveryLease held, AttemptResult result, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
+            var (portfolio, subscription) = (held.Event.Portfolio, held.Subscription);
+            if (await open.FirstAsync<string>(UrlSql, new { Portfolio = portfolio, Subscription = subscription }) is { } url && url != held.Url)
+            {
+                await FailAsync(open, held, result, open.Now.ToInstant());
+                return false;
+            }
             if (!await EndAsync(open, DeadSql, held, result, null))
                 return false;
-            var (portfolio, subscription) = (held.Event.Portfolio, held.Subscription);
             await open.ExecuteAsync(EndSubscriptionSql, new { Portfolio = portfolio, Subscription = subscription, open.Now });
-            await open.ExecuteAsync(EndOthersSql, new { Portfolio = portfolio, Subscription = subscription, result.Error });
+            await OpenDeliveries.StopAsync(open, portfolio, subscription, result.Error);
             await AuditChain.AppendAsync(
                 open, Caller.System.KeyId, "subscription.end", $"portfolios/{portfolio}/subscriptions/{subscription}",
                 new { because = "gone" });
@@ -66,7 +72,8 @@ public sealed class DeliveryEndings(Database database)
     {
         if (!await EndAsync(open, sql, held, result, next))
             return false;
-        await open.ExecuteAsync(subscriptionSql, new { held.Event.Portfolio, held.Subscription });
+        var quiet = result.RetryAt is null ? null : next?.ToMicroseconds();
+        await open.ExecuteAsync(subscriptionSql, new { held.Event.Portfolio, held.Subscription, Quiet = quiet });
         return true;
     }
 

@@ -74,7 +74,9 @@ public sealed class DeliveryStore(Database database)
         where id = @Id and state <> 'sending'
         """;
 
-    /// <summary>Has an event sent once more, with an audit entry.</summary>
+    private const string AskAgainSql = "update subscription set quiet_until = null where portfolio = @Portfolio and id = @Subscription";
+
+    /// <summary>Has an event sent once more, even to a target that wanted to wait, with an audit entry.</summary>
     /// <param name="joining">Called last inside the transaction, for rows that stand or fall with it; null for none.</param>
     public Task<(RedeliverOutcome Outcome, StoredDelivery? Delivery)> RedeliverAsync(
         Caller caller, string portfolio, string subscription, string id, TimeSpan triedFor,
@@ -91,6 +93,7 @@ public sealed class DeliveryStore(Database database)
                 var until = open.Now.ToInstant().Add(triedFor).ToMicroseconds();
                 if (await open.ExecuteAsync(AgainSql, new { Id = id, GiveUpAt = until, open.Now }) == 0)
                     return (RedeliverOutcome.UnderWay, null);
+                await open.ExecuteAsync(AskAgainSql, new { Portfolio = portfolio, Subscription = subscription });
                 var told = $"portfolios/{portfolio}/subscriptions/{subscription}";
                 await AuditChain.AppendAsync(open, caller.KeyId, "delivery.redeliver", told, new { delivery = id });
                 var again = (await RowsAsync(open, caller, portfolio, subscription, null, null, id, 1))[0].ToDelivery();

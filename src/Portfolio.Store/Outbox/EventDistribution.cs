@@ -49,13 +49,16 @@ public sealed class EventDistribution(Database database)
         },
         cancellation);
 
+    /// <summary>Before the names of looks, so that none is taken for the name of what was told.</summary>
+    internal const string Look = "looked/";
+
     /// <summary>Tells what was noticed by a look of its own. False, and nothing is written, when the look was taken already.</summary>
-    /// <param name="once">The name of the look.</param>
+    /// <param name="look">Its name, which is remembered as long as events are kept.</param>
     public Task<bool> TellAsync(
-        string portfolio, string once, IReadOnlyList<NoticedEvent> noticed, CancellationToken cancellation) => database.WriteAsync(
+        string portfolio, string look, IReadOnlyList<NoticedEvent> noticed, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
-            if (!await TakeAsync(open, portfolio, once))
+            if (!await TakeAsync(open, portfolio, Look + look))
                 return false;
             await TellAsync(open, portfolio, noticed);
             return true;
@@ -64,9 +67,10 @@ public sealed class EventDistribution(Database database)
 
     private const string TakenSql = "select count(*) from event_marker where portfolio = @Portfolio and name = @Name";
 
-    /// <summary>Whether a look was taken, or something told, under this name.</summary>
-    public async Task<bool> IsTakenAsync(string portfolio, string once, CancellationToken cancellation) =>
-        await database.ReadAsync(open => open.FirstAsync<long>(TakenSql, new { Portfolio = portfolio, Name = once }), cancellation) > 0;
+    /// <summary>Whether a look was taken under this name.</summary>
+    public async Task<bool> IsTakenAsync(string portfolio, string look, CancellationToken cancellation) =>
+        await database.ReadAsync(
+            open => open.FirstAsync<long>(TakenSql, new { Portfolio = portfolio, Name = Look + look }), cancellation) > 0;
 
     private static async Task TellAsync(StoreTransaction open, string portfolio, IReadOnlyList<NoticedEvent> noticed)
     {
@@ -81,6 +85,19 @@ public sealed class EventDistribution(Database database)
         "insert into event_marker (portfolio, name, at) values (@Portfolio, @Name, @Now) on conflict (portfolio, name) do nothing";
 
     /// <summary>Takes a name for ever; false when it was taken before.</summary>
-    internal static async Task<bool> TakeAsync(StoreTransaction open, string portfolio, string name) =>
+    private static async Task<bool> TakeAsync(StoreTransaction open, string portfolio, string name) =>
         await open.ExecuteAsync(TakeSql, new { Portfolio = portfolio, Name = name, open.Now }) == 1;
+
+    /// <summary>Before the names of keys whose refused posts are told of.</summary>
+    internal const string Refused = "post.refused/";
+
+    private const string TakeAgainSql = """
+        insert into event_marker (portfolio, name, at) values (@Portfolio, @Name, @Now)
+        on conflict (portfolio, name) do update set at = excluded.at where event_marker.at <= @Before
+        """;
+
+    /// <summary>Takes a name anew, one row however often; false when it was taken within the time before now.</summary>
+    /// <param name="within">Microseconds.</param>
+    internal static async Task<bool> TakeAgainAsync(StoreTransaction open, string portfolio, string name, long within) =>
+        await open.ExecuteAsync(TakeAgainSql, new { Portfolio = portfolio, Name = name, open.Now, Before = open.Now - within }) == 1;
 }

@@ -52,12 +52,20 @@ public sealed partial class OutboxStore
 
     private static readonly string ForgetSql = $"delete {OutlivedSql}";
 
+    // What was told once stays told; only what is asked anew every day or minute is forgotten.
+    private static readonly string ForgetMarkersSql = $"""
+        delete from event_marker where at < @Before and {Granted.Whole(Right.Admin, "event_marker.portfolio")}
+          and (substr(name, 1, {EventDistribution.Look.Length}) = '{EventDistribution.Look}'
+            or substr(name, 1, {EventDistribution.Refused.Length}) = '{EventDistribution.Refused}')
+        """;
+
     /// <summary>Removes events older than an instant, with their deliveries; says how many.</summary>
     public Task<int> ForgetAsync(Caller caller, DateTimeOffset before, CancellationToken cancellation) => database.WriteAsync(
         async open =>
         {
             var asked = new { Caller = caller.KeyId, open.Now, Before = before.ToMicroseconds() };
             await open.ExecuteAsync(ForgetDeliveriesSql, asked);
+            await open.ExecuteAsync(ForgetMarkersSql, asked);
             return await open.ExecuteAsync(ForgetSql, asked);
         },
         cancellation);

@@ -1,5 +1,6 @@
 using Portfolio.Store.Access;
 using Portfolio.Store.Audit;
+using Portfolio.Store.Deliveries;
 
 namespace Portfolio.Store.Subscriptions;
 
@@ -57,7 +58,7 @@ public sealed partial class SubscriptionStore
 
     // Made active again it begins anew: what was ended is forgotten, what happened meanwhile was missed.
     private const string ReplaceSql = """
-        update subscription set url = @Url, events = @Events, changed_at = @Now, failures = 0,
+        update subscription set url = @Url, events = @Events, changed_at = @Now, failures = 0, quiet_until = null,
           after_event = case when active = 0 and @Active = 1 then (select coalesce(max(sequence), 0) from outbox) else after_event end,
           ended = case @Active when 1 then null else ended end, active = @Active
         where portfolio = @Portfolio and id = @Id
@@ -71,6 +72,8 @@ public sealed partial class SubscriptionStore
         async open =>
         {
             await open.ExecuteAsync(ReplaceSql, Row(open, caller, portfolio, id, content, null));
+            if (!content.Active)
+                await OpenDeliveries.StopAsync(open, portfolio, id, "The subscription was switched off before it could be sent.");
             return await ToldAsync(open, caller, "put", portfolio, id);
         },
         cancellation);

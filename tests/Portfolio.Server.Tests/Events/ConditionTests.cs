@@ -147,6 +147,15 @@ public sealed class ConditionTests : IAsyncDisposable
     }
 
     [Fact]
+    public async Task AProjectIsToldOfWhateverItsId()
+    {
+        var client = await WishAsync(
+            """{"type":"estimates.stale","days":30}""", Certain(10, statusDate: "2027-01-04").Replace("quay", "looked", StringComparison.Ordinal));
+        Assert.Equal(0, await StaleAsync(client, "2027-01-04"));
+        Assert.Equal(2, await StaleAsync(client, "2027-02-04"));
+    }
+
+    [Fact]
     public async Task APostThatIsRefusedIsToldOfWithoutItsContent()
     {
         var client = await WishAsync("""{"type":"post.refused"}""", Certain(10));

@@ -108,6 +108,81 @@ public abstract class DeliveryTests(StoreKind kind)
     }
 
     [Fact]
+    public async Task A_target_that_wants_to_wait_is_sent_nothing_until_then_or_until_somebody_asks()
+    {
+        await using var store = await BeginAsync("office", "zebra");
+        await store.HandOnAsync("office");
+        await store.HandOnAsync("office", "zebra");
+        var later = TestStore.Start.AddMinutes(10);
+        var busy = new AttemptResult(429, "The target answered 429.", later);
+        await store.DeliveryEndings.FailedAsync((await store.SendingAsync())!, busy, later, TestStore.Cancellation);
+        var other = (await store.SendingAsync())!;
+        Assert.Equal("zebra", other.Subscription);
+        Assert.True(await store.DeliveryEndings.DeliveredAsync(other, Ok, TestStore.Cancellation));
+        Assert.Null(await store.SendingAsync());
+        var newest = await store.DeliveryAsync();
+        await store.Deliveries.RedeliverAsync(
+            Caller.System, "works", "office", newest.Id, EventScenes.TriedFor, null, TestStore.Cancellation);
+        await store.DeliveryEndings.FailedAsync((await store.SendingAsync())!, busy, later, TestStore.Cancellation);
+        Assert.Null(await store.SendingAsync());
+        store.Clock.SetUtcNow(later);
+        Assert.Equal("office", (await store.SendingAsync())!.Subscription);
+    }
+
+    [Fact]
+    public async Task What_waits_for_a_subscription_that_is_switched_off_is_dead()
+    {
+        await using var store = await BeginAsync("office");
+        await store.HandOnAsync("office");
+        await store.HandOnAsync("office");
+        var held = (await store.SendingAsync())!;
+        await store.ReplaceAsync("office", EventScenes.Content with { Active = false });
+        var waited = await store.DeliveryAsync();
+        Assert.Equal(
+            (DeliveryState.Dead, "The subscription was switched off before it could be sent."), (waited.State, waited.LastError));
+        await store.DeliveryEndings.FailedAsync(held, Failed, TestStore.Start.AddSeconds(10), TestStore.Cancellation);
+        await store.ReplaceAsync("office", EventScenes.Content);
+        store.Clock.Advance(TimeSpan.FromMinutes(1));
+        Assert.Null(await store.SendingAsync());
+        Assert.Equal(2, await store.RawAsync<long>("select count(*) from delivery where state = 'dead'"));
+    }
+
+    [Fact]
+    public async Task What_an_earlier_target_says_of_itself_does_not_end_the_subscription()
+    {
+        await using var store = await BeginAsync("office");
+        await store.HandOnAsync("office");
+        var held = (await store.SendingAsync())!;
+        await store.ReplaceAsync("office", EventScenes.Content with { Url = "https://hooks.harbour.example/new" });
+        var gone = new AttemptResult(410, "The target answered 410: it is gone for good.");
+        Assert.False(await store.DeliveryEndings.GoneAsync(held, gone, TestStore.Cancellation));
+        var again = (await store.SendingAsync())!;
+        Assert.Equal((held.Id, "https://hooks.harbour.example/new"), (again.Id, again.Url));
+        Assert.True(await store.DeliveryEndings.GoneAsync(again, gone, TestStore.Cancellation));
+        Assert.True((await store.Subscriptions.FindAsync(Caller.System, "works", "office", TestStore.Cancellation))!.Gone);
+    }
+
+    [Fact]
+    public async Task What_is_asked_anew_every_day_or_minute_leaves_nothing_for_ever()
+    {
+        await using var store = await BeginAsync("office");
+        var notice = new NoticedEvent("stale/1", "estimates.stale", "project/lock", "lock", new { days = 9 });
+        for (var minute = 0; minute < 3; minute++)
+        {
+            for (var post = 0; post < 2; post++)
+                await store.Audit.AppendRefusedPostAsync(Caller.System, "works", "document.put", "portfolios/works", new { }, TestStore.Cancellation);
+            await store.Distribution.TellAsync("works", $"look/{minute}", [notice], TestStore.Cancellation);
+            store.Clock.Advance(TimeSpan.FromMinutes(1));
+        }
+        Assert.Equal(3, await store.RawAsync<long>("select count(*) from outbox where kind = 'post.refused'"));
+        Assert.Equal(5, await store.CountAsync("event_marker"));
+        await store.Outbox.ForgetAsync(Caller.System, store.Clock.GetUtcNow(), TestStore.Cancellation);
+        Assert.Equal("stale/1", await store.RawAsync<string>("select name from event_marker"));
+        await store.Distribution.TellAsync("works", "look/0", [notice], TestStore.Cancellation);
+        Assert.Equal(1, await store.RawAsync<long>("select count(*) from event_marker where name = 'stale/1'"));
+    }
+
+    [Fact]
     public async Task A_secret_that_was_replaced_signs_until_its_time_is_over()
     {
         await using var store = await BeginAsync("office");

@@ -16,6 +16,9 @@ internal static class EventScenes
     public static Task<SubscriptionResult> SubscribeAsync(this TestStore store, string id) => store.Subscriptions.CreateAsync(
         Caller.System, "works", id, Content, "whsec_Zmlyc3Q=", 99, null, TestStore.Cancellation);
 
+    public static Task<SubscriptionResult> ReplaceAsync(this TestStore store, string id, SubscriptionContent content) =>
+        store.Subscriptions.ReplaceAsync(Caller.System, "works", id, content, _ => null, null, TestStore.Cancellation);
+
     /// <summary>Something happens, and is handed on to these.</summary>
     public static async Task<OutboxEvent> HandOnAsync(this TestStore store, params string[] subscriptions)
     {
