@@ -1,3 +1,4 @@
+using Portfolio.Server.Audit;
 using Portfolio.Server.Hosting;
 using Portfolio.Server.Jobs.Waking;
 
@@ -24,7 +25,9 @@ internal static class JobSetup
         // In memory nobody else could hear it.
         if (works || !string.IsNullOrEmpty(configuration[$"{StorageOptions.Section}:{nameof(StorageOptions.Postgres)}"]))
             services.AddWaking();
-        if (works)
-            services.AddWoken(engine.Runs);
+        if (!works)
+            return;
+        services.AddWoken(engine.Runs);
+        services.AddHostedService<HeadInLog>();
     }
 }
