@@ -59,11 +59,13 @@ internal static class AccessSetup
             _ =>
             {
                 var rate = context.RequestServices.GetRequiredService<IOptions<LimitOptions>>().Value.RequestsPerSecond;
+                var tokens = Math.Max(1, rate / 10);
                 return new TokenBucketRateLimiterOptions
                 {
                     TokenLimit = rate,
-                    TokensPerPeriod = Math.Max(1, rate / 10),
-                    ReplenishmentPeriod = TimeSpan.FromMilliseconds(100),
+                    TokensPerPeriod = tokens,
+                    // About a tenth of a second, and exactly the rate.
+                    ReplenishmentPeriod = TimeSpan.FromSeconds((double)tokens / rate),
                 };
             });
 }

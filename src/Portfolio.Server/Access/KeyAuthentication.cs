@@ -26,7 +26,7 @@ internal sealed class KeyAuthentication(
     protected override async Task<AuthenticateResult> HandleAuthenticateAsync()
     {
         // What needs no key is told also while keys cannot be looked up: health above all.
-        if (Request.Headers.Authorization.Count == 0 || Context.GetEndpoint()?.Metadata.GetMetadata<IAllowAnonymous>() is not null)
+        if (Request.Headers.Authorization.Count == 0 || NeedsNone(Context))
             return AuthenticateResult.NoResult();
         if (Presented(Request.Headers.Authorization.ToString()) is not { Length: > 0 and <= LongestKey } key)
             return AuthenticateResult.Fail("The authorization header holds no key.");
@@ -43,6 +43,9 @@ internal sealed class KeyAuthentication(
     }
 
     protected override Task HandleForbiddenAsync(AuthenticationProperties properties) => Problem.Forbidden().ExecuteAsync(Context);
+
+    /// <summary>Whether what is asked for is served to everybody.</summary>
+    public static bool NeedsNone(HttpContext context) => context.GetEndpoint()?.Metadata.GetMetadata<IAllowAnonymous>() is not null;
 
     private static string? Presented(string header) =>
         !AuthenticationHeaderValue.TryParse(header, out var value) ? null

@@ -25,6 +25,7 @@ internal static class TokenSetup
     public static bool IsPresented(HttpContext context) =>
         context.Request.Headers.Authorization.ToString() is var header
         && header.StartsWith("Bearer ey", StringComparison.OrdinalIgnoreCase) && header.Count(letter => letter == '.') == 2
+        && !KeyAuthentication.NeedsNone(context)
         && context.RequestServices.GetRequiredService<IOptions<OidcOptions>>().Value.IsOn;
 
     private static void Pin(JwtBearerOptions bearer, OidcOptions oidc, TokenAuthentication tokens)
