@@ -64,6 +64,8 @@ public abstract class Database : IAsyncDisposable
     /// <summary>Remembers how the last write went.</summary>
     private protected void Written(bool refused) => unwritable = refused;
 
-    private protected StoreTransaction Opened(System.Data.Common.DbTransaction transaction, bool writes, CancellationToken cancellation) =>
-        new(transaction, Clock.GetUtcNow().ToMicroseconds(), writes ? BeforeStatement : null, cancellation);
+    /// <param name="now">Microseconds; null: by the clock of this process.</param>
+    private protected StoreTransaction Opened(
+        System.Data.Common.DbTransaction transaction, bool writes, CancellationToken cancellation, long? now = null) =>
+        new(transaction, now ?? Clock.GetUtcNow().ToMicroseconds(), writes ? BeforeStatement : null, cancellation);
 }

@@ -24,7 +24,8 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         if (gaps.Count > 0)
             await WorkBlocksAsync(held, revision, gaps, cancellation);
         using (ServerTelemetry.Spans.StartActivity("run.result"))
-            return await OnOwnThread(() => FinishedRun.Build(revision.Plan, Samples(held), Facts(held.Run, revision), cancellation));
+            return await OnOwnThread(() => FinishedRun.Build(
+                revision.Plan, SamplesAhead.Of(samples, held, revision.Plan), Facts(held.Run, revision), cancellation));
     }
 
     private async Task WorkBlocksAsync(RunLease held, FrozenRevision revision, IReadOnlyList<BlockGap> gaps, CancellationToken cancellation)
@@ -62,14 +63,6 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         {
             storing.Complete();
         }
-    }
-
-    private SampleReader Samples(RunLease held)
-    {
-        var (caller, portfolio, run) = (held.Caller, held.Run.Portfolio, held.Run.Id);
-        return new SampleReader(
-            series => samples.ReadMinutesAsync(caller, portfolio, run, series, CancellationToken.None).GetAwaiter().GetResult(),
-            series => samples.ReadMoneyAsync(caller, portfolio, run, series, CancellationToken.None).GetAwaiter().GetResult());
     }
 
     private static RunFacts Facts(StoredRun run, FrozenRevision revision) =>

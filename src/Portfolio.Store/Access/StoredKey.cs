@@ -82,7 +82,6 @@ internal sealed record GrantRow
     public static async Task ReplaceAsync(StoreTransaction open, string key, IReadOnlyList<Grant> grants)
     {
         await open.ExecuteAsync(ClearSql, new { Key = key });
-        foreach (var row in grants.SelectMany(grant => From(key, grant)).Distinct())
-            await open.ExecuteAsync(InsertSql, row);
+        await open.ExecuteEachAsync(InsertSql, grants.SelectMany(grant => From(key, grant)).Distinct());
     }
 }

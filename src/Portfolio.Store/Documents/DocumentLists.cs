@@ -15,7 +15,7 @@ public sealed partial class DocumentStore
         where v.portfolio = @Portfolio and v.project <> '' and v.position > @After and v.hash is not null
           and v.revision <= coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
           and v.superseded > coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
-          and {Granted.Part([Right.Read, Right.Submit], "v.portfolio", "v.project")}
+          and {Granted.Part([Right.Read, Right.Submit], "@Portfolio", "v.project")}
         order by v.position limit @Limit
         """;
 

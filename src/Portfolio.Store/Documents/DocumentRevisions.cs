@@ -55,7 +55,7 @@ public sealed partial class DocumentStore
     private static readonly string ChangesSql = $"""
         select v.project, o.hash as old_hash, v.hash as new_hash
         from revision_part v left join revision_part o on o.portfolio = v.portfolio and o.project = v.project and o.superseded = v.revision
-        where v.portfolio = @Portfolio and v.revision = @Number and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+        where v.portfolio = @Portfolio and v.revision = @Number and {Granted.Part(Right.Read, "@Portfolio", "v.project")}
         order by v.position, v.project
         """;
 

@@ -41,7 +41,7 @@ public sealed partial class DocumentStore(Database database)
     private static readonly string PartsSql = $"""
         select v.project, c.hash, c.bytes, c.size from revision_part v join part_content c on c.hash = v.hash
         where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number
-          and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+          and {Granted.Part(Right.Read, "@Portfolio", "v.project")}
         order by v.position
         """;
 
@@ -62,7 +62,7 @@ public sealed partial class DocumentStore(Database database)
     private static readonly string HeadsSql = $"""
         select v.project, v.position, v.hash from revision_part v
         where v.portfolio = @Portfolio and v.superseded > @Number and v.revision <= @Number and v.hash is not null
-          and {Granted.Part(Right.Read, "v.portfolio", "v.project")}
+          and {Granted.Part(Right.Read, "@Portfolio", "v.project")}
         order by v.position
         """;
 
@@ -86,8 +86,8 @@ public sealed partial class DocumentStore(Database database)
           and v.revision <= coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
           and v.superseded > coalesce(@Number, (select max(r.number) from revision r where r.portfolio = @Portfolio))
           and (@Number is null or exists (select 1 from revision r where r.portfolio = @Portfolio and r.number = @Number))
-          and ({Granted.Part(Right.Read, "v.portfolio", "v.project")}
-            or v.project <> '' and {Granted.Part(Right.Submit, "v.portfolio", "v.project")})
+          and ({Granted.Part(Right.Read, "@Portfolio", "v.project")}
+            or v.project <> '' and {Granted.Part(Right.Submit, "@Portfolio", "v.project")})
         """;
 
     /// <summary>One part at a revision (null: the newest). A project can also be read with the right to submit to it.</summary>

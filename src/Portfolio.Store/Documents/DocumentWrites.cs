@@ -166,12 +166,10 @@ public sealed partial class DocumentStore
             InsertRevisionSql, new { write.Portfolio, Number = number, RecordedAt = recordedAt, Actor = caller.KeyId, write.Note });
         await PartContents.KeepAsync(open, from part in plan where part.After != part.Before select part.Proposed into sent
             where sent is not null select sent);
-        foreach (var part in plan)
-        {
-            if (head is not null)
-                await open.ExecuteAsync(SupersedeSql, new { write.Portfolio, part.Project, Number = number });
-            await open.ExecuteAsync(InsertPartSql, new { write.Portfolio, Number = number, part.Project, part.Position, part.After });
-        }
+        if (head is not null)
+            await open.ExecuteEachAsync(SupersedeSql, plan.Select(part => new { write.Portfolio, part.Project, Number = number }));
+        await open.ExecuteEachAsync(
+            InsertPartSql, plan.Select(part => new { write.Portfolio, Number = number, part.Project, part.Position, part.After }));
     }
 
     private static async Task TellAsync(StoreTransaction open, Caller caller, DocumentWrite write, WriteResult result)

@@ -14,7 +14,7 @@ internal static class PartContents
     private const string InsertSql =
         "insert into part_content (hash, bytes, size) values (@Hash, @Bytes, @Size) on conflict (hash) do nothing";
 
-    private const string KnownSql = "select count(*) from part_content where hash = @Hash";
+    private const string KnownSql = "select hash from part_content where hash in (@Keys)";
 
     private const string InsertOutlineSql =
         "insert into part_outline (hash, bytes) values (@Hash, @Outline) on conflict (hash) do nothing";
@@ -22,23 +22,18 @@ internal static class PartContents
     /// <summary>Keeps those that are not there yet; they are compressed beside each other, for the write lock is held meanwhile.</summary>
     public static async Task KeepAsync(StoreTransaction open, IEnumerable<ProposedPart> parts)
     {
-        var unknown = new List<ProposedPart>();
-        foreach (var part in parts)
-        {
-            if (await open.FirstAsync<long>(KnownSql, new { part.Hash }) == 0)
-                unknown.Add(part);
-        }
+        var sent = parts.ToList();
+        var known = (await open.ListOfAsync<string>(KnownSql, sent.Select(part => part.Hash))).ToHashSet(StringComparer.Ordinal);
+        var unknown = sent.FindAll(part => !known.Contains(part.Hash));
         var compressed = new byte[unknown.Count][];
         if (compressed.Length == 1)
             compressed[0] = Compress(unknown[0].Bytes);
         else
             Parallel.For(0, compressed.Length, i => compressed[i] = Compress(unknown[i].Bytes));
-        for (var i = 0; i < compressed.Length; i++)
-        {
-            await open.ExecuteAsync(InsertSql, new { unknown[i].Hash, Bytes = compressed[i], Size = unknown[i].Bytes.Length });
-            if (unknown[i].Outline is not null)
-                await open.ExecuteAsync(InsertOutlineSql, new { unknown[i].Hash, unknown[i].Outline });
-        }
+        await open.ExecuteEachAsync(
+            InsertSql, unknown.Zip(compressed, (part, bytes) => new { part.Hash, Bytes = bytes, Size = part.Bytes.Length }));
+        await open.ExecuteEachAsync(
+            InsertOutlineSql, unknown.Where(part => part.Outline is not null).Select(part => new { part.Hash, part.Outline }));
     }
 
     private const string OutlineSql = "select bytes from part_outline where hash = @Hash";

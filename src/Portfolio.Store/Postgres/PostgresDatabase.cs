@@ -7,16 +7,24 @@ namespace Portfolio.Store.Postgres;
 /// <summary>
 /// A PostgreSQL database, which several processes may share. Their writers take turns: each write begins by taking a lock that ends with
 /// its transaction. READ COMMITTED then shows every statement after it all that earlier writers have committed, since PostgreSQL makes a
-/// commit visible before it releases the locks (docs/decisions/0004-one-writer-on-postgresql.md).
+/// commit visible before it releases the locks (docs/decisions/0004-one-writer-on-postgresql.md). All write by the server's clock, so that
+/// leases hold whatever theirs say.
 /// </summary>
 public sealed class PostgresDatabase : Database
 {
     private readonly PostgresServer server;
     // Those of this process queue here, not each on a connection of its own.
     private readonly SemaphoreSlim writing = new(1, 1);
+    private readonly bool byServersClock;
     private int disposed;
 
-    private PostgresDatabase(PostgresServer server, TimeProvider clock) : base(clock) => this.server = server;
+    private PostgresDatabase(PostgresServer server, TimeProvider clock) : base(clock)
+    {
+        this.server = server;
+#pragma warning disable RS0030 // It is not read: where another was given, a test has set it.
+        byServersClock = clock == TimeProvider.System;
+#pragma warning restore RS0030
+    }
 
     public override bool IsShared => true;
 
@@ -110,9 +118,10 @@ public sealed class PostgresDatabase : Database
         var committing = false;
         try
         {
-            await using var transaction = await server.TakeTurnAsync(cancellation);
+            var (transaction, now) = await server.TakeTurnAsync(cancellation);
+            await using var _ = transaction;
             await using var connection = transaction.Connection;
-            var result = await work(Opened(transaction, writes: true, cancellation));
+            var result = await work(Opened(transaction, writes: true, cancellation, byServersClock ? now : null));
             BeforeStatement?.Invoke("commit");
             committing = true;
             // Not to be called off half way: nobody would know how it ended.

@@ -31,9 +31,9 @@ internal sealed class PostgresServer : IAsyncDisposable
 
     /// <summary>
     /// Waits for the writer at work, whichever process it is in; the lock goes with the transaction, however that ends. The caller disposes
-    /// of it and of its connection.
+    /// of it and of its connection. With it comes the server's time at the beginning of the turn, microseconds.
     /// </summary>
-    public async Task<NpgsqlTransaction> TakeTurnAsync(CancellationToken cancellation)
+    public async Task<(NpgsqlTransaction Transaction, long Now)> TakeTurnAsync(CancellationToken cancellation)
     {
         for (var again = true; ; again = false)
         {
@@ -41,8 +41,7 @@ internal sealed class PostgresServer : IAsyncDisposable
             try
             {
                 var transaction = await connection.BeginTransactionAsync(IsolationLevel.ReadCommitted, cancellation);
-                await RunAsync(connection, $"select pg_advisory_xact_lock({WriterLock})", cancellation);
-                return transaction;
+                return (transaction, await WaitAsync(connection, cancellation));
             }
             catch (Exception failure)
             {
@@ -51,6 +50,19 @@ internal sealed class PostgresServer : IAsyncDisposable
                     throw;
             }
         }
+    }
+
+    // One round trip; the time is that after the wait.
+    private static readonly string TurnSql =
+        $"select pg_advisory_xact_lock({WriterLock}); select cast(extract(epoch from clock_timestamp()) * 1000000 as bigint)";
+
+    private static async Task<long> WaitAsync(NpgsqlConnection connection, CancellationToken cancellation)
+    {
+        await using var command = new NpgsqlCommand(TurnSql, connection);
+        await using var reader = await command.ExecuteReaderAsync(cancellation);
+        await reader.NextResultAsync(cancellation);
+        await reader.ReadAsync(cancellation);
+        return reader.GetInt64(0);
     }
 
     /// <summary>Works on a connection while no other process migrates the same database.</summary>
@@ -100,6 +112,9 @@ internal sealed class PostgresServer : IAsyncDisposable
         builder.Options = $"{builder.Options} {Settings} {more}".Trim();
         if (!builder.ShouldSerialize("Timeout"))
             builder.Timeout = 5;
+        // The conditions on grants take longer to plan than to run.
+        if (!builder.ShouldSerialize("Max Auto Prepare"))
+            (builder.MaxAutoPrepare, builder.AutoPrepareMinUsages) = (100, 2);
         builder.MaxPoolSize = builder.ShouldSerialize("Maximum Pool Size") ? Math.Max(builder.MaxPoolSize, 2) : connections;
         return NpgsqlDataSource.Create(builder);
     }

@@ -8,7 +8,7 @@ public sealed class ResultStore(Database database)
     private static readonly string RowsSql = $"""
         select x.scope, x.json from result_row x join run r on r.id = x.run
         where x.run = @Run and (@Scope is null or x.scope = @Scope) and r.portfolio = @Portfolio
-          and {Granted.Part(Right.Read, "r.portfolio", "x.project")}
+          and {Granted.Part(Right.Read, "@Portfolio", "x.project")}
         order by x.position
         """;
 
@@ -31,7 +31,7 @@ public sealed class ResultStore(Database database)
     private static readonly string GridsSql = $"""
         select {GridColumns} from grid x join run r on r.id = x.run left join result_row o on o.run = x.run and o.scope = x.scope
         where x.run = @Run and (@Scope is null or x.scope = @Scope) and (@Metric is null or x.metric = @Metric)
-          and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "r.portfolio", "x.project")}
+          and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "@Portfolio", "x.project")}
         order by o.position, x.metric desc
         """;
 
@@ -73,7 +73,7 @@ public sealed class ResultStore(Database database)
         select s.as_of, r.id, r.revision, {GridColumns}
         from series_point s join run r on r.id = s.run join grid x on x.run = s.run and x.scope = @Scope and x.metric = @Metric
         where s.portfolio = @Portfolio and (@From is null or s.as_of >= @From) and (@To is null or s.as_of <= @To)
-          and {Granted.Part(Right.Read, "s.portfolio", "x.project")}
+          and {Granted.Part(Right.Read, "@Portfolio", "x.project")}
         order by s.as_of
         """;
 

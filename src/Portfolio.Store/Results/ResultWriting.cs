@@ -18,18 +18,28 @@ internal static class ResultWriting
 
     public static async Task KeepAsync(StoreTransaction open, string run, RunResult result)
     {
-        foreach (var (position, row) in result.Rows.Index())
-            await open.ExecuteAsync(
-                InsertRowSql, new { Run = run, row.Scope, Position = position, Project = ProjectOf(row.Scope), row.Json });
-        foreach (var grid in result.Grids)
+        await open.ExecuteEachAsync(InsertRowSql, result.Rows.Select((row, position) => new
         {
-            var project = ProjectOf(grid.Scope);
-            await open.ExecuteAsync(
-                InsertGridSql,
-                new { Run = run, grid.Scope, grid.Metric, Project = project, grid.Base, grid.Mean, grid.Sd, grid.Happens, grid.Bytes });
-        }
-        foreach (var allocation in result.Allocations)
-            await open.ExecuteAsync(InsertAllocationSql, new { Run = run, allocation.Level, allocation.Bytes });
+            Run = run,
+            row.Scope,
+            Position = position,
+            Project = ProjectOf(row.Scope),
+            row.Json,
+        }));
+        await open.ExecuteEachAsync(InsertGridSql, result.Grids.Select(grid => new
+        {
+            Run = run,
+            grid.Scope,
+            grid.Metric,
+            Project = ProjectOf(grid.Scope),
+            grid.Base,
+            grid.Mean,
+            grid.Sd,
+            grid.Happens,
+            grid.Bytes,
+        }));
+        await open.ExecuteEachAsync(
+            InsertAllocationSql, result.Allocations.Select(allocation => new { Run = run, allocation.Level, allocation.Bytes }));
     }
 
     /// <summary>The project whose grant reaches a scope; null for what only a grant on the whole portfolio does.</summary>

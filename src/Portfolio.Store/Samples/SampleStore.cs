@@ -33,8 +33,7 @@ public sealed class SampleStore(Database database)
                     return false;
                 if (await open.ExecuteAsync(InsertBlockSql, new { Run = held.Run.Id, Block = block, Iterations = iterations }) == 0)
                     return true;
-                foreach (var row in rows)
-                    await open.ExecuteAsync(InsertSql, row);
+                await open.ExecuteEachAsync(InsertSql, rows);
                 return true;
             },
             cancellation);
@@ -46,6 +45,21 @@ public sealed class SampleStore(Database database)
     public async Task<IReadOnlyList<int>> ListBlocksAsync(RunLease held, CancellationToken cancellation) =>
         await database.ReadAsync(open => open.ListAsync<int>(BlocksSql, new { held.Run.Id }), cancellation);
 
+    private const string SeriesSql = """
+        select run, block, series, codec, bytes, checksum from sample where run = @Id and series in (@Keys) order by series, block
+        """;
+
+    /// <summary>Several series of a run that is worked, by name; those that are not kept are left out.</summary>
+    /// <exception cref="StoreDamagedException">Stored bytes are not the ones that were written.</exception>
+    public async Task<IReadOnlyDictionary<string, KeptSeries>> ReadSeriesAsync(
+        RunLease held, IReadOnlyList<string> series, CancellationToken cancellation)
+    {
+        var rows = await database.ReadAsync(
+            open => open.ListOfAsync<SampleRow>(SeriesSql, series, new { held.Run.Id }), cancellation);
+        rows.ForEach(row => row.Check());
+        return rows.GroupBy(row => row.Series).ToDictionary(kept => kept.Key, kept => new KeptSeries([.. kept]), StringComparer.Ordinal);
+    }
+
     /// <summary>
     /// A series written with <see cref="SeriesBlock.OfMinutes"/>, over all blocks in order; null when it is not kept or not the caller's to
     /// read.
@@ -54,7 +68,7 @@ public sealed class SampleStore(Database database)
     public async Task<int[]?> ReadMinutesAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
     {
         var rows = await ReadAsync(caller, portfolio, run, series, cancellation);
-        return rows.Count == 0 ? null : Joined(rows.ConvertAll(row => SampleCodec.DecodeMinutes(row.Codec, row.Bytes)));
+        return rows.Count == 0 ? null : new KeptSeries(rows).ToMinutes();
     }
 
     /// <summary>
@@ -65,12 +79,12 @@ public sealed class SampleStore(Database database)
     public async Task<double[]?> ReadMoneyAsync(Caller caller, string portfolio, string run, string series, CancellationToken cancellation)
     {
         var rows = await ReadAsync(caller, portfolio, run, series, cancellation);
-        return rows.Count == 0 ? null : Joined(rows.ConvertAll(row => SampleCodec.DecodeMoney(row.Codec, row.Bytes)));
+        return rows.Count == 0 ? null : new KeptSeries(rows).ToMoney();
     }
 
     private static readonly string ReadSql = $"""
         select s.run, s.block, s.series, s.codec, s.bytes, s.checksum from sample s join run r on r.id = s.run
-        where s.run = @Run and s.series = @Series and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "r.portfolio", "@Project")}
+        where s.run = @Run and s.series = @Series and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "@Portfolio", "@Project")}
         order by s.block
         """;
 
@@ -84,17 +98,5 @@ public sealed class SampleStore(Database database)
             cancellation);
         rows.ForEach(row => row.Check());
         return rows;
-    }
-
-    private static T[] Joined<T>(List<T[]> blocks)
-    {
-        var all = new T[blocks.Sum(block => block.Length)];
-        var at = 0;
-        foreach (var block in blocks)
-        {
-            block.CopyTo(all, at);
-            at += block.Length;
-        }
-        return all;
     }
 }

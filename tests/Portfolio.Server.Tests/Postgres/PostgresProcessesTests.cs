@@ -1,3 +1,4 @@
+using System.Net;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Jobs;
 using Portfolio.Server.Tests.Runs;
@@ -56,6 +57,21 @@ public sealed class PostgresProcessesTests : IAsyncLifetime
         Assert.All(both, process => Assert.Contains(process.Said, line => line.Contains(": succeeded.", StringComparison.Ordinal)));
     }
 
-    private Task<ServerProcess> StartAsync() => ServerProcess.StartAsync(
-        directory.FullName, ("Storage__Postgres", database.ConnectionString), ("Engine__LeaseSeconds", "3"));
+    [Fact]
+    public async Task OfFiftyWritersOnOneTagOneWinsWhateverProcessItAsks()
+    {
+        var both = await Task.WhenAll(StartAsync("api"), StartAsync("api"));
+        using var one = both[0];
+        using var other = both[1];
+        await one.Client.PutJsonAsync("/v1/portfolios/p/document", RunSamples.Uncertain());
+        var tag = (await other.Client.ReadAsync("/v1/portfolios/p/document")).Tag();
+        var answers = await Task.WhenAll(Enumerable.Range(0, 50).Select(number => both[number % 2].Client.PutJsonAsync(
+            "/v1/portfolios/p/document", RunSamples.Uncertain(activities: 4 + number), tag)));
+        Assert.Equal(1, answers.Count(answer => answer.StatusCode == HttpStatusCode.OK));
+        Assert.Equal(49, answers.Count(answer => answer.StatusCode == HttpStatusCode.PreconditionFailed));
+        Assert.Equal(2, await database.CountAsync("select count(*) from revision"));
+    }
+
+    private Task<ServerProcess> StartAsync(string roles = "all") => ServerProcess.StartAsync(
+        directory.FullName, ("Storage__Postgres", database.ConnectionString), ("Engine__LeaseSeconds", "3"), ("Roles", roles));
 }

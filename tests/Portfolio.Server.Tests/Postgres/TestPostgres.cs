@@ -44,6 +44,16 @@ internal sealed class TestPostgres : IAsyncDisposable
         return (long)(await command.ExecuteScalarAsync(TestContext.Current.CancellationToken))!;
     }
 
+    /// <summary>Begins a transaction with a statement, such as one that locks; it lasts until it is disposed of.</summary>
+    public async Task<IAsyncDisposable> HoldAsync(string sql)
+    {
+        var connection = new NpgsqlConnection($"{ConnectionString};Pooling=false");
+        await connection.OpenAsync(TestContext.Current.CancellationToken);
+        await using var command = new NpgsqlCommand($"begin; {sql}", connection);
+        await command.ExecuteNonQueryAsync(TestContext.Current.CancellationToken);
+        return connection;
+    }
+
     public async ValueTask DisposeAsync() => await OnServerAsync($"drop database {name} with (force)");
 
     private static async Task OnServerAsync(string sql)

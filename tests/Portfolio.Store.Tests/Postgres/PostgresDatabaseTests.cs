@@ -119,6 +119,63 @@ public sealed class PostgresDatabaseTests
     }
 
     [Fact]
+    public async Task Writers_go_by_the_clock_of_the_server_unless_a_test_has_set_theirs()
+    {
+        await using var place = await PostgresPlace.MakeAsync();
+        await using (var connection = (NpgsqlConnection)place.Connect())
+        {
+            await connection.OpenAsync(TestStore.Cancellation);
+            await using var ahead = new NpgsqlCommand(
+                $"""
+                create function public.clock_timestamp() returns timestamptz language sql as
+                  $$select pg_catalog.clock_timestamp() + interval '1 hour'$$;
+                alter database {connection.Database} set search_path = public, pg_catalog;
+                """,
+                connection);
+            await ahead.ExecuteNonQueryAsync(TestStore.Cancellation);
+        }
+#pragma warning disable RS0030 // What is tested is how the system's clock is left aside.
+        var system = TimeProvider.System;
+#pragma warning restore RS0030
+        await using (var real = await place.OpenAsync(system))
+        {
+            await AppendAsync(real);
+            Assert.InRange(await LastAsync(real) - system.GetUtcNow(), TimeSpan.FromMinutes(55), TimeSpan.FromMinutes(60));
+        }
+        await using var test = await place.OpenAsync(new FakeTimeProvider(TestStore.Start));
+        await AppendAsync(test);
+        Assert.Equal(TestStore.Start, await LastAsync(test));
+
+        static Task<DateTimeOffset> LastAsync(Database database) => database.ReadAsync(
+            async open => (await open.FirstAsync<long>("select at from audit order by sequence desc limit 1")).ToInstant(),
+            TestStore.Cancellation);
+    }
+
+    [Fact]
+    public async Task Where_all_connections_are_in_use_it_is_told_soon()
+    {
+        await using var place = await PostgresPlace.MakeAsync();
+        await using var database = await PostgresDatabase.OpenAsync(
+            $"{place.ConnectionString};Maximum Pool Size=2;Timeout=1", new FakeTimeProvider(TestStore.Start), TestStore.Cancellation);
+        var release = new TaskCompletionSource();
+        using var held = new CountdownEvent(2);
+        var readers = Enumerable.Range(0, 2).Select(_ => database.ReadAsync(
+            async open =>
+            {
+                held.Signal();
+                await release.Task;
+                return await open.FirstAsync<long>("select count(*) from audit");
+            },
+            TestStore.Cancellation)).ToArray();
+        held.Wait(TestStore.Cancellation);
+        await Assert.ThrowsAsync<StoreUnavailableException>(() => database.PingAsync(TestStore.Cancellation).WaitAsync(
+            TimeSpan.FromSeconds(20), TestStore.Cancellation));
+        release.SetResult();
+        await Task.WhenAll(readers);
+        await database.PingAsync(TestStore.Cancellation);
+    }
+
+    [Fact]
     public async Task A_server_that_is_not_there_is_told_in_a_sentence()
     {
         var told = await Assert.ThrowsAsync<StoreUnavailableException>(() => PostgresDatabase.OpenAsync(

@@ -38,6 +38,26 @@ public abstract class SampleStoreTests(StoreKind kind)
     }
 
     [Fact]
+    public async Task Many_series_are_written_and_read_at_once()
+    {
+        var (store, held) = await RunningAsync();
+        await using var _ = store;
+        string[] names = [.. Enumerable.Range(0, 700).Select(number => $"milestone/p/M{number}")];
+        foreach (var block in new[] { 1, 0 })
+            Assert.True(await store.Samples.WriteBlockAsync(
+                held, block, 1, [.. names.Select((name, number) => SeriesBlock.OfMinutes(name, new[] { number + 1000 * block }))],
+                TestStore.Cancellation));
+        Assert.Equal(1400, await store.CountAsync("sample"));
+        var kept = await store.Samples.ReadSeriesAsync(held, [.. names[..40], "finish/none"], TestStore.Cancellation);
+        Assert.Equal(names[..40].Order(), kept.Keys.Order());
+        Assert.Equal([39, 1039], kept[names[39]].ToMinutes());
+
+        await store.RawAsync<long>($"update sample set checksum = checksum + 1 where series = '{names[7]}'");
+        await Assert.ThrowsAsync<StoreDamagedException>(() => store.Samples.ReadSeriesAsync(held, names[..16], TestStore.Cancellation));
+        Assert.Equal(16, (await store.Samples.ReadSeriesAsync(held, names[16..32], TestStore.Cancellation)).Count);
+    }
+
+    [Fact]
     public async Task A_block_that_is_there_is_left_alone()
     {
         var (store, held) = await RunningAsync();
