@@ -12,6 +12,7 @@ public sealed class ParameterTests(ServerFixture fixture) : IClassFixture<Server
     [InlineData("document?revision=first", "revision")]
     [InlineData("document?asOf=5-January", "asOf")]
     [InlineData("document?revision=1&asOf=2027-01-04", "asOf")]
+    [InlineData("settings?revision=first", "revision")]
     [InlineData("revisions?limit=0", "limit")]
     [InlineData("revisions?limit=many", "limit")]
     [InlineData("revisions?cursor=next", "cursor")]

@@ -39,6 +39,9 @@ internal sealed record Draft
     /// <summary>True when the thing at the address was not there before.</summary>
     public bool Creates { get; init; }
 
+    /// <summary>True when the thing at the address is there no longer.</summary>
+    public bool Removes { get; init; }
+
     /// <summary>The activity at the address; null when the address is that of a whole part.</summary>
     public ActivityJson? Activity { get; init; }
 

@@ -94,7 +94,8 @@ internal sealed class PartWriting(DocumentStore documents, DraftCheck check, Kno
     private static Refusal Refuse(Problem problem) => new(problem);
 
     private static string? TagOf(Draft draft, Change change, Head head) =>
-        draft.OfWhole ? OfWhole(change, head).ToString()
+        draft.Removes ? null
+        : draft.OfWhole ? OfWhole(change, head).ToString()
         : draft.Activity is { } activity ? TagOf(ContentHash.Of(DocumentReader.Bytes(activity)))
         : change.Parts is [var part] ? TagOf(part.Hash)
         : null;

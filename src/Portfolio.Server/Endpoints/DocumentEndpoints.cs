@@ -62,7 +62,7 @@ internal static class DocumentEndpoints
             submission = DocumentSubmission.Of(portfolio, body.Bytes, reader, check);
         var write = new DocumentWrite
         {
-            Portfolio = portfolio, Note = kept, Action = "document.put",
+            Portfolio = portfolio, Note = kept, Action = "document.put", Parts = [PartNames.Settings],
             Joining = http.Remembers<WriteResult>((to, done) => Written.Answer(to, portfolio, done, submission.Tag)),
         };
         var result = await documents.WriteAsync(user.Caller(), write, (head, _) => submission.ReplaceAsync(head, conditions), cancellation);

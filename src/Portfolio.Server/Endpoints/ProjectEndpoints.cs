@@ -42,7 +42,7 @@ internal static class ProjectEndpoints
         var (after, more) = (Paging.Number(cursor) ?? 0, Paging.WithOneMore(limit));
         var found = await projects.ReadAsync(read.Caller, read.Portfolio, await read.NumberAsync(), after, more, read.Cancellation);
         if (found is null)
-            return Problem.NotFound("There is no such revision.");
+            return Problem.NotFound();
         var tag = EntityTags.OfDocument(found.Select(project => new PartHead(project.Entry.Id, project.Entry.Etag)));
         if (new Preconditions(read.Http.Request).HasAlready(tag))
             return Read.NotModified(read.Http, tag);

@@ -33,9 +33,10 @@ internal static class MediaTypes
     /// <summary>The quality that a type is accepted with: the most specific range that names it decides.</summary>
     public static double Quality(IEnumerable<MediaTypeHeaderValue> accepted, string type)
     {
-        var named = MediaTypeHeaderValue.Parse(type);
+        // Every text is in UTF-8, so a range that says so names it too.
+        var named = new MediaTypeHeaderValue(type) { Charset = "utf-8" };
         return accepted.Where(named.IsSubsetOf)
-            .OrderBy(range => (range.MatchesAllTypes, range.MatchesAllSubTypes))
+            .OrderBy(range => (range.MatchesAllTypes, range.MatchesAllSubTypes, !range.Charset.HasValue))
             .Select(range => range.Quality ?? 1).FirstOrDefault();
     }
 

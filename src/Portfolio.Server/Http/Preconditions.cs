@@ -21,6 +21,8 @@ internal sealed class Preconditions(HttpRequest request)
     /// <summary>For a write that may come without conditions: null when it may go on.</summary>
     public Problem? OfChanging(EntityTagHeaderValue? current)
     {
+        if ((Unread(HeaderNames.IfMatch) ?? Unread(HeaderNames.IfNoneMatch)) is { } unread)
+            return unread;
         if (match.Count > 0 && (current is null || !Names(match, current, strongly: true)))
             return Problem.PreconditionFailed();
         return noneMatch.Count > 0 && current is not null && Names(noneMatch, current, strongly: false)
@@ -30,6 +32,12 @@ internal sealed class Preconditions(HttpRequest request)
 
     /// <summary>For a read: true when the client has it already (304).</summary>
     public bool HasAlready(EntityTagHeaderValue current) => Names(noneMatch, current, strongly: false);
+
+    /// <summary>A condition that cannot be read is not met: without it a write would overwrite what it was to spare.</summary>
+    private Problem? Unread(string header) =>
+        request.Headers[header] is { Count: > 0 } sent && !EntityTagHeaderValue.TryParseStrictList(sent, out _)
+            ? Problem.BadRequest($"'{header}' must be * or entity tags in double quotes, as ETag gives them.")
+            : null;
 
     private static bool Names(IList<EntityTagHeaderValue> tags, EntityTagHeaderValue current, bool strongly) =>
         tags.Any(tag => tag.Equals(EntityTagHeaderValue.Any) || tag.Compare(current, strongly));

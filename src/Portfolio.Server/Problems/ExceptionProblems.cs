@@ -1,3 +1,4 @@
+using System.Text.Json;
 using System.Text.RegularExpressions;
 using Microsoft.AspNetCore.Diagnostics;
 using Portfolio.Server.Contracts.Json;
@@ -20,7 +21,7 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
             BadHttpRequestException { StatusCode: 408 } => new Problem(408, "too-slow", "The body came too slowly"),
             BadHttpRequestException { StatusCode: 413 } => new Problem(413, "too-large", "The body is too large"),
             BadHttpRequestException unread when Unread().Match(unread.Message) is { Success: true } match =>
-                QueryFaults.Of(match.Groups["name"].Value, $"'{match.Groups["name"].Value}' cannot be read.").Problem,
+                UnreadParameter(JsonNamingPolicy.CamelCase.ConvertName(match.Groups["name"].Value)),
             BadHttpRequestException => Problem.BadRequest("A parameter of the address or a header cannot be read."),
             StoreUnavailableException unavailable => Unavailable(unavailable),
             _ => Unforeseen(exception),
@@ -34,6 +35,8 @@ internal sealed partial class ExceptionProblems(ILogger<ExceptionProblems> log) 
     // The only place where the framework tells which parameter of the query it could not read.
     [GeneratedRegex("^Failed to bind parameter \"\\S+ (?<name>\\w+)\" from ")]
     private static partial Regex Unread();
+
+    private static Problem UnreadParameter(string name) => QueryFaults.Of(name, $"'{name}' cannot be read.").Problem;
 
     private Problem Unavailable(StoreUnavailableException exception)
     {

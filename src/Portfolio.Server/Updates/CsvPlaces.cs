@@ -9,13 +9,18 @@ internal sealed class CsvPlaces : IFaultPlaces
 {
     private readonly List<(string[] Cells, int Line)> rows = [];
     private string[] header = [];
+
+    // By name the first column that has it.
+    private Dictionary<string, int> first = [];
+
     private int headerLine = 1;
 
     /// <summary>Faults of the table itself: what rules say of a thing one of whose cells cannot be read repeats them.</summary>
     public IReadOnlyList<Fault> Forms { get; set; } = [];
 
-    public void Begin(IEnumerable<CsvColumn> columns, int line) =>
-        (header, headerLine) = ([.. columns.Select(column => column.Name)], line);
+    /// <param name="names">Of the columns, in their order.</param>
+    /// <param name="firsts">By name the first column that has it.</param>
+    public void Begin(string[] names, Dictionary<string, int> firsts, int line) => (header, first, headerLine) = (names, firsts, line);
 
     /// <summary>The number of the row, from 0.</summary>
     public int Add(string[] cells, int line)
@@ -52,18 +57,22 @@ internal sealed class CsvPlaces : IFaultPlaces
         for (var length = steps.Length; length > 0; length--)
         {
             var name = string.Join('.', steps[..length].Select(step => step.Replace("~1", "/", StringComparison.Ordinal)));
-            var own = Array.IndexOf(header, name);
-            if (own < 0)
-                own = Array.FindIndex(header, each => each.StartsWith(name + ".", StringComparison.Ordinal) && IsFilled(row.Cells, each));
+            var own = first.TryGetValue(name, out var column) ? column : Within(row.Cells, name + ".");
             if (own >= 0)
                 return (row.Line, own + 1);
         }
-        var key = IsFilled(row.Cells, CsvColumn.Activity) ? CsvColumn.Activity : CsvColumn.Project;
-        return (row.Line, Math.Max(Array.IndexOf(header, key), 0) + 1);
+        var hasActivity = first.TryGetValue(CsvColumn.Activity, out var activity) && activity < row.Cells.Length && row.Cells[activity].Length > 0;
+        return (row.Line, hasActivity ? activity + 1 : first.GetValueOrDefault(CsvColumn.Project) + 1);
     }
 
-    private bool IsFilled(string[] cells, string column) =>
-        Array.IndexOf(header, column) is >= 0 and var i && i < cells.Length && cells[i].Length > 0;
+    /// <summary>The first cell that says something of a member below; -1: none.</summary>
+    private int Within(string[] cells, string prefix)
+    {
+        for (var i = 0; i < Math.Min(cells.Length, header.Length); i++)
+            if (cells[i].Length > 0 && header[i].StartsWith(prefix, StringComparison.Ordinal))
+                return i;
+        return -1;
+    }
 
     private static int Number(string text) => int.Parse(text, CultureInfo.InvariantCulture);
 }

@@ -1,4 +1,7 @@
+using System.Buffers;
 using System.Globalization;
+using System.Text;
+using System.Text.Unicode;
 using CsvHelper;
 using Portfolio.Model.Faults;
 using Portfolio.Server.Contracts.Json;
@@ -20,11 +23,16 @@ internal sealed class CsvUpdates
     private readonly UpdateSet set;
     private CsvColumn[] columns = [];
 
+    // By name the first column that has it.
+    private Dictionary<string, int> first = [];
+
     private CsvUpdates() => set = new UpdateSet { Places = places };
 
-    /// <exception cref="JsonRefused">The quoting is broken, so that lines and cells cannot be told.</exception>
+    /// <exception cref="JsonRefused">It is not UTF-8, or the quoting is broken, so that lines and cells cannot be told.</exception>
     public static UpdateSet Read(ReadOnlyMemory<byte> csv)
     {
+        if (!Utf8.IsValid(csv.Span))
+            throw NotUtf8(csv.Span);
         try
         {
             using var reader = CsvReader.Create(csv, Options);
@@ -35,10 +43,21 @@ internal sealed class CsvUpdates
         }
         catch (CsvFormatException malformed)
         {
-            var why = $"The quotes of the record that begins at line {malformed.LineNumber} are not closed or doubled.";
-            throw new JsonRefused(new Fault("", "", FaultCodes.TableMalformed, why), (int)malformed.LineNumber, 1);
+            var line = (int)malformed.LineNumber;
+            throw NoTable($"The quotes of the record that begins at line {line} are not closed or doubled.", line);
         }
     }
+
+    private static JsonRefused NotUtf8(ReadOnlySpan<byte> csv)
+    {
+        var good = 0;
+        while (Rune.DecodeFromUtf8(csv[good..], out _, out var length) == OperationStatus.Done)
+            good += length;
+        var line = csv[..good].Count((byte)'\n') + 1;
+        return NoTable($"Line {line} holds letters that are not UTF-8; save the table as CSV in UTF-8.", line);
+    }
+
+    private static JsonRefused NoTable(string why, int line) => new(new Fault("", "", FaultCodes.TableMalformed, why), line, 1);
 
     private void Read(CsvReader reader)
     {
@@ -53,21 +72,26 @@ internal sealed class CsvUpdates
     private void ReadHeader(CsvReader reader)
     {
         columns = [.. Enumerable.Range(0, reader.FieldCount).Select(i => new CsvColumn(reader.GetString(i).Trim()))];
-        places.Begin(columns, (int)reader.LineNumber);
-        var seen = new HashSet<string>(StringComparer.Ordinal);
+        first = new Dictionary<string, int>(columns.Length, StringComparer.Ordinal);
+        places.Begin([.. columns.Select(column => column.Name)], first, (int)reader.LineNumber);
         for (var i = 0; i < columns.Length; i++)
         {
             var (column, path) = (columns[i], $"/header/{i}");
-            if (!seen.Add(column.Name))
+            if (!first.TryAdd(column.Name, i))
                 Refuse(path, column.Name, FaultCodes.ColumnRepeated, $"The column '{column.Name}' is there twice.");
             else if (column.OfProject == CellKind.List || column.OfActivity == CellKind.List)
                 Refuse(path, column.Name, FaultCodes.ColumnList, $"'{column.Name}' is a list; a table cannot hold it, send it as JSON.");
             else if (!column.IsKey && column is { OfProject: CellKind.None, OfActivity: CellKind.None })
-                Refuse(path, column.Name, FaultCodes.ColumnUnknown, $"Neither projects nor activities have a member '{column.Name}'.");
+                Refuse(path, column.Name, FaultCodes.ColumnUnknown, Unknown(column));
         }
-        if (!seen.Contains(CsvColumn.Project))
+        if (!first.ContainsKey(CsvColumn.Project))
             Refuse("/header", "header", FaultCodes.MemberMissing, "The column 'project' is missing.");
     }
+
+    // What spreadsheets write where the comma is the sign before decimals.
+    private string Unknown(CsvColumn column) => columns.Length == 1 && column.Name.AsSpan().ContainsAny(';', '\t')
+        ? "The header is one cell only: cells must be separated by commas, not by semicolons or tabs."
+        : $"Neither projects nor activities have a member '{column.Name}'.";
 
     private void ReadRow(CsvReader reader)
     {
@@ -94,7 +118,7 @@ internal sealed class CsvUpdates
             var column = columns[i];
             var kind = activity.Length > 0 ? column.OfActivity : column.OfProject;
             // What is wrong with a column itself is said once, at its header.
-            if (cells[i].Length > 0 && !column.IsKey && Stands(column) && Array.FindIndex(columns, each => each.Name == column.Name) == i)
+            if (cells[i].Length > 0 && !column.IsKey && Stands(column) && first[column.Name] == i)
                 row.Add(column, kind, cells[i]);
         }
         row.Finish();
@@ -112,11 +136,7 @@ internal sealed class CsvUpdates
         column is not { OfProject: CellKind.None, OfActivity: CellKind.None }
         && column.OfProject != CellKind.List && column.OfActivity != CellKind.List;
 
-    private string Cell(string[] cells, string column)
-    {
-        var i = Array.FindIndex(columns, each => each.Name == column);
-        return i >= 0 && i < cells.Length ? cells[i] : "";
-    }
+    private string Cell(string[] cells, string column) => first.TryGetValue(column, out var i) && i < cells.Length ? cells[i] : "";
 
     private void Refuse(string path, string subject, string code, string message) =>
         set.Faults.Add(new Fault(path, subject, code, message));

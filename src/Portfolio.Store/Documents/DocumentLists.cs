@@ -19,11 +19,13 @@ public sealed partial class DocumentStore
         order by v.position limit @Limit
         """;
 
-    private const string NumberedSql = "select count(*) from revision where portfolio = @Portfolio and number = @Number";
+    private const string NumberedSql = """
+        select count(*) from (select 1 from revision where portfolio = @Portfolio and (@Number is null or number = @Number) limit 1) found
+        """;
 
     /// <summary>
     /// Projects at a revision (null: the newest) that the caller may read or submit to, in document order from behind a position; null when
-    /// there is no such revision.
+    /// there is no such revision, or no such portfolio.
     /// </summary>
     public Task<IReadOnlyList<ListedProject>?> ListProjectsAsync(
         Caller caller, string portfolio, long? revision, long after, int limit, CancellationToken cancellation) =>
@@ -31,7 +33,7 @@ public sealed partial class DocumentStore
             async open =>
             {
                 var asked = new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Number = revision, After = after, Limit = limit };
-                if (revision is not null && await open.FirstAsync<long>(NumberedSql, asked) == 0)
+                if (await open.FirstAsync<long>(NumberedSql, asked) == 0)
                     return null;
                 var rows = await open.ListAsync<ListedRow>(ProjectsSql, asked);
                 return [.. rows.Select(row => new ListedProject(row.Project, row.Position, row.Hash, row.Bytes))];

@@ -1,8 +1,15 @@
+using Portfolio.Store.Access;
+
 namespace Portfolio.Store.Documents;
 
 internal sealed record RevisionRow
 {
-    public const string Columns = "r.portfolio, r.number, r.recorded_at, r.actor, r.note";
+    /// <summary>The note only for who may read something that the revision changed: it may speak of what others must not see.</summary>
+    public static readonly string Columns = $"""
+        r.portfolio, r.number, r.recorded_at, r.actor,
+          case when r.note is not null and exists (select 1 from revision_part n where n.portfolio = r.portfolio and n.revision = r.number
+            and {Granted.Part(Right.Read, "n.portfolio", "n.project")}) then r.note end as note
+        """;
 
     public string Portfolio { get; init; } = "";
     public long Number { get; init; }

@@ -55,6 +55,8 @@ public sealed class DocumentReaderTests
     [InlineData("{", "", "json.malformed")]
     [InlineData("{ \n", "", "json.malformed")]
     [InlineData("[", "", "json.malformed")]
+    [InlineData("{'settings':{}}", "", "json.malformed")]
+    [InlineData("{/* no */\"settings\":{}}", "", "json.malformed")]
     [InlineData("{\"settings\":", "/settings", "json.malformed")]
     [InlineData("{\"settings\":{\"name\"", "/settings", "json.malformed")]
     [InlineData("{\"settings\":{\"name\":\"a\"", "/settings/name", "json.malformed")]
@@ -79,7 +81,7 @@ public sealed class DocumentReaderTests
     [InlineData("{\"projects\":[{\"activities\":[{\"predecessors\":[\"A\",5]}]}]}", "/projects/0/activities/0/predecessors/1", "member.kind")]
     [InlineData("[]", "", "member.kind")]
     [InlineData("null", "", "member.kind")]
-    [InlineData("{\"settings\":{\"indices\":[[[[[[[[[[[[[[[[]]]]]]]]]]]]]]]]}}", "/settings/indices/0/0/0/0/0/0/0/0/0/0/0/0/0", "json.depth")]
+    [InlineData("{\"settings\":{\"indices\":[[[[[[[[[[[[[[[[]]]]]]]]]]]]]]]]}}", "/settings/indices/0/0/0/0/0/0/0/0/0/0/0/0/0/0", "json.depth")]
     public void WhatIsNotTheRightJsonNamesTheFirstPlace(string json, string path, string code)
     {
         var refused = Assert.Throws<JsonRefused>(() => Reader.ReadDocument(Encoding.UTF8.GetBytes(json)));

@@ -45,7 +45,9 @@ public sealed class ActivityEndpointTests(ServerFixture fixture) : IClassFixture
         await (await client.PatchAsync(at + "A20", """{"name":"Walls"}""", tag)).WrittenAsync(200, 2);
         await (await client.RemoveAsync(at + "A20")).ProblemAsync(428, "precondition-required");
         await (await client.RemoveAsync(at + "A20", tag)).ProblemAsync(412, "precondition-failed");
-        await (await client.RemoveAsync(at + "A20", "*")).WrittenAsync(200, 3);
+        var removed = await client.RemoveAsync(at + "A20", "*");
+        await removed.WrittenAsync(200, 3);
+        Assert.Null(removed.Tag());
         await (await client.RemoveAsync(at + "A20", "*")).ProblemAsync(404, "not-found");
         await (await client.RemoveAsync(at.Replace("weir", "none") + "A20", "*")).ProblemAsync(404, "not-found");
         await (await client.PutJsonAsync(at.Replace("weir", "none") + "A20", A20)).ProblemAsync(404, "not-found");

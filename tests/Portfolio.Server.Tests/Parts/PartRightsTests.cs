@@ -69,6 +69,26 @@ public sealed class PartRightsTests(ServerFixture fixture) : IClassFixture<Serve
         await (await manager.PatchAsync(at + "/projects/quay", """{"name":"Mine"}""")).ProblemAsync(403, "forbidden");
         await (await manager.PatchAsync(at + "/projects/quay", """{"name":"Quay"}""")).ProblemAsync(403, "forbidden");
         await (await manager.PutJsonAsync(at + "/settings", PartCalls.Settings, "*")).ProblemAsync(403, "forbidden");
+        // Not even to say that all others stay as they are: else it could be guessed what they hold.
+        var whole = await (await admin.ReadAsync(at + "/document")).TextAsync();
+        foreach (var document in new[] { whole, whole.Replace("EUR", "USD"), "{}" })
+            await (await manager.PutJsonAsync(at + "/document", document, "*")).ProblemAsync(403, "forbidden");
         await (await manager.RemoveAsync(at + "/projects/weir", "*")).WrittenAsync(200, 3);
+    }
+
+    [Theory]
+    [InlineData("PATCH", "projects/weir", """{"correlation":1e999}""", "weir", "/correlation")]
+    [InlineData("PATCH", "projects/weir", """{"priority":1e999}""", "weir", "/priority")]
+    [InlineData("PATCH", "projects/weir", """{"overhead":{"perDay":-1e999,"actual":1e999}}""", "weir", "/overhead/perDay")]
+    [InlineData("PUT", "projects/weir/activities/A30", """{"duration":1e999,"demands":[{"pool":"crane","units":1e999}]}""", "weir/A30", "/demands")]
+    [InlineData("POST", "updates", """{"updates":[{"project":"weir","overhead":{"perDay":1e999}}]}""", "weir", "/updates/0/overhead/perDay")]
+    public async Task WhatMayNotBeSubmittedMayBeTooLargeForANumber(string method, string part, string json, string subject, string path)
+    {
+        var at = await admin.PortfolioAsync("large-" + Guid.NewGuid());
+        var site = await fixture.Server.ClientAsync(new Grant(Right.Submit, at["/v1/portfolios/".Length..]));
+        var type = method == "PATCH" ? "application/merge-patch+json" : "application/json";
+        Assert.Equal(
+            [("right.missing", subject, path)],
+            await (await site.SendAsync(new HttpMethod(method), $"{at}/{part}", json, mediaType: type)).RefusedAsync(403, "forbidden"));
     }
 }

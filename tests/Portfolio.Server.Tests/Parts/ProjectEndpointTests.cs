@@ -55,6 +55,34 @@ public sealed class ProjectEndpointTests(ServerFixture fixture) : IClassFixture<
         Assert.Equal(PartCalls.Weir, await (await client.ReadAsync(at + "/projects/weir?revision=1")).TextAsync());
     }
 
+    [Theory]
+    [InlineData("TAG")]
+    [InlineData("\"TAG")]
+    [InlineData("\"TAG\" \"other\"")]
+    [InlineData("*, \"TAG\" x")]
+    public async Task AConditionThatCannotBeReadLetsNothingBeWritten(string condition)
+    {
+        var at = await client.PortfolioAsync("conditions-" + Guid.NewGuid()) + "/projects/weir";
+        condition = condition.Replace("TAG", (await client.ReadAsync(at)).Tag()!.Trim('"'));
+        foreach (var (match, noneMatch) in new[] { (condition, null), ((string?)null, condition) })
+        {
+            var refused = await client.SendAsync(
+                HttpMethod.Patch, at, """{"name":"Overwritten"}""", match, "application/merge-patch+json", noneMatch);
+            await refused.ProblemAsync(400, "bad-request");
+        }
+        await (await client.RemoveAsync(at, condition)).ProblemAsync(400, "bad-request");
+        Assert.Equal(PartCalls.Weir, await (await client.ReadAsync(at)).TextAsync());
+    }
+
+    [Fact]
+    public async Task OneOfSeveralTagsIsEnough()
+    {
+        var at = await client.PortfolioAsync("several") + "/projects/weir";
+        var tag = (await client.ReadAsync(at)).Tag();
+        await (await client.PatchAsync(at, """{"name":"A"}""", "\"old\", W/\"older\"")).ProblemAsync(412, "precondition-failed");
+        await (await client.PatchAsync(at, """{"name":"A"}""", $"\"old\",, {tag}")).WrittenAsync(200, 2);
+    }
+
     [Fact]
     public async Task ThePastStaysReadableByRevisionAndByDate()
     {

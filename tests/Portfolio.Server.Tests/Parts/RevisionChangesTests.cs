@@ -55,6 +55,32 @@ public sealed class RevisionChangesTests(ServerFixture fixture) : IClassFixture<
         await (await client.ReadAsync(at + "/revisions/1/changes?cursor=-1")).ProblemAsync(422, "refused");
     }
 
+    [Fact]
+    public async Task ANoteIsShownToWhoMayReadSomethingThatTheRevisionChanged()
+    {
+        var at = await client.PortfolioAsync("notes");
+        await client.PatchAsync(at + "/projects/weir?note=of+the+weir", """{"name":"W"}""");
+        await client.PatchAsync(at + "/projects/quay?note=of+the+quay", """{"name":"Q"}""");
+        await client.PatchAsync(at + "/settings?note=of+all", """{"name":"S"}""");
+        await client.PutJsonAsync(at + "/document?note=of+both", $$"""{"settings":{{PartCalls.Settings}},"projects":[{{PartCalls.Weir}},{{PartCalls.Quay}}]}""", "*");
+        var some = await fixture.Server.ClientAsync(new Grant(Right.Read, "notes", ["weir"]));
+        Assert.Equal(["5 of both", "4 of all", "3 of the quay", "2 of the weir", "1 -"], await NotesAsync(client, at));
+        Assert.Equal(["5 of both", "4 -", "3 -", "2 of the weir", "1 -"], await NotesAsync(some, at));
+        Assert.DoesNotContain("quay", await (await some.ReadAsync(at + "/revisions/3")).TextAsync());
+        Assert.Contains("weir", await (await some.ReadAsync(at + "/revisions/2")).TextAsync());
+    }
+
+    [Fact]
+    public async Task APortfolioThatIsNotThereHasNone()
+    {
+        await (await client.ReadAsync("/v1/portfolios/never/revisions")).ProblemAsync(404, "not-found");
+        await (await client.ReadAsync("/v1/portfolios/never/projects")).ProblemAsync(404, "not-found");
+    }
+
+    private static async Task<IReadOnlyList<string>> NotesAsync(HttpClient who, string at) =>
+        [.. (await (await who.ReadAsync(at + "/revisions")).JsonAsync()).GetProperty("items").EnumerateArray().Select(revision =>
+            $"{revision.GetProperty("revision")} {(revision.TryGetProperty("note", out var note) ? note.GetString() : "-")}")];
+
     private static async Task<IReadOnlyList<string>> ChangesAsync(HttpClient who, string address) =>
         [.. (await (await who.ReadAsync(address)).JsonAsync()).GetProperty("items").EnumerateArray().Select(change =>
             $"{change.GetProperty("path").GetString()} {Value(change, "old")} {Value(change, "new")}")];

@@ -67,6 +67,34 @@ public sealed class UpdateTableTests(ServerFixture fixture) : IClassFixture<Serv
     }
 
     [Fact]
+    public async Task LettersOfAnotherEncodingAreNotKeptInPieces()
+    {
+        var portfolio = await PortfolioAsync();
+        var sent = new ByteArrayContent(System.Text.Encoding.Latin1.GetBytes("project,name\nquay,q\nweir,Schleuse Süd\n"));
+        sent.Headers.ContentType = new("text/csv");
+        var refused = await (await client.PostAsync($"{portfolio}/updates", sent, TestContext.Current.CancellationToken)).ProblemAsync(400, "malformed");
+        Assert.Equal([("", "table.malformed")], refused.Faults());
+        Assert.Equal(3, refused.GetProperty("errors")[0].GetProperty("line").GetInt32());
+    }
+
+    [Theory]
+    [InlineData(";")]
+    [InlineData("\t")]
+    public async Task AnotherSignBetweenCellsIsSaid(string sign)
+    {
+        var refused = await client.UpdateTableAsync(await PortfolioAsync(), $"project{sign}name\n");
+        Assert.Contains("separated by commas", (await refused.ProblemAsync(422, "refused")).GetProperty("errors")[0].GetProperty("message").GetString());
+    }
+
+    [Fact]
+    public async Task AWideTableIsReadInTimeThatGrowsWithItsCells()
+    {
+        // Half a minute is the longest a request may take: far more than these cells need, far less than each with each.
+        var (tags, cells) = (string.Join(',', Enumerable.Range(0, 60_000).Select(i => $"tags.t{i}")), string.Join(',', Enumerable.Repeat("\u0001", 60_000)));
+        await (await client.UpdateTableAsync(await PortfolioAsync(), $"{tags},project\n{cells},weir\n")).ProblemAsync(422, "refused");
+    }
+
+    [Fact]
     public async Task WhoMaySubmitIsToldTheCellsBeyondItsRight()
     {
         var portfolio = await PortfolioAsync();

@@ -16,12 +16,22 @@ namespace Portfolio.Server.Contracts.Document;
 internal sealed partial class DocumentContext : JsonSerializerContext
 {
     /// <param name="maxDepth">Deepest nesting that is read.</param>
-    public static DocumentContext Strict(int maxDepth) => new(new JsonSerializerOptions(JsonSerializerDefaults.Strict)
+    public static DocumentContext Strict(int maxDepth) => new(StrictOptions(maxDepth));
+
+    /// <summary>
+    /// Also writes numbers that are too large to be any: never stored, written only to see that they differ from what is.
+    /// </summary>
+    public static DocumentContext ForWriting(int maxDepth) => new(new JsonSerializerOptions(StrictOptions(maxDepth))
+    {
+        NumberHandling = JsonNumberHandling.AllowNamedFloatingPointLiterals,
+    });
+
+    private static JsonSerializerOptions StrictOptions(int maxDepth) => new(JsonSerializerDefaults.Strict)
     {
         PropertyNamingPolicy = JsonNamingPolicy.CamelCase,
         DefaultIgnoreCondition = JsonIgnoreCondition.WhenWritingNull,
         MaxDepth = maxDepth,
         // Stored and served as application/json, never inside a page: letters stay readable.
         Encoder = JavaScriptEncoder.UnsafeRelaxedJsonEscaping,
-    });
+    };
 }

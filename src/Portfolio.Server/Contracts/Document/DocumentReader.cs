@@ -23,6 +23,8 @@ public sealed class DocumentReader(int maxDepth)
     /// <summary>Any JSON, written as parts are.</summary>
     public static readonly JsonTypeInfo<JsonNode> AnyType = OfStored.context.JsonNode;
 
+    private static readonly DocumentContext Writing = DocumentContext.ForWriting(64);
+
     private readonly DocumentContext context = DocumentContext.Strict(maxDepth);
 
     // Settings stand one level below the document, projects two.
@@ -63,13 +65,13 @@ public sealed class DocumentReader(int maxDepth)
     }
 
     /// <summary>The bytes in which settings are stored and digested: members in contract order, absent ones left out.</summary>
-    public static byte[] Bytes(SettingsJson settings) => JsonSerializer.SerializeToUtf8Bytes(settings, OfStored.context.SettingsJson);
+    public static byte[] Bytes(SettingsJson settings) => JsonSerializer.SerializeToUtf8Bytes(settings, Writing.SettingsJson);
 
     /// <summary>The bytes in which a project is stored and digested.</summary>
-    public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, OfStored.context.ProjectJson);
+    public static byte[] Bytes(ProjectJson project) => JsonSerializer.SerializeToUtf8Bytes(project, Writing.ProjectJson);
 
     /// <summary>The bytes in which an activity is digested and served on its own: those that stand for it in its project.</summary>
-    public static byte[] Bytes(ActivityJson activity) => JsonSerializer.SerializeToUtf8Bytes(activity, OfStored.context.ActivityJson);
+    public static byte[] Bytes(ActivityJson activity) => JsonSerializer.SerializeToUtf8Bytes(activity, Writing.ActivityJson);
 
     /// <summary>A document from its stored parts, which were checked when they were written.</summary>
     public static PortfolioDocument FromParts(ReadOnlySpan<byte> settings, IReadOnlyList<ReadOnlyMemory<byte>> projects) => new(

@@ -25,6 +25,8 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
     public static JsonRefused From(ReadOnlySpan<byte> json, JsonException refused, JsonTypeInfo type, int maxDepth)
     {
         var stop = Offset(json, refused);
+        // What the serializer's reader has found, be it broken or too deep, lies behind the stop: reading on comes to it.
+        var isUnreadable = refused.InnerException is JsonException;
         var walk = new PointerWalk(json);
         var members = new Stack<HashSet<string>>();
         try
@@ -32,8 +34,7 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
             while (walk.Read())
             {
                 var opens = walk.Token is JsonTokenType.StartObject or JsonTokenType.StartArray;
-                // Where any value is allowed the serializer stops one level before the one it refuses.
-                if (opens && walk.Depth >= maxDepth - (walk.Consumed >= stop ? 1 : 0))
+                if (opens && walk.Depth >= maxDepth)
                     return At(json, walk, FaultCodes.JsonDepth, $"The JSON is nested deeper than {maxDepth} levels.");
                 if (walk.Token == JsonTokenType.StartObject)
                     members.Push(new HashSet<string>(StringComparer.Ordinal));
@@ -41,10 +42,10 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
                     members.Pop();
                 else if (walk.Token == JsonTokenType.PropertyName && !members.Peek().Add(walk.Pointer.ToString()))
                     return At(json, walk, FaultCodes.MemberDuplicate, "The member appears twice in this object.");
-                if (walk.Consumed >= stop)
+                if (walk.Consumed >= stop && !isUnreadable)
                 {
                     var found = AtStop(json, walk, type);
-                    // Text cut short stops the serializer at its last good token as well: reading on then throws.
+                    // Text cut short may be of another kind as well: reading on then throws.
                     if (json[(int)walk.Consumed..].Trim(" \t\r\n,"u8).IsEmpty)
                         walk.Read();
                     return found;

@@ -15,8 +15,11 @@ public sealed class WholeNumberConverter : JsonConverter<double>
     {
         if (value == Math.Truncate(value) && Math.Abs(value) <= Exact)
             writer.WriteNumberValue((long)value);
-        else
+        else if (double.IsFinite(value))
             writer.WriteNumberValue(value);
+        else
+            // Never stored; written only to see that it differs from what is.
+            writer.WriteNullValue();
     }
 }
 

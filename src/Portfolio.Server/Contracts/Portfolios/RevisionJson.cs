@@ -12,6 +12,7 @@ public sealed record RevisionJson
     /// <summary>Id of the key that wrote it.</summary>
     public required string RecordedBy { get; init; }
 
+    /// <summary>Absent when there is none, or the key may read nothing of what the write changed.</summary>
     public string? Note { get; init; }
 
     internal static RevisionJson From(StoredRevision revision) => new()

@@ -53,7 +53,7 @@ internal sealed class ActivityRemoval(string project, string activity, Precondit
         if (conditions.OfReplacing(EntityTags.OfPart(ContentHash.Of(DocumentReader.Bytes(list[index])))) is { } refused)
             return refused;
         ActivityJson[] left = [.. list.Take(index), .. list.Skip(index + 1)];
-        return new Draft { Projects = [new(owner with { Activities = left }, _ => "")] };
+        return new Draft { Projects = [new(owner with { Activities = left }, _ => "")], Removes = true };
     }
 }
 

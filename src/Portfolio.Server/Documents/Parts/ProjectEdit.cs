@@ -36,6 +36,6 @@ internal sealed class ProjectRemoval(string project, Preconditions conditions)
             return Problem.NotFound("There is no such project.");
         if (conditions.OfReplacing(tag) is { } refused)
             return refused;
-        return new Draft { Removed = [project] };
+        return new Draft { Removed = [project], Removes = true };
     }
 }
