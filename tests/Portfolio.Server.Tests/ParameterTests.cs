@@ -33,6 +33,15 @@ public sealed class ParameterTests(ServerFixture fixture) : IClassFixture<Server
             (fault.GetProperty("path").GetString(), fault.GetProperty("subject").GetString(), fault.GetProperty("code").GetString()));
     }
 
+    [Theory]
+    [InlineData("revisions")]
+    [InlineData("projects")]
+    [InlineData("runs")]
+    [InlineData("events")]
+    [InlineData("subscriptions")]
+    public async Task APortfolioThatIsNotThereHasNoEmptyLists(string list) =>
+        await (await client.ReadAsync("/v1/portfolios/never/" + list)).ProblemAsync(404, "not-found");
+
     [Fact]
     public async Task ANoteThatIsTooLongIsNamed()
     {

@@ -61,7 +61,7 @@ public sealed class RefusedDocumentTests(ServerFixture fixture) : IClassFixture<
     [InlineData("{\"settings\":{\"name\":\"x\"},\n\"projets\":[]}", "/projets", "member.unknown", 2)]
     [InlineData("{\"settings\":{\"name\":\"x\",\"name\":\"y\"}}", "/settings/name", "member.duplicate", 1)]
     [InlineData("{\"settings\":[]}", "/settings", "member.kind", 1)]
-    [InlineData("{\"settings\":{\"indices\":[[[[[[[[[[[[[[[[[]]]]]]]]]]]]]]]]]}}", "/settings/indices/0/0/0/0/0/0/0/0/0/0/0/0/0", "json.depth", 1)]
+    [InlineData("{\"settings\":{\"indices\":[[[[[[[[[[[[[[[[[]]]]]]]]]]]]]]]]]}}", "/settings/indices/0/0/0/0/0/0/0/0/0/0/0/0/0/0", "json.depth", 1)]
     public async Task UnreadableTextNamesTheFirstPlace(string document, string path, string code, int line)
     {
         var problem = await (await client.PutJsonAsync("/v1/portfolios/unread/document", document)).ProblemAsync(400, "malformed");

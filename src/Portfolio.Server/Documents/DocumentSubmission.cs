@@ -1,4 +1,5 @@
 using Portfolio.Model.Documents;
+using Portfolio.Model.Faults;
 using Portfolio.Model.Rules;
 using Portfolio.Server.Contracts.Document;
 using Portfolio.Server.Contracts.Json;
@@ -13,11 +14,23 @@ namespace Portfolio.Server.Documents;
 /// </summary>
 internal sealed class DocumentSubmission
 {
+    private static readonly Fault CurrencyMark = new("/settings/currency", "settings", FaultCodes.CurrencyFixed, "");
+
     private readonly IReadOnlyList<ProposedPart> parts = [];
     private readonly string? currency;
     private readonly Problem? problem;
+    private readonly IReadOnlyList<Fault> faults = [];
+    private readonly int currencyPlace;
 
     private DocumentSubmission(Problem problem) => this.problem = problem;
+
+    /// <param name="faults">In the order of <paramref name="json"/>.</param>
+    private DocumentSubmission(DocumentJson document, IReadOnlyList<Fault> faults, ReadOnlySpan<byte> json)
+    {
+        (currency, this.faults) = (document.Settings?.Currency, faults);
+        // Whether the currency is fixed is known only when what is stored is looked at, and the JSON is gone then.
+        currencyPlace = DocumentOrder.Sort([.. faults, CurrencyMark], json).ToList().IndexOf(CurrencyMark);
+    }
 
     private DocumentSubmission(DocumentJson document, ValidPortfolio valid)
     {
@@ -43,7 +56,7 @@ internal sealed class DocumentSubmission
             var valid = check.Check(document, json.Span, out var faults);
             faults = [.. PortfolioRules.CheckId(portfolio), .. faults];
             return valid is null || faults.Count > 0
-                ? new DocumentSubmission(Problem.Refused(faults))
+                ? new DocumentSubmission(document, faults, json.Span)
                 : new DocumentSubmission(document, valid);
         }
         catch (JsonRefused refused)
@@ -58,13 +71,16 @@ internal sealed class DocumentSubmission
     public async Task<Proposal> ReplaceAsync(Head? head, Preconditions conditions)
     {
         var refused = conditions.OfReplacing(head is null ? null : EntityTags.OfDocument(head.Parts))
-            ?? problem ?? await FixedCurrencyAsync(head);
+            ?? problem ?? await RefusedAsync(head);
         return refused is null ? Change.Everything(head, parts) : new Refusal(refused);
     }
 
-    private async Task<Problem?> FixedCurrencyAsync(Head? head) =>
-        head is not null
-        && await FixedCurrency.CheckAsync(head, await head.ReadAsync(PartNames.Settings), currency, "/settings/currency") is { } fault
-            ? Problem.Refused([fault])
-            : null;
+    private async Task<Problem?> RefusedAsync(Head? head)
+    {
+        var found = faults.ToList();
+        if (head is not null && !found.Exists(fault => fault.Path == CurrencyMark.Path)
+            && await FixedCurrency.CheckAsync(head, await head.ReadAsync(PartNames.Settings), currency, CurrencyMark.Path) is { } change)
+            found.Insert(currencyPlace, change);
+        return found.Count > 0 ? Problem.Refused(found) : null;
+    }
 }

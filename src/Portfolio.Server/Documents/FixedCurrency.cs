@@ -8,10 +8,11 @@ namespace Portfolio.Server.Documents;
 internal static class FixedCurrency
 {
     /// <param name="stored">The settings before; null when there are none.</param>
+    /// <param name="currency">As sent; that it is missing is for the rules to say.</param>
     /// <param name="path">Pointer of the currency in what was sent.</param>
     public static async Task<Fault?> CheckAsync(Head head, byte[]? stored, string? currency, string path)
     {
-        if (stored is null)
+        if (stored is null || currency is null)
             return null;
         var before = DocumentReader.OfStored.ReadSettings(stored).Currency;
         if (before == currency || !await head.HasRunsAsync())

@@ -28,24 +28,14 @@ internal static class DocumentEndpoints
     }
 
     /// <summary>The document as it was sent, defaults not filled in.</summary>
-    /// <param name="revision">A revision; left out: the newest.</param>
-    /// <param name="asOf">The revision that was current at the end of this local date.</param>
-    internal static async Task<IResult> Get(
-        string portfolio, ClaimsPrincipal user, DocumentStore documents, RevisionOfDate revisions, HttpContext http,
-        CancellationToken cancellation, long? revision = null, string? asOf = null)
+    internal static async Task<IResult> Get([AsParameters] PartRead read)
     {
-        var faults = new QueryFaults();
-        if (revision is not null && asOf is not null)
-            faults.Add("asOf", "Give 'revision' or 'asOf', not both.");
-        var asked = faults.Date("asOf", asOf);
-        faults.Refuse();
-        if (asked is { } date && (revision = await revisions.FindAsync(user.Caller(), portfolio, date, cancellation)) is null)
-            return Problem.NotFound("The portfolio had no revision at that date.");
-        if (await documents.ReadHeadsAsync(user.Caller(), portfolio, revision, cancellation) is { } heads
-            && EntityTags.OfDocument(heads) is var tag && new Preconditions(http.Request).HasAlready(tag))
-            return Read.NotModified(http, tag);
-        return await documents.ReadAsync(user.Caller(), portfolio, revision, cancellation) is { } document
-            ? Read.Document(http, document)
+        var revision = await read.NumberAsync();
+        if (await read.Documents.ReadHeadsAsync(read.Caller, read.Portfolio, revision, read.Cancellation) is { } heads
+            && EntityTags.OfDocument(heads) is var tag && new Preconditions(read.Http.Request).HasAlready(tag))
+            return Read.NotModified(read.Http, tag);
+        return await read.Documents.ReadAsync(read.Caller, read.Portfolio, revision, read.Cancellation) is { } document
+            ? Read.Document(read.Http, document)
             : Problem.NotFound();
     }
 

@@ -16,7 +16,8 @@ namespace Portfolio.Server.Endpoints;
 internal static class EventEndpoints
 {
     public static void MapEvents(this IEndpointRouteBuilder portfolio) =>
-        portfolio.MapGet("/events", List).WithName("listEvents").WithTags("Events").Needs(Right.Read).Refuses(410, 422);
+        portfolio.MapGet("/events", List).WithName("listEvents").WithTags("Events").Needs(Right.Read).Refuses(410, 422)
+            .OfPresentPortfolio();
 
     /// <summary>Events, oldest first, as CloudEvents 1.0. A key limited to projects reads those about one of them.</summary>
     /// <param name="after">The id of an event: those after it. Left out: from the oldest that is kept.</param>

@@ -9,7 +9,7 @@ using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Endpoints;
 
-/// <summary>What a read of one part brings along.</summary>
+/// <summary>What a read of the document or of one part brings along.</summary>
 /// <param name="Portfolio">The portfolio's id.</param>
 /// <param name="Revision">A revision; left out: the newest.</param>
 /// <param name="AsOf">The revision that was current at the end of this local date.</param>

@@ -1,6 +1,7 @@
 using System.ComponentModel.DataAnnotations;
 using System.Globalization;
 using System.Security.Claims;
+using Microsoft.AspNetCore.Http.HttpResults;
 using Portfolio.Server.Access;
 using Portfolio.Server.Contracts;
 using Portfolio.Server.Contracts.Portfolios;
@@ -18,7 +19,7 @@ internal static class RevisionEndpoints
     public static void MapRevisions(this IEndpointRouteBuilder portfolio)
     {
         var revisions = portfolio.MapGroup("/revisions").WithTags("Revisions").Needs(Right.Read);
-        revisions.MapGet("", List).WithName("listRevisions").Produces<PageJson<RevisionJson>>().Refuses(422);
+        revisions.MapGet("", List).WithName("listRevisions").Refuses(422).OfPresentPortfolio();
         revisions.MapGet("/{number:long}", Get).WithName("getRevision").Produces<RevisionJson>();
         revisions.MapGet("/{number:long}/changes", Changes).WithName("listChanges")
             .Produces<PageJson<ChangeJson>>().ReadsConditionally().Refuses(422);
@@ -27,15 +28,12 @@ internal static class RevisionEndpoints
     /// <summary>Accepted writes, newest first. A note is shown to who may read something that the write changed.</summary>
     /// <param name="cursor">Where the page before ended.</param>
     /// <param name="limit">Items in a page.</param>
-    internal static async Task<IResult> List(
+    internal static async Task<Ok<PageJson<RevisionJson>>> List(
         string portfolio, ClaimsPrincipal user, DocumentStore documents, HttpResponse response, CancellationToken cancellation,
         string? cursor = null, [Range(1, Paging.Most)] int limit = Paging.Usual)
     {
         var found = await documents.ListRevisionsAsync(
             user.Caller(), portfolio, Paging.Number(cursor), Paging.WithOneMore(limit), cancellation);
-        // Whoever has a grant on a portfolio to come may ask; one that is there has a revision.
-        if (found.Count == 0 && await documents.FindRevisionAsync(user.Caller(), portfolio, null, cancellation) is null)
-            return Problem.NotFound();
         return TypedResults.Ok(Paging.Page(
             response, found, limit, RevisionJson.From, revision => revision.Number.ToString(CultureInfo.InvariantCulture)));
     }

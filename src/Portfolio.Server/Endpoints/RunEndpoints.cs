@@ -27,7 +27,7 @@ internal static class RunEndpoints
         runs.MapPost("", Post).WithName("postRun").Needs(Right.Manage)
             .Accepts<RunRequestJson>(isOptional: true, "application/json")
             .Produces<RunJson>(StatusCodes.Status202Accepted).Refuses(409, 413, 415, 422);
-        runs.MapGet("", List).WithName("listRuns").Needs(Right.Read).Refuses(422);
+        runs.MapGet("", List).WithName("listRuns").Needs(Right.Read).Refuses(422).OfPresentPortfolio();
         runs.MapGet("/{run}", Get).WithName("getRun").Needs(Right.Read).Refuses(422);
         runs.MapGet("/{run}/progress", Follow).WithName("followRun").Needs(Right.Read).DisableRequestTimeout();
         runs.MapDelete("/{run}", Cancel).WithName("cancelRun").Needs(Right.Manage)

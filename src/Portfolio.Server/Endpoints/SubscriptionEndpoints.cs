@@ -21,7 +21,8 @@ internal static class SubscriptionEndpoints
     public static void MapSubscriptions(this IEndpointRouteBuilder portfolio)
     {
         var subscriptions = portfolio.MapGroup("/subscriptions").WithTags("Events").Needs(Right.Manage);
-        subscriptions.MapGet("", List).WithName("listSubscriptions").Produces<PageJson<SubscriptionJson>>().Refuses(422);
+        subscriptions.MapGet("", List).WithName("listSubscriptions").Produces<PageJson<SubscriptionJson>>()
+            .Refuses(422).OfPresentPortfolio();
         subscriptions.MapPost("", Post).WithName("postSubscription").Accepts<SubscriptionRequestJson>("application/json")
             .Produces<SubscriptionJson>(StatusCodes.Status201Created).Refuses(409, 413, 415, 422);
         var one = subscriptions.MapGroup("/{subscription}");

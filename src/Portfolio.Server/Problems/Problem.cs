@@ -42,7 +42,13 @@ internal sealed class Problem(int status, string slug, string title, string? det
     /// <summary>Text that is not JSON of the right shape (400).</summary>
     public static Problem Malformed(JsonRefused refused) => new(400, "malformed", "The body cannot be read", refused.Fault.Message)
     {
-        Faults = [FaultJson.From(refused.Fault) with { Line = refused.Line, Column = refused.Column }],
+        Faults =
+        [
+            FaultJson.From(refused.Fault) with
+            {
+                Path = refused.IsTable ? null : refused.Fault.Path, Line = refused.Line, Column = refused.Column,
+            },
+        ],
     };
 
     /// <summary>Readable, but wrong (422).</summary>

@@ -44,7 +44,7 @@ internal sealed class CsvUpdates
         catch (CsvFormatException malformed)
         {
             var line = (int)malformed.LineNumber;
-            throw NoTable($"The quotes of the record that begins at line {line} are not closed or doubled.", line);
+            throw JsonRefused.Table($"The quotes of the record that begins at line {line} are not closed or doubled.", line);
         }
     }
 
@@ -54,10 +54,8 @@ internal sealed class CsvUpdates
         while (Rune.DecodeFromUtf8(csv[good..], out _, out var length) == OperationStatus.Done)
             good += length;
         var line = csv[..good].Count((byte)'\n') + 1;
-        return NoTable($"Line {line} holds letters that are not UTF-8; save the table as CSV in UTF-8.", line);
+        return JsonRefused.Table($"Line {line} holds letters that are not UTF-8; save the table as CSV in UTF-8.", line);
     }
-
-    private static JsonRefused NoTable(string why, int line) => new(new Fault("", "", FaultCodes.TableMalformed, why), line, 1);
 
     private void Read(CsvReader reader)
     {

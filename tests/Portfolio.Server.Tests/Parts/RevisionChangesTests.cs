@@ -70,13 +70,6 @@ public sealed class RevisionChangesTests(ServerFixture fixture) : IClassFixture<
         Assert.Contains("weir", await (await some.ReadAsync(at + "/revisions/2")).TextAsync());
     }
 
-    [Fact]
-    public async Task APortfolioThatIsNotThereHasNone()
-    {
-        await (await client.ReadAsync("/v1/portfolios/never/revisions")).ProblemAsync(404, "not-found");
-        await (await client.ReadAsync("/v1/portfolios/never/projects")).ProblemAsync(404, "not-found");
-    }
-
     private static async Task<IReadOnlyList<string>> NotesAsync(HttpClient who, string at) =>
         [.. (await (await who.ReadAsync(at + "/revisions")).JsonAsync()).GetProperty("items").EnumerateArray().Select(revision =>
             $"{revision.GetProperty("revision")} {(revision.TryGetProperty("note", out var note) ? note.GetString() : "-")}")];

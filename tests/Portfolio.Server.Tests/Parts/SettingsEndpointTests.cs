@@ -8,6 +8,21 @@ public sealed class SettingsEndpointTests(ServerFixture fixture) : IClassFixture
     private readonly HttpClient client = fixture.Server.Client();
 
     [Fact]
+    public async Task TheCurrencyStaysOnceARunWasAskedForAndIsNamedWithAllElse()
+    {
+        var at = await client.PortfolioAsync("currency");
+        await (await client.PatchAsync(at + "/settings", """{"currency":"USD"}""")).WrittenAsync(200, 2);
+        Assert.True((await client.PostJsonAsync(at + "/runs", """{"iterations":10}""")).IsSuccessStatusCode);
+        Assert.Equal(
+            [("currency.fixed", "settings", "/currency")], await (await client.PatchAsync(at + "/settings", """{"currency":"EUR"}""")).RefusedAsync());
+        Assert.Equal([("member.missing", "settings", "")], await (await client.PatchAsync(at + "/settings", """{"currency":null}""")).RefusedAsync());
+        var document = $$"""{"settings":{"name":"","currency":"EUR","weekEnds":"noon"},"projects":[{{PartCalls.Quay.Replace("2027", "2727")}}]}""";
+        Assert.Equal(
+            [("member.missing", "settings", "/settings"), ("currency.fixed", "settings", "/settings/currency"), ("value.unknown", "settings", "/settings/weekEnds"), ("date.range", "quay", "/projects/0/statusDate")],
+            await (await client.PutJsonAsync(at + "/document", document, "*")).RefusedAsync());
+    }
+
+    [Fact]
     public async Task SettingsAreReplacedByWhoSaysWhat()
     {
         var at = await client.PortfolioAsync("settings") + "/settings";

@@ -18,6 +18,13 @@ public sealed class JsonRefused(Fault fault, int? line = null, int? column = nul
 
     public int? Column { get; } = column;
 
+    /// <summary>True when it was a table, in which line and column stand for a path.</summary>
+    public bool IsTable { get; private init; }
+
+    /// <summary>A table that cannot be read from this line on.</summary>
+    public static JsonRefused Table(string why, int line) =>
+        new(new Fault("", "", FaultCodes.TableMalformed, why), line, 1) { IsTable = true };
+
     public static JsonRefused Null(string path) =>
         new(new Fault(path, "", FaultCodes.MemberKind, "A null cannot stand here."));
 
