@@ -32,6 +32,29 @@ public sealed class AccessTests(ServerFixture fixture) : IClassFixture<ServerFix
         }
     }
 
+    // What a browser says of a write without a body that another site's page asks for; it sends along the password that it remembers.
+    [Theory]
+    [InlineData("Sec-Fetch-Site", "cross-site", false)]
+    [InlineData("Sec-Fetch-Site", "same-site", false)]
+    [InlineData("Sec-Fetch-Site", "same-origin", true)]
+    [InlineData("Sec-Fetch-Site", "none", true)]
+    [InlineData("Origin", "https://elsewhere.example", false)]
+    [InlineData("Origin", "http://localhost:1", false)]
+    [InlineData("Origin", "null", false)]
+    [InlineData("Origin", "http://localhost", true)]
+    public async Task APageOfAnotherSiteCannotWrite(string header, string value, bool taken)
+    {
+        var client = server.Client();
+        var portfolio = $"/v1/portfolios/{Guid.NewGuid()}";
+        await client.PutJsonAsync($"{portfolio}/document", Samples.Document());
+        client.DefaultRequestHeaders.TryAddWithoutValidation(header, value);
+        var answer = await client.PostAsync($"{portfolio}/runs", null, TestContext.Current.CancellationToken);
+        if (!taken)
+            await answer.ProblemAsync(403, "other-site");
+        Assert.Equal(taken ? HttpStatusCode.Accepted : HttpStatusCode.Forbidden, answer.StatusCode);
+        Assert.Equal(HttpStatusCode.OK, (await client.ReadAsync($"{portfolio}/document")).StatusCode);
+    }
+
     [Fact]
     public async Task TheKeyIsTakenAsBasicPassword()
     {

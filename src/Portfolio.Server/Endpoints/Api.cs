@@ -9,7 +9,7 @@ internal static class Api
 {
     public static void MapApi(this WebApplication app)
     {
-        var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).HoldsToTexts().HoldsToMediaTypes().OnceOnly();
+        var api = app.MapGroup("/v1").Refuses(400, 401, 406, 429, 503).RefusesOtherSites().HoldsToTexts().HoldsToMediaTypes().OnceOnly();
         api.MapPortfolios();
         api.MapKeys();
         api.MapAudit();

@@ -20,6 +20,8 @@ internal static class ProblemKinds
             "Present a key as bearer or as the password of Basic; perhaps yours has been replaced, revoked or has expired."),
         new("forbidden", 403, "The key has a grant on this portfolio, but not the right for this, or not for every member that was sent.",
             "Ask an administrator for the right; where 'errors' names members, leave them out."),
+        new("other-site", 403, "A page of another site made the browser send this write, with a key that the browser remembers.",
+            "Send it from a program, or from a page of this server."),
         new("not-found", 404, "There is no such thing, or the key has no grant on the portfolio that holds it.",
             "Check the address, and with GET /v1/keys/self what the key may see."),
         new("method-not-allowed", 405, "This address does not serve the method.", "The header Allow names the methods that are served."),
