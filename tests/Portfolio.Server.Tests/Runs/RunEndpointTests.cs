@@ -1,12 +1,32 @@
 using System.Net;
+using Microsoft.Extensions.DependencyInjection;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Store.Access;
+using Portfolio.Store.Runs;
 
 namespace Portfolio.Server.Tests.Runs;
 
 public sealed class RunEndpointTests(ServerFixture fixture) : IClassFixture<ServerFixture>
 {
     private readonly HttpClient client = fixture.Server.Client();
+
+    [Fact]
+    public async Task WhyARunFailedIsToldToThoseWhoReadTheWholePortfolio()
+    {
+        await using var server = new PortfolioServer(null, ("Roles", "api"));
+        var manager = server.Client();
+        await manager.PutJsonAsync("/v1/portfolios/p/document", Samples.Document());
+        var run = await manager.RunAsync("p");
+        var held = await server.Services.GetRequiredService<RunClaims>().ClaimAsync(
+            Caller.System, "test", "2", TimeSpan.FromMinutes(1), TestContext.Current.CancellationToken);
+        await server.Services.GetRequiredService<RunEndings>().FailAsync(
+            held!, "The work of quay cannot be simulated.", TestContext.Current.CancellationToken);
+        Assert.Equal("The work of quay cannot be simulated.", (await manager.ReadRunAsync("p", run)).Text("error"));
+        var reader = await server.ClientAsync(new Grant(Right.Read, "p", ["weir-lock"]));
+        Assert.Equal(
+            ("failed", "The run failed; who reads the whole portfolio is told why."),
+            ((await reader.ReadRunAsync("p", run)).State(), (await reader.ReadRunAsync("p", run)).Text("error")));
+    }
 
     [Fact]
     public async Task ARunIsTakenWorkedAndShown()
