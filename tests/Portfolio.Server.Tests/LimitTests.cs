@@ -28,6 +28,21 @@ public sealed class LimitTests
     }
 
     [Fact]
+    public async Task ALowRateIsKeptToAsExactlyAsAHighOne()
+    {
+        const int rate = 2;
+        await using var server = new PortfolioServer(null, ("Limits:RequestsPerSecond", $"{rate}"));
+        var client = server.Client();
+        var (watch, taken) = (System.Diagnostics.Stopwatch.StartNew(), 0);
+        while (watch.Elapsed < TimeSpan.FromSeconds(3))
+        {
+            if ((await client.ReadAsync("/v1/portfolios")).StatusCode == HttpStatusCode.OK)
+                taken++;
+        }
+        Assert.InRange(taken, rate, rate + Math.Ceiling(rate * watch.Elapsed.TotalSeconds));
+    }
+
+    [Fact]
     public async Task SoManyRunsOfAPortfolioMayWait()
     {
         await using var server = new PortfolioServer(null, ("Limits:QueuedRuns", "2"), ("Roles", "api"));

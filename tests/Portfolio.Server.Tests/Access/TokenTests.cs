@@ -54,6 +54,15 @@ public sealed class TokenTests : IAsyncDisposable
     }
 
     [Fact]
+    public async Task WhereNoneIsNeededATokenIsNotLookedAt()
+    {
+        foreach (var address in new[] { "/health/live", "/openapi.json" })
+            Assert.Equal(HttpStatusCode.OK, await StatusAsync(issuer.Sign(Claims()), address));
+        var known = (await (await server.Client().ReadAsync("/v1/keys")).JsonAsync()).GetProperty("items");
+        Assert.Equal("key", Assert.Single(known.EnumerateArray()).Text("kind"));
+    }
+
+    [Fact]
     public async Task ATokenThatIsNotGoodIs401()
     {
         string[] bad =
