@@ -7,9 +7,8 @@ using Portfolio.Store.Schedules;
 namespace Portfolio.Server.Jobs;
 
 /// <summary>
-/// What is done every minute whatever signals were lost: due runs are made, the standing is measured, answers
-/// kept long enough are forgotten. Working what is there comes after
-/// it.
+/// What is done every minute whatever signals were lost: due runs are made, the standing is measured, answers kept long enough are
+/// forgotten. Working what is there comes after it.
 /// </summary>
 public sealed class Sweep(Nightly nightly, RunStore runs, ScheduleStore schedules, AnswerStore answers, RunMeasures measures)
 {

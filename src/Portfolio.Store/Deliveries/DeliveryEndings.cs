@@ -51,7 +51,8 @@ public sealed class DeliveryEndings(Database database)
         async open =>
         {
             var (portfolio, subscription) = (held.Event.Portfolio, held.Subscription);
-            if (await open.FirstAsync<string>(UrlSql, new { Portfolio = portfolio, Subscription = subscription }) is { } url && url != held.Url)
+            var url = await open.FirstAsync<string>(UrlSql, new { Portfolio = portfolio, Subscription = subscription });
+            if (url is not null && url != held.Url)
             {
                 await FailAsync(open, held, result, open.Now.ToInstant());
                 return false;
