@@ -10,7 +10,7 @@ internal static class SchemaText
 
     public static string IdOf(string schema) => "schema-" + schema;
 
-    /// <summary>One line: <c>text (date)</c>, <c>list of Activity</c>, <c>"FS" or "SS"</c>.</summary>
+    /// <summary>One line: <c>text (date) or null</c>, <c>list of Activity</c>, <c>"FS" or "SS"</c>; null comes last.</summary>
     public static IEnumerable<object> Type(JsonElement schema)
     {
         if (schema.ValueKind != JsonValueKind.Object)
@@ -23,7 +23,8 @@ internal static class SchemaText
             return Joined(words.EnumerateArray().Select(word => (IEnumerable<object>)[Page.Code(word.GetRawText())]));
         var forms = schema.TryGetProperty("oneOf", out var one) ? one : schema.TryGetProperty("anyOf", out var any) ? any : default;
         if (forms.ValueKind == JsonValueKind.Array && !schema.TryGetProperty("properties", out _))
-            return Joined(forms.EnumerateArray().Select(Type));
+            return Joined(forms.EnumerateArray().Select(form => Type(form).ToList())
+                .DistinctBy(string.Concat).OrderBy(form => form is ["null"]));
         return Joined(Types(schema).Select(type => Plain(type, schema)));
     }
 
@@ -81,7 +82,6 @@ internal static class SchemaText
     {
         if (!schema.TryGetProperty("type", out var type))
             return ["any"];
-        // What can be null reads better at the end.
         return type.ValueKind == JsonValueKind.Array
             ? type.EnumerateArray().Select(each => each.GetString()!).OrderBy(each => each == "null") : [type.GetString()!];
     }
