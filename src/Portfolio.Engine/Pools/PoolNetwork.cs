@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using Portfolio.Engine.Calendars;
 using Portfolio.Engine.Networks;
 
@@ -49,15 +50,27 @@ internal sealed class PoolNetwork
     /// <summary>How many have demands.</summary>
     public int Demanding => ByRank.Length;
 
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public WorkTime Calendar(int local) => Calendars[Facts[local].Calendar];
 
     public bool Started(int local) => Facts[local].Resumes != int.MinValue;
 
-    public ReadOnlySpan<PoolDemand> DemandsOf(int local) => Demands.AsSpan(Facts[local].FirstDemand..Facts[local + 1].FirstDemand);
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public ReadOnlySpan<PoolDemand> DemandsOf(int local)
+    {
+        var first = Facts[local].FirstDemand;
+        return new(Demands, first, Facts[local + 1].FirstDemand - first);
+    }
 
-    public ReadOnlySpan<NetworkLink> LinksOf(int local) => Links.AsSpan(Facts[local].FirstLink..Facts[local + 1].FirstLink);
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public ReadOnlySpan<NetworkLink> LinksOf(int local)
+    {
+        var first = Facts[local].FirstLink;
+        return new(Links, first, Facts[local + 1].FirstLink - first);
+    }
 
     /// <summary>True when the pool's smallest demand fits beside the units in use, this instant at least.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public bool HasRoom(int pool, int now, double used) => used + Smallest[pool] <= Pools[pool].Lowest(now, now) + Rounding;
 
     /// <summary>True when the units fit beside those in use from t to the end of the base length.</summary>
