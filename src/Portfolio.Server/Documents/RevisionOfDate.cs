@@ -5,19 +5,20 @@ using Portfolio.Store.Documents;
 
 namespace Portfolio.Server.Documents;
 
-/// <summary>Which revision was current at the end of a local date.</summary>
+/// <summary>
+/// Which revision was current at the end of a local date. Asked by the server itself: who may only submit sees neither revisions nor
+/// settings, but what it may read it may read as it was then.
+/// </summary>
 internal sealed class RevisionOfDate(DocumentStore documents)
 {
-    /// <summary>Null when the portfolio had none yet, or is not the caller's to see.</summary>
-    public async Task<long?> FindAsync(Caller caller, string portfolio, DateOnly date, CancellationToken cancellation)
+    /// <summary>Null when the portfolio had none yet.</summary>
+    public async Task<long?> FindAsync(string portfolio, DateOnly date, CancellationToken cancellation)
     {
         var zone = await ZoneAsync(portfolio, cancellation);
-        return (await documents.FindRevisionAtAsync(caller, portfolio, LocalDates.EndOf(date, zone), cancellation))?.Number;
+        return (await documents.FindRevisionAtAsync(Caller.System, portfolio, LocalDates.EndOf(date, zone), cancellation))?.Number;
     }
 
-    /// <summary>
-    /// The zone of a portfolio's local dates. Read by the server itself: whoever may ask for a date need not see the settings.
-    /// </summary>
+    /// <summary>The zone of a portfolio's local dates.</summary>
     public async Task<TimeZoneInfo> ZoneAsync(string portfolio, CancellationToken cancellation)
     {
         var settings = await documents.ReadPartAsync(Caller.System, portfolio, PartNames.Settings, null, cancellation);

@@ -52,7 +52,9 @@ internal static class DocumentEndpoints
             submission = DocumentSubmission.Of(portfolio, body.Bytes, reader, check);
         var write = new DocumentWrite
         {
-            Portfolio = portfolio, Note = kept, Action = "document.put", Parts = [PartNames.Settings],
+            Portfolio = portfolio, Note = kept, Action = "document.put",
+            // Only who reaches the whole portfolio reaches these.
+            Parts = [PartNames.Settings],
             Joining = http.Remembers<WriteResult>((to, done) => Written.Answer(to, portfolio, done, submission.Tag)),
         };
         var result = await documents.WriteAsync(user.Caller(), write, (head, _) => submission.ReplaceAsync(head, conditions), cancellation);

@@ -48,8 +48,7 @@ internal sealed record PartRead(
         faults.Refuse();
         if (asked is not { } date)
             return Revision;
-        // Asked by the server itself: who may only submit sees no revisions, but what it may read it may read of then.
-        return await Revisions.FindAsync(Caller.System, Portfolio, date, Cancellation)
+        return await Revisions.FindAsync(Portfolio, date, Cancellation)
             ?? throw new RequestRefused(Problem.NotFound("The portfolio had no revision at that date."));
     }
 }
