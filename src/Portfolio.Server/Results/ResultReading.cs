@@ -25,14 +25,14 @@ internal sealed class ResultReading(ResultStore results, RowLevels rowLevels)
     public async Task<ResultListJson> ListAsync(
         SeenRun run, int skip, int take, IReadOnlyList<Level> levels, CancellationToken cancellation)
     {
-        var all = await results.ListAsync(run.Caller, run.Portfolio, run.Id, cancellation);
-        var rows = all.Skip(skip).Take(take).Select(Read).ToArray();
-        var end = skip + rows.Length;
+        // One more tells whether there is a next page.
+        var found = await results.ListAsync(run.Caller, run.Portfolio, run.Id, skip, take + 1L, cancellation);
+        var rows = found.Take(take).Select(Read).ToArray();
         return new()
         {
             Items = levels.Count == 0 ? rows : await rowLevels.SetAsync(run, rows, levels, cancellation),
             Warnings = KeptWarnings.Read(run).All,
-            Next = end < all.Count ? end.ToString(CultureInfo.InvariantCulture) : null,
+            Next = found.Count > take ? (skip + take).ToString(CultureInfo.InvariantCulture) : null,
         };
     }
 

@@ -22,9 +22,9 @@ internal sealed class PostgresServer : IAsyncDisposable
     /// <exception cref="ArgumentException">Not a connection string.</exception>
     public PostgresServer(string connectionString)
     {
-        readers = Source(connectionString, "-c default_transaction_read_only=on", 20);
+        readers = Source(connectionString, "-c default_transaction_read_only=on", 20, reads: true);
         // One writes at a time; the second migrates.
-        writers = Source(connectionString, "-c default_transaction_read_only=off", 2);
+        writers = Source(connectionString, "-c default_transaction_read_only=off", 2, reads: false);
     }
 
     public ValueTask<NpgsqlConnection> OpenReaderAsync(CancellationToken cancellation) => readers.OpenConnectionAsync(cancellation);
@@ -105,13 +105,15 @@ internal sealed class PostgresServer : IAsyncDisposable
         await writers.DisposeAsync();
     }
 
-    private static NpgsqlDataSource Source(string connectionString, string more, int connections)
+    private static NpgsqlDataSource Source(string connectionString, string more, int connections, bool reads)
     {
         var builder = new NpgsqlConnectionStringBuilder(connectionString);
         builder.ApplicationName ??= "portfolio";
         builder.Options = $"{builder.Options} {Settings} {more}".Trim();
         if (!builder.ShouldSerialize("Timeout"))
             builder.Timeout = 5;
+        // Reading leaves nothing behind that the next one on the connection could meet.
+        builder.NoResetOnClose = reads;
         // The conditions on grants take longer to plan than to run.
         if (!builder.ShouldSerialize("Max Auto Prepare"))
             (builder.MaxAutoPrepare, builder.AutoPrepareMinUsages) = (100, 2);

@@ -7,24 +7,31 @@ public sealed class ResultStore(Database database)
 {
     private static readonly string RowsSql = $"""
         select x.scope, x.json from result_row x join run r on r.id = x.run
-        where x.run = @Run and (@Scope is null or x.scope = @Scope) and r.portfolio = @Portfolio
-          and {Granted.Part(Right.Read, "@Portfolio", "x.project")}
-        order by x.position
+        where x.run = @Run and r.portfolio = @Portfolio and {Granted.Part(Right.Read, "@Portfolio", "x.project")}
         """;
 
-    /// <summary>All rows of a run in their order, as far as the caller may read them.</summary>
-    public async Task<IReadOnlyList<ResultRow>> ListAsync(Caller caller, string portfolio, string run, CancellationToken cancellation) =>
-        await database.ReadAsync(open => RowsAsync(open, caller, portfolio, run, null), cancellation);
+    private static readonly string ListSql = $"{RowsSql} order by x.position limit @Take offset @Skip";
+
+    /// <summary>Rows of a run in their order, as far as the caller may read them.</summary>
+    /// <param name="skip">So many of them are left out at the beginning.</param>
+    /// <param name="take">At most so many.</param>
+    public async Task<IReadOnlyList<ResultRow>> ListAsync(
+        Caller caller, string portfolio, string run, long skip, long take, CancellationToken cancellation)
+    {
+        var rows = await database.ReadAsync(
+            open => open.ListAsync<JsonRow>(
+                ListSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Skip = skip, Take = take }),
+            cancellation);
+        return [.. rows.Select(row => row.ToRow())];
+    }
+
+    private static readonly string FindSql = $"{RowsSql} and x.scope = @Scope";
 
     public async Task<ResultRow?> FindAsync(Caller caller, string portfolio, string run, string scope, CancellationToken cancellation) =>
-        (await database.ReadAsync(open => RowsAsync(open, caller, portfolio, run, scope), cancellation)).FirstOrDefault();
-
-    private static async Task<ResultRow[]> RowsAsync(StoreTransaction open, Caller caller, string portfolio, string run, string? scope)
-    {
-        var rows = await open.ListAsync<JsonRow>(
-            RowsSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Scope = scope });
-        return [.. rows.Select(row => new ResultRow(row.Scope, row.Json))];
-    }
+        (await database.ReadAsync(
+            open => open.FirstAsync<JsonRow>(
+                FindSql, new { Caller = caller.KeyId, open.Now, Portfolio = portfolio, Run = run, Scope = scope }),
+            cancellation))?.ToRow();
 
     private const string GridColumns = "x.scope, x.metric, x.base_value, x.mean, x.sd, x.happens, x.bytes";
 
@@ -100,6 +107,8 @@ public sealed class ResultStore(Database database)
     {
         public string Scope { get; init; } = "";
         public byte[] Json { get; init; } = [];
+
+        public ResultRow ToRow() => new(Scope, Json);
     }
 
     private sealed record LevelRow

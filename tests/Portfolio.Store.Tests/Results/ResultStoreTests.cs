@@ -30,8 +30,10 @@ public abstract class ResultStoreTests(StoreKind kind)
     {
         await using var store = await WithPointsAsync(1);
         var run = (await store.Runs.FindLatestAsync(Caller.System, "works", TestStore.Cancellation))!.Id;
-        var rows = await store.Results.ListAsync(Caller.System, "works", run, TestStore.Cancellation);
+        var rows = await store.Results.ListAsync(Caller.System, "works", run, 0, 1000, TestStore.Cancellation);
         Assert.Equal([$"portfolio {run}", $"project/lock {run}", $"milestone/lock/M1 {run}"], rows.Select(row => Text(row.Json)));
+        var page = await store.Results.ListAsync(Caller.System, "works", run, 1, 1, TestStore.Cancellation);
+        Assert.Equal("project/lock", Assert.Single(page).Scope);
         Assert.Equal($"project/lock {run}", Text(
             (await store.Results.FindAsync(Caller.System, "works", run, "project/lock", TestStore.Cancellation))?.Json));
         Assert.Null(await store.Results.FindAsync(Caller.System, "works", run, "project/quay", TestStore.Cancellation));

@@ -86,7 +86,7 @@ internal sealed class DemoStart(
 
     private async Task<IReadOnlyList<ResultJson>> RowsAsync(StoredRun run, CancellationToken cancellation) =>
         [
-            .. (await results.ListAsync(Caller.System, DemoPosting.Id, run.Id, cancellation))
+            .. (await results.ListAsync(Caller.System, DemoPosting.Id, run.Id, 0, int.MaxValue, cancellation))
                 .Select(row => JsonSerializer.Deserialize(row.Json, ResultsContext.Plain.ResultJson)!),
         ];
 }
