@@ -4,13 +4,13 @@ using System.Runtime.InteropServices;
 namespace Portfolio.Engine.Runs;
 
 /// <summary>The engine's own threads: never the pool's, and at lower priority, so that requests stay quick while a run works.</summary>
-internal static partial class EngineThreads
+public static partial class EngineThreads
 {
     private const int Niceness = 19;
     private const int StackBytes = 4 << 20;
 
     /// <summary>Runs the work on so many threads and waits; the first exception stops the others and is thrown here.</summary>
-    public static void Work(int threads, Action<CancellationToken> work, CancellationToken cancellation)
+    internal static void Work(int threads, Action<CancellationToken> work, CancellationToken cancellation)
     {
         using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
         ExceptionDispatchInfo? failure = null;
@@ -37,6 +37,19 @@ internal static partial class EngineThreads
                 Interlocked.CompareExchange(ref failure, ExceptionDispatchInfo.Capture(e), null);
                 stop.Cancel();
             }
+        }
+    }
+
+    /// <summary>Works something long and busy of a run, such as its results, on one such thread; what comes after runs elsewhere.</summary>
+    public static Task<T> RunAsync<T>(Func<T> work)
+    {
+        const TaskCreationOptions own = TaskCreationOptions.LongRunning | TaskCreationOptions.RunContinuationsAsynchronously;
+        return Task.Factory.StartNew(Low, CancellationToken.None, own, TaskScheduler.Default);
+
+        T Low()
+        {
+            LowerPriority();
+            return work();
         }
     }
 

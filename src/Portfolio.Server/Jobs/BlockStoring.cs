@@ -16,13 +16,13 @@ internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan
 {
     private const int Waiting = 2;
 
-    private readonly Channel<BlockSamples> queue =
-        Channel.CreateBounded<BlockSamples>(new BoundedChannelOptions(Waiting) { SingleReader = true });
+    private readonly Channel<PackedBlock> queue =
+        Channel.CreateBounded<PackedBlock>(new BoundedChannelOptions(Waiting) { SingleReader = true });
 
-    /// <summary>Called from the engine's own threads, which may wait.</summary>
+    /// <summary>Called from the engine's own threads, which do the packing, and may wait.</summary>
     public void Add(BlockSamples block, CancellationToken cancellation)
     {
-        var waiting = queue.Writer.WriteAsync(block, cancellation);
+        var waiting = queue.Writer.WriteAsync(new(block.Block, block.Count, [.. Series(block)]), cancellation);
         if (!waiting.IsCompletedSuccessfully)
             waiting.AsTask().GetAwaiter().GetResult();
     }
@@ -37,8 +37,8 @@ internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan
         await foreach (var block in queue.Reader.ReadAllAsync(cancellation))
         {
             using var span = ServerTelemetry.Spans.StartActivity("run.block");
-            span?.SetTag("portfolio.run", held.Run.Id).SetTag("portfolio.block", block.Block).SetTag("portfolio.iterations", block.Count);
-            if (!await samples.WriteBlockAsync(held, block.Block, block.Count, [.. Series(block)], cancellation))
+            span?.SetTag("portfolio.run", held.Run.Id).SetTag("portfolio.block", block.Number).SetTag("portfolio.iterations", block.Count);
+            if (!await samples.WriteBlockAsync(held, block.Number, block.Count, block.Series, cancellation))
                 throw new LeaseLost();
             span?.SetStatus(ActivityStatusCode.Ok);
         }
@@ -61,4 +61,6 @@ internal sealed class BlockStoring(SampleStore samples, RunLease held, Plan plan
             yield return SeriesBlock.OfMinutes(name, block.MilestoneFinish[m]);
         }
     }
+
+    private sealed record PackedBlock(int Number, int Count, IReadOnlyList<SeriesBlock> Series);
 }

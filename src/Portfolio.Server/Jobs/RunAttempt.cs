@@ -24,7 +24,7 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         if (gaps.Count > 0)
             await WorkBlocksAsync(held, revision, gaps, cancellation);
         using (ServerTelemetry.Spans.StartActivity("run.result"))
-            return await OnOwnThread(() => FinishedRun.Build(
+            return await EngineThreads.RunAsync(() => FinishedRun.Build(
                 revision.Plan, SamplesAhead.Of(samples, held, revision.Plan), Facts(held.Run, revision), cancellation));
     }
 
@@ -33,7 +33,7 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
         using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
         var storing = new BlockStoring(samples, held, revision.Plan);
         var stored = storing.StoreAsync(stop.Token);
-        var worked = OnOwnThread(() => Simulate(held.Run, revision, gaps, storing, stop.Token));
+        var worked = EngineThreads.RunAsync(() => Simulate(held.Run, revision, gaps, storing, stop.Token));
         // Whichever fails first ends the other; its exception is the one that matters.
         var first = await Task.WhenAny(stored, worked);
         if (!first.IsCompletedSuccessfully)
@@ -67,8 +67,4 @@ internal sealed class RunAttempt(DocumentStore documents, SampleStore samples, R
 
     private static RunFacts Facts(StoredRun run, FrozenRevision revision) =>
         new(run.Id, run.AsOf, run.Revision, run.Seed, run.Iterations, revision.PartHashes, run.Overlay);
-
-    // Long and busy: not on the threads that answer requests.
-    private static Task<T> OnOwnThread<T>(Func<T> work) =>
-        Task.Factory.StartNew(work, CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default);
 }

@@ -13,32 +13,25 @@ internal static class SampleCodec
     // Beyond 2^53 a double no longer tells neighbouring whole numbers apart.
     private const double LargestWhole = 9007199254740992;
 
-    public static (int Codec, byte[] Bytes) Encode(SeriesBlock block) => block switch
+    public static (int Codec, byte[] Bytes) Encode(ReadOnlySpan<int> minutes)
     {
-        MinuteBlock minutes => (Packed, EncodeMinutes(minutes.Values.Span)),
-        MoneyBlock money => EncodeMoney(money.Values.Span),
-        _ => throw new ArgumentException("Unknown kind of block.", nameof(block)),
-    };
-
-    private static byte[] EncodeMinutes(ReadOnlySpan<int> values)
-    {
-        var wide = new long[values.Length];
+        var wide = new long[minutes.Length];
         for (var i = 0; i < wide.Length; i++)
-            wide[i] = values[i];
-        return IntegerCodec.Encode(wide, mayMiss: true);
+            wide[i] = minutes[i];
+        return (Packed, IntegerCodec.Encode(wide, mayMiss: true));
     }
 
-    private static (int Codec, byte[] Bytes) EncodeMoney(ReadOnlySpan<double> values)
+    public static (int Codec, byte[] Bytes) Encode(ReadOnlySpan<double> money)
     {
-        var whole = new long[values.Length];
+        var whole = new long[money.Length];
         for (var i = 0; i < whole.Length; i++)
         {
-            if (!(Math.Abs(values[i]) <= LargestWhole))
-                return (Raw, KeepRaw(values));
-            whole[i] = (long)values[i];
+            if (!(Math.Abs(money[i]) <= LargestWhole))
+                return (Raw, KeepRaw(money));
+            whole[i] = (long)money[i];
             // Bit by bit, so that fractions and the negative zero are kept too.
-            if (BitConverter.DoubleToInt64Bits(whole[i]) != BitConverter.DoubleToInt64Bits(values[i]))
-                return (Raw, KeepRaw(values));
+            if (BitConverter.DoubleToInt64Bits(whole[i]) != BitConverter.DoubleToInt64Bits(money[i]))
+                return (Raw, KeepRaw(money));
         }
         return (Packed, IntegerCodec.Encode(whole, mayMiss: false));
     }

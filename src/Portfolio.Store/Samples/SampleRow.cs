@@ -15,8 +15,7 @@ internal sealed record SampleRow
 
     public static SampleRow Of(string run, int block, SeriesBlock series)
     {
-        var (codec, bytes) = SampleCodec.Encode(series);
-        var row = new SampleRow { Run = run, Block = block, Series = series.Series, Codec = codec, Bytes = bytes };
+        var row = new SampleRow { Run = run, Block = block, Series = series.Series, Codec = series.Codec, Bytes = series.Bytes };
         return row with { Checksum = row.Sum() };
     }
 

@@ -24,7 +24,7 @@ public sealed class SampleStore(Database database)
     public Task<bool> WriteBlockAsync(
         RunLease held, int block, int iterations, IReadOnlyList<SeriesBlock> series, CancellationToken cancellation)
     {
-        // Packed before the write lock is taken, which others wait for.
+        // Summed before the write lock is taken, which others wait for.
         SampleRow[] rows = [.. series.Select(one => SampleRow.Of(held.Run.Id, block, one))];
         return database.WriteAsync(
             async open =>

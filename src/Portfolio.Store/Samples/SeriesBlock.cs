@@ -13,20 +13,20 @@ public static class SeriesNames
     internal static string? ProjectOf(string series) => series.Split('/') is [_, var project, ..] ? project : null;
 }
 
-/// <summary>One series over the iterations of one block, in their order.</summary>
-public abstract record SeriesBlock
+/// <summary>One series over the iterations of one block, in their order; packed by whoever makes it, on the thread that does.</summary>
+public sealed class SeriesBlock
 {
-    private protected SeriesBlock(string series) => Series = series;
+    private SeriesBlock(string series, (int Codec, byte[] Bytes) packed) => (Series, Codec, Bytes) = (series, packed.Codec, packed.Bytes);
 
     public string Series { get; }
 
+    internal int Codec { get; }
+
+    internal byte[] Bytes { get; }
+
     /// <summary>Instants in minutes; <see cref="int.MinValue"/> where the thing does not happen.</summary>
-    public static SeriesBlock OfMinutes(string series, ReadOnlyMemory<int> values) => new MinuteBlock(series, values);
+    public static SeriesBlock OfMinutes(string series, ReadOnlySpan<int> values) => new(series, SampleCodec.Encode(values));
 
     /// <summary>Money in minor units; any doubles are kept exactly, whole ones in less room.</summary>
-    public static SeriesBlock OfMoney(string series, ReadOnlyMemory<double> values) => new MoneyBlock(series, values);
+    public static SeriesBlock OfMoney(string series, ReadOnlySpan<double> values) => new(series, SampleCodec.Encode(values));
 }
-
-internal sealed record MinuteBlock(string Name, ReadOnlyMemory<int> Values) : SeriesBlock(Name);
-
-internal sealed record MoneyBlock(string Name, ReadOnlyMemory<double> Values) : SeriesBlock(Name);

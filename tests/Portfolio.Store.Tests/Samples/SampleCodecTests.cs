@@ -15,13 +15,13 @@ public sealed class SampleCodecTests
 
     private static int[] RoundTrip(int[] values)
     {
-        var (codec, bytes) = SampleCodec.Encode(SeriesBlock.OfMinutes("finish/lock", values));
+        var (codec, bytes) = SampleCodec.Encode(values);
         return SampleCodec.DecodeMinutes(codec, bytes);
     }
 
     private static double[] RoundTrip(double[] values)
     {
-        var (codec, bytes) = SampleCodec.Encode(SeriesBlock.OfMoney("cost/lock", values));
+        var (codec, bytes) = SampleCodec.Encode(values);
         return SampleCodec.DecodeMoney(codec, bytes);
     }
 
@@ -73,13 +73,13 @@ public sealed class SampleCodecTests
         Assert.InRange(Size(i => i % 100 == 0 ? 500_000_000 + i : i * 7919 % 1024), 5120, 5120 + 230);
 
         static int Size(Func<int, int> value) =>
-            SampleCodec.Encode(SeriesBlock.OfMinutes("finish/lock", Enumerable.Range(0, 4096).Select(value).ToArray())).Bytes.Length;
+            SampleCodec.Encode(Enumerable.Range(0, 4096).Select(value).ToArray()).Bytes.Length;
     }
 
     [Fact]
     public void Bytes_that_do_not_fit_their_head_are_refused()
     {
-        var (codec, bytes) = SampleCodec.Encode(SeriesBlock.OfMinutes("finish/lock", new[] { 1, 2, 30 }));
+        var (codec, bytes) = SampleCodec.Encode([1, 2, 30]);
         Assert.Throws<StoreDamagedException>(() => SampleCodec.DecodeMinutes(codec, bytes.AsSpan(..^1)));
         Assert.Throws<StoreDamagedException>(() => SampleCodec.DecodeMinutes(codec, bytes.AsSpan(..5)));
         bytes[3] = 0x7F;
