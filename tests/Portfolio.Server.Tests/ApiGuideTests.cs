@@ -1,4 +1,3 @@
-using System.Diagnostics;
 using System.Text.RegularExpressions;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Jobs;
@@ -29,24 +28,13 @@ public sealed partial class ApiGuideTests : IDisposable
         await File.WriteAllTextAsync(Path.Combine(data.FullName, "first-key.txt"), PortfolioServer.AdminKey, Cancellation);
         var script = "curl() { command curl -s \"$@\"; echo; }\n"
             + string.Concat(blocks.Select((block, i) => $"echo '=== {i}'\n{block.Groups["commands"].Value}"));
-        var said = await BashAsync(
-            script.Replace("http://127.0.0.1:5080", server.Client.BaseAddress!.ToString().TrimEnd('/'), StringComparison.Ordinal));
+        var said = await Shell.SaysAsync(
+            folder, script.Replace("http://127.0.0.1:5080", server.Client.BaseAddress!.ToString().TrimEnd('/'), StringComparison.Ordinal));
         var answers = Regex.Split(said, "^=== \\d+\\n", RegexOptions.Multiline).Skip(1).ToList();
         Assert.Equal(blocks.Count, answers.Count);
         foreach (var (block, answer) in blocks.Zip(answers))
             foreach (var line in block.Groups["shown"].Value.Split('\n', StringSplitOptions.RemoveEmptyEntries))
                 Assert.True(answer.Contains(line, StringComparison.Ordinal), $"Not found: {line}\nin: {answer}");
-    }
-
-    private async Task<string> BashAsync(string script)
-    {
-        var file = Path.Combine(folder.FullName, "guide.sh");
-        await File.WriteAllTextAsync(file, script, Cancellation);
-        using var bash = Process.Start(
-            new ProcessStartInfo("/bin/bash", [file]) { RedirectStandardOutput = true, WorkingDirectory = folder.FullName })!;
-        var said = await bash.StandardOutput.ReadToEndAsync(Cancellation);
-        await bash.WaitForExitAsync(Cancellation);
-        return said;
     }
 
     public void Dispose() => folder.Delete(recursive: true);

@@ -19,7 +19,7 @@ public sealed class ReadmeTests : IDisposable
         // The test's key was given to the server; a first start without one writes this file itself.
         await File.WriteAllTextAsync(Path.Combine(data.FullName, "first-key.txt"), PortfolioServer.AdminKey, Cancellation);
         var script = Walk().Replace("http://127.0.0.1:5080", server.Client.BaseAddress!.ToString().TrimEnd('/'), StringComparison.Ordinal);
-        var said = await BashAsync(script);
+        var said = await Shell.SaysAsync(folder, script);
 
         Assert.Contains("""{"portfolio":"first","revision":1,"changed":true}""", said, StringComparison.Ordinal);
         Assert.Contains("event: ended", said, StringComparison.Ordinal);
@@ -59,17 +59,6 @@ public sealed class ReadmeTests : IDisposable
             .TakeWhile(line => !line.StartsWith("## ", StringComparison.Ordinal));
         var commands = section.Where(line => line.StartsWith("    ", StringComparison.Ordinal)).Select(line => line[4..]);
         return "curl() { command curl -s \"$@\"; case \"$*\" in *location*) ;; *) echo ;; esac; }\n" + string.Join('\n', commands);
-    }
-
-    private async Task<string> BashAsync(string script)
-    {
-        var file = Path.Combine(folder.FullName, "walk.sh");
-        await File.WriteAllTextAsync(file, script, Cancellation);
-        using var bash = Process.Start(
-            new ProcessStartInfo("/bin/bash", [file]) { RedirectStandardOutput = true, WorkingDirectory = folder.FullName })!;
-        var said = await bash.StandardOutput.ReadToEndAsync(Cancellation);
-        await bash.WaitForExitAsync(Cancellation);
-        return said;
     }
 
     public void Dispose() => folder.Delete(recursive: true);

@@ -1,4 +1,5 @@
 using System.Net;
+using System.Text.Json;
 using Portfolio.Server.Tests.Hosting;
 using Portfolio.Server.Tests.Runs;
 using Portfolio.Server.Tests.Webhooks;
@@ -22,10 +23,7 @@ public sealed class RetryAfterTests
         await using var receiver = await Receiver.StartAsync();
         Answering(receiver, status, after);
         var client = server.Client();
-        await client.PutDocumentAsync(Certain(5));
-        await client.SubscribeAsync(receiver.Url, Revisions, "office");
-        await client.PutDocumentAsync(Certain(6));
-        var waiting = await StateAsync(client, "office", "waiting", 1);
+        var waiting = await FailedOnceAsync(client, receiver.Url);
         Assert.Equal((next, status), (waiting.Text("nextAttemptAt"), waiting.GetProperty("lastStatus").GetInt32()));
         receiver.AnswerWith(200);
         server.Clock.SetUtcNow(waiting.GetProperty("nextAttemptAt").GetDateTimeOffset());
@@ -42,10 +40,7 @@ public sealed class RetryAfterTests
         await using var receiver = await Receiver.StartAsync();
         Answering(receiver, status, after);
         var client = server.Client();
-        await client.PutDocumentAsync(Certain(5));
-        await client.SubscribeAsync(receiver.Url, Revisions, "office");
-        await client.PutDocumentAsync(Certain(6));
-        var waiting = await StateAsync(client, "office", "waiting", 1);
+        var waiting = await FailedOnceAsync(client, receiver.Url);
         Assert.InRange((waiting.GetProperty("nextAttemptAt").GetDateTimeOffset() - server.Clock.GetUtcNow()).TotalSeconds, 8, 10);
     }
 
@@ -56,10 +51,7 @@ public sealed class RetryAfterTests
         await using var receiver = await Receiver.StartAsync();
         receiver.AnswerWith(500);
         var client = server.Client();
-        await client.PutDocumentAsync(Certain(5));
-        await client.SubscribeAsync(receiver.Url, Revisions, "office");
-        await client.PutDocumentAsync(Certain(6));
-        await StateAsync(client, "office", "waiting", 1);
+        await FailedOnceAsync(client, receiver.Url);
         Assert.Equal(HttpStatusCode.OK, (await client.RemoveAsync("/v1/portfolios/p")).StatusCode);
         var dead = await StateAsync(client, "office", "dead");
         Assert.Equal((1, "The portfolio was archived before it could be sent."), (dead.GetProperty("attempts").GetInt32(), dead.Text("lastError")));
@@ -81,14 +73,20 @@ public sealed class RetryAfterTests
         await using var server = SubscriptionScene.Server();
         await using var target = new RawTarget($"HTTP/1.1 {status} Unheard\r\nContent-Length: 0\r\nConnection: close\r\n\r\n");
         var client = server.Client();
-        await client.PutDocumentAsync(Certain(5));
-        await client.SubscribeAsync(target.Url, Revisions, "office");
-        await client.PutDocumentAsync(Certain(6));
-        var waiting = await StateAsync(client, "office", "waiting", 1);
+        var waiting = await FailedOnceAsync(client, target.Url);
         Assert.StartsWith($"The target answered {status}", waiting.Text("lastError"), StringComparison.Ordinal);
         Assert.Equal(recorded, waiting.TryGetProperty("lastStatus", out var last) ? last.GetInt32() : null);
         server.Clock.Advance(TimeSpan.FromHours(25));
         Assert.Equal(2, (await StateAsync(client, "office", "dead")).GetProperty("attempts").GetInt32());
+    }
+
+    // The first delivery of a subscription, after its first attempt.
+    private static async Task<JsonElement> FailedOnceAsync(HttpClient client, string url)
+    {
+        await client.PutDocumentAsync(Certain(5));
+        await client.SubscribeAsync(url, Revisions, "office");
+        await client.PutDocumentAsync(Certain(6));
+        return await StateAsync(client, "office", "waiting", 1);
     }
 
     private static void Answering(Receiver receiver, int status, string after) => receiver.Answer = (http, _) =>
