@@ -76,18 +76,8 @@ internal static class DocumentBenchmark
         EngineThreads.Work(threads, _ => work(Interlocked.Increment(ref next)), CancellationToken.None);
     }
 
-    /// <summary>
-    /// Seconds on the clock and of processor time (which a busy machine disturbs less), each the median of several after a warm-up.
-    /// </summary>
-    internal static (double Seconds, double Cpu) Median(Action work)
-    {
-        work();
-        var runs = Enumerable.Range(0, Repeats).Select(_ => Measured(work)).ToArray();
-        return (Median(runs.Select(r => r.Seconds)), Median(runs.Select(r => r.Cpu)));
-    }
-
     // Two pieces of work by turns after a warm-up, so that what is compared was measured while the machine was the same.
-    private static ((double Seconds, double Cpu)[] First, (double Seconds, double Cpu)[] Second) InTurn(Action first, Action second)
+    internal static ((double Seconds, double Cpu)[] First, (double Seconds, double Cpu)[] Second) InTurn(Action first, Action second)
     {
         first();
         second();
@@ -102,7 +92,7 @@ internal static class DocumentBenchmark
         return (seconds, (Process.GetCurrentProcess().TotalProcessorTime - before).TotalSeconds);
     }
 
-    private static double Median(IEnumerable<double> measured) => measured.Order().ElementAt(Repeats / 2);
+    internal static double Median(IEnumerable<double> measured) => measured.Order().ElementAt(Repeats / 2);
 
     private static (T Value, double Seconds) Timed<T>(Func<T> work)
     {

@@ -12,21 +12,25 @@ internal static class GrowthBenchmark
 
     public static int Run()
     {
-        var one = Seconds(Projects, Activities, Iterations);
-        Line("projects", Projects, one, Seconds(2 * Projects, Activities, Iterations));
-        Line("activities", Activities, one, Seconds(Projects, 2 * Activities, Iterations));
-        Line("iterations", Iterations, one, Seconds(Projects, Activities, 2 * Iterations));
+        var plan = Compiled(Projects, Activities);
+        Compare("projects", Projects, plan, Iterations, Compiled(2 * Projects, Activities), Iterations);
+        Compare("activities", Activities, plan, Iterations, Compiled(Projects, 2 * Activities), Iterations);
+        Compare("iterations", Iterations, plan, Iterations, plan, 2 * Iterations);
         return 0;
     }
 
-    // One thread: two would add what else runs on the machine.
-    private static (double Clock, double Cpu) Seconds(int projects, int activities, int iterations)
-    {
-        var plan = Plan.Compile(InventedPortfolio.Of(projects, activities));
-        return DocumentBenchmark.Median(() => DocumentBenchmark.Simulate(plan, iterations, threads: 1));
-    }
+    private static Plan Compiled(int projects, int activities) => Plan.Compile(InventedPortfolio.Of(projects, activities));
 
-    private static void Line(string what, int from, (double Clock, double Cpu) one, (double Clock, double Cpu) two) => Console.WriteLine(string.Create(
-        CultureInfo.InvariantCulture,
-        $"{what,-10} {from,5} → {2 * from,5}: {one.Clock:0.000} → {two.Clock:0.000} s by the clock, {two.Clock / one.Clock:0.00} times ({two.Cpu / one.Cpu:0.00} in processor time)"));
+    // One thread: two would add what else runs on the machine. By turns, and ratios of pairs: its speed changes from minute to minute.
+    private static void Compare(string what, int from, Plan one, int iterations, Plan two, int more)
+    {
+        var (ones, twos) = DocumentBenchmark.InTurn(
+            () => DocumentBenchmark.Simulate(one, iterations, threads: 1), () => DocumentBenchmark.Simulate(two, more, threads: 1));
+        var clock = DocumentBenchmark.Median(ones.Zip(twos, (a, b) => b.Seconds / a.Seconds));
+        var cpu = DocumentBenchmark.Median(ones.Zip(twos, (a, b) => b.Cpu / a.Cpu));
+        var (before, after) = (DocumentBenchmark.Median(ones.Select(r => r.Seconds)), DocumentBenchmark.Median(twos.Select(r => r.Seconds)));
+        Console.WriteLine(string.Create(
+            CultureInfo.InvariantCulture,
+            $"{what,-10} {from,5} → {2 * from,5}: {before:0.000} → {after:0.000} s, {clock:0.00} times ({cpu:0.00} in processor time)"));
+    }
 }
